@@ -1,0 +1,52 @@
+import type { Problem } from "../series/series.ts";
+
+/** One table that could not be refitted, and why. */
+export interface FailedTable {
+  readonly table: string;
+  readonly problems: readonly Problem[];
+}
+
+/** The tables a run set out to do, cut into portions for workers; stored create-only as `runs/<asOf>/plan.json`. */
+export interface Plan {
+  readonly schema: 1;
+  /** ISO instant, `2026-11-30T06:00:00Z`. */
+  readonly asOf: string;
+  readonly tables: readonly string[];
+  readonly portions: readonly (readonly string[])[];
+}
+
+/** What one worker did with its portion. */
+export interface PortionResult {
+  readonly refitted: readonly string[];
+  /** Found already written by an earlier try. */
+  readonly already: readonly string[];
+  readonly failed: readonly FailedTable[];
+  /** Not reached before the time ran out. */
+  readonly left: readonly string[];
+  readonly series: number;
+}
+
+export interface DeliveryRecord {
+  readonly webhook: string;
+  readonly audience: "business" | "analyst" | "operations";
+  readonly asOf: string;
+  readonly status: "delivered" | "already-delivered" | "undelivered" | "not-configured" | "nothing-to-say";
+  readonly reason?: string;
+}
+
+/** What a run did: written as `runs/<asOf>/summary.json` (without the duration, so that a retry writes the same bytes). */
+export interface RunSummary {
+  readonly schema: 1;
+  readonly asOf: string;
+  readonly tables: number;
+  readonly series: number;
+  readonly notices: number;
+  readonly surprises: number;
+  readonly stale: readonly string[];
+  readonly failed: readonly FailedTable[];
+  readonly left: readonly string[];
+  readonly deliveries: readonly DeliveryRecord[];
+  /** Key of the report in the store. */
+  readonly report: string;
+  readonly durationMilliseconds: number;
+}
