@@ -13,6 +13,8 @@ export interface Plan {
   readonly asOf: string;
   readonly tables: readonly string[];
   readonly portions: readonly (readonly string[])[];
+  /** Files whose names cannot be table names. */
+  readonly refused: readonly FailedTable[];
 }
 
 /** What one worker did with its portion. */

@@ -1,0 +1,96 @@
+import { parseArgs } from "node:util";
+import { SettingsError } from "../lib/job/loadSettings.ts";
+import { OutdatedRunError } from "../lib/job/run.ts";
+import { StoreError } from "../lib/store/objectStore.ts";
+import { checkCommand } from "./checkCommand.ts";
+import { demoCommand } from "./demoCommand.ts";
+import { explainCommand } from "./explainCommand.ts";
+import { replayCommand, runOnceCommand } from "./runCommands.ts";
+import { UsageError } from "./usage.ts";
+
+const usage = `ebbwire: forecasts for every series in a store, and a note when shocks start to fade differently
+
+  npm start                                              the demo, in ./demo-store
+  npm start -- run     --store S [--as-of T]             one run
+  npm start -- replay  --store S --from T [--until T] [--every week]
+                                                         the past, run by run; posts nothing
+  npm start -- check   --store S [--as-of T]             reads everything, writes nothing, lists every problem
+  npm start -- explain TABLE [SERIES] --store S [--as-of T] [--json]
+                                                         an analyst's account
+
+  S is a folder or s3://bucket/prefix; T an ISO instant such as 2026-11-30T06:00:00Z (default: now)
+  run also takes --allow-local-webhook (plain http to this machine, for tests) and --replaying (an older T)
+  exit codes: 0 done, 1 some table failed, 2 wrong use, 3 a delivery failed
+`;
+
+export interface CommandOptions {
+  readonly store?: string;
+  readonly "as-of"?: string;
+  readonly from?: string;
+  readonly until?: string;
+  readonly every?: string;
+  readonly json?: boolean;
+  readonly replaying?: boolean;
+  readonly "allow-local-webhook"?: boolean;
+}
+
+type Command = (words: readonly string[], options: CommandOptions) => Promise<number>;
+
+const commands: Record<string, Command> = {
+  demo: demoCommand,
+  run: runOnceCommand,
+  replay: replayCommand,
+  check: checkCommand,
+  explain: explainCommand,
+};
+
+function parse(words: readonly string[]) {
+  try {
+    return parseArgs({
+      args: [...words],
+      allowPositionals: true,
+      options: {
+        store: { type: "string" },
+        "as-of": { type: "string" },
+        from: { type: "string" },
+        until: { type: "string" },
+        every: { type: "string" },
+        json: { type: "boolean" },
+        replaying: { type: "boolean" },
+        "allow-local-webhook": { type: "boolean" },
+        help: { type: "boolean", short: "h" },
+      },
+    });
+  } catch (error) {
+    throw new UsageError((error as Error).message);
+  }
+}
+
+/** Runs one command line and says the exit code. Mistakes of use and of settings are told without a stack trace. */
+export async function runCommand(words: readonly string[]): Promise<number> {
+  try {
+    const { values, positionals } = parse(words);
+    if (values.help) {
+      process.stdout.write(usage);
+      return 0;
+    }
+    const name = positionals[0] ?? "demo";
+    const command = Object.hasOwn(commands, name) ? commands[name] : undefined;
+    if (!command) throw new UsageError(`there is no command "${name}"`);
+    return await command(positionals.slice(1), values);
+  } catch (error) {
+    if (error instanceof UsageError) {
+      process.stderr.write(`${error.message}\n\n${usage}`);
+      return 2;
+    }
+    if (error instanceof SettingsError || error instanceof OutdatedRunError) {
+      process.stderr.write(`${error.message}\n`);
+      return 2;
+    }
+    if (error instanceof StoreError) {
+      process.stderr.write(`${error.message}\n`);
+      return 1;
+    }
+    throw error;
+  }
+}

@@ -1,0 +1,82 @@
+import type { ObjectStore } from "../store/objectStore.ts";
+import { renderReport } from "../report/renderReport.ts";
+import type { RunFacts, Voice } from "../words/facts.ts";
+import { encodeText } from "./documents.ts";
+import { gatherTables, runFacts } from "./digest.ts";
+import { runPrefix } from "./keys.ts";
+import { type Audience, audiences, createMessage, type MessageDocument, partName, readMessageParts } from "./messages.ts";
+import { type PostingContext, postMessage } from "./postMessage.ts";
+import type { Settings } from "./settings.ts";
+import type { DeliveryRecord, Plan } from "./summary.ts";
+import { readOwedMessages } from "./owedMessages.ts";
+
+export interface Closing {
+  readonly store: ObjectStore;
+  readonly plan: Plan;
+  readonly settings: Settings;
+  readonly posting: PostingContext;
+  /** First marks of notes that earlier runs could not deliver. */
+  readonly undelivered: readonly string[];
+}
+
+export interface Closed {
+  readonly facts: RunFacts;
+  readonly report: string;
+  readonly deliveries: readonly DeliveryRecord[];
+}
+
+const voiceOf = (settings: Settings): Voice => ({
+  locale: settings.locale,
+  timeZone: settings.timeZone,
+  quietWhenSteady: settings.quietWhenSteady,
+  reportBase: settings.reportBase ?? null,
+});
+
+/** The parts of one audience's message, with a new part for tables that no part speaks of yet. */
+async function messageParts(
+  closing: Closing,
+  facts: RunFacts,
+  voice: Voice,
+  audience: Audience,
+): Promise<MessageDocument[]> {
+  const { store, plan } = closing;
+  const parts = await readMessageParts(store, plan.asOf, audience);
+  const told = new Set(parts.flatMap((part) => part.tables));
+  const isNew = ({ table }: { table: string }) => !told.has(table);
+  const tables = facts.tables.filter(isNew);
+  const failed = facts.failed.filter(isNew);
+  if (parts.length > 0 && tables.length + failed.length === 0) return parts;
+  const rest = { ...facts, tables, failed };
+  return [...parts, await createMessage(store, rest, voice, audience, parts.length + 1)];
+}
+
+/**
+ * Ends a run: gathers what the workers wrote, words the messages (once), draws the report, posts what is owed from
+ * earlier runs and then this run's messages.
+ *
+ * May be repeated at any time: messages that stand are not worded again, and what was delivered is not posted again.
+ */
+export async function closeTables(closing: Closing): Promise<Closed> {
+  const { store, plan, settings, posting } = closing;
+  const owed = await readOwedMessages(store, closing.undelivered, posting.webhooks);
+  const facts = runFacts(
+    plan,
+    await gatherTables(store, plan.asOf, plan.tables),
+    owed.map(({ message, webhook }) => ({ asOf: message.asOf, webhook: webhook.name })),
+  );
+  const voice = voiceOf(settings);
+  for (const page of renderReport(facts, voice))
+    await store.write(`${runPrefix(plan.asOf)}${page.key}`, encodeText(page.html));
+
+  const deliveries: DeliveryRecord[] = [];
+  for (const { message, part, webhook } of owed) deliveries.push(await postMessage(posting, message, part, webhook));
+  for (const audience of audiences) {
+    const listeners = posting.webhooks.filter((webhook) => webhook.audience === audience);
+    if (audience === "operations" && listeners.length === 0) continue;
+    const parts = await messageParts(closing, facts, voice, audience);
+    for (const [index, message] of parts.entries())
+      for (const webhook of listeners)
+        deliveries.push(await postMessage(posting, message, partName(audience, index + 1), webhook));
+  }
+  return { facts, report: `${runPrefix(plan.asOf)}report.html`, deliveries };
+}

@@ -1,0 +1,53 @@
+import type { ObjectStore } from "../store/objectStore.ts";
+import { asOfText } from "./keys.ts";
+import { refitTable } from "./refitTable.ts";
+import type { Settings } from "./settings.ts";
+import { loadSettings } from "./loadSettings.ts";
+import type { Progress } from "./progress.ts";
+import type { FailedTable, PortionResult } from "./summary.ts";
+
+export interface RefitOptions {
+  readonly store: ObjectStore;
+  readonly asOf: Date | string;
+  readonly tables: readonly string[];
+  readonly settings?: Settings;
+  /** What is left of the time this worker may take; without it there is no limit. */
+  readonly remainingMilliseconds?: () => number;
+  /** Milliseconds since any fixed moment; only differences are used. */
+  readonly clock?: () => number;
+  readonly progress?: (progress: Progress) => void;
+}
+
+/** Time kept back for closing the run: the digest, the report and the deliveries. */
+const closingMilliseconds = 30_000;
+
+/**
+ * Refits every table of a portion, one after another. A table that fails is reported and the rest go on.
+ * With the time running low it takes no further table: those left are named in the result, and a retry of the
+ * same run goes on from there.
+ */
+export async function refitPortion(options: RefitOptions): Promise<PortionResult> {
+  const { store, tables, remainingMilliseconds, clock, progress } = options;
+  const asOf = asOfText(options.asOf);
+  const settings = options.settings ?? (await loadSettings(store));
+  const refitted: string[] = [];
+  const already: string[] = [];
+  const failed: FailedTable[] = [];
+  let series = 0;
+  let slowest = 0;
+  for (let done = 0; done < tables.length; done++) {
+    if (remainingMilliseconds && remainingMilliseconds() < closingMilliseconds + 2 * slowest)
+      return { refitted, already, failed, left: tables.slice(done), series };
+    const table = tables[done];
+    const began = clock?.() ?? 0;
+    const outcome = await refitTable({ store, asOf, table, settings });
+    slowest = Math.max(slowest, (clock?.() ?? 0) - began);
+    if (outcome.status === "failed") failed.push({ table, problems: outcome.problems });
+    else {
+      (outcome.status === "refitted" ? refitted : already).push(table);
+      series += outcome.series;
+    }
+    progress?.({ stage: "table", table, done: done + 1, of: tables.length });
+  }
+  return { refitted, already, failed, left: [], series };
+}

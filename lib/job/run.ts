@@ -1,0 +1,143 @@
+import { randomUUID } from "node:crypto";
+import { setTimeout as sleepFor } from "node:timers/promises";
+import type { ObjectStore } from "../store/objectStore.ts";
+import type { RunFacts } from "../words/facts.ts";
+import { closeTables } from "./close.ts";
+import { encodeDocument } from "./documents.ts";
+import { asOfText, runPrefix, summaryKey } from "./keys.ts";
+import { loadSettings } from "./loadSettings.ts";
+import { planRun } from "./plan.ts";
+import type { Progress } from "./progress.ts";
+import { refitPortion } from "./refit.ts";
+import { readRunHistory } from "./runHistory.ts";
+import type { Settings } from "./settings.ts";
+import type { DeliveryRecord, Plan, RunSummary } from "./summary.ts";
+import type { Secrets, Webhook } from "./webhooks.ts";
+
+export interface RunOptions {
+  readonly store: ObjectStore;
+  /** The instant the run stands at: only periods that were complete by then count. */
+  readonly asOf: Date | string;
+  /** Instead of the store's `settings.json`. */
+  readonly settings?: Settings;
+  /** Instead of the settings' webhooks; an address may stand here itself. */
+  readonly webhooks?: readonly Webhook[];
+  /** Looks up `env:NAME` and `secret:NAME`; without it such webhooks are not configured. */
+  readonly secrets?: Secrets;
+  /** Lets webhooks be plain http on this machine: for tests and demos. */
+  readonly allowLocalWebhooks?: boolean;
+  /** Lets `asOf` be older than the newest run. */
+  readonly replaying?: boolean;
+  /** What is left of the time this process may take. */
+  readonly remainingMilliseconds?: () => number;
+  /** Milliseconds since 1970. */
+  readonly clock?: () => number;
+  readonly sleep?: (milliseconds: number) => Promise<void>;
+  /** Names this process among others at work on the same run. */
+  readonly owner?: string;
+  readonly progress?: (progress: Progress) => void;
+}
+
+/** The longest one webhook may keep a run waiting, retries included. */
+const postMilliseconds = 20_000;
+
+/** `asOf` lies before the newest run: its forecasts would be older than those that stand. */
+export class OutdatedRunError extends Error {
+  override readonly name = "OutdatedRunError";
+}
+
+async function prepare(options: RunOptions) {
+  const clock = options.clock ?? Date.now;
+  const asOf = asOfText(options.asOf);
+  const settings = options.settings ?? (await loadSettings(options.store));
+  const history = await readRunHistory(options.store, asOf, new Date(clock()));
+  if (!options.replaying && history.newest !== undefined && history.newest > asOf)
+    throw new OutdatedRunError(
+      `a run at ${history.newest} stands in ${options.store.address}, this one would be at ${asOf}; replay the past with --replaying, or leave out --as-of`,
+    );
+  const undelivered = history.undelivered.filter((key) => key < runPrefix(asOf));
+  return { clock, asOf, settings, undelivered };
+}
+
+/**
+ * One pass over all tables of a store at one instant: reads, refits, forecasts, watches for drift, writes, and
+ * posts what there is to say.
+ *
+ * Repeating a run with the same `asOf` writes nothing new and posts nothing that was delivered; after a crash it
+ * goes on where the first try stopped. Two runs at once give the same documents and one message. A table that fails
+ * does not stop the others.
+ *
+ * @throws SettingsError when settings.json cannot be used, OutdatedRunError, StoreError
+ */
+export async function runJob(options: RunOptions): Promise<RunSummary> {
+  const { store, remainingMilliseconds, progress } = options;
+  const { clock, asOf, settings, undelivered } = await prepare(options);
+  const began = clock();
+  const plan = await planRun({ store, asOf });
+  await refitPortion({ store, asOf, tables: plan.tables, settings, remainingMilliseconds, clock, progress });
+  return close({ ...options, settings }, plan, clock, began, undelivered);
+}
+
+/** Ends a run whose tables other workers refitted: the messages, the report, the deliveries. */
+export async function closeRun(options: RunOptions): Promise<RunSummary> {
+  const { clock, asOf, settings, undelivered } = await prepare({ ...options, replaying: true });
+  const plan = await planRun({ store: options.store, asOf });
+  return close({ ...options, settings }, plan, clock, clock(), undelivered);
+}
+
+async function close(
+  options: RunOptions & { settings: Settings },
+  plan: Plan,
+  clock: () => number,
+  began: number,
+  undelivered: readonly string[],
+): Promise<RunSummary> {
+  const { store, settings } = options;
+  const { facts, report, deliveries } = await closeTables({
+    store,
+    plan,
+    settings,
+    undelivered,
+    posting: {
+      store,
+      webhooks: options.webhooks ?? settings.webhooks,
+      secrets: options.secrets,
+      allowLocal: options.allowLocalWebhooks ?? false,
+      quietWhenSteady: settings.quietWhenSteady,
+      owner: options.owner ?? randomUUID(),
+      clock,
+      sleep: options.sleep ?? sleepFor,
+      postMilliseconds,
+    },
+  });
+  const summary = summarise(facts, report, deliveries, clock() - began);
+  // What depends on the clock or on this try alone stays out, so that a repeated run writes the same bytes.
+  const { durationMilliseconds: _duration, deliveries: _deliveries, ...lasting } = summary;
+  await store.write(summaryKey(plan.asOf), encodeDocument(lasting));
+  return summary;
+}
+
+function summarise(
+  facts: RunFacts,
+  report: string,
+  deliveries: readonly DeliveryRecord[],
+  durationMilliseconds: number,
+): RunSummary {
+  const findings = facts.tables.flatMap((table) => table.series.flatMap((series) => series.findings));
+  const isStale = (table: RunFacts["tables"][number]) =>
+    table.series.some((series) => series.findings.some((finding) => finding.code === "stale"));
+  return {
+    schema: 1,
+    asOf: facts.asOf,
+    tables: facts.tables.length,
+    series: facts.tables.reduce((sum, table) => sum + table.series.length, 0),
+    notices: findings.filter((finding) => finding.code === "change" && finding.fresh).length,
+    surprises: findings.filter((finding) => finding.code === "surprise").length,
+    stale: facts.tables.filter(isStale).map((table) => table.table),
+    failed: facts.failed,
+    left: facts.left,
+    deliveries,
+    report,
+    durationMilliseconds,
+  };
+}

@@ -1,0 +1,40 @@
+import { addMonths } from "date-fns";
+import type { ObjectStore } from "../store/objectStore.ts";
+import { asOfFromKey } from "./keys.ts";
+
+/** What the store shows of runs around one instant. */
+export interface RunHistory {
+  /** Instant of the newest run with a plan, if any. */
+  readonly newest: string | undefined;
+  /** Notes marked undelivered and not delivered since: the key of the first mark, `undelivered-<name>.json`. */
+  readonly undelivered: readonly string[];
+}
+
+/** Month prefixes from a month before `asOf` to the later of `asOf` and now: listing them stays cheap for ever. */
+function monthPrefixes(asOf: string, now: Date): string[] {
+  const last = new Date(Math.max(now.getTime(), new Date(asOf).getTime())).toISOString().slice(0, 7);
+  const prefixes: string[] = [];
+  for (let back = -1; ; back++) {
+    const month = addMonths(new Date(`${asOf.slice(0, 7)}-15T12:00:00Z`), back).toISOString().slice(0, 7);
+    if (month > last) return prefixes;
+    if (prefixes.length === 14) return ["runs/"]; // a replay of old times: one full listing is simpler
+    prefixes.push(`runs/${month}`);
+  }
+}
+
+/** Reads the newest run and the open deliveries from one listing of `runs/`. */
+export async function readRunHistory(store: ObjectStore, asOf: string, now: Date): Promise<RunHistory> {
+  const keys: string[] = [];
+  for (const prefix of monthPrefixes(asOf, now)) for (const entry of await store.list(prefix)) keys.push(entry.key);
+  const all = new Set(keys);
+  const newest = keys
+    .filter((key) => key.endsWith("/plan.json"))
+    .map((key) => asOfFromKey(key.split("/")[1]))
+    .filter((instant) => instant !== undefined)
+    .sort()
+    .at(-1);
+  const undelivered = keys.filter(
+    (key) => /\/undelivered-[^/.]+\.json$/.test(key) && !all.has(key.replace("/undelivered-", "/delivered-")),
+  );
+  return { newest, undelivered };
+}
