@@ -16,7 +16,9 @@ export async function explainCommand(words: readonly string[], options: CommandO
   if (!found) throw new UsageError(`no model of table "${table}" stands in ${store.address} yet: run first`);
   const chosen = found.series.filter((facts) => name === undefined || facts.series === name);
   if (chosen.length === 0)
-    throw new UsageError(`table "${table}" has no series "${name}"; it has ${found.series.map((one) => one.series).join(", ")}`);
+    throw new UsageError(
+      `table "${table}" has no series "${name}"; it has ${found.series.map((one) => one.series).join(", ")}`,
+    );
   if (options.json) {
     say(JSON.stringify({ table, asOf: found.asOf, series: chosen }, null, 2));
     return 0;

@@ -1,5 +1,5 @@
-import { replayRuns } from "../lib/job/replay.ts";
 import { readMessage } from "../lib/job/readBack.ts";
+import { replayRuns } from "../lib/job/replay.ts";
 import { runJob } from "../lib/job/run.ts";
 import type { CommandOptions } from "./commands.ts";
 import { exitCodeOf, messageText, progressLine, say, summaryLines } from "./terminal.ts";
@@ -34,7 +34,10 @@ export async function replayCommand(_words: readonly string[], options: CommandO
     progress: progressLine(),
   });
   for (const summary of summaries)
-    if (summary.notices > 0) say(`${summary.asOf.slice(0, 10)}: ${summary.notices} notice(s), see ${store.address}/${summary.report}`);
+    if (summary.notices > 0)
+      say(
+        `${summary.asOf.slice(0, 10)}: ${summary.notices} notice(s), see ${store.address}/${summary.report}`,
+      );
   const newest = summaries[summaries.length - 1];
   const message = await readMessage(store, newest.asOf, "business");
   if (message) say("", messageText(message), "");

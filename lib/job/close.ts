@@ -1,14 +1,21 @@
-import type { ObjectStore } from "../store/objectStore.ts";
 import { renderReport } from "../report/renderReport.ts";
+import type { ObjectStore } from "../store/objectStore.ts";
 import type { RunFacts, Voice } from "../words/facts.ts";
-import { encodeText } from "./documents.ts";
 import { gatherTables, runFacts } from "./digest.ts";
+import { encodeText } from "./documents.ts";
 import { runPrefix } from "./keys.ts";
-import { type Audience, audiences, createMessage, type MessageDocument, partName, readMessageParts } from "./messages.ts";
+import {
+  type Audience,
+  audiences,
+  createMessage,
+  type MessageDocument,
+  partName,
+  readMessageParts,
+} from "./messages.ts";
+import { readOwedMessages } from "./owedMessages.ts";
 import { type PostingContext, postMessage } from "./postMessage.ts";
 import type { Settings } from "./settings.ts";
 import type { DeliveryRecord, Plan } from "./summary.ts";
-import { readOwedMessages } from "./owedMessages.ts";
 
 export interface Closing {
   readonly store: ObjectStore;
@@ -69,7 +76,8 @@ export async function closeTables(closing: Closing): Promise<Closed> {
     await store.write(`${runPrefix(plan.asOf)}${page.key}`, encodeText(page.html));
 
   const deliveries: DeliveryRecord[] = [];
-  for (const { message, part, webhook } of owed) deliveries.push(await postMessage(posting, message, part, webhook));
+  for (const { message, part, webhook } of owed)
+    deliveries.push(await postMessage(posting, message, part, webhook));
   for (const audience of audiences) {
     const listeners = posting.webhooks.filter((webhook) => webhook.audience === audience);
     if (audience === "operations" && listeners.length === 0) continue;

@@ -17,7 +17,11 @@ export interface Gathered {
 }
 
 /** Reads back what the workers wrote for these tables. */
-export async function gatherTables(store: ObjectStore, asOf: string, names: readonly string[]): Promise<Gathered> {
+export async function gatherTables(
+  store: ObjectStore,
+  asOf: string,
+  names: readonly string[],
+): Promise<Gathered> {
   const tables: TableFacts[] = [];
   const failed: FailedTable[] = [];
   const left: string[] = [];
@@ -38,12 +42,10 @@ export async function gatherTables(store: ObjectStore, asOf: string, names: read
  * The facts of a whole run. `expectedFalseNotices` is the yearly false-alarm rate summed over all watched series: what
  * chance alone would bring in a year of looks.
  */
-export function runFacts(
-  plan: Plan,
-  gathered: Gathered,
-  undelivered: RunFacts["undelivered"],
-): RunFacts {
-  const watched = gathered.tables.flatMap((table) => table.series.map((series) => series.monitor?.falseAlarmRate ?? 0));
+export function runFacts(plan: Plan, gathered: Gathered, undelivered: RunFacts["undelivered"]): RunFacts {
+  const watched = gathered.tables.flatMap((table) =>
+    table.series.map((series) => series.monitor?.falseAlarmRate ?? 0),
+  );
   return {
     asOf: plan.asOf,
     tables: gathered.tables,

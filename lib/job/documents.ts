@@ -17,25 +17,37 @@ export interface Versioned {
  * Reads one of our own documents.
  * @throws Error naming the key when it is not JSON or of a schema this version does not know
  */
-export async function readDocument<T extends Versioned>(store: ObjectStore, key: string): Promise<T | undefined> {
+export async function readDocument<T extends Versioned>(
+  store: ObjectStore,
+  key: string,
+): Promise<T | undefined> {
   const found = await store.read(key);
   if (!found) return undefined;
   let data: unknown;
   try {
     data = JSON.parse(decodeText(found.bytes));
   } catch {
-    throw new Error(`"${key}" in ${store.address} is not the JSON that was written there; restore an earlier version of it`);
+    throw new Error(
+      `"${key}" in ${store.address} is not the JSON that was written there; restore an earlier version of it`,
+    );
   }
   const schema = (data as Partial<Versioned> | null)?.schema;
   if (schema !== 1)
-    throw new Error(`"${key}" in ${store.address} has schema ${String(schema)}, this version reads schema 1; use a newer version`);
+    throw new Error(
+      `"${key}" in ${store.address} has schema ${String(schema)}, this version reads schema 1; use a newer version`,
+    );
   return data as T;
 }
 
 /** Writes a document once; when another writer was first, theirs is returned and is the truth from then on. */
-export async function createDocument<T extends Versioned>(store: ObjectStore, key: string, data: T): Promise<T> {
+export async function createDocument<T extends Versioned>(
+  store: ObjectStore,
+  key: string,
+  data: T,
+): Promise<T> {
   if ((await store.create(key, encodeDocument(data))) === "created") return data;
   const standing = await readDocument<T>(store, key);
-  if (!standing) throw new Error(`"${key}" in ${store.address} was there a moment ago and is gone; run again`);
+  if (!standing)
+    throw new Error(`"${key}" in ${store.address} was there a moment ago and is gone; run again`);
   return standing;
 }

@@ -17,13 +17,21 @@ function numberCell(value: number, width: number): string {
 /** The forecasts of one table as people open them: `series,period,forecast,low80,high80,…`, one row a period. */
 export function forecastCsv(series: readonly SeriesFacts[]): string {
   const levels = series[0]?.forecast.intervals.map((one) => one.level) ?? [];
-  const header = ["series", "period", "forecast", ...levels.flatMap((level) => [`low${level}`, `high${level}`])];
+  const header = [
+    "series",
+    "period",
+    "forecast",
+    ...levels.flatMap((level) => [`low${level}`, `high${level}`]),
+  ];
   const rows = series.flatMap((facts) =>
     facts.forecast.periods.map((period, step) => {
       const { point, intervals } = facts.forecast;
       const widest = intervals.at(-1);
       const width = widest ? widest.high[step] - widest.low[step] : point[step];
-      const bounds = intervals.flatMap(({ low, high }) => [numberCell(low[step], width), numberCell(high[step], width)]);
+      const bounds = intervals.flatMap(({ low, high }) => [
+        numberCell(low[step], width),
+        numberCell(high[step], width),
+      ]);
       return [textCell(facts.series), period, numberCell(point[step], width), ...bounds].join(",");
     }),
   );

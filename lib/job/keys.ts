@@ -1,7 +1,8 @@
 /** An instant as ISO text to the second: `2026-11-30T06:00:00Z`. @throws RangeError when it is no instant */
 export function asOfText(asOf: Date | string): string {
   const date = typeof asOf === "string" ? new Date(asOf) : asOf;
-  if (Number.isNaN(date.getTime())) throw new RangeError(`asOf must be an ISO instant, received "${String(asOf)}"`);
+  if (Number.isNaN(date.getTime()))
+    throw new RangeError(`asOf must be an ISO instant, received "${String(asOf)}"`);
   return `${date.toISOString().slice(0, 19)}Z`;
 }
 

@@ -1,5 +1,5 @@
-import type { ObjectStore } from "../store/objectStore.ts";
 import type { Problem } from "../series/series.ts";
+import type { ObjectStore } from "../store/objectStore.ts";
 import { decodeText } from "./documents.ts";
 import { settingsKey } from "./keys.ts";
 import { parseSettings, type Settings } from "./settings.ts";

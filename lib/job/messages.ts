@@ -24,13 +24,18 @@ export interface MessageDocument extends Versioned {
 
 const compose = { business: businessMessage, analyst: analystMessage, operations: operationsMessage };
 
-export const partName = (audience: Audience, part: number) => (part === 1 ? audience : `${audience}-part${part}`);
+export const partName = (audience: Audience, part: number) =>
+  part === 1 ? audience : `${audience}-part${part}`;
 
 const messageKey = (asOf: string, audience: Audience, part: number) =>
   `${runPrefix(asOf)}message-${partName(audience, part)}.json`;
 
 /** The parts written so far, in order. Usually one. */
-export async function readMessageParts(store: ObjectStore, asOf: string, audience: Audience): Promise<MessageDocument[]> {
+export async function readMessageParts(
+  store: ObjectStore,
+  asOf: string,
+  audience: Audience,
+): Promise<MessageDocument[]> {
   const parts: MessageDocument[] = [];
   for (;;) {
     const part = await readDocument<MessageDocument>(store, messageKey(asOf, audience, parts.length + 1));

@@ -51,9 +51,12 @@ export const readModel = (store: ObjectStore, table: string, asOf: string) =>
   readDocument<ModelDocument>(store, modelKey(table, asOf));
 
 /** The newest model of a table at or before an instant. */
-export async function readNewestModel(store: ObjectStore, table: string, asOf: string): Promise<ModelDocument | undefined> {
+export async function readNewestModel(
+  store: ObjectStore,
+  table: string,
+  asOf: string,
+): Promise<ModelDocument | undefined> {
   const shelf = await readModelShelf(store, table, asOf);
   const instant = shelf.current ? asOf : shelf.previousAsOf;
   return instant === undefined ? undefined : readModel(store, table, instant);
 }
-

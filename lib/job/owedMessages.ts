@@ -1,6 +1,6 @@
 import type { ObjectStore } from "../store/objectStore.ts";
-import { readDocument } from "./documents.ts";
 import type { UndeliveredDocument } from "./deliverOnce.ts";
+import { readDocument } from "./documents.ts";
 import { type MessageDocument, partName, readMessageParts } from "./messages.ts";
 import { postingName, type Webhook } from "./webhooks.ts";
 
@@ -28,7 +28,8 @@ export async function readOwedMessages(
     const parts = await readMessageParts(store, mark.asOf, mark.audience);
     for (const [index, message] of parts.entries()) {
       const part = partName(mark.audience, index + 1);
-      if (key.endsWith(`/undelivered-${postingName(webhook, webhooks, part)}.json`)) owed.push({ message, part, webhook });
+      if (key.endsWith(`/undelivered-${postingName(webhook, webhooks, part)}.json`))
+        owed.push({ message, part, webhook });
     }
   }
   return owed;

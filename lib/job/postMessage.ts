@@ -4,7 +4,7 @@ import { composeBody } from "../webhook/composeBody.ts";
 import { deliver } from "../webhook/deliver.ts";
 import { deliverOnce } from "./deliverOnce.ts";
 import { runPrefix } from "./keys.ts";
-import { type MessageDocument } from "./messages.ts";
+import type { MessageDocument } from "./messages.ts";
 import type { DeliveryRecord } from "./summary.ts";
 import { postingName, resolveReference, type Secrets, type Webhook } from "./webhooks.ts";
 
@@ -39,10 +39,18 @@ export async function postMessage(
     return { ...record, status: "nothing-to-say" };
   const address = await resolveReference(webhook.address, context.secrets);
   if (!address?.startsWith("http"))
-    return { ...record, status: "not-configured", reason: `no web address stands behind ${referenceName(webhook.address)}` };
+    return {
+      ...record,
+      status: "not-configured",
+      reason: `no web address stands behind ${referenceName(webhook.address)}`,
+    };
   const key = webhook.signingKey ? await resolveReference(webhook.signingKey, context.secrets) : undefined;
   if (webhook.signingKey && !key)
-    return { ...record, status: "not-configured", reason: `no key stands behind ${referenceName(webhook.signingKey)}` };
+    return {
+      ...record,
+      status: "not-configured",
+      reason: `no key stands behind ${referenceName(webhook.signingKey)}`,
+    };
   const name = postingName(webhook, context.webhooks, part);
   const id = messageId(message.asOf, name, webhook.name);
   const outcome = await deliverOnce({

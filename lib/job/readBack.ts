@@ -1,11 +1,15 @@
 import type { ObjectStore } from "../store/objectStore.ts";
 import type { Message } from "../webhook/message.ts";
 import type { SeriesFacts } from "../words/facts.ts";
-import { readMessageParts, type Audience } from "./messages.ts";
+import { type Audience, readMessageParts } from "./messages.ts";
 import { readNewestModel } from "./modelDocument.ts";
 
 /** What a run said to one audience: the first part, which is usually the whole. */
-export async function readMessage(store: ObjectStore, asOf: string, audience: Audience): Promise<Message | undefined> {
+export async function readMessage(
+  store: ObjectStore,
+  asOf: string,
+  audience: Audience,
+): Promise<Message | undefined> {
   return (await readMessageParts(store, asOf, audience))[0]?.message;
 }
 

@@ -1,9 +1,9 @@
 import type { ObjectStore } from "../store/objectStore.ts";
 import { asOfText } from "./keys.ts";
-import { refitTable } from "./refitTable.ts";
-import type { Settings } from "./settings.ts";
 import { loadSettings } from "./loadSettings.ts";
 import type { Progress } from "./progress.ts";
+import { refitTable } from "./refitTable.ts";
+import type { Settings } from "./settings.ts";
 import type { FailedTable, PortionResult } from "./summary.ts";
 
 export interface RefitOptions {

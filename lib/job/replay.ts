@@ -22,7 +22,8 @@ const add: Record<Period, (date: Date, amount: number) => Date> = {
 export function dueRuns(from: Date | string, until: Date | string, every: Period): string[] {
   const first = new Date(asOfText(from));
   const last = new Date(asOfText(until));
-  if (first > last) throw new RangeError(`replay must start before its end: ${asOfText(from)} is after ${asOfText(until)}`);
+  if (first > last)
+    throw new RangeError(`replay must start before its end: ${asOfText(from)} is after ${asOfText(until)}`);
   const instants: string[] = [];
   for (let step = 0; ; step++) {
     const instant = add[every](first, step);
@@ -48,6 +49,11 @@ export async function replayRuns(
     options.progress?.({ stage: "run", asOf, done: index, of: instants.length });
     summaries.push(await runJob({ ...options, asOf, webhooks: [], replaying: true, progress: undefined }));
   }
-  options.progress?.({ stage: "run", asOf: instants[instants.length - 1], done: instants.length, of: instants.length });
+  options.progress?.({
+    stage: "run",
+    asOf: instants[instants.length - 1],
+    done: instants.length,
+    of: instants.length,
+  });
   return summaries;
 }

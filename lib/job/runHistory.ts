@@ -15,7 +15,9 @@ function monthPrefixes(asOf: string, now: Date): string[] {
   const last = new Date(Math.max(now.getTime(), new Date(asOf).getTime())).toISOString().slice(0, 7);
   const prefixes: string[] = [];
   for (let back = -1; ; back++) {
-    const month = addMonths(new Date(`${asOf.slice(0, 7)}-15T12:00:00Z`), back).toISOString().slice(0, 7);
+    const month = addMonths(new Date(`${asOf.slice(0, 7)}-15T12:00:00Z`), back)
+      .toISOString()
+      .slice(0, 7);
     if (month > last) return prefixes;
     if (prefixes.length === 14) return ["runs/"]; // a replay of old times: one full listing is simpler
     prefixes.push(`runs/${month}`);
@@ -25,7 +27,8 @@ function monthPrefixes(asOf: string, now: Date): string[] {
 /** Reads the newest run and the open deliveries from one listing of `runs/`. */
 export async function readRunHistory(store: ObjectStore, asOf: string, now: Date): Promise<RunHistory> {
   const keys: string[] = [];
-  for (const prefix of monthPrefixes(asOf, now)) for (const entry of await store.list(prefix)) keys.push(entry.key);
+  for (const prefix of monthPrefixes(asOf, now))
+    for (const entry of await store.list(prefix)) keys.push(entry.key);
   const all = new Set(keys);
   const newest = keys
     .filter((key) => key.endsWith("/plan.json"))

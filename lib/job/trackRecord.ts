@@ -27,7 +27,10 @@ export interface TrackState {
 const nothing: StepScore = { forecasts: 0, inside: 0, absoluteError: 0, naiveAbsoluteError: 0 };
 
 /** Scores every pending forecast whose value has come. `valueAt` gives `NaN` for a gap, `undefined` for the future. */
-export function scoreForecasts(state: TrackState, valueAt: (period: string) => number | undefined): TrackState {
+export function scoreForecasts(
+  state: TrackState,
+  valueAt: (period: string) => number | undefined,
+): TrackState {
   const steps = [...state.steps];
   const pending: PendingForecast[] = [];
   for (const forecast of state.pending) {
@@ -53,7 +56,8 @@ export function rememberForecasts(
   naive: readonly number[],
 ): TrackState {
   const interval = forecast.intervals[0];
-  const kept = state && state.level === interval.level ? state : { level: interval.level, steps: [], pending: [] };
+  const kept =
+    state && state.level === interval.level ? state : { level: interval.level, steps: [], pending: [] };
   const made = forecast.periods.map((period, index) => ({
     period,
     step: index + 1,
@@ -67,12 +71,15 @@ export function rememberForecasts(
 
 /** The record in words' terms, or `null` while nothing has been scored. */
 export function trackRecord(state: TrackState): TrackRecord | null {
-  const total = state.steps.reduce((sum, step) => ({
-    forecasts: sum.forecasts + step.forecasts,
-    inside: sum.inside + step.inside,
-    absoluteError: sum.absoluteError + step.absoluteError,
-    naiveAbsoluteError: sum.naiveAbsoluteError + step.naiveAbsoluteError,
-  }), nothing);
+  const total = state.steps.reduce(
+    (sum, step) => ({
+      forecasts: sum.forecasts + step.forecasts,
+      inside: sum.inside + step.inside,
+      absoluteError: sum.absoluteError + step.absoluteError,
+      naiveAbsoluteError: sum.naiveAbsoluteError + step.naiveAbsoluteError,
+    }),
+    nothing,
+  );
   if (total.forecasts === 0) return null;
   const mean = (step: StepScore) => ({
     forecasts: step.forecasts,
@@ -83,6 +90,8 @@ export function trackRecord(state: TrackState): TrackRecord | null {
   return {
     level: state.level,
     ...mean(total),
-    byHorizon: state.steps.flatMap((step, index) => (step.forecasts ? [{ step: index + 1, ...mean(step) }] : [])),
+    byHorizon: state.steps.flatMap((step, index) =>
+      step.forecasts ? [{ step: index + 1, ...mean(step) }] : [],
+    ),
   };
 }

@@ -9,7 +9,10 @@ export type Webhook = Pick<WebhookSettings, "name" | "audience" | "body" | "addr
 const isReference = (text: string) => /^(env|secret):/.test(text);
 
 /** The value behind a reference, or the text itself. */
-export async function resolveReference(text: string, secrets: Secrets | undefined): Promise<string | undefined> {
+export async function resolveReference(
+  text: string,
+  secrets: Secrets | undefined,
+): Promise<string | undefined> {
   return isReference(text) ? secrets?.(text) : text;
 }
 

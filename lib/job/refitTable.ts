@@ -1,0 +1,107 @@
+import { readTable } from "../series/readTable.ts";
+import type { Problem } from "../series/series.ts";
+import { type ObjectStore, StoreError } from "../store/objectStore.ts";
+import type { ProblemsDocument } from "./digest.ts";
+import { createDocument, encodeText } from "./documents.ts";
+import { forecastCsv } from "./forecastCsv.ts";
+import { forecastKey, latestForecastKey, modelKey, problemsKey } from "./keys.ts";
+import { type ModelDocument, type ModelShelf, readModel, readModelShelf } from "./modelDocument.ts";
+import { readSource } from "./readSource.ts";
+import { refitSeries } from "./refitSeries.ts";
+import type { Settings } from "./settings.ts";
+import { readTableEvents } from "./tableEvents.ts";
+
+interface TableTask {
+  readonly store: ObjectStore;
+  readonly asOf: string;
+  readonly table: string;
+  readonly settings: Settings;
+}
+
+type TableOutcome =
+  | { readonly status: "refitted" | "already"; readonly series: number }
+  | { readonly status: "failed"; readonly problems: readonly Problem[] };
+
+/**
+ * Writes the forecasts of a model document: `latest.csv` first, `<asOf>.csv` last, so that the second standing
+ * there proves the first was written. A replayed run of the past leaves `latest.csv` to the newer model.
+ */
+async function writeForecasts(store: ObjectStore, model: ModelDocument, shelf: ModelShelf): Promise<void> {
+  const csv = encodeText(forecastCsv(model.series.map((one) => one.facts)));
+  if (!shelf.hasLater) await store.write(latestForecastKey(model.table), csv);
+  await store.create(forecastKey(model.table, model.asOf), csv);
+}
+
+async function fail(task: TableTask, problems: readonly Problem[]): Promise<TableOutcome> {
+  const { store, asOf, table } = task;
+  const standing = await createDocument<ProblemsDocument>(store, problemsKey(asOf, table), {
+    schema: 1,
+    table,
+    problems,
+  });
+  return { status: "failed", problems: standing.problems };
+}
+
+async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutcome> {
+  const { store, asOf, table, settings } = task;
+  const source = await readSource(store, table);
+  if (!source)
+    return fail(task, [
+      {
+        table,
+        code: "gone",
+        message: "the file was there when the run began and is gone",
+        remedy: "put it back",
+        fatal: true,
+      },
+    ]);
+  const tableSettings = settings.tables[table] ?? {};
+  const { series, problems, reading } = readTable(source.bytes, tableSettings, {
+    asOf,
+    timeZone: settings.timeZone,
+    locale: settings.locale,
+    table,
+  });
+  if (series.length === 0 || problems.some((problem) => problem.fatal)) return fail(task, problems);
+  const previous =
+    shelf.previousAsOf === undefined ? undefined : await readModel(store, table, shelf.previousAsOf);
+  const events = await readTableEvents(store, table, settings);
+  const made: ModelDocument = {
+    schema: 1,
+    table,
+    asOf,
+    source: source.digest,
+    reading,
+    problems,
+    series: series.map((one) =>
+      refitSeries(one, { asOf, table, settings, tableSettings, reading, previous, events }),
+    ),
+  };
+  const model = await createDocument(store, modelKey(table, asOf), made);
+  await writeForecasts(store, model, shelf);
+  return { status: "refitted", series: model.series.length };
+}
+
+/**
+ * Reads, refits and forecasts one table, and writes its model and forecasts; found done, it only makes sure that
+ * the forecasts stand too. What is wrong with the table is returned, never thrown; the earlier forecast then stays.
+ *
+ * @throws StoreError when the store itself fails: the run cannot go on then
+ */
+export async function refitTable(task: TableTask): Promise<TableOutcome> {
+  const { store, asOf, table } = task;
+  const shelf = await readModelShelf(store, table, asOf);
+  try {
+    if (!shelf.current) return await refitFresh(task, shelf);
+    const model = await readModel(store, table, asOf);
+    if (!model) throw new Error(`the model of ${asOf} was listed and is gone`);
+    await writeForecasts(store, model, shelf);
+    return { status: "already", series: model.series.length };
+  } catch (error) {
+    if (error instanceof StoreError) throw error;
+    const message = error instanceof Error ? error.message : String(error);
+    const remedy =
+      "look at the table around its newest values; if they are right, report this as a fault of ebbwire";
+    return fail(task, [{ table, code: "not-fitted", message, remedy, fatal: true }]);
+  }
+}
