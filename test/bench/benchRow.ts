@@ -1,0 +1,13 @@
+/** One line of the bench table. */
+export interface BenchRow {
+  /** What was measured. */
+  readonly name: string;
+  readonly value: number;
+  readonly unit: string;
+  /** What it was measured against, in the same run; empty when against nothing. */
+  readonly against: string;
+  /** How many times better than that (or the plain ratio the goal speaks of); `NaN` when against nothing. */
+  readonly ratio: number;
+  /** The goal in words, for example "at least 30 times faster"; empty without one. */
+  readonly goal: string;
+}
