@@ -1,0 +1,136 @@
+import { appendValue, expectedNext } from "./appendValue.ts";
+import { behaviourAfter, behaviourBefore } from "./behaviour.ts";
+import { look } from "./look.ts";
+import { type LookState, openLookState } from "./lookState.ts";
+import { fromStored, type Monitor, toStored } from "./monitor.ts";
+import { nameChange } from "./nameChange.ts";
+import type { ChangeNotice, Notice } from "./notice.ts";
+import { fitReference } from "./reference.ts";
+import { findSurprises } from "./surprise.ts";
+
+/** Looks after which a change is named again with what came since. */
+const confirmAfter = 8;
+
+/**
+ * Takes new values in, one look each. A gap (`NaN`) uses no look. Notices come at the look that passed a
+ * boundary, a second time (status `confirmed`) eight looks later; a surprise comes at once. One monitor notices
+ * one change; when its looks are used up it keeps reporting surprises only, and a new one is to be started.
+ *
+ * Pure: the given monitor is left as it is.
+ *
+ * @example const { monitor, notices } = advanceMonitor(stored, [312])
+ */
+export function advanceMonitor(
+  monitor: Monitor,
+  newValues: ArrayLike<number>,
+): { readonly monitor: Monitor; readonly notices: Notice[] } {
+  const state = resume(monitor, newValues.length);
+  const statistics = monitor.statistics.map((path) => [...path]);
+  const surprises = [...monitor.surprises];
+  const notices: Notice[] = [];
+  let change = monitor.change;
+  for (let at = 0; at < newValues.length; at++) {
+    const value = newValues[at];
+    const expected = expectedNext(state);
+    appendValue(state, (value - state.reference.centre) / state.reference.scale);
+    if (Number.isNaN(value)) {
+      for (const path of statistics) path.push(null);
+      continue;
+    }
+    const looking = state.looksUsed < monitor.looks || (change !== null && change.status === "provisional");
+    if (!looking) for (const path of statistics) path.push(null);
+    else {
+      state.looksUsed++;
+      look(state);
+      statistics.forEach((path, kind) => {
+        path.push(Math.round(state.statistics[kind] * 1e4) / 1e4);
+      });
+      const next = judge(state, monitor, change);
+      if (next !== null) {
+        change = next;
+        notices.push(next);
+      }
+    }
+    if (change !== null) continue;
+    for (const { time, size } of findSurprises(state, (known) => surprises.includes(known))) {
+      const { centre, scale } = state.reference;
+      const newest = time === state.count - 1;
+      const valueThen = centre + scale * state.values[time];
+      const expectedThen = newest ? centre + scale * expected : valueThen - scale * size;
+      notices.push({
+        code: "surprise",
+        index: time,
+        value: newest ? value : valueThen,
+        expected: expectedThen,
+        size,
+      });
+      surprises.push(time);
+    }
+  }
+  return {
+    monitor: {
+      ...monitor,
+      values: [...monitor.values, ...toStored(newValues)],
+      looksUsed: state.looksUsed,
+      statistics,
+      change,
+      surprises,
+    },
+    notices,
+  };
+}
+
+/** Brings a stored monitor back to work: the reference refitted with its order, its values taken in again. */
+export function resume(monitor: Monitor, room: number): LookState {
+  const reference = fitReference(fromStored(monitor.reference), monitor, monitor.order, monitor.order);
+  const state = openLookState(reference, monitor.looks, monitor.values.length + room);
+  for (const value of fromStored(monitor.values))
+    appendValue(state, (value - reference.centre) / reference.scale);
+  state.looksUsed = monitor.looksUsed;
+  return state;
+}
+
+/** A notice if this look brings one: the first past a boundary, or the confirmation of an earlier one. */
+function judge(state: LookState, monitor: Monitor, change: ChangeNotice | null): ChangeNotice | null {
+  if (change === null) {
+    let lead = -1;
+    for (let kind = 0; kind < state.kinds.length; kind++) {
+      const margin = state.statistics[kind] - monitor.boundaries[kind].boundary;
+      if (margin >= 0 && (lead < 0 || margin > state.statistics[lead] - monitor.boundaries[lead].boundary))
+        lead = kind;
+    }
+    return lead < 0 ? null : makeNotice(state, monitor, lead, "provisional", state.count - 1);
+  }
+  if (change.status === "confirmed" || state.looksUsed < change.evidence.looksUsed + confirmAfter)
+    return null;
+  const lead = monitor.boundaries.findIndex(({ boundary }) => boundary === change.evidence.boundary);
+  return makeNotice(state, monitor, lead, "confirmed", change.noticedAt);
+}
+
+function makeNotice(
+  state: LookState,
+  monitor: Monitor,
+  lead: number,
+  status: "provisional" | "confirmed",
+  noticedAt: number,
+): ChangeNotice {
+  const statistic = state.statistics[lead];
+  const named = nameChange(state);
+  return {
+    code: "change",
+    kind: named.kind,
+    alternative: named.alternative,
+    status,
+    noticedAt,
+    change: { index: named.time, low: named.low, high: named.high },
+    before: behaviourBefore(state, named.time),
+    after: behaviourAfter(state, named),
+    evidence: {
+      statistic,
+      boundary: monitor.boundaries[lead].boundary,
+      looksUsed: state.looksUsed,
+      looks: monitor.looks,
+      falseAlarmRate: monitor.falseAlarmRate,
+    },
+  };
+}

@@ -1,0 +1,87 @@
+import { cleanOutliers, naming } from "./cleanOutliers.ts";
+import { type Explanation, weighExplanations } from "./jointEvidence.ts";
+import type { LookState } from "./lookState.ts";
+import type { ChangeKind } from "./notice.ts";
+import { fitNull } from "./nullFit.ts";
+
+/** What a change most likely was, and when. Times count from the first reference value. */
+export interface NamedChange {
+  readonly kind: ChangeKind;
+  readonly alternative: ChangeKind | null;
+  readonly time: number;
+  readonly low: number;
+  readonly high: number;
+  /** The single best set of kinds that holds `kind`, at `time`. */
+  readonly best: Explanation;
+  /** Log odds that each watched kind takes part. */
+  readonly logOdds: readonly number[];
+}
+
+/**
+ * Added to the log odds of persistence: a rise of persistence makes long excursions that a level or a shock
+ * size explains almost as well, so that without it persistence is named too seldom (by simulation).
+ */
+const persistenceLead = 1.5;
+/** Two kinds whose log odds lie closer than this are both named. */
+const nearTie = 1.1;
+
+/**
+ * Names and dates a change: the kind with the largest log odds of taking part, over all sets of kinds and all
+ * change times; the date is the posterior mode, its range the 5 % and 95 % points of the posterior.
+ */
+export function nameChange(state: LookState): NamedChange {
+  cleanOutliers(state, naming);
+  fitNull(state);
+  const explanations = weighExplanations(state);
+  const logOdds = state.kinds.map((kind, index) => {
+    const bit = 1 << index;
+    const odds =
+      logSum(explanations.filter(({ kinds }) => kinds & bit)) -
+      logSum(explanations.filter(({ kinds }) => !(kinds & bit)));
+    return kind === "persistence" ? odds + persistenceLead : odds;
+  });
+  const ranked = [...logOdds.keys()].sort((a, b) => logOdds[b] - logOdds[a]);
+  const [first, second] = ranked;
+  const { time, low, high } = dateChange(state, explanations);
+  const holding = explanations.filter((one) => one.time === time && one.kinds & (1 << first));
+  const best = holding.reduce((a, b) => (b.logWeight > a.logWeight ? b : a));
+  return {
+    kind: state.kinds[first],
+    alternative: logOdds[first] - logOdds[second] < nearTie ? state.kinds[second] : null,
+    time,
+    low,
+    high,
+    best,
+    logOdds,
+  };
+}
+
+function dateChange(
+  state: LookState,
+  explanations: readonly Explanation[],
+): { time: number; low: number; high: number } {
+  const total = logSum(explanations);
+  const weights = new Float64Array(state.count - state.start);
+  for (const { time, logWeight } of explanations) weights[time - state.start] += Math.exp(logWeight - total);
+  let mode = 0;
+  let below = 0;
+  let low = -1;
+  let high = -1;
+  for (let at = 0; at < weights.length; at++) {
+    if (weights[at] > weights[mode]) mode = at;
+    below += weights[at];
+    if (low < 0 && below >= 0.05) low = at;
+    if (high < 0 && below >= 0.95) high = at;
+  }
+  const { start } = state;
+  return { time: start + mode, low: start + Math.min(low, mode), high: start + Math.max(high, mode) };
+}
+
+function logSum(explanations: readonly Explanation[]): number {
+  let largest = Number.NEGATIVE_INFINITY;
+  for (const { logWeight } of explanations) largest = Math.max(largest, logWeight);
+  if (largest === Number.NEGATIVE_INFINITY) return largest;
+  let sum = 0;
+  for (const { logWeight } of explanations) sum += Math.exp(logWeight - largest);
+  return largest + Math.log(sum);
+}
