@@ -220,8 +220,8 @@ export interface TableFacts {
 
 /** A whole run, as the digest and the report tell it. */
 export interface RunFacts {
+  /** ISO instant. */
   readonly asOf: string;
-  readonly store: string;
   readonly tables: readonly TableFacts[];
   /** Tables that could not be read or refitted this time; their earlier forecasts stand. */
   readonly failed: readonly { readonly table: string; readonly problems: readonly Problem[] }[];

@@ -1,0 +1,35 @@
+import { newsFrom, ranked } from "./attention.ts";
+import type { Finding, RunFacts } from "./facts.ts";
+import { plainText } from "./plainText.ts";
+
+/** How many of each sort of news a run holds. */
+export function newsCounts(run: Pick<RunFacts, "tables" | "failed">) {
+  const findings = run.tables.flatMap((table) => table.series.flatMap((facts) => facts.findings));
+  const count = (test: (finding: Finding) => boolean) => findings.filter(test).length;
+  const series = ranked(run);
+  return {
+    series: series.length,
+    steady: series.filter((one) => one.attention < newsFrom).length,
+    changes: count((finding) => finding.code === "change" && finding.fresh),
+    surprises: count((finding) => finding.code === "surprise"),
+    late: count((finding) => finding.code === "stale"),
+    failed: run.failed.length,
+  };
+}
+
+/** "loans: 1 change, 1 surprise" or "12 tables: all steady". */
+export function headline(run: RunFacts): string {
+  const counts = newsCounts(run);
+  const some = (count: number, one: string, many = `${one}s`) =>
+    count === 0 ? [] : [`${count} ${count === 1 ? one : many}`];
+  const news = [
+    ...some(counts.changes, "lasting change"),
+    ...some(counts.surprises, "one-off surprise"),
+    ...some(counts.late, "series late", "series late"),
+    ...some(counts.failed, "table not read", "tables not read"),
+  ];
+  const tables = run.tables.length + run.failed.length;
+  const only = run.tables[0]?.table ?? run.failed[0]?.table;
+  const what = tables === 1 && only !== undefined ? plainText(only) : `${tables} tables`;
+  return `${what}: ${news.length > 0 ? news.join(", ") : "nothing has changed"}`;
+}

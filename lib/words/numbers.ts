@@ -1,0 +1,69 @@
+/** Writes a number so that its last digit is the place of `step`. */
+export type WriteNumber = (value: number, step: number) => string;
+
+/**
+ * The step (a power of ten) that a number may be rounded to when it is known only to within `spread`:
+ * one twentieth of the spread or a little less, so that rounding never moves a number by more than a
+ * fortieth of its range. Whole-number data never get a step below one.
+ *
+ * @example roundingStep(85, true) // 1
+ * @example roundingStep(850, true) // 10
+ */
+export function roundingStep(spread: number, whole: boolean): number {
+  const step = Number.isFinite(spread) && spread > 0 ? powerBelow(spread / 20) : whole ? 1 : 1e-3;
+  return whole ? Math.max(1, step) : step;
+}
+
+/** The step that keeps `digits` significant digits of `value`. */
+export function significantStep(value: number, digits: number, whole: boolean): number {
+  const size = Math.abs(value);
+  const step = Number.isFinite(size) && size > 0 ? powerBelow(size) / 10 ** (digits - 1) : 1;
+  return whole ? Math.max(1, step) : step;
+}
+
+/** The largest power of ten not above `size`; nudged so that 1000 itself is not missed by a rounding of log10. */
+function powerBelow(size: number): number {
+  return 10 ** Math.floor(Math.log10(size) + 1e-12);
+}
+
+/** Rounds to a multiple of a power-of-ten step, without the noise of binary fractions and without minus zero. */
+export function roundTo(value: number, step: number): number {
+  if (!Number.isFinite(value)) return value;
+  const rounded =
+    step >= 1
+      ? Math.round(value / step) * step
+      : Math.round(value * Math.round(1 / step)) / Math.round(1 / step);
+  return rounded === 0 ? 0 : rounded;
+}
+
+/** Numbers as a locale writes them; beyond a thousand million in words, below a millionth by significant digits. */
+export function numberWriter(locale: string): WriteNumber {
+  const formats = new Map<number, Intl.NumberFormat>();
+  const large = new Intl.NumberFormat(locale, {
+    notation: "compact",
+    compactDisplay: "long",
+    maximumSignificantDigits: 3,
+  });
+  const tiny = new Intl.NumberFormat(locale, { notation: "scientific", maximumSignificantDigits: 3 });
+  return (value, step) => {
+    const rounded = roundTo(value, step);
+    if (!Number.isFinite(rounded)) return "unknown";
+    if (Math.abs(rounded) >= 1e9) return large.format(rounded);
+    if (step < 1e-7) return rounded === 0 ? "0" : tiny.format(rounded);
+    const digits = Math.max(0, Math.round(-Math.log10(step)));
+    let format = formats.get(digits);
+    if (!format) {
+      format = new Intl.NumberFormat(locale, {
+        minimumFractionDigits: digits,
+        maximumFractionDigits: digits,
+      });
+      formats.set(digits, format);
+    }
+    return format.format(rounded);
+  };
+}
+
+/** Every value that is there is a whole number. */
+export function allWhole(values: readonly (number | null)[]): boolean {
+  return values.every((value) => value === null || Number.isInteger(value));
+}

@@ -1,0 +1,106 @@
+import type { Period } from "../series/series.ts";
+
+const hour = 3_600_000;
+
+/** The instant a period named by an ISO date or instant starts, in milliseconds. Dates are read as UTC. */
+export function instantOf(period: string): number {
+  const instant = Date.parse(period);
+  if (Number.isNaN(instant))
+    throw new RangeError(`instantOf: ${JSON.stringify(period)} is not an ISO date or instant`);
+  return instant;
+}
+
+/**
+ * The start of the period `count` steps after the one named.
+ *
+ * @example addPeriods("2026-11-30", "week", 1) // "2026-12-07"
+ */
+export function addPeriods(start: string, period: Period, count: number): string {
+  const date = new Date(instantOf(start));
+  if (period === "hour") return `${new Date(date.getTime() + count * hour).toISOString().slice(0, 19)}Z`;
+  if (period === "day") date.setUTCDate(date.getUTCDate() + count);
+  else if (period === "week") date.setUTCDate(date.getUTCDate() + 7 * count);
+  else {
+    const months = { month: 1, quarter: 3, year: 12 }[period] * count;
+    const first = new Date(Date.UTC(date.getUTCFullYear(), date.getUTCMonth() + months, 1));
+    const last = new Date(Date.UTC(first.getUTCFullYear(), first.getUTCMonth() + 1, 0)).getUTCDate();
+    first.setUTCDate(Math.min(date.getUTCDate(), last));
+    return first.toISOString().slice(0, 10);
+  }
+  return date.toISOString().slice(0, 10);
+}
+
+/** How a period is named, and how it stands in a sentence after "since" or "for". */
+export interface PeriodNames {
+  /** "week of 7 December", "Monday 7 December", "December 2026", "Q4 2026", "2026". */
+  readonly name: (start: string) => string;
+  /** The name as it stands inside a sentence: "the week of 7 December". */
+  readonly inText: (start: string) => string;
+  /** "in the week of 7 December", "on Monday 7 December", "at 14:00 on Monday 7 December". */
+  readonly when: (start: string) => string;
+  /** Short label for an axis: "7 Dec". */
+  readonly short: (start: string) => string;
+}
+
+/**
+ * Names for the periods of one series. Dates are calendar dates and are the same everywhere; hours are
+ * instants and are told in `timeZone`. The year is left out of days and weeks within about half a year of `now`.
+ */
+export function periodNames(period: Period, locale: string, timeZone: string, now: string): PeriodNames {
+  const zone = period === "hour" ? timeZone : "UTC";
+  const format = (options: Intl.DateTimeFormatOptions) => {
+    const made = new Intl.DateTimeFormat(locale, { timeZone: zone, ...options });
+    return (start: string) => made.format(instantOf(start));
+  };
+  const near = (start: string) => Math.abs(instantOf(start) - instantOf(now)) < 183 * 24 * hour;
+  const yearly = (short: (start: string) => string, long: (start: string) => string) => (start: string) =>
+    near(start) ? short(start) : long(start);
+  const dayAndMonth = yearly(
+    format({ day: "numeric", month: "long" }),
+    format({ day: "numeric", month: "long", year: "numeric" }),
+  );
+  const weekday = yearly(
+    format({ weekday: "long", day: "numeric", month: "long" }),
+    format({ weekday: "long", day: "numeric", month: "long", year: "numeric" }),
+  );
+  const monthAndYear = format({ month: "long", year: "numeric" });
+  const year = format({ year: "numeric" });
+  const time = format({ hour: "2-digit", minute: "2-digit" });
+  const shortDay = format({ day: "numeric", month: "short" });
+  const quarter = (start: string) => {
+    const month = new Date(instantOf(start)).getUTCMonth();
+    return month % 3 === 0 ? `Q${month / 3 + 1} ${year(start)}` : `quarter from ${monthAndYear(start)}`;
+  };
+  const bare = (name: (start: string) => string, short = name): PeriodNames => ({
+    name,
+    inText: name,
+    when: (start) => `in ${name(start)}`,
+    short,
+  });
+  switch (period) {
+    case "hour":
+      return {
+        name: (start) => `${weekday(start)}, ${time(start)}`,
+        inText: (start) => `${time(start)} on ${weekday(start)}`,
+        when: (start) => `at ${time(start)} on ${weekday(start)}`,
+        short: (start) => `${shortDay(start)} ${time(start)}`,
+      };
+    case "day":
+      return { name: weekday, inText: weekday, when: (start) => `on ${weekday(start)}`, short: shortDay };
+    case "week": {
+      const name = (start: string) => `week of ${dayAndMonth(start)}`;
+      return {
+        name,
+        inText: (start) => `the ${name(start)}`,
+        when: (start) => `in the ${name(start)}`,
+        short: shortDay,
+      };
+    }
+    case "month":
+      return bare(monthAndYear, format({ month: "short", year: "numeric" }));
+    case "quarter":
+      return bare(quarter);
+    case "year":
+      return bare(year);
+  }
+}

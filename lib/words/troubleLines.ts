@@ -1,0 +1,53 @@
+import type { Problem } from "../series/series.ts";
+import type { RunFacts } from "./facts.ts";
+import { plainText } from "./plainText.ts";
+
+/** Where a problem is, what it is and what to do: "line 14, column date: …". */
+export function problemText(problem: Problem): string {
+  const place = [
+    problem.line === undefined ? "" : `line ${problem.line}`,
+    problem.column === undefined ? "" : `column ${plainText(problem.column, 30)}`,
+  ].filter((one) => one !== "");
+  const said = [plainText(problem.message, 200), plainText(problem.remedy, 200)]
+    .map((one) => (/[.!?…]$/.test(one) ? one : `${one}.`))
+    .join(" ");
+  return place.length > 0 ? `${place.join(", ")}: ${said}` : said;
+}
+
+/** What went wrong, for the last lines of a note: one line a table, worst first. */
+export function troubleLines(run: RunFacts, most = 4): string[] {
+  const failed = run.failed.map(({ table, problems }) => {
+    const worst = problems.find((one) => one.fatal) ?? problems[0];
+    const why = worst ? ` ${problemText(worst)}` : "";
+    return `${plainText(table)} was not refitted; its earlier forecast stands.${why}`;
+  });
+  const left =
+    run.left.length > 0 ? [`Not reached in time: ${list(run.left)}; the retry goes on with them.`] : [];
+  const noted = run.tables.flatMap(({ table, problems }) =>
+    problems.length === 0
+      ? []
+      : [
+          `${plainText(table)}: ${problemText(problems[0])}${problems.length > 1 ? ` (and ${problems.length - 1} more)` : ""}`,
+        ],
+  );
+  const all = [...failed, ...left, ...noted];
+  return all.length <= most
+    ? all
+    : [...all.slice(0, most - 1), `… and ${all.length - most + 1} more problems in the report.`];
+}
+
+/** Up to three names and how many more. */
+export function list(names: readonly string[]): string {
+  const shown = names.slice(0, 3).map((name) => plainText(name, 40));
+  return names.length > 3 ? `${shown.join(", ")} and ${names.length - 3} more` : shown.join(", ");
+}
+
+/** Earlier notes that never arrived and what became of their news. */
+export function owedLines(run: RunFacts, written: (instant: string) => string): string[] {
+  const times = [...new Set(run.undelivered.map((one) => one.asOf))];
+  if (times.length === 0) return [];
+  if (times.length === 1) return [`The note of ${written(times[0])} could not be delivered before this one.`];
+  return [
+    `${times.length} earlier notes, the first of ${written(times[0])}, could not be delivered before this one.`,
+  ];
+}
