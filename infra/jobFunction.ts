@@ -1,0 +1,130 @@
+import { join } from "node:path";
+import { Duration, RemovalPolicy, Stack, Validations } from "aws-cdk-lib";
+import { SecurityGroup, Subnet, Vpc } from "aws-cdk-lib/aws-ec2";
+import { PolicyStatement, Role, ServicePrincipal } from "aws-cdk-lib/aws-iam";
+import { Architecture, LoggingFormat, Runtime, Tracing } from "aws-cdk-lib/aws-lambda";
+import { NodejsFunction, OutputFormat } from "aws-cdk-lib/aws-lambda-nodejs";
+import { LogGroup, type RetentionDays } from "aws-cdk-lib/aws-logs";
+import { Construct } from "constructs";
+import type { CheckedOptions } from "./options.ts";
+
+export interface JobFunctionProps {
+  /** File under `functions/` that exports `handler`. */
+  readonly file: string;
+  readonly description: string;
+  readonly root: string;
+  readonly options: CheckedOptions;
+  readonly environment: Readonly<Record<string, string>>;
+  readonly statements: readonly PolicyStatement[];
+}
+
+// esbuild writes ESM; packages written as CommonJS inside it ask for `require` at run time.
+const requireBanner =
+  "import { createRequire as requireMaker } from 'node:module'; const require = requireMaker(import.meta.url);";
+
+/**
+ * One function of the job: Node 24 on arm64, one ESM file with everything in it, a log group of its own with
+ * a retention, JSON logs, tracing, and a role that may write to that log group, send traces and do what
+ * `statements` say: nothing else.
+ *
+ * White space goes from the bundle but names stay, so a stack trace can be read without a source map. (A source
+ * map holds paths that differ from folder to folder, and with them the template would.)
+ */
+export class JobFunction extends Construct {
+  readonly function: NodejsFunction;
+  readonly logGroup: LogGroup;
+
+  constructor(scope: Construct, id: string, props: JobFunctionProps) {
+    super(scope, id);
+    const { options } = props;
+    this.logGroup = new LogGroup(this, "Logs", {
+      retention: options.logRetentionDays as RetentionDays,
+      removalPolicy: RemovalPolicy.DESTROY,
+    });
+    const role = new Role(this, "Role", { assumedBy: new ServicePrincipal("lambda.amazonaws.com") });
+    for (const statement of [...this.#runtimeStatements(options), ...props.statements])
+      role.addToPrincipalPolicy(statement);
+    this.function = new NodejsFunction(this, "Function", {
+      description: props.description,
+      entry: join(props.root, "functions", props.file),
+      handler: "handler",
+      projectRoot: props.root,
+      depsLockFilePath: join(props.root, "package-lock.json"),
+      runtime: Runtime.NODEJS_24_X,
+      architecture: Architecture.ARM_64,
+      memorySize: options.memory,
+      timeout: Duration.minutes(options.timeoutMinutes),
+      role,
+      tracing: Tracing.ACTIVE,
+      logGroup: this.logGroup,
+      loggingFormat: LoggingFormat.JSON,
+      environment: { ...props.environment },
+      ...network(this, options),
+      bundling: {
+        format: OutputFormat.ESM,
+        mainFields: ["module", "main"],
+        target: "node24",
+        bundleAwsSDK: true,
+        banner: requireBanner,
+        esbuildArgs: { "--minify-whitespace": true, "--minify-syntax": true, "--legal-comments": "none" },
+        forceDockerBundling: false,
+      },
+    });
+    this.#acknowledge(options);
+  }
+
+  #runtimeStatements(options: CheckedOptions): PolicyStatement[] {
+    const statements = [
+      new PolicyStatement({
+        actions: ["logs:CreateLogStream", "logs:PutLogEvents"],
+        resources: [this.logGroup.logGroupArn],
+      }),
+      new PolicyStatement({
+        actions: ["xray:PutTraceSegments", "xray:PutTelemetryRecords"],
+        resources: ["*"],
+      }),
+    ];
+    if (options.vpcId !== undefined)
+      statements.push(
+        new PolicyStatement({
+          actions: [
+            "ec2:CreateNetworkInterface",
+            "ec2:DescribeNetworkInterfaces",
+            "ec2:DescribeSubnets",
+            "ec2:DeleteNetworkInterface",
+            "ec2:AssignPrivateIpAddresses",
+            "ec2:UnassignPrivateIpAddresses",
+          ],
+          resources: ["*"],
+        }),
+      );
+    return statements;
+  }
+
+  #acknowledge(options: CheckedOptions): void {
+    const network = options.vpcId === undefined ? "" : " and Lambda's network interfaces";
+    Validations.of(this).acknowledge({
+      id: "AwsSolutions-IAM5[Resource::*]",
+      reason: `X-Ray${network} know no resource to name: the service authorization reference lists none for these actions.`,
+    });
+  }
+}
+
+/** Given subnets and security groups, by their ids: nothing is looked up, so synthesis stays offline. */
+function network(scope: Construct, options: CheckedOptions) {
+  const { vpcId, subnetIds, securityGroupIds } = options;
+  if (vpcId === undefined || subnetIds === undefined || securityGroupIds === undefined) return {};
+  const zones = subnetIds.map((_, index) => `${Stack.of(scope).region}-${index}`);
+  const vpc = Vpc.fromVpcAttributes(scope, "Vpc", {
+    vpcId,
+    availabilityZones: zones,
+    privateSubnetIds: [...subnetIds],
+  });
+  return {
+    vpc,
+    vpcSubnets: { subnets: subnetIds.map((id, index) => Subnet.fromSubnetId(scope, `Subnet${index}`, id)) },
+    securityGroups: securityGroupIds.map((id, index) =>
+      SecurityGroup.fromSecurityGroupId(scope, `SecurityGroup${index}`, id, { mutable: false }),
+    ),
+  };
+}
