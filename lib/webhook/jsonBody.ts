@@ -1,10 +1,8 @@
 import type { Message } from "./message.ts";
+import { steering } from "./plainText.ts";
 
 const budgetBytes = 20_000;
 const longestString = 300;
-
-// Escaped in the JSON, where they mean the same: nothing then reads them as markup or turns the text around.
-const escapes = /[<>&\u007f-\u009f\u061c\u200e\u200f\u2028\u2029\u202a-\u202e\u2066-\u2069]/g;
 
 /**
  * The `json` body: the message's `data`, for programs. Names stay exactly as they are. Where it would pass 20 kB,
@@ -61,9 +59,17 @@ function asObject(data: unknown): object {
   return Array.isArray(data) ? { list: data } : (data as object);
 }
 
+/**
+ * JSON in which markup signs and steering characters stand as escapes, where they mean the same: nothing then reads
+ * them as markup or turns the text around.
+ */
 function serialise(value: unknown): string {
-  const escaped = (character: string) => `\\u${character.charCodeAt(0).toString(16).padStart(4, "0")}`;
-  return (JSON.stringify(value) ?? "null").replace(escapes, escaped);
+  const escaped = (text: string) =>
+    Array.from(
+      { length: text.length },
+      (_, i) => `\\u${text.charCodeAt(i).toString(16).padStart(4, "0")}`,
+    ).join("");
+  return (JSON.stringify(value) ?? "null").replace(/[<>&\u2028\u2029]/g, escaped).replace(steering, escaped);
 }
 
 function size(text: string): number {

@@ -1,9 +1,12 @@
-// Characters that steer text rather than show: C0 and C1 controls, bidirectional marks, embeddings, overrides and
-// isolates (Unicode UAX 9), invisible operators, interlinear marks and tag characters, and the byte order mark.
-// Zero-width joiners stay: emoji and several scripts need them.
-const invisible =
+/**
+ * Characters that steer text rather than show: C0 and C1 controls, bidirectional marks, embeddings, overrides and
+ * isolates (Unicode UAX 9), invisible operators, interlinear marks and tag characters, and the byte order mark.
+ * Zero-width joiners stay: emoji and several scripts need them.
+ */
+export const steering =
   // biome-ignore lint/suspicious/noControlCharactersInRegex: control characters are what is looked for
   /[\u0000-\u001f\u007f-\u009f\u061c\u200e\u200f\u202a-\u202e\u2060-\u206f\ufeff\ufff9-\ufffb\u{e0000}-\u{e007f}]/gu;
+
 const lineBreaks = /[\t\n\v\f\r\u0085\u2028\u2029]+/g;
 const loneSurrogates = /[\ud800-\udfff]/gu;
 
@@ -19,7 +22,7 @@ export const zeroWidthSpace = "\u200b";
 export function plainLine(text: string, longest: number): string {
   const plain = text
     .replace(lineBreaks, " ")
-    .replace(invisible, "")
+    .replace(steering, "")
     .replace(loneSurrogates, "\ufffd")
     .trimEnd();
   if (plain.length <= longest) return plain;

@@ -35,7 +35,6 @@ translated.addSubnet("64:ff9b::", 96, "ipv6");
 
 const loopback = new BlockList();
 loopback.addSubnet("127.0.0.0", 8, "ipv4");
-loopback.addAddress("::1", "ipv6");
 
 /**
  * Whether an IP address is one of the public internet. Anything else (loopback, private, link-local with the
@@ -52,11 +51,9 @@ export function isPublicAddress(address: string): boolean {
   return globalUnicast.check(address, "ipv6") && !blocked.check(address, "ipv6");
 }
 
-/** Whether an IP address is this machine's own loopback, mapped forms apart. */
+/** Whether an IP address is this machine's own loopback; mapped and other disguised forms are not. */
 export function isLoopbackAddress(address: string): boolean {
-  const family = isIP(address);
-  if (family === 4) return loopback.check(address, "ipv4");
-  return family === 6 && !/[%.]/.test(address) && loopback.check(address, "ipv6");
+  return address === "::1" || (isIP(address) === 4 && loopback.check(address, "ipv4"));
 }
 
 /** The IPv4 address in the last 32 bits of an IPv6 address. */
