@@ -2,6 +2,7 @@ export { autocovariances } from "./autoregression/autocovariances.ts";
 export { criterionWeights } from "./autoregression/criteria.ts";
 export type { AutoregressiveFit, AutoregressiveProcess, EstimationMethod } from "./autoregression/fit.ts";
 export { fitAutoregression } from "./autoregression/fitAutoregression.ts";
+export { generalisedLeastSquares } from "./autoregression/generalisedLeastSquares.ts";
 export { logLikelihood } from "./autoregression/logLikelihood.ts";
 export {
   coefficientsToPartials,
@@ -9,9 +10,21 @@ export {
   partialsToCoefficients,
 } from "./autoregression/partials.ts";
 export { predict } from "./autoregression/predict.ts";
+export {
+  constantColumn,
+  eventColumn,
+  harmonicColumns,
+  seasonalColumns,
+  stepColumn,
+  trendColumn,
+} from "./autoregression/regressionTerms.ts";
 export { partialAutocorrelations, sampleAutocovariances } from "./autoregression/sampleMoments.ts";
 export { selectOrder } from "./autoregression/selectOrder.ts";
+export { smoothGaps } from "./autoregression/smoothGaps.ts";
+export { characteristicRoots, rhythm } from "./dynamics/characteristicRoots.ts";
 export { halfLife } from "./dynamics/halfLife.ts";
+export { longRun, spectralDensity } from "./dynamics/longRun.ts";
 export { movingAverageWeights } from "./dynamics/movingAverageWeights.ts";
 export { cumulativeResponse, persistence } from "./dynamics/persistence.ts";
+export { shockContributions } from "./dynamics/shockContributions.ts";
 export { levinson } from "./numeric/levinson.ts";

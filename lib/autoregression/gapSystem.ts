@@ -63,7 +63,7 @@ export class GapSystem {
     const { order, length } = this;
     const row = d * (order + 1);
     const top = order - d;
-    let sum = this.#prefix[row + (Math.min(s, top))];
+    let sum = this.#prefix[row + Math.min(s, top)];
     const cut = length - s - d - 1; // products beyond this index reach past the end
     if (cut < top) sum -= this.#prefix[row + top] - this.#prefix[row + cut];
     return sum;
@@ -93,11 +93,17 @@ export class GapSystem {
     solveBandedUpper(this.factor, this.missing.length, this.order, b, offset);
   }
 
+  /** Entries of Q_mm⁻¹ inside the band, row a holding (a, a−d) at d; `factorAt` comes first. */
+  inverseWithinBand(): Float64Array {
+    invertWithinBand(this.factor, this.missing.length, this.order, this.inverse);
+    return this.inverse;
+  }
+
   /** Adds the derivative of log det Q_mm with respect to u to `gradient`; `factorAt` comes first. */
   addLogDeterminantGradient(u: Float64Array, gradient: Float64Array): void {
-    const { missing, order, length, inverse } = this;
+    const { missing, order, length } = this;
     const stride = order + 1;
-    invertWithinBand(this.factor, missing.length, order, inverse);
+    const inverse = this.inverseWithinBand();
     // #weights row d: weight of each product u_i u_{i+d} in Σ (Q_mm⁻¹)_{ab} Q_ab, first as differences along i.
     const width = order + 2;
     const weights = this.#weights;
