@@ -21,6 +21,29 @@ export {
 export { partialAutocorrelations, sampleAutocovariances } from "./autoregression/sampleMoments.ts";
 export { selectOrder } from "./autoregression/selectOrder.ts";
 export { smoothGaps } from "./autoregression/smoothGaps.ts";
+export { advanceMonitor } from "./drift/advanceMonitor.ts";
+export { compareFits, type FitComparison } from "./drift/compareFits.ts";
+export { type BreakOptions, type Breaks, findBreaks } from "./drift/findBreaks.ts";
+export type { PastBreak } from "./drift/lastBreak.ts";
+export type { Monitor, MonitorSettings } from "./drift/monitor.ts";
+export { type MonitorPath, monitorPaths } from "./drift/monitorPaths.ts";
+export type {
+  Behaviour,
+  ChangeKind,
+  ChangeNotice,
+  Evidence,
+  Notice,
+  SurpriseNotice,
+} from "./drift/notice.ts";
+export { type StartOptions, startMonitor } from "./drift/startMonitor.ts";
+export { readWatch } from "./drift/storedWatch.ts";
+export {
+  type Watch,
+  type WatchOptions,
+  type WatchResult,
+  type WatchState,
+  watchSeries,
+} from "./drift/watchSeries.ts";
 export { characteristicRoots, rhythm } from "./dynamics/characteristicRoots.ts";
 export { halfLife } from "./dynamics/halfLife.ts";
 export { longRun, spectralDensity } from "./dynamics/longRun.ts";
