@@ -1,0 +1,195 @@
+import { area, line } from "d3-shape";
+import { changeHeadline } from "../words/changeWords.ts";
+import type { SeriesFacts } from "../words/facts.ts";
+import { roundingStep } from "../words/numbers.ts";
+import { valueStep } from "../words/otherFindings.ts";
+import type { Speech } from "../words/speech.ts";
+import { html, type Markup } from "./markup.ts";
+import { type LegendEntry, type Mark, plot, round, side, verticalScale } from "./plot.ts";
+import { spreadLabels, type Timeline, timelineOf } from "./timeline.ts";
+
+/** The past, and the forecast fanning out of it; changes, surprises and limits are marked. */
+export function historyChart(id: string, speech: Speech): Markup {
+  const { facts, periods, write } = speech;
+  const { forecast } = facts;
+  const timeline = timelineOf(facts);
+  const { starts, past, now } = timeline;
+  const last = starts.length - 1;
+  const x = (index: number) => round((index / last) * side);
+  const limits = forecast.chances.map((one) => one.limit);
+  const values = [
+    ...past,
+    ...forecast.point,
+    ...limits,
+    ...forecast.intervals.flatMap((one) => [...one.low, ...one.high]),
+  ];
+  const { scale, ticks, place } = verticalScale(values);
+  const y = (value: number) => round(scale(value));
+  const widest = [...forecast.intervals].sort((one, other) => other.level - one.level);
+  const join = past.at(-1) ?? null;
+  const fan = widest.map((interval, index) => {
+    const edges = interval.low.map((low, step) => ({ at: now + step, low, high: interval.high[step] }));
+    if (join !== null) edges.unshift({ at: now - 1, low: join, high: join });
+    const path = area<(typeof edges)[number]>(
+      (one) => x(one.at),
+      (one) => y(one.low),
+      (one) => y(one.high),
+    ).digits(1)(edges);
+    return html`<path class="fan fan${index === 0 ? "1" : "2"}" d="${path ?? ""}"/>`;
+  });
+  const pastLine = line<number | null>(
+    (_, index) => x(index),
+    (value) => y(value ?? 0),
+  )
+    .defined((value) => value !== null)
+    .digits(1)([...past]);
+  const coming = [
+    ...(join === null ? [] : [{ at: now - 1, value: join }]),
+    ...forecast.point.map((value, step) => ({ at: now + step, value })),
+  ];
+  const comingLine = line<(typeof coming)[number]>(
+    (one) => x(one.at),
+    (one) => y(one.value),
+  ).digits(1)(coming);
+  const events = eventsOf(speech, timeline);
+  return plot({
+    id,
+    title: `${speech.series}: past and forecast${speech.unit === null ? "" : `, in ${speech.unit}`}`,
+    description: description(speech, timeline),
+    shape: "wide",
+    x: spreadLabels(starts.length, (index) => periods.short(starts[index])),
+    y: ticks.map((tick) => ({ at: scale(tick) / side, text: write(tick, place) })),
+    marks: events.map((one) => one.mark),
+    body: [
+      ...events.map((one) => one.shape(x)),
+      ...fan,
+      ...limits.map((limit) => html`<path class="limit" d="M0,${y(limit)}H${side}"/>`),
+      html`<path class="now" d="M${x(now - 0.5)},0V${side}"/>`,
+      html`<path class="past" d="${pastLine ?? ""}"/>`,
+      ...lonely(past).map((index) => html`<path class="dot" d="M${x(index)},${y(past[index] ?? 0)}h0"/>`),
+      html`<path class="coming" d="${comingLine ?? ""}"/>`,
+      ...events.flatMap((one) =>
+        one.value === null ? [] : [html`<path class="dot surprise" d="M${x(one.index)},${y(one.value)}h0"/>`],
+      ),
+    ],
+    legend: legend(facts, widest, speech),
+    table: table(speech, timeline),
+  });
+}
+
+/** Values with a gap on both sides, which a line would not show. */
+function lonely(past: readonly (number | null)[]): number[] {
+  return past.flatMap((value, index) =>
+    value !== null && (past[index - 1] ?? null) === null && (past[index + 1] ?? null) === null ? [index] : [],
+  );
+}
+
+function legend(
+  facts: SeriesFacts,
+  widest: SeriesFacts["forecast"]["intervals"],
+  speech: Speech,
+): LegendEntry[] {
+  const limits = facts.forecast.chances.map((one) => ({
+    sample: "limit",
+    text: `limit ${one.direction} ${speech.write(one.limit, valueStep(one.limit))}`,
+  }));
+  return [
+    { sample: "past", text: "past" },
+    { sample: "coming", text: "forecast" },
+    ...widest.map((one, index) => ({
+      sample: `fan fan${index === 0 ? "1" : "2"}`,
+      text: `holds ${speech.percent(one.level)} of outcomes`,
+    })),
+    ...limits,
+  ];
+}
+
+interface ChartEvent {
+  readonly index: number;
+  readonly value: number | null;
+  readonly mark: Mark;
+  readonly shape: (x: (index: number) => number) => Markup;
+}
+
+/** Changes (a band over the interval of the date) and surprises (a ring), in the order of time. */
+function eventsOf(speech: Speech, { starts, past }: Timeline): ChartEvent[] {
+  const last = starts.length - 1;
+  const place = (period: string) => {
+    const found = starts.findIndex((start) => start >= period);
+    return found === -1 ? last : found;
+  };
+  const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
+  return speech.facts.findings
+    .flatMap((finding): ChartEvent[] => {
+      if (finding.code === "change" || finding.code === "past-break") {
+        if (finding.change.high < starts[0]) return [];
+        const at = place(finding.change.period);
+        const [low, high] = [place(finding.change.low), place(finding.change.high)];
+        const text =
+          finding.code === "change"
+            ? `${capital(speech.periods.name(finding.change.period))}: ${changeHeadline(finding, speech)}.`
+            : `${capital(speech.periods.name(finding.change.period))}: a past step of the usual level.`;
+        return [
+          {
+            index: at,
+            value: null,
+            mark: { at: at / last, text },
+            shape: (x) =>
+              html`<path class="between" d="M${x(low)},0H${Math.max(x(high), x(low) + 2)}V${side}H${x(low)}Z"/><path class="change" d="M${x(at)},0V${side}"/>`,
+          },
+        ];
+      }
+      if (finding.code !== "surprise") return [];
+      const index = starts.indexOf(finding.period);
+      if (index === -1 || index >= past.length) return [];
+      const than = `expected about ${speech.roughNumber(finding.expected)}`;
+      const text = `${capital(speech.periods.name(finding.period))}: a one-off surprise of ${speech.amount(finding.value, valueStep(finding.value))}, ${than}.`;
+      return [{ index, value: finding.value, mark: { at: index / last, text }, shape: () => html`` }];
+    })
+    .sort((one, other) => one.index - other.index)
+    .slice(-8);
+}
+
+function description(speech: Speech, { starts, past, now }: Timeline): string {
+  const present = past.filter((value) => value !== null);
+  const { name } = speech.periods;
+  if (present.length === 0) return "No past figures.";
+  const told = (value: number) => speech.amount(value, valueStep(value));
+  return `Past figures from ${name(starts[0])} to ${name(starts[now - 1])}, between ${told(Math.min(...present))} and ${told(Math.max(...present))}; then the forecast to ${name(starts[starts.length - 1])}.`;
+}
+
+function table(speech: Speech, { starts, past, now }: Timeline) {
+  const { forecast, history } = speech.facts;
+  const whole = history.values.every((value) => value === null || Number.isInteger(value));
+  const recent = Math.max(0, past.length - 26);
+  return {
+    caption: "past and forecast",
+    head: [
+      "period",
+      "value",
+      "forecast",
+      ...forecast.intervals.flatMap((one) => [
+        `${speech.percent(one.level)} low`,
+        `${speech.percent(one.level)} high`,
+      ]),
+    ],
+    rows: starts.slice(recent).map((start, offset) => {
+      const index = recent + offset;
+      const name = speech.periods.name(start);
+      const blanks = forecast.intervals.flatMap(() => ["", ""]);
+      if (index < now) {
+        const value = past[index];
+        return [name, value === null ? "no figure" : speech.write(value, valueStep(value)), "", ...blanks];
+      }
+      const step = index - now;
+      const finest = roundingStep(forecast.intervals[0].high[step] - forecast.intervals[0].low[step], whole);
+      const told = (value: number) => speech.write(value, finest);
+      return [
+        name,
+        "",
+        told(forecast.point[step]),
+        ...forecast.intervals.flatMap((one) => [told(one.low[step]), told(one.high[step])]),
+      ];
+    }),
+  };
+}
