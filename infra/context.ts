@@ -8,7 +8,7 @@ const prefix = "ebbwire:";
  * Reads the choices of a deployment from CDK context: `-c ebbwire:timeZone=Europe/Lisbon`, or under `context`
  * in cdk.json.
  *
- * @throws {TypeError} naming every context value that is unknown or cannot be used
+ * @throws {ChoiceError} naming every context value that is unknown or cannot be used
  */
 export function optionsFromContext(node: Node): CheckedOptions {
   const context = Object.entries(node.getAllContext() as Record<string, unknown>);

@@ -1,11 +1,12 @@
 import { join } from "node:path";
-import { Duration, RemovalPolicy, Stack, Validations } from "aws-cdk-lib";
+import { Duration, RemovalPolicy, Stack } from "aws-cdk-lib";
 import { SecurityGroup, Subnet, Vpc } from "aws-cdk-lib/aws-ec2";
 import { PolicyStatement, Role, ServicePrincipal } from "aws-cdk-lib/aws-iam";
 import { Architecture, LoggingFormat, Runtime, Tracing } from "aws-cdk-lib/aws-lambda";
 import { NodejsFunction, OutputFormat } from "aws-cdk-lib/aws-lambda-nodejs";
 import { LogGroup, type RetentionDays } from "aws-cdk-lib/aws-logs";
 import { Construct } from "constructs";
+import { acknowledgeWildcards } from "./acknowledge.ts";
 import type { CheckedOptions } from "./options.ts";
 
 export interface JobFunctionProps {
@@ -16,6 +17,7 @@ export interface JobFunctionProps {
   readonly options: CheckedOptions;
   readonly environment: Readonly<Record<string, string>>;
   readonly statements: readonly PolicyStatement[];
+  readonly reservedConcurrency?: number | undefined;
 }
 
 // esbuild writes ESM; packages written as CommonJS inside it ask for `require` at run time.
@@ -55,6 +57,9 @@ export class JobFunction extends Construct {
       memorySize: options.memory,
       timeout: Duration.minutes(options.timeoutMinutes),
       role,
+      ...(props.reservedConcurrency === undefined
+        ? {}
+        : { reservedConcurrentExecutions: props.reservedConcurrency }),
       tracing: Tracing.ACTIVE,
       logGroup: this.logGroup,
       loggingFormat: LoggingFormat.JSON,
@@ -70,7 +75,7 @@ export class JobFunction extends Construct {
         forceDockerBundling: false,
       },
     });
-    this.#acknowledge(options);
+    this.#acknowledge(options, props.statements);
   }
 
   #runtimeStatements(options: CheckedOptions): PolicyStatement[] {
@@ -101,12 +106,18 @@ export class JobFunction extends Construct {
     return statements;
   }
 
-  #acknowledge(options: CheckedOptions): void {
+  #acknowledge(options: CheckedOptions, statements: readonly PolicyStatement[]): void {
     const network = options.vpcId === undefined ? "" : " and Lambda's network interfaces";
-    Validations.of(this).acknowledge({
-      id: "AwsSolutions-IAM5[Resource::*]",
-      reason: `X-Ray${network} know no resource to name: the service authorization reference lists none for these actions.`,
-    });
+    acknowledgeWildcards(
+      this,
+      ["*"],
+      `The actions of X-Ray${network} take no resource: the service authorization reference lists none for them.`,
+    );
+    acknowledgeWildcards(
+      this,
+      statements.flatMap(({ resources }) => resources),
+      "Below a fixed prefix of the store the names of tables and runs are known at run time only.",
+    );
   }
 }
 

@@ -103,9 +103,14 @@ export type Options = z.input<typeof optionsSchema>;
 /** Choices as checked: defaults filled in. */
 export type CheckedOptions = z.output<typeof optionsSchema>;
 
+/** Choices that cannot be used: the sentence says which and why. */
+export class ChoiceError extends TypeError {
+  override readonly name = "ChoiceError";
+}
+
 /**
  * Checks choices and fills in defaults.
- * @throws {TypeError} with one line for every choice that cannot be used, each named as `context` names it
+ * @throws {ChoiceError} with one line for every choice that cannot be used, each named as `context` names it
  */
 export function checkOptions(options: unknown, named = (name: string) => name): CheckedOptions {
   const result = optionsSchema.safeParse(options);
@@ -117,7 +122,7 @@ export function checkOptions(options: unknown, named = (name: string) => name): 
         )
       : [`${named(String(issue.path[0]))} ${issue.message}${received(options, issue.path[0])}`],
   );
-  throw new TypeError(`the deployment cannot be made:\n  ${lines.join("\n  ")}`);
+  throw new ChoiceError(`the deployment cannot be made:\n  ${lines.join("\n  ")}`);
 }
 
 function received(options: unknown, name: PropertyKey | undefined): string {

@@ -26,7 +26,7 @@ export interface StoreRights {
  * list it. With a customer key, its use is confined to S3 in this region.
  */
 export function storeStatements(location: StoreLocation, rights: StoreRights): PolicyStatement[] {
-  const { bucket, prefix, key } = location;
+  const { bucket, prefix } = location;
   const objects = (parts: readonly StorePart[]) =>
     parts.map((part) => bucket.arnForObjects(pattern(prefix, part)));
   const statements: PolicyStatement[] = [];
@@ -42,20 +42,23 @@ export function storeStatements(location: StoreLocation, rights: StoreRights): P
       conditions: { StringLike: { "s3:prefix": listed } },
     }),
   );
-  if (key !== undefined) {
-    const stack = Stack.of(bucket);
-    statements.push(
-      new PolicyStatement({
-        actions: ["kms:Decrypt", "kms:GenerateDataKey"],
-        resources: [key.keyArn],
-        conditions: { StringEquals: { "kms:ViaService": `s3.${stack.region}.${stack.urlSuffix}` } },
-      }),
-    );
-  }
-  return statements;
+  return [...statements, ...keyStatements(location)];
 }
 
 /** `settings.json` is one object; the other parts end with `/` and stand for all below. */
 function pattern(prefix: string, part: StorePart): string {
   return `${prefix}${part}${part.endsWith("/") ? "*" : ""}`;
+}
+
+/** The use of the bucket's own key, where it has one, by way of S3 in this region only. */
+export function keyStatements({ bucket, key }: StoreLocation): PolicyStatement[] {
+  if (key === undefined) return [];
+  const stack = Stack.of(bucket);
+  return [
+    new PolicyStatement({
+      actions: ["kms:Decrypt", "kms:GenerateDataKey"],
+      resources: [key.keyArn],
+      conditions: { StringEquals: { "kms:ViaService": `s3.${stack.region}.amazonaws.com` } },
+    }),
+  ];
 }

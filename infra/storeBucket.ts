@@ -44,7 +44,7 @@ export function storeLocation(scope: Construct, options: CheckedOptions): StoreL
   Validations.of(bucket).acknowledge({
     id: "AwsSolutions-S1",
     reason:
-      "Access logs need a second bucket and cost more than the store; versions tell what changed, and who wishes to know who read can turn on CloudTrail data events.",
+      "Access logs would need a second bucket to look after. Versions tell what changed; CloudTrail data events tell who read, for those who must know.",
   });
   return { bucket: bucket as IBucket, prefix, key };
 }
