@@ -1,4 +1,10 @@
-import type { AutoregressiveFit } from "../autoregression/fit.ts";
+/** What of a fit is compared: live, or as numbers read back from a store. */
+export interface ComparableFit {
+  readonly order: number;
+  readonly coefficients: ArrayLike<number>;
+  readonly standardErrors: ArrayLike<number>;
+  readonly observations: number;
+}
 
 export interface FitComparison {
   readonly orderBefore: number;
@@ -24,7 +30,7 @@ export interface FitComparison {
  *
  * @example compareFits(lastWeek, thisWeek).coefficients[0].difference
  */
-export function compareFits(before: AutoregressiveFit, after: AutoregressiveFit): FitComparison {
+export function compareFits(before: ComparableFit, after: ComparableFit): FitComparison {
   const lags = Math.max(before.order, after.order);
   return {
     orderBefore: before.order,
@@ -43,7 +49,7 @@ export function compareFits(before: AutoregressiveFit, after: AutoregressiveFit)
   };
 }
 
-function standardError(before: AutoregressiveFit, after: AutoregressiveFit, at: number): number | null {
+function standardError(before: ComparableFit, after: ComparableFit, at: number): number | null {
   // Of two orders, neither is a refit of the other: a coefficient takes over what its neighbours held.
   if (before.order !== after.order) return null;
   const error = after.standardErrors[at];
