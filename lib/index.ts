@@ -50,4 +50,8 @@ export { longRun, spectralDensity } from "./dynamics/longRun.ts";
 export { movingAverageWeights } from "./dynamics/movingAverageWeights.ts";
 export { cumulativeResponse, persistence } from "./dynamics/persistence.ts";
 export { shockContributions } from "./dynamics/shockContributions.ts";
+export { accuracy } from "./forecast/accuracy.ts";
+export { describeSeries } from "./forecast/describingModel.ts";
+export type { Forecast, ForecastOptions } from "./forecast/forecast.ts";
+export { forecastSeries } from "./forecast/forecastSeries.ts";
 export { levinson } from "./numeric/levinson.ts";

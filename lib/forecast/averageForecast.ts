@@ -1,0 +1,97 @@
+import { backTestOf } from "./backTest.ts";
+import { addOutcomes, type CalibrationEvidence, spreadFactor } from "./calibration.ts";
+import { type Candidate, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
+import { type CombinedForecast, combineBank, forecastWorkspace, rollBank } from "./combinedForecast.ts";
+import { dampOutliers } from "./dampOutliers.ts";
+import type { SeriesDescription } from "./describingModel.ts";
+import { fillGaps } from "./fillGaps.ts";
+import type { BackTest } from "./forecast.ts";
+import type { MemberFit } from "./memberFit.ts";
+import type { PredictiveSpread } from "./predictiveSpread.ts";
+import { rollingOrigins } from "./rollingOrigins.ts";
+import { workingScales } from "./workingScale.ts";
+
+/** The average of the whole bank at the end of the series, with what the past says about it. */
+export interface AverageForecast {
+  readonly candidates: readonly Candidate[];
+  readonly scales: readonly ScaledSeries[];
+  readonly fits: readonly (MemberFit | undefined)[];
+  /** Row i (stride horizon) holds candidate i's own forecast. */
+  readonly paths: Float64Array;
+  readonly shares: Float64Array;
+  readonly spread: PredictiveSpread;
+  readonly factor: number;
+  /** Degrees of freedom of the tails. */
+  readonly freedom: number;
+  readonly backTest: BackTest;
+  readonly outliers: readonly number[];
+  readonly steps: readonly number[];
+}
+
+/** Longest lag looked at: a season and some more, a third of the series, and 200 in any case. */
+function longestLag(count: number, seasons: readonly number[]): number {
+  const season = seasons.length > 0 ? seasons[seasons.length - 1] : 0;
+  return Math.max(1, Math.min(200, Math.floor(count / 3), Math.max(60, season + 32)));
+}
+
+/**
+ * Forecasts `values` (gaps allowed inside, observed at both ends) by the average of all candidates.
+ */
+export function averageForecast(
+  values: Float64Array,
+  seasons: readonly number[],
+  horizon: number,
+  description: SeriesDescription | undefined,
+): AverageForecast {
+  const count = values.length;
+  const maxOrder = longestLag(count, seasons);
+  const workspace = forecastWorkspace(count, maxOrder);
+  const season = seasons.length > 0 ? seasons[0] : 0;
+  const observed = values.filter((value) => !Number.isNaN(value));
+  const outliers = new Set<number>();
+  const steps = new Set<number>();
+  const scales: ScaledSeries[] = workingScales(observed).map((scale) => {
+    const filled = fillGaps(values.map(scale.forward), season, workspace);
+    const damped = dampOutliers(filled, season, workspace);
+    for (const t of damped.outliers) outliers.add(t);
+    for (const t of damped.steps) steps.add(t);
+    return { scale, values: damped.values };
+  });
+  const candidates = listCandidates(scales, seasons, description);
+  const least = Math.max(8, seasons.length > 0 ? 3 * season : 0);
+  const origins = rollingOrigins(count, horizon, least);
+  const rolled = rollBank(values, scales, candidates, origins, maxOrder, workspace);
+  const bank = forecastBank(scales, candidates, count, horizon, maxOrder, workspace);
+  const combined = combineBank(bank, candidates, scales, rolled.losses, -1, horizon);
+  const evidence: CalibrationEvidence = { scores: [], weights: [] };
+  const past: CombinedForecast[] = [];
+  for (let o = 0; o < origins.length; o++) {
+    const origin = origins[o];
+    const at = combineBank(rolled.banks[o], candidates, scales, rolled.losses, o, origin.steps);
+    past.push(at);
+    addOutcomes(evidence, at.spread, values, origin.count, 1);
+  }
+  const terms = meanTerms(bank.fits, combined.shares);
+  const prior = Math.sqrt((observed.length + terms) / Math.max(1, observed.length - terms));
+  const factor = spreadFactor(evidence, prior);
+  return {
+    candidates,
+    scales,
+    fits: bank.fits,
+    paths: bank.paths,
+    shares: combined.shares,
+    spread: combined.spread,
+    factor,
+    freedom: Math.max(4, observed.length - terms),
+    backTest: backTestOf(values, past, origins, season, horizon, factor),
+    outliers: [...outliers].sort((a, b) => a - b),
+    steps: [...steps].sort((a, b) => a - b),
+  };
+}
+
+/** Number of terms estimated, averaged over the candidates that carry the forecast. */
+function meanTerms(fits: readonly (MemberFit | undefined)[], shares: Float64Array): number {
+  let terms = 1;
+  for (let i = 0; i < fits.length; i++) terms += shares[i] * (1 + (fits[i]?.model.meanOrder ?? 0));
+  return terms;
+}

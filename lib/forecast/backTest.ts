@@ -1,0 +1,57 @@
+import type { CombinedForecast } from "./combinedForecast.ts";
+import type { BackTest } from "./forecast.ts";
+import { naiveForecast } from "./naiveForecast.ts";
+import { spreadQuantile } from "./predictiveSpread.ts";
+import type { Origin } from "./rollingOrigins.ts";
+
+/** Half-width of a central 80 % range in standard deviations. */
+const REACH_80 = 1.2815515655446004;
+
+/**
+ * Rolling-origin record of the average: each past forecast was combined with weights that did not see its outcome.
+ * The naive rival repeats the last value or, where that did better over all, the last season. `factor` is the
+ * calibrated factor on the spread, for the coverage of the 80 % range.
+ */
+export function backTestOf(
+  values: Float64Array,
+  past: readonly CombinedForecast[],
+  origins: readonly Origin[],
+  season: number,
+  horizon: number,
+  factor: number,
+): BackTest {
+  const model = new Float64Array(horizon);
+  const plain = new Float64Array(horizon);
+  const seasonal = new Float64Array(horizon);
+  const seen = new Float64Array(horizon);
+  let inside = 0;
+  let total = 0;
+  for (let o = 0; o < origins.length; o++) {
+    const { count, steps } = origins[o];
+    const { spread } = past[o];
+    const last = naiveForecast(values, count, 0, steps);
+    const same = naiveForecast(values, count, season, steps);
+    for (let h = 0; h < steps; h++) {
+      const actual = values[count + h];
+      if (Number.isNaN(actual)) continue;
+      model[h] += Math.abs(actual - spread.medians[h]);
+      plain[h] += Math.abs(actual - last[h]);
+      seasonal[h] += Math.abs(actual - same[h]);
+      seen[h]++;
+      total++;
+      const reach = REACH_80 * factor;
+      if (actual >= spreadQuantile(spread, h, -reach) && actual <= spreadQuantile(spread, h, reach)) inside++;
+    }
+  }
+  const sum = (errors: Float64Array): number => errors.reduce((all, error) => all + error, 0);
+  const naive = sum(seasonal) < sum(plain) ? seasonal : plain;
+  const mean = (errors: Float64Array): Float64Array =>
+    errors.map((error, h) => (seen[h] > 0 ? error / seen[h] : Number.NaN));
+  return {
+    origins: origins.length,
+    meanAbsoluteError: mean(model),
+    naiveMeanAbsoluteError: mean(naive),
+    relativeError: total > 0 && sum(naive) > 0 ? sum(model) / sum(naive) : Number.NaN,
+    coverage80: total > 0 ? inside / total : Number.NaN,
+  };
+}

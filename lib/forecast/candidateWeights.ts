@@ -1,0 +1,43 @@
+/**
+ * Weights of candidates from their rolling-origin losses: inversely proportional to the mean squared error
+ * (Bates and Granger 1969), each error divided by the square root of its step ahead so that far steps, whose
+ * errors grow like a random walk's, do not drown the near ones.
+ *
+ * `losses` row o (stride `count`) holds each candidate's loss at origin o, `NaN` when it could not be fitted there.
+ * `leaveOut` is an origin to ignore, so that a combined forecast of the past can be judged by weights that did not
+ * see its outcome; −1 for none. `usable` marks candidates with a forecast to weigh. Without losses: equal weights.
+ */
+export function candidateWeights(
+  losses: readonly Float64Array[],
+  leaveOut: number,
+  usable: (candidate: number) => boolean,
+  count: number,
+): Float64Array {
+  const means = new Float64Array(count);
+  let best = Number.POSITIVE_INFINITY;
+  let average = 0;
+  let known = 0;
+  for (let i = 0; i < count; i++) {
+    let sum = 0;
+    let seen = 0;
+    for (let o = 0; o < losses.length; o++) {
+      if (o === leaveOut || Number.isNaN(losses[o][i])) continue;
+      sum += losses[o][i];
+      seen++;
+    }
+    means[i] = seen > 0 ? sum / seen : Number.NaN;
+    if (!usable(i)) means[i] = Number.NaN;
+    if (Number.isNaN(means[i])) continue;
+    known++;
+    average += means[i];
+    if (means[i] < best) best = means[i];
+  }
+  const weights = new Float64Array(count);
+  // The floor keeps a candidate that was exact by luck from taking everything.
+  const floor = known > 0 ? (1e-9 * average) / known : 0;
+  for (let i = 0; i < count; i++) {
+    if (known === 0 || average === 0) weights[i] = usable(i) ? 1 : 0;
+    else if (!Number.isNaN(means[i])) weights[i] = (best + floor) / (means[i] + floor);
+  }
+  return weights;
+}

@@ -1,0 +1,119 @@
+import { type BurgWorkspace, burgWorkspace } from "../autoregression/burg.ts";
+import { type BankForecast, type Candidate, forecastBank, type ScaledSeries } from "./candidateBank.ts";
+import { candidateWeights } from "./candidateWeights.ts";
+import { shockResponse } from "./memberFit.ts";
+import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
+import type { Origin } from "./rollingOrigins.ts";
+import { weightedMiddle } from "./weightedMiddle.ts";
+
+/** The average at one origin: medians with their uncalibrated spread, and the part each candidate had. */
+export interface CombinedForecast {
+  readonly spread: PredictiveSpread;
+  /** Mean over horizon steps of each candidate's share in the average; sums to 1. */
+  readonly shares: Float64Array;
+}
+
+/** Everything the average needs to know of the past: bank forecasts at each origin and what they lost. */
+export interface RolledBank {
+  readonly banks: readonly BankForecast[];
+  readonly losses: readonly Float64Array[];
+}
+
+/** Makes every candidate's forecast at every origin and scores it on the values that were observed. */
+export function rollBank(
+  values: Float64Array,
+  scales: readonly ScaledSeries[],
+  candidates: readonly Candidate[],
+  origins: readonly Origin[],
+  maxOrder: number,
+  workspace: BurgWorkspace,
+): RolledBank {
+  const banks: BankForecast[] = [];
+  const losses: Float64Array[] = [];
+  for (const { count, steps } of origins) {
+    const bank = forecastBank(scales, candidates, count, steps, maxOrder, workspace);
+    const loss = new Float64Array(candidates.length).fill(Number.NaN);
+    for (let i = 0; i < candidates.length; i++) {
+      if (bank.fits[i] === undefined) continue;
+      let sum = 0;
+      let seen = 0;
+      for (let h = 0; h < steps; h++) {
+        const actual = values[count + h];
+        if (Number.isNaN(actual)) continue;
+        sum += (actual - bank.paths[i * steps + h]) ** 2 / (h + 1);
+        seen++;
+      }
+      if (seen > 0) loss[i] = Math.min(sum / seen, Number.MAX_VALUE / 1e6);
+    }
+    banks.push(bank);
+    losses.push(loss);
+  }
+  return { banks, losses };
+}
+
+/** Combines one bank by the losses of the origins, leaving one out when it is judged itself. */
+export function combineBank(
+  bank: BankForecast,
+  candidates: readonly Candidate[],
+  scales: readonly ScaledSeries[],
+  losses: readonly Float64Array[],
+  leaveOut: number,
+  horizon: number,
+): CombinedForecast {
+  const count = candidates.length;
+  const usable = (i: number): boolean => bank.fits[i] !== undefined;
+  const weights = candidateWeights(losses, leaveOut, usable, count);
+  const column = new Float64Array(count);
+  const order = new Int32Array(count);
+  const stepShares = new Float64Array(count);
+  const shares = new Float64Array(count);
+  const medians = new Float64Array(horizon);
+  for (let h = 0; h < horizon; h++) {
+    for (let i = 0; i < count; i++) column[i] = weights[i] > 0 ? bank.paths[i * horizon + h] : 0;
+    medians[h] = weightedMiddle(column, weights, order, stepShares);
+    for (let i = 0; i < count; i++) shares[i] += stepShares[i] / horizon;
+  }
+  return { spread: { medians, scales: scaleSpreads(bank, candidates, scales, shares, medians) }, shares };
+}
+
+/**
+ * Spread of each working scale: the weighted mean over its candidates of innovation variance times the summed
+ * squared shock response, plus how far the candidates stand apart (model uncertainty), on that scale.
+ */
+function scaleSpreads(
+  bank: BankForecast,
+  candidates: readonly Candidate[],
+  scales: readonly ScaledSeries[],
+  weights: Float64Array,
+  medians: Float64Array,
+): ScaleSpread[] {
+  const horizon = medians.length;
+  const total = weights.reduce((sum, weight) => sum + weight, 0);
+  return scales.map(({ scale }, index) => {
+    const variances = new Float64Array(horizon);
+    let share = 0;
+    let response: Float64Array | undefined;
+    for (let i = 0; i < candidates.length; i++) {
+      const fit = bank.fits[i];
+      if (candidates[i].scale !== index || !(weights[i] > 0) || fit === undefined) continue;
+      const weight = weights[i];
+      share += weight / total;
+      if (i === 0 || bank.fits[i - 1] !== fit || response === undefined)
+        response = shockResponse(fit, horizon);
+      let sum = 0;
+      for (let h = 0; h < horizon; h++) {
+        sum += response[h] * response[h];
+        const apart = scale.forward(bank.paths[i * horizon + h]) - scale.forward(medians[h]);
+        variances[h] +=
+          weight * (fit.model.innovationVariance * sum + (Number.isFinite(apart) ? apart * apart : 0));
+      }
+    }
+    const deviations = variances.map((variance) => (share > 0 ? Math.sqrt(variance / (share * total)) : 0));
+    return { scale, share, deviations };
+  });
+}
+
+/** Work space for series of this length and order. */
+export function forecastWorkspace(count: number, maxOrder: number): BurgWorkspace {
+  return burgWorkspace(count, Math.max(1, maxOrder));
+}

@@ -1,0 +1,142 @@
+import type { BurgWorkspace } from "../autoregression/burg.ts";
+import type { DriftKind, Preparation } from "./candidates.ts";
+import { type AveragedAutoregression, orderAverage } from "./orderAverage.ts";
+import { levelProfile, meanProfile } from "./seasonalProfile.ts";
+
+/** A preparation fitted to the first `count` values of a series on its working scale. */
+export interface MemberFit {
+  readonly preparation: Preparation;
+  readonly count: number;
+  /** The series (level profile taken off) and each stage of differencing; the last is what the autoregression sees. */
+  readonly stages: readonly Float64Array[];
+  readonly levelProfile: Float64Array | undefined;
+  readonly meanProfile: Float64Array | undefined;
+  readonly model: AveragedAutoregression;
+  /** Mean of the last stage, whole and weighted to the recent past. */
+  readonly wholeMean: number;
+  readonly recentMean: number;
+}
+
+/** Half-life of the recent drift as a share of the series, and its floor in periods. */
+const RECENT_SHARE = 0.25;
+const RECENT_FLOOR = 3;
+
+/** Differences `values` at `lag`. */
+function difference(values: Float64Array, lag: number): Float64Array {
+  const out = new Float64Array(values.length - lag);
+  for (let t = 0; t < out.length; t++) out[t] = values[t + lag] - values[t];
+  return out;
+}
+
+/** Fits one preparation; `undefined` when too few values are left after differencing to say anything. */
+export function fitMember(
+  values: Float64Array,
+  count: number,
+  preparation: Preparation,
+  maxOrder: number,
+  workspace: BurgWorkspace,
+): MemberFit | undefined {
+  const { differences, season, profile } = preparation;
+  let series: Float64Array = values.slice(0, count);
+  let onLevels: Float64Array | undefined;
+  if (profile === "level") {
+    if (count < 3 * season) return undefined;
+    onLevels = levelProfile(values, season, count);
+    for (let t = 0; t < count; t++) series[t] -= onLevels[t % season];
+  }
+  const stages = [series];
+  for (const lag of differences) {
+    if (series.length < lag + 4) return undefined;
+    series = difference(series, lag);
+    stages.push(series);
+  }
+  const length = series.length;
+  const offset = count - length;
+  if (profile === "mean" && length < 2 * season) return undefined;
+  const onMeans = profile === "mean" ? meanProfile(series, season, length, offset) : undefined;
+  let wholeMean = 0;
+  for (let t = 0; t < length; t++) wholeMean += series[t] / length;
+  const decay = 0.5 ** (1 / Math.max(RECENT_FLOOR, RECENT_SHARE * length));
+  let weight = 0;
+  let recent = 0;
+  for (let t = 0; t < length; t++) {
+    weight = weight * decay + 1;
+    recent = recent * decay + series[t];
+  }
+  const centred = new Float64Array(length);
+  for (let t = 0; t < length; t++) {
+    centred[t] = series[t] - wholeMean - (onMeans === undefined ? 0 : onMeans[(t + offset) % season]);
+  }
+  const model = orderAverage(centred, Math.min(maxOrder, Math.floor(length / 3)), 1, workspace);
+  return {
+    preparation,
+    count,
+    stages,
+    levelProfile: onLevels,
+    meanProfile: onMeans,
+    model,
+    wholeMean,
+    recentMean: recent / weight,
+  };
+}
+
+/** The centre a drift kind stands for. Levels always return to their mean. */
+function centreOf(fit: MemberFit, drift: DriftKind): number {
+  if (drift === "none") return 0;
+  return drift === "whole" ? fit.wholeMean : fit.recentMean;
+}
+
+/** Forecasts of the working scale 1..horizon steps after the fitted values, written to `out[at..at+horizon)`. */
+export function forecastMember(
+  fit: MemberFit,
+  drift: DriftKind,
+  horizon: number,
+  out: Float64Array,
+  at: number,
+): void {
+  const { stages, model, preparation, count, meanProfile: means, levelProfile: levels } = fit;
+  const { coefficients } = model;
+  const series = stages[stages.length - 1];
+  const length = series.length;
+  const offset = count - length;
+  const season = preparation.season;
+  const centre = centreOf(fit, drift);
+  const order = Math.min(coefficients.length, length);
+  const past = new Float64Array(order + horizon);
+  for (let j = 0; j < order; j++) {
+    const t = length - order + j;
+    past[j] = series[t] - centre - (means === undefined ? 0 : means[(t + offset) % season]);
+  }
+  for (let h = 0; h < horizon; h++) {
+    let sum = 0;
+    for (let j = 0; j < order; j++) sum += coefficients[j] * past[order + h - 1 - j];
+    past[order + h] = sum;
+    out[at + h] = sum + centre + (means === undefined ? 0 : means[(count + h) % season]);
+  }
+  for (let stage = preparation.differences.length - 1; stage >= 0; stage--) {
+    const base = stages[stage];
+    const lag = preparation.differences[stage];
+    for (let h = 0; h < horizon; h++)
+      out[at + h] += h < lag ? base[base.length - lag + h] : out[at + h - lag];
+  }
+  if (levels !== undefined) for (let h = 0; h < horizon; h++) out[at + h] += levels[(count + h) % season];
+}
+
+/**
+ * Effect of a unit shock on the working scale 0..count−1 periods later: the moving-average weights of the
+ * autoregression passed through the differences.
+ */
+export function shockResponse(fit: MemberFit, count: number): Float64Array {
+  const { coefficients } = fit.model;
+  const response = new Float64Array(count);
+  for (let h = 0; h < count; h++) {
+    let sum = h === 0 ? 1 : 0;
+    const reach = Math.min(coefficients.length, h);
+    for (let j = 0; j < reach; j++) sum += coefficients[j] * response[h - 1 - j];
+    response[h] = sum;
+  }
+  for (const lag of fit.preparation.differences) {
+    for (let h = lag; h < count; h++) response[h] += response[h - lag];
+  }
+  return response;
+}

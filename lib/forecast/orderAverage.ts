@@ -1,0 +1,61 @@
+import { type BurgWorkspace, burgAllOrders } from "../autoregression/burg.ts";
+
+/** An autoregression whose coefficients are an average over orders. */
+export interface AveragedAutoregression {
+  /** φ_1.., as many as the longest order that carries weight. */
+  readonly coefficients: Float64Array;
+  readonly innovationVariance: number;
+  /** Σ weight · order. */
+  readonly meanOrder: number;
+}
+
+/**
+ * Burg fits of every order 0..maxOrder, averaged with weights exp(−AICc/2) (Burnham and Anderson 2002). An average
+ * of coefficient vectors padded with zeros is itself an autoregression, so the forecast stays explainable.
+ *
+ * `values` already centred; `estimated` counts the terms fitted before (mean, profile). Order 0 always takes part.
+ */
+export function orderAverage(
+  values: Float64Array,
+  maxOrder: number,
+  estimated: number,
+  workspace: BurgWorkspace,
+): AveragedAutoregression {
+  const n = values.length;
+  burgAllOrders(values, 0, maxOrder, workspace);
+  const variances = workspace.innovationVariances;
+  const weights = new Float64Array(maxOrder + 1);
+  let best = Number.POSITIVE_INFINITY;
+  for (let p = 0; p <= maxOrder; p++) {
+    const parameters = p + estimated + 1;
+    const freedom = n - parameters - 1;
+    weights[p] =
+      freedom > 0 && variances[p] > 0
+        ? n * Math.log(variances[p]) + (2 * parameters * n) / freedom
+        : p === 0
+          ? Number.MAX_VALUE
+          : Number.POSITIVE_INFINITY;
+    if (weights[p] < best) best = weights[p];
+  }
+  let total = 0;
+  let longest = 0;
+  for (let p = 0; p <= maxOrder; p++) {
+    weights[p] = Math.exp(-0.5 * (weights[p] - best));
+    // Weights below a ten-thousandth change no printed digit and would cost the full recursion.
+    if (weights[p] < 1e-4) weights[p] = 0;
+    else longest = p;
+    total += weights[p];
+  }
+  const coefficients = new Float64Array(longest);
+  let innovationVariance = 0;
+  let meanOrder = 0;
+  for (let p = 0; p <= longest; p++) {
+    const weight = weights[p] / total;
+    if (weight === 0) continue;
+    innovationVariance += weight * variances[p];
+    meanOrder += weight * p;
+    const row = (p - 1) * workspace.maxOrder;
+    for (let j = 0; j < p; j++) coefficients[j] += weight * workspace.coefficients[row + j];
+  }
+  return { coefficients, innovationVariance, meanOrder };
+}

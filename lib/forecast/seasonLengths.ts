@@ -1,0 +1,20 @@
+import type { ForecastOptions } from "./forecast.ts";
+
+const BY_PERIOD: Readonly<Record<NonNullable<ForecastOptions["period"]>, readonly number[]>> = {
+  hour: [24, 168],
+  day: [7],
+  week: [52],
+  month: [12],
+  quarter: [4],
+  year: [],
+};
+
+/**
+ * Season lengths to consider, ascending: those asked for, else those of the calendar step (day and week of hours,
+ * week of days, year of weeks, months and quarters). A length counts only when three full seasons are there, the
+ * least from which a profile can be told from chance.
+ */
+export function seasonLengths(count: number, options: Pick<ForecastOptions, "period" | "seasons">): number[] {
+  const wanted = options.seasons ?? (options.period === undefined ? [] : BY_PERIOD[options.period]);
+  return [...new Set(wanted)].filter((length) => length > 1 && count >= 3 * length).sort((a, b) => a - b);
+}

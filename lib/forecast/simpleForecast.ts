@@ -1,0 +1,170 @@
+import type { BackTest, Forecast, ForecastInterval, ForecastNote, ForecastOptions } from "./forecast.ts";
+import { normalQuantile } from "./normal.ts";
+import { studentFromNormal } from "./student.ts";
+import { trivialDescription } from "./trivialDescription.ts";
+
+/** What a series without a model is forecast by: a level, how far one value strays, and whether strays add up. */
+export interface SimpleDistribution {
+  readonly name: string;
+  readonly level: number;
+  /** Quantile of a single coming value at a step (1 = next) for a probability. */
+  quantile(step: number, probability: number): number;
+  /** Quantile of the sum of the horizon. */
+  total(horizon: number, probability: number): number;
+}
+
+/** A level that stays: the mean of the observed values, each coming value straying as they did. */
+export function steadyLevel(observed: Float64Array): SimpleDistribution {
+  const { mean, deviation } = moments(observed);
+  const freedom = Math.max(1, observed.length - 1);
+  const wide = deviation * Math.sqrt(1 + 1 / observed.length);
+  return {
+    name: "mean of the observed values",
+    level: mean,
+    quantile: (_, probability) => mean + student(probability, freedom) * wide,
+    total: (horizon, probability) =>
+      horizon * mean +
+      student(probability, freedom) * deviation * Math.sqrt(horizon + horizon ** 2 / observed.length),
+  };
+}
+
+/** The last value repeated; strays add up like a random walk's, with the size of the observed steps. */
+export function lastLevel(observed: Float64Array): SimpleDistribution {
+  const last = observed[observed.length - 1];
+  let power = 0;
+  for (let t = 1; t < observed.length; t++) power += (observed[t] - observed[t - 1]) ** 2;
+  const freedom = Math.max(1, observed.length - 1);
+  // One value says nothing of how values stray: its own size is the only measure there is.
+  const step = observed.length > 1 ? Math.sqrt(power / freedom) : Math.abs(last);
+  return {
+    name: "last value",
+    level: last,
+    quantile: (ahead, probability) => last + student(probability, freedom) * step * Math.sqrt(ahead),
+    total: (horizon, probability) =>
+      horizon * last +
+      student(probability, freedom) * step * Math.sqrt((horizon * (horizon + 1) * (2 * horizon + 1)) / 6),
+  };
+}
+
+/**
+ * Mostly zeros: the mean of the observed values, recent ones counting more (half weight every quarter of the
+ * series), with ranges from the observed values themselves, weighted alike.
+ */
+export function intermittentLevel(observed: Float64Array): SimpleDistribution {
+  const count = observed.length;
+  const halfLife = Math.max(8, count / 4);
+  const weights = observed.map((_, t) => 0.5 ** ((count - 1 - t) / halfLife));
+  const total = weights.reduce((sum, weight) => sum + weight, 0);
+  const mean = observed.reduce((sum, value, t) => sum + value * weights[t], 0) / total;
+  const variance = observed.reduce((sum, value, t) => sum + weights[t] * (value - mean) ** 2, 0) / total;
+  const order = [...observed.keys()].sort((a, b) => observed[a] - observed[b]);
+  return {
+    name: "mean of the recent values, many of them zero",
+    level: mean,
+    quantile: (_, probability) => {
+      let passed = 0;
+      for (const t of order) {
+        passed += weights[t] / total;
+        if (passed >= probability - 1e-12) return observed[t];
+      }
+      return observed[order[count - 1]];
+    },
+    total: (horizon, probability) =>
+      Math.max(0, horizon * mean + normalQuantile(probability) * Math.sqrt(horizon * variance)),
+  };
+}
+
+/** A forecast from a simple distribution, with everything a forecast must carry. */
+export function simpleForecast(
+  values: Float64Array,
+  options: ForecastOptions,
+  distribution: SimpleDistribution,
+  notes: readonly ForecastNote[],
+): Forecast {
+  const { horizon, levels, limits } = options;
+  const steps = Float64Array.from({ length: horizon }, (_, h) => h + 1);
+  const keep = (value: number): number => within(value, options.bounds);
+  const intervals: ForecastInterval[] = levels.map((level) => ({
+    level,
+    low: steps.map((step) =>
+      keep(Math.min(distribution.level, distribution.quantile(step, 0.5 - level / 200))),
+    ),
+    high: steps.map((step) =>
+      keep(Math.max(distribution.level, distribution.quantile(step, 0.5 + level / 200))),
+    ),
+  }));
+  const point = steps.map(() => keep(distribution.level));
+  const sum = horizon * keep(distribution.level);
+  const keepSum = (value: number): number =>
+    within(value, { low: scaled(options.bounds?.low, horizon), high: scaled(options.bounds?.high, horizon) });
+  const chance = (limit: number, step: number): number => {
+    let low = 1e-6;
+    let high = 1 - 1e-6;
+    if (distribution.quantile(step, low) >= limit) return 0;
+    if (distribution.quantile(step, high) < limit) return 1;
+    for (let i = 0; i < 40; i++) {
+      const middle = (low + high) / 2;
+      if (distribution.quantile(step, middle) < limit) low = middle;
+      else high = middle;
+    }
+    return high;
+  };
+  const passing = (["above", "below"] as const).flatMap((direction) => {
+    const limit = limits?.[direction];
+    if (limit === undefined) return [];
+    const each = steps.map((step) => (direction === "above" ? 1 - chance(limit, step) : chance(limit, step)));
+    // Strays of a level are independent; those of a random walk go together, for which this is the upper bound.
+    const any = 1 - each.reduce((none, one) => none * (1 - one), 1);
+    return [{ direction, limit, each, any: Math.max(any, ...each) }];
+  });
+  return {
+    point,
+    median: point.slice(),
+    intervals,
+    total: {
+      point: sum,
+      intervals: levels.map((level) => ({
+        level,
+        low: Math.min(sum, keepSum(distribution.total(horizon, 0.5 - level / 200))),
+        high: Math.max(sum, keepSum(distribution.total(horizon, 0.5 + level / 200))),
+      })),
+    },
+    model: trivialDescription(values),
+    candidates: [{ name: distribution.name, weight: 1 }],
+    notes,
+    chances: passing,
+    backTest: noBackTest(horizon),
+  };
+}
+
+/** Clamps into bounds. */
+export function within(value: number, bounds: ForecastOptions["bounds"]): number {
+  return Math.min(
+    bounds?.high ?? Number.POSITIVE_INFINITY,
+    Math.max(bounds?.low ?? Number.NEGATIVE_INFINITY, value),
+  );
+}
+
+function scaled(bound: number | undefined, factor: number): number | undefined {
+  return bound === undefined ? undefined : bound * factor;
+}
+
+function noBackTest(horizon: number): BackTest {
+  return {
+    origins: 0,
+    meanAbsoluteError: new Float64Array(horizon).fill(Number.NaN),
+    naiveMeanAbsoluteError: new Float64Array(horizon).fill(Number.NaN),
+    relativeError: Number.NaN,
+    coverage80: Number.NaN,
+  };
+}
+
+function student(probability: number, freedom: number): number {
+  return studentFromNormal(normalQuantile(probability), Math.max(3, freedom));
+}
+
+function moments(values: Float64Array): { mean: number; deviation: number } {
+  const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
+  const power = values.reduce((sum, value) => sum + (value - mean) ** 2, 0);
+  return { mean, deviation: Math.sqrt(power / Math.max(1, values.length - 1)) };
+}

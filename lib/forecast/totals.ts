@@ -1,0 +1,58 @@
+import type { AverageForecast } from "./averageForecast.ts";
+import { shockResponse } from "./memberFit.ts";
+
+/**
+ * Quantile function of the sum over the horizon. Errors of coming periods share shocks: with ψ the shock response of
+ * a candidate on its scale and d_h the slope back to units of the series, the sum varies by
+ * σ² Σ_j (Σ_{h≥j} d_h ψ_{h−j})². Candidates of a scale are averaged by share, their disagreement on the sum added; scales are averaged by quantile, the
+ * logarithmic one as a lognormal of the same relative deviation.
+ *
+ * The sum runs over steps `from`..end (earlier steps are past and unobserved). The result increases in `z`, which the
+ * caller widens by the calibration, and is the sum of medians at zero.
+ */
+export function totalQuantile(average: AverageForecast, from: number): (z: number) => number {
+  const { medians, scales } = average.spread;
+  const sum = medians.subarray(from).reduce((all, median) => all + median, 0);
+  const parts = scales
+    .map(({ share, scale }, index) => {
+      const deviation = totalDeviation(average, index, from);
+      return { share, deviation, relative: scale.name === "log" && sum > 0 ? deviation / sum : 0 };
+    })
+    .filter(({ share }) => share > 0);
+  return (z) => {
+    let value = 0;
+    for (const { share, deviation, relative } of parts) {
+      value += share * (relative > 0 ? sum * Math.exp(Math.min(z * relative, 690)) : sum + z * deviation);
+    }
+    return value;
+  };
+}
+
+/** Standard deviation of the sum as one working scale sees it, in units of the series. */
+function totalDeviation(average: AverageForecast, index: number, from: number): number {
+  const { medians } = average.spread;
+  const { scale } = average.scales[index];
+  const horizon = medians.length;
+  const sum = medians.subarray(from).reduce((all, median) => all + median, 0);
+  const slopes = medians.map((median) => {
+    const anchored = scale.forward(median);
+    return Number.isFinite(anchored) ? scale.slope(anchored) : 1;
+  });
+  let variance = 0;
+  let share = 0;
+  average.candidates.forEach((candidate, i) => {
+    const fit = average.fits[i];
+    if (candidate.scale !== index || fit === undefined || average.shares[i] === 0) return;
+    const response = shockResponse(fit, horizon);
+    for (let j = 0; j < horizon; j++) {
+      let effect = 0;
+      for (let h = Math.max(j, from); h < horizon; h++) effect += slopes[h] * response[h - j];
+      variance += average.shares[i] * fit.model.innovationVariance * effect * effect;
+    }
+    let ownSum = 0;
+    for (let h = from; h < horizon; h++) ownSum += average.paths[i * horizon + h];
+    variance += average.shares[i] * (ownSum - sum) ** 2;
+    share += average.shares[i];
+  });
+  return share > 0 ? Math.sqrt(variance / share) : 0;
+}

@@ -1,0 +1,44 @@
+/** The scale on which an autoregression is fitted. */
+export interface WorkingScale {
+  readonly name: "raw" | "log" | "square-root";
+  forward(value: number): number;
+  back(value: number): number;
+  /** Derivative of `back`: how a small error on the working scale shows in units of the series. */
+  slope(value: number): number;
+}
+
+/** exp overflows past 709; no forecast needs more than this. */
+const LARGEST_EXPONENT = 690;
+
+const RAW: WorkingScale = { name: "raw", forward: (value) => value, back: (value) => value, slope: () => 1 };
+
+const LOG: WorkingScale = {
+  name: "log",
+  forward: Math.log,
+  back: (value) => Math.exp(Math.min(value, LARGEST_EXPONENT)),
+  slope: (value) => Math.exp(Math.min(value, LARGEST_EXPONENT)),
+};
+
+const SQUARE_ROOT: WorkingScale = {
+  name: "square-root",
+  forward: Math.sqrt,
+  // A root below zero would turn back up when squared: zero is the floor of the scale.
+  back: (value) => (value > 0 ? value * value : 0),
+  slope: (value) => (value > 0 ? 2 * value : 0),
+};
+
+/**
+ * Scales worth fitting on: always the raw one; the logarithm when every value is positive (steady percentages);
+ * the square root when values touch zero but never pass it (counts), where a logarithm does not exist.
+ */
+export function workingScales(values: ArrayLike<number>): readonly WorkingScale[] {
+  let least = Number.POSITIVE_INFINITY;
+  let most = 0;
+  for (let t = 0; t < values.length; t++) {
+    if (values[t] < least) least = values[t];
+    if (values[t] > most) most = values[t];
+  }
+  // A value that is nothing beside the others (a till that was shut, an underflow) makes a meaningless logarithm.
+  if (least > most * 1e-9) return [RAW, LOG];
+  return least >= 0 ? [RAW, SQUARE_ROOT] : [RAW];
+}
