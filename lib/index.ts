@@ -1,8 +1,9 @@
-export { autocovariances } from "./autoregression/autocovariances.ts";
 export { criterionWeights } from "./autoregression/criteria.ts";
 export type { AutoregressiveFit, AutoregressiveProcess, EstimationMethod } from "./autoregression/fit.ts";
 export { fitAutoregression } from "./autoregression/fitAutoregression.ts";
 export { generalisedLeastSquares } from "./autoregression/generalisedLeastSquares.ts";
+export { archTest, breuschGodfrey } from "./autoregression/lagrangeTests.ts";
+export { ljungBox, mcLeodLi } from "./autoregression/ljungBox.ts";
 export { logLikelihood } from "./autoregression/logLikelihood.ts";
 export {
   coefficientsToPartials,
@@ -18,6 +19,7 @@ export {
   stepColumn,
   trendColumn,
 } from "./autoregression/regressionTerms.ts";
+export { durbinWatson, jarqueBera } from "./autoregression/residualShape.ts";
 export { partialAutocorrelations, sampleAutocovariances } from "./autoregression/sampleMoments.ts";
 export { selectOrder } from "./autoregression/selectOrder.ts";
 export { smoothGaps } from "./autoregression/smoothGaps.ts";
@@ -44,6 +46,7 @@ export {
   type WatchState,
   watchSeries,
 } from "./drift/watchSeries.ts";
+export { autocovariances } from "./dynamics/autocovariances.ts";
 export { characteristicRoots, rhythm } from "./dynamics/characteristicRoots.ts";
 export { halfLife } from "./dynamics/halfLife.ts";
 export { longRun, spectralDensity } from "./dynamics/longRun.ts";

@@ -1,5 +1,5 @@
-import { autocovariances } from "./autocovariances.ts";
-import { stepUp } from "./partials.ts";
+import { coefficientsToPartials, stepUp } from "./partials.ts";
+import { processAutocovariances } from "./processAutocovariances.ts";
 
 /**
  * What is known of the last p deviations after some values were seen: their means, newest first, and the
@@ -7,7 +7,7 @@ import { stepUp } from "./partials.ts";
  */
 export interface FilterState {
   readonly means: Float64Array;
-  /** By row, p². In units of the innovation variance times 1: the same units as `innovationVariance`. */
+  /** By row, p². */
   readonly covariance: Float64Array;
   /** Observed values in a row up to now, counted to p. */
   run: number;
@@ -25,7 +25,8 @@ export function stationaryState(coefficients: ArrayLike<number>, innovationVaria
   const p = coefficients.length;
   const covariance = new Float64Array(p * p);
   if (p > 0) {
-    const gamma = autocovariances(coefficients, innovationVariance, p - 1);
+    const partials = coefficientsToPartials(coefficients);
+    const gamma = processAutocovariances(coefficients, partials, innovationVariance, p - 1);
     for (let i = 0; i < p; i++) for (let j = 0; j < p; j++) covariance[i * p + j] = gamma[Math.abs(i - j)];
   }
   return { means: new Float64Array(p), covariance, run: 0 };

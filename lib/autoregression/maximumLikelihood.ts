@@ -1,12 +1,13 @@
 import { invertPositive } from "../numeric/cholesky.ts";
 import { minimise } from "../numeric/minimise.ts";
-import { autocovariances } from "./autocovariances.ts";
 import { burgAllOrders, burgWorkspace } from "./burg.ts";
 import { requireValues } from "./checks.ts";
 import type { AutoregressiveFit } from "./fit.ts";
 import { isConstant, type LikelihoodDesign, likelihoodDesign } from "./likelihoodDesign.ts";
 import { logLikelihood } from "./logLikelihood.ts";
 import { observedInformation, regressionCovariance, sandwich } from "./observedInformation.ts";
+import { coefficientsToPartials } from "./partials.ts";
+import { processAutocovariances } from "./processAutocovariances.ts";
 import { ProfileLikelihood } from "./profileLikelihood.ts";
 import { summarise } from "./summarise.ts";
 
@@ -134,7 +135,8 @@ function standardErrors(
 
 function largeSampleCovariance(coefficients: Float64Array, observations: number): Float64Array {
   const p = coefficients.length;
-  const gamma = autocovariances(coefficients, 1, Math.max(0, p - 1));
+  const partials = coefficientsToPartials(coefficients);
+  const gamma = processAutocovariances(coefficients, partials, 1, Math.max(0, p - 1));
   const matrix = new Float64Array(p * p);
   for (let i = 0; i < p; i++) for (let j = 0; j < p; j++) matrix[i * p + j] = gamma[Math.abs(i - j)];
   const inverse = invertPositive(matrix, p) ?? new Float64Array(p * p);

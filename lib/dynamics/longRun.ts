@@ -1,6 +1,6 @@
-import { autocovariances } from "../autoregression/autocovariances.ts";
 import type { AutoregressiveProcess } from "../autoregression/fit.ts";
 import { isStationary } from "../autoregression/partials.ts";
+import { autocovariances } from "./autocovariances.ts";
 import { cumulativeResponse } from "./persistence.ts";
 
 export interface LongRun {

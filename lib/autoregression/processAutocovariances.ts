@@ -1,25 +1,17 @@
-import { requirePositive, requireValues, requireWhole } from "./checks.ts";
-import { coefficientsToPartials, stepUp } from "./partials.ts";
+import { stepUp } from "./partials.ts";
 
 /**
- * Theoretical autocovariances γ_0..γ_maxLag of a stationary AR process of any order.
- * γ_0 = σ²/Π(1 − π_k²); lags up to p by the Levinson recursion run forwards from the partial autocorrelations,
+ * Theoretical autocovariances γ_0..γ_maxLag of a stationary process given by its coefficients and their partial
+ * autocorrelations, unchecked: γ_0 = σ²/Π(1 − π_k²); lags up to p by the Levinson recursion run forwards,
  * γ_k = Σ_{j<k} φ^(k−1)_j γ_{k−j} + π_k v_{k−1}, later ones by γ_k = Σ φ_j γ_{k−j}
  * (Brockwell & Davis 1991, sections 3.3 and 5.2). No equations are solved, so near-unit roots lose nothing.
- *
- * Throws `RangeError` when the process is not stationary or the innovation variance not positive.
- *
- * @example autocovariances([0.5], 1, 2) // [1.3333, 0.6667, 0.3333]
  */
-export function autocovariances(
+export function processAutocovariances(
   coefficients: ArrayLike<number>,
+  partials: ArrayLike<number>,
   innovationVariance: number,
   maxLag: number,
 ): Float64Array {
-  requireValues("autocovariances", "coefficients", coefficients, "no-gaps");
-  requirePositive("autocovariances", "innovationVariance", innovationVariance);
-  requireWhole("autocovariances", "maxLag", maxLag, 0);
-  const partials = coefficientsToPartials(coefficients);
   const p = partials.length;
   let variance = innovationVariance;
   for (let k = 0; k < p; k++) variance /= (1 - partials[k]) * (1 + partials[k]);
