@@ -1,5 +1,5 @@
 import type { Ranked } from "../words/attention.ts";
-import { changeCaveats, changeHeadline, changeMeaning } from "../words/changeWords.ts";
+import { changeDate, changeHeadline, changeMeaning } from "../words/changeWords.ts";
 import type { RunFacts, Voice } from "../words/facts.ts";
 import { chanceSentences, nextSentence, totalSentence } from "../words/forecastSentences.ts";
 import { plainText } from "../words/plainText.ts";
@@ -31,7 +31,7 @@ export function seriesSection(one: Ranked, id: string, run: RunFacts, voice: Voi
     return [
       changeHeadline(finding, speech),
       [changeMeaning(finding, speech), rest].filter(Boolean).join(": "),
-      changeCaveats(finding, speech),
+      changeDate(finding, speech),
     ];
   });
   const list = (texts: readonly string[]) =>

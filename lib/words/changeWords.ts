@@ -1,6 +1,7 @@
 import type { ChangeKind } from "../drift/notice.ts";
 import type { Finding } from "./facts.ts";
 import { roundTo, significantStep } from "./numbers.ts";
+import { remainderOf } from "./remainder.ts";
 import { anOrA } from "./spans.ts";
 import type { Speech } from "./speech.ts";
 
@@ -32,14 +33,18 @@ function fadingWords(finding: ChangeFinding, speech: Speech): string {
     return `shocks now fade, losing half their effect in ${speech.span(after)}; before, they did not fade`;
   const now = speech.span(after);
   const was = speech.span(before);
-  if (now !== was) return `shocks now lose half their effect in ${now}; it was ${shortened(was)}`;
+  if (now !== was) return `shocks now lose half their effect in ${now}; it was ${shortened(was, now)}`;
   const moved = direction(before, after);
   const how =
     moved === "up" ? "a little more slowly" : moved === "down" ? "a little faster" : "in another way";
   return `shocks now fade ${how} than before, still losing half their effect in ${now}`;
 }
 
-const shortened = (text: string) => text.replace(/^about /, "");
+/** "about 2 weeks" as "2" where "weeks" has just been said. */
+function shortened(was: string, now: string): string {
+  const [noun] = now.split(" ").slice(-1);
+  return was.endsWith(` ${noun}`) && noun.endsWith("s") ? was.slice("about ".length, -noun.length - 1) : was;
+}
 
 /** Two amounts with enough digits to tell them apart, where two digits would hide the difference. */
 function pair(before: number, after: number, speech: Speech): readonly [string, string] {
@@ -66,6 +71,14 @@ function ratioWords(ratio: number, speech: Speech): string {
 
 /** The headline of a lasting change, in words a counter or a shop uses; without the name of the series. */
 export function changeHeadline(finding: ChangeFinding, speech: Speech): string {
+  const doubts = [
+    ...(finding.status === "provisional" ? ["an early sign"] : []),
+    ...(finding.alternative ? [`it may instead be ${kindNames[finding.alternative]}`] : []),
+  ];
+  return `${changeWords(finding, speech)}${doubts.length > 0 ? ` (${doubts.join("; ")})` : ""}`;
+}
+
+function changeWords(finding: ChangeFinding, speech: Speech): string {
   const { before, after } = finding;
   const { period } = speech.facts;
   switch (finding.kind) {
@@ -102,32 +115,30 @@ export function changeMeaning(finding: ChangeFinding, speech: Speech): string {
   switch (finding.kind) {
     case "persistence":
       if (after === before) return "";
-      return after > before
-        ? `A busy or quiet ${period} now stays with you longer`
-        : `A busy or quiet ${period} now passes sooner`;
+      return `${unusual(speech)} ${period} now ${after > before ? "stays with you longer" : "passes sooner"}`;
     case "level":
-      return "Plan around the new level, not around last year's figures";
+      return "plan around the new level, not around last year's figures";
     case "trend":
-      return "Plan along the new trend";
+      return "plan along the new trend";
     case "shock-size":
       return finding.after.shockSize > finding.before.shockSize
-        ? "Keep more in reserve than before"
-        : "Less reserve is needed than before";
+        ? "keep more in reserve than before"
+        : "less reserve is needed than before";
     case "season":
-      return "Lean less on the same time last season";
+      return "lean less on the same time last season";
   }
 }
 
-/** When it happened, how sure that is, and the other kind when it fits nearly as well. */
-export function changeCaveats(finding: ChangeFinding, speech: Speech): string {
-  const { change, alternative, status } = finding;
+/** The latest shock tells which sort of period is on the reader's mind. */
+function unusual({ facts }: Speech): string {
+  const shock = remainderOf(facts)?.shock ?? 0;
+  return shock > 0 ? "a busy" : shock < 0 ? "a quiet" : "a busy or quiet";
+}
+
+/** When it happened and how sure that is: "since about the week of 21 September (between … and …)". */
+export function changeDate({ change }: ChangeFinding, speech: Speech): string {
   const { inText } = speech.periods;
   const range =
     change.low === change.high ? "" : ` (between ${inText(change.low)} and ${inText(change.high)})`;
-  const when = `Since about ${inText(change.period)}${range}`;
-  const other = alternative
-    ? `; it may instead be a change in ${kindNames[alternative]}, which fits nearly as well`
-    : "";
-  const early = status === "provisional" ? "; an early sign, not yet confirmed" : "";
-  return `${when}${early}${other}.`;
+  return `since about ${inText(change.period)}${range}`;
 }

@@ -1,4 +1,4 @@
-import { changeCaveats, changeHeadline } from "./changeWords.ts";
+import { changeDate, changeHeadline } from "./changeWords.ts";
 import type { SeriesFacts, Voice } from "./facts.ts";
 import { nextSentence, sparkSentence, totalSentence } from "./forecastSentences.ts";
 import { caution } from "./note.ts";
@@ -14,7 +14,7 @@ export function explainSeries(table: string, facts: SeriesFacts, voice: Voice): 
   const total = totalSentence(speech);
   const forecast = [nextSentence(speech), ...(total === "" ? [] : [total])].map((one) => `${capital(one)}.`);
   const headlines = facts.findings.flatMap((one) =>
-    one.code === "change" ? [`${capital(changeHeadline(one, speech))}. ${changeCaveats(one, speech)}`] : [],
+    one.code === "change" ? [`${capital(changeHeadline(one, speech))}; ${changeDate(one, speech)}.`] : [],
   );
   const section = (title: string, lines: readonly string[]) =>
     lines.length > 0 ? ["", title, ...lines.map((line) => `  ${line}`)] : [];

@@ -231,6 +231,8 @@ export interface RunFacts {
   readonly expectedFalseNotices: number;
   /** Earlier notes that could not be delivered and are now sent first. */
   readonly undelivered: readonly { readonly asOf: string; readonly webhook: string }[];
+  /** Told to operations alone; never in a document that must be the same after a retry. */
+  readonly durationMilliseconds?: number;
 }
 
 /** How to speak. */

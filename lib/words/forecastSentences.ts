@@ -1,9 +1,9 @@
-import { roundingStep } from "./numbers.ts";
-import { countOf } from "./spans.ts";
+import { allWhole, roundingStep } from "./numbers.ts";
+import { anOrA, countOf } from "./spans.ts";
 import { sparkline } from "./sparkline.ts";
 import { type Speech, spokenInterval } from "./speech.ts";
 
-/** "about 157 loans in the week of 7 December (range 118 to 203)". */
+/** "about 185 loans in the week of 7 December (155 to 210)". */
 export function nextSentence(speech: Speech): string {
   const { forecast } = speech.facts;
   const interval = spokenInterval(forecast.intervals);
@@ -11,23 +11,31 @@ export function nextSentence(speech: Speech): string {
   return `about ${speech.amount(forecast.point[0], step)} ${speech.periods.when(forecast.periods[0])} ${range(speech, interval.low[0], interval.high[0], step)}`;
 }
 
-/** "about 1,240 in the 8 weeks to come (range 1,050 to 1,460)"; empty with one period only. */
+/** "about 1,400 over all 8 weeks (1,000 to 1,800)"; empty when the forecast is of one period only. */
 export function totalSentence(speech: Speech): string {
   const { forecast, period, history } = speech.facts;
   if (forecast.periods.length < 2) return "";
   const interval = spokenInterval(forecast.total.intervals);
-  const whole = history.values.every((value) => value === null || Number.isInteger(value));
-  const step = roundingStep(interval.high - interval.low, whole);
+  const step = roundingStep(interval.high - interval.low, allWhole(history.values));
   const periods = countOf(forecast.periods.length, period, speech.write);
-  return `all ${periods} together about ${speech.write(forecast.total.point, step)} ${range(speech, interval.low, interval.high, step)}`;
+  return `about ${speech.write(forecast.total.point, step)} over all ${periods} ${range(speech, interval.low, interval.high, step)}`;
 }
 
 function range(speech: Speech, low: number, high: number, step: number): string {
-  return `(range ${speech.write(low, step)} to ${speech.write(high, step)})`;
+  return `(${speech.write(low, step)} to ${speech.write(high, step)})`;
 }
 
-/** "16 weeks past | 8 to come: ▁▂▃|▄▅". */
-export function sparkSentence(speech: Speech, past = 16): string {
+/** Past periods in the small bars of a note. */
+export const barsPast = 12;
+const barsToCome = 8;
+
+/** The small bars of a note: the last twelve periods, then up to eight to come. */
+export function bars({ facts }: Speech): string {
+  return sparkline(facts.history.values.slice(-barsPast), facts.forecast.point.slice(0, barsToCome));
+}
+
+/** "24 weeks past | 8 to come: ▁▂▃|▄▅". */
+export function sparkSentence(speech: Speech, past: number): string {
   const { forecast, history, period } = speech.facts;
   const values = history.values.slice(-past);
   const drawn = sparkline(values, forecast.point);
@@ -35,16 +43,16 @@ export function sparkSentence(speech: Speech, past = 16): string {
   return `${countOf(values.length, period, speech.write)} past | ${speech.write(forecast.point.length, 1)} to come${gaps}: ${drawn}`;
 }
 
-/** "about 20% chance of a week above 420 loans by the week of 25 January", one for each limit set. */
+/** "about 30% chance of a week above 260 loans by the week of 25 January", one for each limit set. */
 export function chanceSentences(speech: Speech): string[] {
   const { forecast, period } = speech.facts;
   const last = forecast.periods.at(-1);
   if (last === undefined) return [];
   return forecast.chances.map(({ direction, limit, any }) => {
     const step = Number.isInteger(limit) ? 1 : 10 ** -Math.min(6, decimals(limit));
-    const times =
+    const time =
       forecast.periods.length === 1 ? speech.periods.when(last) : `by ${speech.periods.inText(last)}`;
-    return `${speech.chance(any)} chance of ${period === "hour" ? "an" : "a"} ${period} ${direction} ${speech.amount(limit, step)} ${times}`;
+    return `${speech.chance(any)} chance of ${anOrA(period)} ${period} ${direction} ${speech.amount(limit, step)} ${time}`;
   });
 }
 

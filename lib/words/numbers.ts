@@ -2,15 +2,17 @@
 export type WriteNumber = (value: number, step: number) => string;
 
 /**
- * The step (a power of ten) that a number may be rounded to when it is known only to within `spread`:
- * one twentieth of the spread or a little less, so that rounding never moves a number by more than a
- * fortieth of its range. Whole-number data never get a step below one.
+ * The step that a number known only to within a range of width `spread` is rounded to: the largest 1 or 5 times a
+ * power of ten within a tenth of the width, so that rounding moves nothing by more than a twentieth of its range.
+ * Whole-number data never get a step below one.
  *
- * @example roundingStep(85, true) // 1
- * @example roundingStep(850, true) // 10
+ * @example roundingStep(85, true) // 5
+ * @example roundingStep(28, true) // 1
  */
 export function roundingStep(spread: number, whole: boolean): number {
-  const step = Number.isFinite(spread) && spread > 0 ? powerBelow(spread / 20) : whole ? 1 : 1e-3;
+  if (!Number.isFinite(spread) || spread <= 0) return whole ? 1 : 1e-3;
+  const power = powerBelow(spread / 10);
+  const step = spread / 10 >= 5 * power ? 5 * power : power;
   return whole ? Math.max(1, step) : step;
 }
 
@@ -26,7 +28,7 @@ function powerBelow(size: number): number {
   return 10 ** Math.floor(Math.log10(size) + 1e-12);
 }
 
-/** Rounds to a multiple of a power-of-ten step, without the noise of binary fractions and without minus zero. */
+/** Rounds to a multiple of a step (1 or 5 times a power of ten), without the noise of binary fractions and without minus zero. */
 export function roundTo(value: number, step: number): number {
   if (!Number.isFinite(value)) return value;
   const rounded =
@@ -50,7 +52,7 @@ export function numberWriter(locale: string): WriteNumber {
     if (!Number.isFinite(rounded)) return "unknown";
     if (Math.abs(rounded) >= 1e9) return large.format(rounded);
     if (step < 1e-7) return rounded === 0 ? "0" : tiny.format(rounded);
-    const digits = Math.max(0, Math.round(-Math.log10(step)));
+    const digits = Math.max(0, Math.ceil(-Math.log10(step) - 1e-9));
     let format = formats.get(digits);
     if (!format) {
       format = new Intl.NumberFormat(locale, {

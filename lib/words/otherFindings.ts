@@ -20,9 +20,9 @@ export function surpriseRemainder(finding: Of<"surprise">, speech: Speech): stri
   const difference = finding.value - finding.expected;
   if (!last) return null;
   if (Math.abs(last.amount) < Math.abs(difference) / 20)
-    return `It will have faded ${speech.periods.when(last.period)}`;
+    return `it will have faded by ${speech.periods.inText(last.period)}`;
   const what = last.amount > 0 ? "adds" : "takes off";
-  return `If nothing else happens it still ${what} about ${speech.roughNumber(Math.abs(last.amount))} ${speech.periods.when(last.period)}`;
+  return `if nothing else happens it still ${what} about ${speech.roughNumber(Math.abs(last.amount))} ${speech.periods.when(last.period)}`;
 }
 
 /** Observed values are told as they were recorded, to at most six digits. */

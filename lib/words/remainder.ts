@@ -52,6 +52,7 @@ export function remainderSentence(speech: Speech): string | null {
   const { before, after } = whose(speech, period);
   const start = `${before} ${shock > 0 ? "surplus" : "shortfall"} of ${size}${after}`;
   const when = speech.periods.when(later.period);
-  if (Math.abs(later.effect) < Math.abs(shock) / 20) return `${start} has faded ${when}`;
+  if (Math.abs(later.effect) < Math.abs(shock) / 20)
+    return `${start} will have faded by ${speech.periods.inText(later.period)}`;
   return `${start} still ${later.effect > 0 ? "adds" : "takes off"} about ${left} ${when}`;
 }

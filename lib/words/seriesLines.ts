@@ -1,7 +1,7 @@
-import { changeCaveats, changeHeadline, changeMeaning } from "./changeWords.ts";
+import { changeDate, changeHeadline, changeMeaning } from "./changeWords.ts";
 import type { Finding } from "./facts.ts";
-import { chanceSentences, nextSentence, sparkSentence, totalSentence } from "./forecastSentences.ts";
-import { sentence } from "./lineWidth.ts";
+import { bars, chanceSentences, nextSentence, totalSentence } from "./forecastSentences.ts";
+import { fits, sentence } from "./lineWidth.ts";
 import {
   forecastNoteSentence,
   gapsSentence,
@@ -13,61 +13,76 @@ import {
 import { remainderSentence } from "./remainder.ts";
 import type { Speech } from "./speech.ts";
 
-/** One line of the account of a series; the smaller the rank, the later it is given up for want of room. */
+/** One line of the account of a series; the larger the rank, the sooner it is given up for want of room. */
 export interface RankedLine {
   readonly rank: number;
   readonly text: string;
 }
 
-const rank = {
+/** The order in which room is given: what to expect and what changed before what it rests on. */
+export const rank = {
   next: 0,
   change: 1,
-  news: 2,
-  meaning: 3,
-  chance: 4,
+  news: 1,
+  meaning: 2,
+  chance: 3,
+  when: 4,
   total: 5,
-  spark: 6,
-  when: 7,
-  small: 8,
+  small: 6,
 } as const;
 
 /** All that the business note could say of one series, in reading order; `label` names it at the start of each line. */
 export function seriesLines(speech: Speech, label: string): RankedLine[] {
-  const next = nextSentence(speech);
-  const total = totalSentence(speech);
-  const both = sentence(label, total === "" ? next : `${next}; ${total}`);
-  const lines: RankedLine[] = [];
-  const add = (at: number, text: string | null) => {
-    if (text !== null && text !== "") lines.push({ rank: at, text: sentence(label, text) });
-  };
-  if ([...both].length <= 160) lines.push({ rank: rank.next, text: both });
-  else {
-    add(rank.next, next);
-    add(rank.total, total);
+  const lines: RankedLine[] = [...expected(speech, label)];
+  for (const finding of speech.facts.findings) {
+    for (const [at, text] of said(finding, speech)) lines.push({ rank: at, text: sentence(label, text) });
   }
-  for (const finding of speech.facts.findings) findingLines(finding, speech, add);
-  for (const chance of chanceSentences(speech)) add(rank.chance, chance);
-  add(rank.spark, sparkSentence(speech));
+  for (const text of chanceSentences(speech)) lines.push({ rank: rank.chance, text: sentence(label, text) });
   return lines;
 }
 
-function findingLines(
-  finding: Finding,
-  speech: Speech,
-  add: (at: number, text: string | null) => void,
-): void {
-  if (finding.code === "change") {
-    if (!finding.fresh) return;
-    add(rank.change, changeHeadline(finding, speech));
-    const meaning = changeMeaning(finding, speech);
-    const rest = finding.kind === "persistence" ? remainderSentence(speech) : null;
-    add(rank.meaning, meaning !== "" && rest ? `${meaning}: ${rest}` : meaning || rest);
-    add(rank.when, changeCaveats(finding, speech));
-  } else if (finding.code === "surprise") {
-    add(rank.news, surpriseSentence(finding, speech));
-    add(rank.meaning, surpriseRemainder(finding, speech));
-  } else if (finding.code === "stale") add(rank.news, staleSentence(finding, speech));
-  else if (finding.code === "revised") add(rank.small, revisedSentence(finding, speech));
-  else if (finding.code === "gaps") add(rank.small, gapsSentence(finding, speech));
-  else if (finding.code === "forecast-note") add(rank.small, forecastNoteSentence(finding, speech));
+/** The next period, the total and the small bars, on one line where they fit, else without bars, else on two. */
+function expected(speech: Speech, label: string): RankedLine[] {
+  const next = nextSentence(speech);
+  const total = totalSentence(speech);
+  if (total === "") return [{ rank: rank.next, text: `${sentence(label, next)} ${bars(speech)}` }];
+  const both = sentence(label, `${next}, ${total}`);
+  const drawn = `${both} ${bars(speech)}`;
+  if (fits(drawn)) return [{ rank: rank.next, text: drawn }];
+  if (fits(both)) return [{ rank: rank.next, text: both }];
+  return [
+    { rank: rank.next, text: sentence(label, next) },
+    { rank: rank.total, text: sentence(label, total) },
+  ];
+}
+
+function said(finding: Finding, speech: Speech): [number, string][] {
+  const line = (at: number, text: string | null): [number, string][] => (text ? [[at, text]] : []);
+  switch (finding.code) {
+    case "change": {
+      if (!finding.fresh) return [];
+      const rest = finding.kind === "persistence" ? remainderSentence(speech) : null;
+      const meaning = [changeMeaning(finding, speech), rest].filter((one) => one !== null && one !== "");
+      return [
+        ...line(rank.change, changeHeadline(finding, speech)),
+        ...line(rank.meaning, meaning.join("; ")),
+        ...line(rank.when, changeDate(finding, speech)),
+      ];
+    }
+    case "surprise":
+      return [
+        ...line(rank.news, surpriseSentence(finding, speech)),
+        ...line(rank.meaning, surpriseRemainder(finding, speech)),
+      ];
+    case "stale":
+      return line(rank.news, staleSentence(finding, speech));
+    case "revised":
+      return line(rank.small, revisedSentence(finding, speech));
+    case "gaps":
+      return line(rank.small, gapsSentence(finding, speech));
+    case "forecast-note":
+      return line(rank.small, forecastNoteSentence(finding, speech));
+    default:
+      return [];
+  }
 }

@@ -42,7 +42,8 @@ export function trackSentence(all: readonly SeriesFacts[], voice: Voice): string
   const write = numberWriter(voice.locale);
   const percent = percentWriter(voice.locale);
   const figures = record.forecasts === 1 ? "figure" : "figures";
-  const inside = `So far ${write(record.insideRange, 1)} of ${write(record.forecasts, 1)} ${figures} fell inside the forecast range (aim: ${percent(record.level)})`;
+  const share = percent(Math.round((record.insideRange / record.forecasts) * 100));
+  const inside = `So far ${write(record.insideRange, 1)} of ${write(record.forecasts, 1)} ${figures} (${share}) fell inside the range, where ${percent(record.level)} should`;
   return record.relativeError === null
     ? `${inside}.`
     : `${inside}; ${missWords(record.relativeError, percent)}.`;
