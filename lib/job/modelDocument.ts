@@ -8,6 +8,8 @@ import type { TrackState } from "./trackRecord.ts";
 /** One series after a run: what people are told, and what the next run goes on from. */
 export interface StoredSeries {
   readonly facts: SeriesFacts;
+  /** Names the values it was made from. */
+  readonly digest: string;
   /** State of the drift room; read back through its own schema. */
   readonly watch: unknown;
   readonly track: TrackState;

@@ -1,0 +1,70 @@
+import type { Notice, ChangeNotice, SurpriseNotice } from "../drift/notice.ts";
+import type { Finding } from "../words/facts.ts";
+
+type ChangeFinding = Extract<Finding, { code: "change" }>;
+type SurpriseFinding = Extract<Finding, { code: "surprise" }>;
+
+/** A change is told anew this long after its notice, and kept for the record up to a half-year of weeks. */
+const toldFor = 12;
+const keptFor = 26;
+/** How long a surprise is spoken of, while what is left of it still matters. */
+const surpriseToldFor = 3;
+/** Outlook of a surprise: what is left after so many periods. */
+const outlook = [1, 4, 12];
+
+/** What turns indexes into periods and shocks into what is left of them. */
+export interface FindingContext {
+  readonly periodOf: (index: number) => string;
+  readonly indexOf: (period: string) => number;
+  /** Index of the newest value. */
+  readonly newest: number;
+  /** ψ weights of the describing model, as far as the outlook reaches. */
+  readonly weights: ArrayLike<number>;
+}
+
+function changeFinding(notice: ChangeNotice, context: FindingContext): ChangeFinding {
+  const { noticedAt, change, ...rest } = notice;
+  return {
+    ...rest,
+    fresh: true,
+    noticed: context.periodOf(noticedAt),
+    change: {
+      period: context.periodOf(change.index),
+      low: context.periodOf(change.low),
+      high: context.periodOf(change.high),
+    },
+  };
+}
+
+function surpriseFinding(notice: SurpriseNotice, context: FindingContext): SurpriseFinding {
+  const { index, ...rest } = notice;
+  const shock = notice.value - notice.expected;
+  const remaining = outlook
+    .filter((after) => after < context.weights.length)
+    .map((after) => ({ after, period: context.periodOf(index + after), amount: shock * context.weights[after] }));
+  return { ...rest, period: context.periodOf(index), remaining };
+}
+
+/**
+ * What the drift room found, with what earlier runs found and is still worth saying. A confirmed change takes the
+ * place of its provisional notice.
+ */
+export function changeFindings(
+  notices: readonly Notice[],
+  earlier: readonly Finding[],
+  context: FindingContext,
+): Finding[] {
+  const age = (period: string) => context.newest - context.indexOf(period);
+  const fresh = notices.map((notice) =>
+    notice.code === "change" ? changeFinding(notice, context) : surpriseFinding(notice, context),
+  );
+  const replaced = new Set(fresh.flatMap((finding) => (finding.code === "change" ? [finding.noticed] : [])));
+  const kept = earlier.flatMap((finding): Finding[] => {
+    if (finding.code === "surprise") return age(finding.period) <= surpriseToldFor ? [finding] : [];
+    if (finding.code !== "change" || replaced.has(finding.noticed) || age(finding.noticed) > keptFor) return [];
+    return [{ ...finding, fresh: age(finding.noticed) <= toldFor }];
+  });
+  const isOld = (finding: Finding) => finding.code === "surprise" && age(finding.period) > surpriseToldFor;
+  const tooOld = (finding: Finding) => finding.code === "change" && age(finding.noticed) > keptFor;
+  return [...fresh.filter((finding) => !isOld(finding) && !tooOld(finding)), ...kept];
+}

@@ -1,0 +1,78 @@
+import { ljungBox } from "../autoregression/ljungBox.ts";
+import { sampleAutocovariances } from "../autoregression/sampleMoments.ts";
+import { autocovariances } from "../autoregression/autocovariances.ts";
+import { characteristicRoots } from "../dynamics/characteristicRoots.ts";
+import { halfLife } from "../dynamics/halfLife.ts";
+import { halfLifeInterval } from "../dynamics/halfLifeInterval.ts";
+import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
+import { persistence } from "../dynamics/persistence.ts";
+import type { DescribingModel } from "../forecast/forecast.ts";
+import type { ModelFacts } from "../words/facts.ts";
+import type { DescribedLevel } from "./describedLevel.ts";
+
+/** Weights and residual autocorrelations kept for pictures. */
+const weightsKept = 27;
+const residualLags = 20;
+
+const orNull = (value: number) => (Number.isFinite(value) ? value : null);
+
+/** Lag-1.. autocorrelations of the residuals that exist. */
+function residualAutocorrelations(residuals: Float64Array): number[] {
+  const lags = Math.min(residualLags, Math.floor(residuals.length / 4));
+  const covariances = sampleAutocovariances(residuals, lags);
+  return Array.from(covariances.subarray(1), (covariance) => (covariances[0] > 0 ? covariance / covariances[0] : 0));
+}
+
+/** Standard deviation around the long-run level, on the scale of the data; infinite without a return to it. */
+function longRunStandardDeviation(model: DescribingModel, level: number): number {
+  const { coefficients, innovationVariance } = model.fit;
+  const variance = autocovariances(coefficients, innovationVariance, 0)[0];
+  // Log-normal (exact): the level is the median, whose mean is level·exp(v/2).
+  if (model.scale === "log") return level * Math.exp(variance / 2) * Math.sqrt(Math.expm1(variance));
+  return Math.sqrt(variance);
+}
+
+/** The dominant complex pair of the model's roots as a rhythm; none when every root is real. */
+function rhythmOf(coefficients: ArrayLike<number>): ModelFacts["rhythm"] {
+  const turning = characteristicRoots(coefficients).filter((root) => Number.isFinite(root.period) && root.period > 2);
+  const dominant = turning.reduce((best, root) => (root.modulus > best.modulus ? root : best), { modulus: 0, period: 0 });
+  return dominant.modulus > 0 ? { length: dominant.period, damping: dominant.modulus } : null;
+}
+
+/** Whether shocks are known to fade: not, when the range of the half-life has no end. */
+function fadingOf(range: { high: number | null }, halfLife: number | null): ModelFacts["fading"] {
+  if (halfLife === null) return "permanent";
+  return range.high === null ? "cannot-tell" : "fades";
+}
+
+/** The describing model in numbers that survive JSON. */
+export function modelFacts(model: DescribingModel, level: DescribedLevel): ModelFacts {
+  const { fit } = model;
+  const lags = Math.max(fit.order + 3, Math.min(residualLags, Math.floor(fit.observations / 5)));
+  const life = orNull(halfLife(fit.coefficients));
+  const interval = halfLifeInterval(fit);
+  const range = { low: orNull(interval.low), high: orNull(interval.high) };
+  return {
+    scale: model.scale,
+    trend: model.trend,
+    season: model.season,
+    relation: model.relation,
+    weight: model.weight,
+    order: fit.order,
+    coefficients: Array.from(fit.coefficients),
+    standardErrors: Array.from(fit.standardErrors, (error) => (Number.isFinite(error) ? error : 0)),
+    persistence: persistence(fit.coefficients),
+    halfLife: life,
+    halfLifeRange: range,
+    longRunLevel: level.value,
+    longRunLevelStandardError: orNull(level.standardError),
+    longRunStandardDeviation: orNull(longRunStandardDeviation(model, level.value)),
+    shockSize: Math.sqrt(fit.innovationVariance),
+    rhythm: rhythmOf(fit.coefficients),
+    weights: Array.from(movingAverageWeights(fit.coefficients, weightsKept)),
+    residualAutocorrelations: residualAutocorrelations(fit.residuals),
+    ljungBox: fit.observations > 2 * lags ? ljungBox(fit.residuals, { lags, fittedParameters: fit.order }) : null,
+    fading: fadingOf(range, life),
+    observations: fit.observations,
+  };
+}
