@@ -1,4 +1,10 @@
 export { criterionWeights } from "./autoregression/criteria.ts";
+export { dickeyFullerTest } from "./autoregression/dickeyFuller.ts";
+export {
+  dickeyFullerCriticalValues,
+  dickeyFullerGlsCriticalValues,
+  dickeyFullerPValue,
+} from "./autoregression/dickeyFullerDistribution.ts";
 export type { AutoregressiveFit, AutoregressiveProcess, EstimationMethod } from "./autoregression/fit.ts";
 export { fitAutoregression } from "./autoregression/fitAutoregression.ts";
 export { generalisedLeastSquares } from "./autoregression/generalisedLeastSquares.ts";
@@ -23,6 +29,7 @@ export { durbinWatson, jarqueBera } from "./autoregression/residualShape.ts";
 export { partialAutocorrelations, sampleAutocovariances } from "./autoregression/sampleMoments.ts";
 export { selectOrder } from "./autoregression/selectOrder.ts";
 export { smoothGaps } from "./autoregression/smoothGaps.ts";
+export { unitRootTest } from "./autoregression/unitRootTest.ts";
 export { advanceMonitor } from "./drift/advanceMonitor.ts";
 export { compareFits, type FitComparison } from "./drift/compareFits.ts";
 export { type BreakOptions, type Breaks, findBreaks } from "./drift/findBreaks.ts";
