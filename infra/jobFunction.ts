@@ -1,8 +1,7 @@
 import { join } from "node:path";
-import { Duration, RemovalPolicy, Stack } from "aws-cdk-lib";
-import { SecurityGroup, Subnet, Vpc } from "aws-cdk-lib/aws-ec2";
+import { Duration, RemovalPolicy } from "aws-cdk-lib";
 import { PolicyStatement, Role, ServicePrincipal } from "aws-cdk-lib/aws-iam";
-import { Architecture, LoggingFormat, Runtime, Tracing } from "aws-cdk-lib/aws-lambda";
+import { Architecture, type CfnFunction, LoggingFormat, Runtime, Tracing } from "aws-cdk-lib/aws-lambda";
 import { NodejsFunction, OutputFormat } from "aws-cdk-lib/aws-lambda-nodejs";
 import { LogGroup, type RetentionDays } from "aws-cdk-lib/aws-logs";
 import { Construct } from "constructs";
@@ -64,7 +63,6 @@ export class JobFunction extends Construct {
       logGroup: this.logGroup,
       loggingFormat: LoggingFormat.JSON,
       environment: { ...props.environment },
-      ...network(this, options),
       bundling: {
         format: OutputFormat.ESM,
         mainFields: ["module", "main"],
@@ -75,6 +73,12 @@ export class JobFunction extends Construct {
         forceDockerBundling: false,
       },
     });
+    if (options.subnetIds !== undefined && options.securityGroupIds !== undefined)
+      // By their ids alone: a VPC construct would have to look the rest up.
+      (this.function.node.defaultChild as CfnFunction).vpcConfig = {
+        subnetIds: options.subnetIds,
+        securityGroupIds: options.securityGroupIds,
+      };
     this.#acknowledge(options, props.statements);
   }
 
@@ -89,7 +93,7 @@ export class JobFunction extends Construct {
         resources: ["*"],
       }),
     ];
-    if (options.vpcId !== undefined)
+    if (options.subnetIds !== undefined)
       statements.push(
         new PolicyStatement({
           actions: [
@@ -107,7 +111,7 @@ export class JobFunction extends Construct {
   }
 
   #acknowledge(options: CheckedOptions, statements: readonly PolicyStatement[]): void {
-    const network = options.vpcId === undefined ? "" : " and Lambda's network interfaces";
+    const network = options.subnetIds === undefined ? "" : " and Lambda's network interfaces";
     acknowledgeWildcards(
       this,
       ["*"],
@@ -119,23 +123,4 @@ export class JobFunction extends Construct {
       "Below a fixed prefix of the store the names of tables and runs are known at run time only.",
     );
   }
-}
-
-/** Given subnets and security groups, by their ids: nothing is looked up, so synthesis stays offline. */
-function network(scope: Construct, options: CheckedOptions) {
-  const { vpcId, subnetIds, securityGroupIds } = options;
-  if (vpcId === undefined || subnetIds === undefined || securityGroupIds === undefined) return {};
-  const zones = subnetIds.map((_, index) => `${Stack.of(scope).region}-${index}`);
-  const vpc = Vpc.fromVpcAttributes(scope, "Vpc", {
-    vpcId,
-    availabilityZones: zones,
-    privateSubnetIds: [...subnetIds],
-  });
-  return {
-    vpc,
-    vpcSubnets: { subnets: subnetIds.map((id, index) => Subnet.fromSubnetId(scope, `Subnet${index}`, id)) },
-    securityGroups: securityGroupIds.map((id, index) =>
-      SecurityGroup.fromSecurityGroupId(scope, `SecurityGroup${index}`, id, { mutable: false }),
-    ),
-  };
 }

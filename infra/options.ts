@@ -58,16 +58,16 @@ export const optionsSchema = z
     kmsKeyArn: z
       .string()
       .regex(
-        /^arn:[a-z-]+:kms:[a-z0-9-]+:\d{12}:key\/[A-Za-z0-9-]+$/,
+        /^arn:[a-z-]+:kms:[a-z0-9-]+:\d{12}:key\/(mrk-[0-9a-f]{32}|[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12})$/,
         "must be the ARN of a KMS key (not an alias)",
       )
       .optional(),
-    vpcId: z
-      .string()
-      .regex(/^vpc-[0-9a-f]+$/, "must look like vpc-0abc")
-      .optional(),
-    subnetIds: list(z.string().regex(/^subnet-[0-9a-f]+$/, "must look like subnet-0abc")).optional(),
-    securityGroupIds: list(z.string().regex(/^sg-[0-9a-f]+$/, "must look like sg-0abc")).optional(),
+    subnetIds: list(
+      z.string().regex(/^subnet-([0-9a-f]{8}|[0-9a-f]{17})$/, "must be ids such as subnet-0123456789abcdef0"),
+    ).optional(),
+    securityGroupIds: list(
+      z.string().regex(/^sg-([0-9a-f]{8}|[0-9a-f]{17})$/, "must be ids such as sg-0123456789abcdef0"),
+    ).optional(),
     alarmTopicArn: z
       .string()
       .regex(/^arn:[a-z-]+:sns:[a-z0-9-]+:\d{12}:[A-Za-z0-9_-]+$/, "must be the ARN of an SNS topic")
@@ -85,9 +85,8 @@ export const optionsSchema = z
   .superRefine((options, context) => {
     const issue = (path: string, message: string) =>
       context.addIssue({ code: "custom", path: [path], message });
-    const network = [options.vpcId, options.subnetIds, options.securityGroupIds];
-    if (network.some((one) => one !== undefined) && network.some((one) => one === undefined))
-      issue("vpcId", "needs subnetIds and securityGroupIds beside it, and they need it");
+    if ((options.subnetIds === undefined) !== (options.securityGroupIds === undefined))
+      issue("subnetIds", "and securityGroupIds need each other: both or neither");
     if (options.alarmTopicArn !== undefined && options.alarmEmail !== undefined)
       issue("alarmEmail", "cannot stand beside alarmTopicArn: subscribe the address to that topic");
     if (
