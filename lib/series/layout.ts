@@ -1,0 +1,110 @@
+import type { DateFormat } from "./dateFormats.ts";
+import { isMissing, parseNumber } from "./numbers.ts";
+import { createRowSplitter } from "./rows.ts";
+
+export interface Row {
+  readonly line: number;
+  readonly cells: string[];
+}
+
+export interface Sample {
+  readonly rows: readonly Row[];
+  readonly comments: readonly { readonly line: number; readonly text: string }[];
+  /** Line of a quote that never closes, when the sample is the whole text. */
+  readonly unclosedQuote?: number;
+}
+
+/** The non-blank rows of a text. `whole` says that the text ends here rather than being cut off. */
+export function sampleRows(text: string, delimiter: string, whole: boolean): Sample {
+  const rows: Row[] = [];
+  const comments: { line: number; text: string }[] = [];
+  const splitter = createRowSplitter(delimiter, {
+    row(cells, line) {
+      if (cells.some((cell) => cell.trim() !== "")) rows.push({ line, cells });
+    },
+    comment: (comment, line) => void comments.push({ line, text: comment }),
+  });
+  splitter.push(text);
+  const { unclosedQuote } = whole ? splitter.end() : {};
+  return { rows, comments, unclosedQuote };
+}
+
+const looksNumeric = (cell: string) =>
+  !Number.isNaN(parseNumber(cell, { decimal: "." })) || !Number.isNaN(parseNumber(cell, { decimal: "," }));
+
+/** What the cells of one column are. */
+export interface ColumnCounts {
+  readonly numbers: number;
+  readonly missing: number;
+  readonly texts: number;
+}
+
+export function countColumn(rows: readonly Row[], column: number): ColumnCounts {
+  let numbers = 0;
+  let missing = 0;
+  for (const { cells } of rows) {
+    const cell = cells[column] ?? "";
+    if (isMissing(cell)) missing++;
+    else if (looksNumeric(cell)) numbers++;
+  }
+  return { numbers, missing, texts: rows.length - numbers - missing };
+}
+
+/** Rows whose cell in a column is written in a format. */
+export function countDates(rows: readonly Row[], column: number, format: DateFormat): number {
+  const cell = { day: 0, clock: -1, offset: 0, first: 0, second: 0, year: 0, grain: "day" as const };
+  let found = 0;
+  for (const { cells } of rows) {
+    const text = cells[column];
+    if (text !== undefined && text !== "" && format.read(text.trim(), cell)) found++;
+  }
+  return found;
+}
+
+export interface DateColumn {
+  readonly column: number;
+  readonly format: DateFormat;
+  readonly found: number;
+}
+
+/** The column and format that read as dates in most rows; `undefined` when fewer than half of the rows do. */
+export function findDateColumn(
+  rows: readonly Row[],
+  formats: readonly DateFormat[],
+  columns: readonly number[],
+): DateColumn | undefined {
+  let best: DateColumn | undefined;
+  for (const column of columns) {
+    for (const format of formats) {
+      const found = countDates(rows, column, format);
+      if (found > (best?.found ?? 0)) best = { column, format, found };
+    }
+  }
+  return best;
+}
+
+export const delimiters = [",", ";", "\t", "|"] as const;
+
+/**
+ * The delimiter under which most rows hold a date of an unmistakable format beside another cell; failing that, most
+ * rows with two cells or more of which one is a number.
+ */
+export function findDelimiter(text: string, whole: boolean, formats: readonly DateFormat[]): string {
+  const clear = formats.filter((format) => !format.digitsOnly);
+  let best = ",";
+  let bestScore = 0;
+  for (const delimiter of delimiters) {
+    const rows = sampleRows(text, delimiter, whole).rows.filter(({ cells }) => cells.length > 1);
+    if (rows.length === 0) continue;
+    const width = Math.min(40, Math.max(...rows.map(({ cells }) => cells.length)));
+    const columns = Array.from({ length: width }, (_, at) => at);
+    const dates = findDateColumn(rows, clear, columns)?.found ?? 0;
+    const numbers = rows.filter(({ cells }) => cells.some(looksNumeric)).length;
+    const score = dates * 4 + numbers + rows.length * 0.1;
+    if (score > bestScore) {
+      best = delimiter;
+      bestScore = score;
+    }
+  }
+  return best;
+}
