@@ -1,3 +1,4 @@
+import { numberFormat } from "../words/formats.ts";
 import type { Speech } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { html, type Markup } from "./markup.ts";
@@ -14,7 +15,7 @@ export function autocorrelationChart(id: string, speech: Speech, locale: string)
   const x = (lag: number) => round(((lag - 0.5) / values.length) * side);
   const y = (value: number) => round(scale(value));
   const outside = values.filter((value) => Math.abs(value) > band).length;
-  const number = new Intl.NumberFormat(locale, { maximumFractionDigits: 2 });
+  const number = numberFormat(locale, { maximumFractionDigits: 2 });
   const every = Math.ceil(values.length / 6);
   return plot({
     id,

@@ -1,3 +1,4 @@
+import { numberFormat } from "../words/formats.ts";
 import type { Speech } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { html, type Markup } from "./markup.ts";
@@ -33,7 +34,7 @@ export function coefficientChart(id: string, speech: Speech, locale: string): Ma
   const y = (value: number) => round(scale(value));
   const shift = Math.min(14, 120 / count);
   const every = Math.ceil(count / 8);
-  const number = new Intl.NumberFormat(locale, { maximumFractionDigits: place < 0.1 ? 2 : 1 });
+  const number = numberFormat(locale, { maximumFractionDigits: place < 0.1 ? 2 : 1 });
   return plot({
     id,
     title: "Coefficients by lag, now and before",

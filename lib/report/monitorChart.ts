@@ -1,5 +1,6 @@
 import { line } from "d3-shape";
 import type { MonitorFacts } from "../words/facts.ts";
+import { numberFormat } from "../words/formats.ts";
 import type { Speech } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { html, type Markup } from "./markup.ts";
@@ -39,7 +40,7 @@ function monitorChart(
   const latest = last === -1 ? null : statistics[last];
   const crossed = statistics.findIndex((value) => value !== null && value >= boundary);
   const verdict = crossed === -1 ? "It has stayed below." : `It passed it at look ${crossed + 1}.`;
-  const number = new Intl.NumberFormat(locale, { maximumFractionDigits: place < 1 ? 1 : 0 });
+  const number = numberFormat(locale, { maximumFractionDigits: place < 1 ? 1 : 0 });
   return plot({
     id,
     title: `${names[kind]}: watched statistic by look`,

@@ -50,7 +50,7 @@ function shortened(was: string, now: string): string {
 function pair(before: number, after: number, speech: Speech): readonly [string, string] {
   const step = (digits: number) =>
     Math.min(significantStep(before, digits, false), significantStep(after, digits, false));
-  const digits = [2, 3, 4, 5].find((one) => roundTo(before, step(one)) !== roundTo(after, step(one))) ?? 6;
+  const digits = [2, 3, 4, 5].find((one) => roundTo(before, step(one)) !== roundTo(after, step(one))) ?? 2;
   return [speech.write(before, step(digits)), speech.amount(after, step(digits))];
 }
 
@@ -59,10 +59,13 @@ function slopeWords(slope: number, speech: Speech): string {
   return slope > 0 ? `rises by ${size}` : slope < 0 ? `falls by ${size}` : "stays flat";
 }
 
+/** Ratios this near to one are not told as a difference. */
+const aboutEqual = 0.005;
+
 /** "about twice as large", "about 1.5 times as large", "about 40% smaller". */
 function ratioWords(ratio: number, speech: Speech): string {
   if (!Number.isFinite(ratio)) return "larger";
-  if (Math.abs(ratio - 1) < 0.005) return "about as large as before";
+  if (Math.abs(ratio - 1) < aboutEqual) return "about as large as before";
   if (ratio >= 1.95 && ratio <= 2.05) return "about twice as large";
   if (ratio >= 1.5) return `about ${speech.write(ratio, ratio < 10 ? 0.1 : 1)} times as large`;
   if (ratio >= 1) return `about ${speech.percent(Math.round((ratio - 1) * 100))} larger`;
@@ -87,8 +90,8 @@ function changeWords(finding: ChangeFinding, speech: Speech): string {
     case "level": {
       const [was, is] = pair(before.level, after.level, speech);
       const moved = direction(before.level, after.level);
-      const word = moved === "up" ? "higher" : moved === "down" ? "lower" : "moved";
-      return `the usual level is ${word}: about ${is} ${anOrA(period)} ${period} now, ${was} before`;
+      const word = moved === "up" ? "is higher" : moved === "down" ? "is lower" : "hardly moved";
+      return `the usual level ${word}: about ${is} ${anOrA(period)} ${period} now, ${was} before`;
     }
     case "trend":
       return `the trend changed: it now ${slopeWords(after.slope, speech)}; before, it ${past(slopeWords(before.slope, speech))}`;
@@ -121,6 +124,7 @@ export function changeMeaning(finding: ChangeFinding, speech: Speech): string {
     case "trend":
       return "plan along the new trend";
     case "shock-size":
+      if (Math.abs(finding.after.shockSize / finding.before.shockSize - 1) < aboutEqual) return "";
       return finding.after.shockSize > finding.before.shockSize
         ? "keep more in reserve than before"
         : "less reserve is needed than before";

@@ -1,8 +1,9 @@
 import type { Voice } from "./facts.ts";
+import { dateFormat } from "./formats.ts";
 
 /** Dates of runs in the reader's time zone: "Monday 30 November 2026". */
 export function dateWriter(voice: Voice): (instant: string) => string {
-  const format = new Intl.DateTimeFormat(voice.locale, {
+  const format = dateFormat(voice.locale, {
     timeZone: voice.timeZone,
     weekday: "long",
     day: "numeric",
@@ -14,7 +15,7 @@ export function dateWriter(voice: Voice): (instant: string) => string {
 
 /** The same with the time of day. */
 export function timeWriter(voice: Voice): (instant: string) => string {
-  const format = new Intl.DateTimeFormat(voice.locale, {
+  const format = dateFormat(voice.locale, {
     timeZone: voice.timeZone,
     day: "numeric",
     month: "long",

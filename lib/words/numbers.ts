@@ -1,3 +1,5 @@
+import { numberFormat } from "./formats.ts";
+
 /** Writes a number so that its last digit is the place of `step`. */
 export type WriteNumber = (value: number, step: number) => string;
 
@@ -40,28 +42,21 @@ export function roundTo(value: number, step: number): number {
 
 /** Numbers as a locale writes them; beyond a thousand million in words, below a millionth by significant digits. */
 export function numberWriter(locale: string): WriteNumber {
-  const formats = new Map<number, Intl.NumberFormat>();
-  const large = new Intl.NumberFormat(locale, {
-    notation: "compact",
-    compactDisplay: "long",
-    maximumSignificantDigits: 3,
-  });
-  const tiny = new Intl.NumberFormat(locale, { notation: "scientific", maximumSignificantDigits: 3 });
   return (value, step) => {
     const rounded = roundTo(value, step);
     if (!Number.isFinite(rounded)) return "unknown";
-    if (Math.abs(rounded) >= 1e9) return large.format(rounded);
-    if (step < 1e-7) return rounded === 0 ? "0" : tiny.format(rounded);
-    const digits = Math.max(0, Math.ceil(-Math.log10(step) - 1e-9));
-    let format = formats.get(digits);
-    if (!format) {
-      format = new Intl.NumberFormat(locale, {
-        minimumFractionDigits: digits,
-        maximumFractionDigits: digits,
-      });
-      formats.set(digits, format);
-    }
-    return format.format(rounded);
+    if (Math.abs(rounded) >= 1e9)
+      return numberFormat(locale, {
+        notation: "compact",
+        compactDisplay: "long",
+        maximumSignificantDigits: 3,
+      }).format(rounded);
+    if (step < 1e-7 && rounded !== 0)
+      return numberFormat(locale, { notation: "scientific", maximumSignificantDigits: 3 }).format(rounded);
+    const digits = step < 1e-7 ? 0 : Math.max(0, Math.ceil(-Math.log10(step) - 1e-9));
+    return numberFormat(locale, { minimumFractionDigits: digits, maximumFractionDigits: digits }).format(
+      rounded,
+    );
   };
 }
 

@@ -1,4 +1,5 @@
 import type { Period } from "../series/series.ts";
+import { dateFormat } from "./formats.ts";
 
 const hour = 3_600_000;
 
@@ -49,8 +50,7 @@ export interface PeriodNames {
 export function periodNames(period: Period, locale: string, timeZone: string, now: string): PeriodNames {
   const zone = period === "hour" ? timeZone : "UTC";
   const format = (options: Intl.DateTimeFormatOptions) => {
-    const made = new Intl.DateTimeFormat(locale, { timeZone: zone, ...options });
-    return (start: string) => made.format(instantOf(start));
+    return (start: string) => dateFormat(locale, { timeZone: zone, ...options }).format(instantOf(start));
   };
   const near = (start: string) => Math.abs(instantOf(start) - instantOf(now)) < 183 * 24 * hour;
   const yearly = (short: (start: string) => string, long: (start: string) => string) => (start: string) =>

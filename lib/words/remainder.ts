@@ -11,24 +11,34 @@ export interface Remainder {
 }
 
 /**
- * The latest shock and the first coming period in which half of it or less is left, else the last of the forecast.
- * A model of logarithms tells effects as shares; they are turned into amounts against the value or forecast they
- * act on: `amount = value · (1 − e^(−effect))`. `null` when nothing is known of the latest period's shock.
+ * A shock worth telling, and the first coming period in which half of it or less is left, else the last of the
+ * forecast. It is the latest period's shock unless that was small (below half the usual size); then the one that
+ * moves the forecast most; `null` when that is small too. A model of logarithms tells effects as shares; they are
+ * turned into amounts against the value or forecast they act on: `amount = value · (1 − e^(−effect))`.
  */
 export function remainderOf(facts: SeriesFacts): Remainder | null {
-  const latest = facts.attribution?.shocks.find((one) => one.period === facts.lastPeriod);
-  if (!latest || latest.effects.length === 0) return null;
-  const found = latest.effects.findIndex((effect) => Math.abs(effect) <= Math.abs(latest.shock) / 2);
-  const index = found === -1 ? latest.effects.length - 1 : found;
-  const later = { period: facts.forecast.periods[index], effect: latest.effects[index] };
-  if (facts.model.scale === "raw") return { period: latest.period, shock: latest.shock, later };
-  const value = facts.history.values.at(-1);
-  if (value === null || value === undefined) return null;
+  const { attribution, forecast, model } = facts;
+  const latest = attribution?.shocks.find((one) => one.period === facts.lastPeriod);
+  const told = [latest, attribution?.shocks[0]].find(
+    (one) => one !== undefined && one.effects.length > 0 && Math.abs(one.shock) >= model.shockSize / 2,
+  );
+  if (!told) return null;
+  const found = told.effects.findIndex((effect) => Math.abs(effect) <= Math.abs(told.shock) / 2);
+  const index = found === -1 ? told.effects.length - 1 : found;
+  const later = { period: forecast.periods[index], effect: told.effects[index] };
+  if (model.scale === "raw") return { period: told.period, shock: told.shock, later };
+  const value = valueAt(facts, told.period);
+  if (value === null) return null;
   return {
-    period: latest.period,
-    shock: value * -Math.expm1(-latest.shock),
-    later: { period: later.period, effect: facts.forecast.point[index] * -Math.expm1(-later.effect) },
+    period: told.period,
+    shock: value * -Math.expm1(-told.shock),
+    later: { period: later.period, effect: forecast.point[index] * -Math.expm1(-later.effect) },
   };
+}
+
+function valueAt({ history, period }: SeriesFacts, start: string): number | null {
+  const index = history.values.findIndex((_, at) => addPeriods(history.start, period, at) === start);
+  return index === -1 ? null : history.values[index];
 }
 
 /** "last week's" when it is just over, else "the" with the period named by `of`. */

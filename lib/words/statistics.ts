@@ -1,3 +1,4 @@
+import { numberFormat } from "./formats.ts";
 import { numberWriter, significantStep } from "./numbers.ts";
 
 /** Numbers for analysts. */
@@ -15,8 +16,8 @@ export interface Statistics {
 export function statisticsWriter(locale: string): Statistics {
   const write = numberWriter(locale);
   const options = { minimumFractionDigits: 3, maximumFractionDigits: 3 };
-  const plain = new Intl.NumberFormat(locale, options);
-  const withSign = new Intl.NumberFormat(locale, { ...options, signDisplay: "exceptZero" });
+  const plain = numberFormat(locale, options);
+  const withSign = numberFormat(locale, { ...options, signDisplay: "exceptZero" });
   const noMinusZero = (value: number) => (Math.abs(value) < 0.0005 ? 0 : value);
   return {
     size: (value) => write(value, significantStep(value, 3, false)),
