@@ -55,7 +55,13 @@ export {
 } from "./drift/watchSeries.ts";
 export { autocovariances } from "./dynamics/autocovariances.ts";
 export { characteristicRoots, rhythm } from "./dynamics/characteristicRoots.ts";
+export { biasCorrected, firstOrderBias } from "./dynamics/firstOrderBias.ts";
 export { halfLife } from "./dynamics/halfLife.ts";
+export {
+  leastSquaresMean,
+  leastSquaresQuantile,
+  medianUnbiased,
+} from "./dynamics/leastSquaresDistribution.ts";
 export { longRun, spectralDensity } from "./dynamics/longRun.ts";
 export { movingAverageWeights } from "./dynamics/movingAverageWeights.ts";
 export { cumulativeResponse, persistence } from "./dynamics/persistence.ts";
