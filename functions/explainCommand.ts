@@ -1,6 +1,7 @@
 import { asOfText } from "../lib/job/keys.ts";
 import { loadSettings } from "../lib/job/loadSettings.ts";
 import { readFacts } from "../lib/job/readBack.ts";
+import { voiceOf } from "../lib/job/voice.ts";
 import { explainSeries } from "../lib/words/explainSeries.ts";
 import type { CommandOptions } from "./commands.ts";
 import { say } from "./terminal.ts";
@@ -23,12 +24,7 @@ export async function explainCommand(words: readonly string[], options: CommandO
     say(JSON.stringify({ table, asOf: found.asOf, series: chosen }, null, 2));
     return 0;
   }
-  const voice = {
-    locale: settings.locale,
-    timeZone: settings.timeZone,
-    quietWhenSteady: settings.quietWhenSteady,
-    reportBase: settings.reportBase ?? null,
-  };
+  const voice = voiceOf(settings);
   for (const facts of chosen) say(...explainSeries(table, facts, voice), "");
   return 0;
 }

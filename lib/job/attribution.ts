@@ -24,6 +24,10 @@ export function attributionFacts(
   const told = [...shocks].sort((a, b) => influence(b.effects) - influence(a.effects)).slice(0, shocksTold);
   return {
     longRunLevel,
-    shocks: told.map(({ index, shock, effects }) => ({ period: periodOf(index), shock, effects: Array.from(effects) })),
+    shocks: told.map(({ index, shock, effects }) => ({
+      period: periodOf(index),
+      shock,
+      effects: Array.from(effects),
+    })),
   };
 }

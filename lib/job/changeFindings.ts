@@ -1,4 +1,4 @@
-import type { Notice, ChangeNotice, SurpriseNotice } from "../drift/notice.ts";
+import type { ChangeNotice, Notice, SurpriseNotice } from "../drift/notice.ts";
 import type { Finding } from "../words/facts.ts";
 
 type ChangeFinding = Extract<Finding, { code: "change" }>;
@@ -41,7 +41,11 @@ function surpriseFinding(notice: SurpriseNotice, context: FindingContext): Surpr
   const shock = notice.value - notice.expected;
   const remaining = outlook
     .filter((after) => after < context.weights.length)
-    .map((after) => ({ after, period: context.periodOf(index + after), amount: shock * context.weights[after] }));
+    .map((after) => ({
+      after,
+      period: context.periodOf(index + after),
+      amount: shock * context.weights[after],
+    }));
   return { ...rest, period: context.periodOf(index), remaining };
 }
 
@@ -55,16 +59,22 @@ export function changeFindings(
   context: FindingContext,
 ): Finding[] {
   const age = (period: string) => context.newest - context.indexOf(period);
-  const fresh = notices.map((notice) =>
+  const made = notices.map((notice) =>
     notice.code === "change" ? changeFinding(notice, context) : surpriseFinding(notice, context),
   );
-  const replaced = new Set(fresh.flatMap((finding) => (finding.code === "change" ? [finding.noticed] : [])));
-  const kept = earlier.flatMap((finding): Finding[] => {
+  const confirmed = noticesOf(
+    made.filter((finding) => finding.code === "change" && finding.status === "confirmed"),
+  );
+  const superseded = (finding: Finding) =>
+    finding.code === "change" && finding.status === "provisional" && confirmed.has(finding.noticed);
+  return [...made, ...earlier].flatMap((finding): Finding[] => {
     if (finding.code === "surprise") return age(finding.period) <= surpriseToldFor ? [finding] : [];
-    if (finding.code !== "change" || replaced.has(finding.noticed) || age(finding.noticed) > keptFor) return [];
+    if (finding.code !== "change" || superseded(finding) || age(finding.noticed) > keptFor) return [];
     return [{ ...finding, fresh: age(finding.noticed) <= toldFor }];
   });
-  const isOld = (finding: Finding) => finding.code === "surprise" && age(finding.period) > surpriseToldFor;
-  const tooOld = (finding: Finding) => finding.code === "change" && age(finding.noticed) > keptFor;
-  return [...fresh.filter((finding) => !isOld(finding) && !tooOld(finding)), ...kept];
+}
+
+/** The periods in which changes were noticed: they tell changes of one series apart. */
+function noticesOf(findings: readonly Finding[]): Set<string> {
+  return new Set(findings.flatMap((finding) => (finding.code === "change" ? [finding.noticed] : [])));
 }

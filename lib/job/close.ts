@@ -16,6 +16,7 @@ import { readOwedMessages } from "./owedMessages.ts";
 import { type PostingContext, postMessage } from "./postMessage.ts";
 import type { Settings } from "./settings.ts";
 import type { DeliveryRecord, Plan } from "./summary.ts";
+import { voiceOf } from "./voice.ts";
 
 export interface Closing {
   readonly store: ObjectStore;
@@ -24,6 +25,8 @@ export interface Closing {
   readonly posting: PostingContext;
   /** First marks of notes that earlier runs could not deliver. */
   readonly undelivered: readonly string[];
+  /** How long the run has taken so far. */
+  readonly elapsedMilliseconds: () => number;
 }
 
 export interface Closed {
@@ -31,13 +34,6 @@ export interface Closed {
   readonly report: string;
   readonly deliveries: readonly DeliveryRecord[];
 }
-
-const voiceOf = (settings: Settings): Voice => ({
-  locale: settings.locale,
-  timeZone: settings.timeZone,
-  quietWhenSteady: settings.quietWhenSteady,
-  reportBase: settings.reportBase ?? null,
-});
 
 /** The parts of one audience's message, with a new part for tables that no part speaks of yet. */
 async function messageParts(
@@ -53,7 +49,8 @@ async function messageParts(
   const tables = facts.tables.filter(isNew);
   const failed = facts.failed.filter(isNew);
   if (parts.length > 0 && tables.length + failed.length === 0) return parts;
-  const rest = { ...facts, tables, failed };
+  const durationMilliseconds = audience === "operations" ? closing.elapsedMilliseconds() : undefined;
+  const rest = { ...facts, tables, failed, durationMilliseconds };
   return [...parts, await createMessage(store, rest, voice, audience, parts.length + 1)];
 }
 

@@ -1,5 +1,5 @@
-import type { DescribingModel } from "../forecast/forecast.ts";
 import { describingColumns } from "../forecast/describingTerms.ts";
+import type { DescribingModel } from "../forecast/forecast.ts";
 
 /** Where a series returns to, on the scale of the data. */
 export interface DescribedLevel {
@@ -38,6 +38,7 @@ export function describedLevel(model: DescribingModel): DescribedLevel {
     value = terms.coefficients[0] + (model.trend ? terms.coefficients[1] : 0);
     standardError = model.trend ? Number.NaN : terms.standardErrors[0];
   }
-  if (model.scale === "log") return { value: Math.exp(value), standardError: Math.exp(value) * standardError };
+  if (model.scale === "log")
+    return { value: Math.exp(value), standardError: Math.exp(value) * standardError };
   return { value, standardError };
 }

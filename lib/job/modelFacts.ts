@@ -1,6 +1,6 @@
 import { ljungBox } from "../autoregression/ljungBox.ts";
 import { sampleAutocovariances } from "../autoregression/sampleMoments.ts";
-import { autocovariances } from "../autoregression/autocovariances.ts";
+import { autocovariances } from "../dynamics/autocovariances.ts";
 import { characteristicRoots } from "../dynamics/characteristicRoots.ts";
 import { halfLife } from "../dynamics/halfLife.ts";
 import { halfLifeInterval } from "../dynamics/halfLifeInterval.ts";
@@ -20,7 +20,9 @@ const orNull = (value: number) => (Number.isFinite(value) ? value : null);
 function residualAutocorrelations(residuals: Float64Array): number[] {
   const lags = Math.min(residualLags, Math.floor(residuals.length / 4));
   const covariances = sampleAutocovariances(residuals, lags);
-  return Array.from(covariances.subarray(1), (covariance) => (covariances[0] > 0 ? covariance / covariances[0] : 0));
+  return Array.from(covariances.subarray(1), (covariance) =>
+    covariances[0] > 0 ? covariance / covariances[0] : 0,
+  );
 }
 
 /** Standard deviation around the long-run level, on the scale of the data; infinite without a return to it. */
@@ -34,8 +36,13 @@ function longRunStandardDeviation(model: DescribingModel, level: number): number
 
 /** The dominant complex pair of the model's roots as a rhythm; none when every root is real. */
 function rhythmOf(coefficients: ArrayLike<number>): ModelFacts["rhythm"] {
-  const turning = characteristicRoots(coefficients).filter((root) => Number.isFinite(root.period) && root.period > 2);
-  const dominant = turning.reduce((best, root) => (root.modulus > best.modulus ? root : best), { modulus: 0, period: 0 });
+  const turning = characteristicRoots(coefficients).filter(
+    (root) => Number.isFinite(root.period) && root.period > 2,
+  );
+  const dominant = turning.reduce((best, root) => (root.modulus > best.modulus ? root : best), {
+    modulus: 0,
+    period: 0,
+  });
   return dominant.modulus > 0 ? { length: dominant.period, damping: dominant.modulus } : null;
 }
 
@@ -71,7 +78,8 @@ export function modelFacts(model: DescribingModel, level: DescribedLevel): Model
     rhythm: rhythmOf(fit.coefficients),
     weights: Array.from(movingAverageWeights(fit.coefficients, weightsKept)),
     residualAutocorrelations: residualAutocorrelations(fit.residuals),
-    ljungBox: fit.observations > 2 * lags ? ljungBox(fit.residuals, { lags, fittedParameters: fit.order }) : null,
+    ljungBox:
+      fit.observations > 2 * lags ? ljungBox(fit.residuals, { lags, fittedParameters: fit.order }) : null,
     fading: fadingOf(range, life),
     observations: fit.observations,
   };

@@ -1,8 +1,8 @@
 import { createHash } from "node:crypto";
 import type { PastBreak } from "../drift/lastBreak.ts";
+import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
 import type { Forecast } from "../forecast/forecast.ts";
 import { forecastSeries } from "../forecast/forecastSeries.ts";
-import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
 import { periodIndex, periodStart } from "../series/periods.ts";
 import type { Series } from "../series/series.ts";
 import type { TableSettings } from "../series/tableSettings.ts";
@@ -33,10 +33,22 @@ export interface SeriesTask {
 /** How much of the past pictures and sentences are given, by period. */
 const historyKept = { hour: 336, day: 182, week: 156, month: 120, quarter: 80, year: 120 } as const;
 
-/** Names the values of a series whatever the store: a revision anywhere in the past changes it. */
-export function valuesDigest(series: Series): string {
+/**
+ * Names what an account of a series rests on: every value (a revision anywhere in the past changes it) and the
+ * settings that shape it.
+ */
+export function seriesDigest(series: Series, task: Pick<SeriesTask, "settings" | "tableSettings">): string {
+  const { horizon, levels, falseAlarmRate } = task.settings;
+  const shaping = {
+    start: series.start,
+    period: series.period,
+    horizon,
+    levels,
+    falseAlarmRate,
+    table: task.tableSettings,
+  };
   const bytes = new Uint8Array(series.values.buffer, series.values.byteOffset, series.values.byteLength);
-  return createHash("sha256").update(series.start).update(bytes).digest("hex").slice(0, 32);
+  return createHash("sha256").update(JSON.stringify(shaping)).update(bytes).digest("hex").slice(0, 32);
 }
 
 /** Repeats the last season, or the last value where there is none. Gaps are passed over. */
@@ -84,7 +96,9 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
   const indexOf = (period: string) => periodIndex(series.start, series.period, period);
   const horizon = task.tableSettings.horizon ?? task.settings.horizon;
 
-  const first = previous ? undefined : forecastOf(series, task, seedOf(task.table, series.name, task.asOf), undefined);
+  const first = previous
+    ? undefined
+    : forecastOf(series, task, seedOf(task.table, series.name, task.asOf), undefined);
   const watched = advanceWatch(previous?.stored.watch, {
     values,
     falseAlarmRate: task.settings.falseAlarmRate,
@@ -144,5 +158,5 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
       coverage80: orNull(forecast.backTest.coverage80),
     },
   };
-  return { facts, digest: valuesDigest(series), watch: watched.watch, track };
+  return { facts, digest: seriesDigest(series, task), watch: watched.watch, track };
 }

@@ -1,15 +1,23 @@
+import type { Reading } from "../series/reading.ts";
 import { readTable } from "../series/readTable.ts";
-import type { Problem } from "../series/series.ts";
+import type { Problem, Series } from "../series/series.ts";
 import { type ObjectStore, StoreError } from "../store/objectStore.ts";
+import { carryOver } from "./carryOver.ts";
+import { dataFindings } from "./dataFindings.ts";
 import type { ProblemsDocument } from "./digest.ts";
 import { createDocument, encodeText } from "./documents.ts";
 import { forecastCsv } from "./forecastCsv.ts";
 import { forecastKey, latestForecastKey, modelKey, problemsKey } from "./keys.ts";
-import { type ModelDocument, type ModelShelf, readModel, readModelShelf } from "./modelDocument.ts";
+import {
+  type ModelDocument,
+  type ModelShelf,
+  readModel,
+  readModelShelf,
+  type StoredSeries,
+} from "./modelDocument.ts";
 import { readSource } from "./readSource.ts";
-import { refitSeries } from "./refitSeries.ts";
+import { refitSeries, type SeriesTask, seriesDigest } from "./refitSeries.ts";
 import type { Settings } from "./settings.ts";
-import { readTableEvents } from "./tableEvents.ts";
 
 interface TableTask {
   readonly store: ObjectStore;
@@ -42,30 +50,40 @@ async function fail(task: TableTask, problems: readonly Problem[]): Promise<Tabl
   return { status: "failed", problems: standing.problems };
 }
 
+/** Refits a series, or carries its last account over when not one value changed. */
+function refitOrCarry(
+  series: Series,
+  task: Omit<SeriesTask, "dataFindings">,
+  reading: Reading | null,
+): StoredSeries {
+  const { previous, settings, tableSettings, asOf } = task;
+  const findings = dataFindings(series, previous?.stored, { asOf, settings, tableSettings, reading });
+  if (previous && previous.stored.digest === seriesDigest(series, task))
+    return carryOver(previous.stored, findings);
+  return refitSeries(series, { ...task, dataFindings: findings });
+}
+
 async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutcome> {
   const { store, asOf, table, settings } = task;
   const source = await readSource(store, table);
-  if (!source)
-    return fail(task, [
-      {
-        table,
-        code: "gone",
-        message: "the file was there when the run began and is gone",
-        remedy: "put it back",
-        fatal: true,
-      },
-    ]);
+  if (!source) {
+    const message = "the file was there when the run began and is gone";
+    return fail(task, [{ table, code: "gone", message, remedy: "put it back", fatal: true }]);
+  }
   const tableSettings = settings.tables[table] ?? {};
+  const { timeZone, locale } = settings;
   const { series, problems, reading } = readTable(source.bytes, tableSettings, {
     asOf,
-    timeZone: settings.timeZone,
-    locale: settings.locale,
+    timeZone,
+    locale,
     table,
   });
   if (series.length === 0 || problems.some((problem) => problem.fatal)) return fail(task, problems);
   const previous =
     shelf.previousAsOf === undefined ? undefined : await readModel(store, table, shelf.previousAsOf);
-  const events = await readTableEvents(store, table, settings);
+  const earlier = new Map(
+    previous?.series.map((stored) => [stored.facts.series, { asOf: previous.asOf, stored }]),
+  );
   const made: ModelDocument = {
     schema: 1,
     table,
@@ -74,7 +92,7 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     reading,
     problems,
     series: series.map((one) =>
-      refitSeries(one, { asOf, table, settings, tableSettings, reading, previous, events }),
+      refitOrCarry(one, { asOf, table, settings, tableSettings, previous: earlier.get(one.name) }, reading),
     ),
   };
   const model = await createDocument(store, modelKey(table, asOf), made);
@@ -101,7 +119,7 @@ export async function refitTable(task: TableTask): Promise<TableOutcome> {
     if (error instanceof StoreError) throw error;
     const message = error instanceof Error ? error.message : String(error);
     const remedy =
-      "look at the table around its newest values; if they are right, report this as a fault of ebbwire";
+      "look at the table's newest rows; if they are right, please report this with the table's name";
     return fail(task, [{ table, code: "not-fitted", message, remedy, fatal: true }]);
   }
 }

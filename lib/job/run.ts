@@ -98,6 +98,7 @@ async function close(
     plan,
     settings,
     undelivered,
+    elapsedMilliseconds: () => clock() - began,
     posting: {
       store,
       webhooks: options.webhooks ?? settings.webhooks,
