@@ -1,4 +1,5 @@
-import { checkStore, describeCheck } from "../lib/job/check.ts";
+import { checkStore } from "../lib/job/check.ts";
+import { describeCheck } from "../lib/job/describeCheck.ts";
 import type { CommandOptions } from "./commands.ts";
 import { say } from "./terminal.ts";
 import { instantOf, storeOf } from "./usage.ts";

@@ -1,0 +1,172 @@
+import { periodStart } from "../series/periods.ts";
+import { periodsLate } from "../series/periodsLate.ts";
+import { nearestName } from "../series/problems.ts";
+import { type KnownEvent, readEvents } from "../series/readEvents.ts";
+import type { Reading } from "../series/reading.ts";
+import { readTable } from "../series/readTable.ts";
+import type { Period, Problem, Series } from "../series/series.ts";
+import type { ObjectStore } from "../store/objectStore.ts";
+import { decodeText } from "./documents.ts";
+import { asOfText, seriesPrefix, settingsKey, tableNameFault, tableOfKey } from "./keys.ts";
+import { readSource } from "./readSource.ts";
+import { parseSettings, type Settings } from "./settings.ts";
+
+/** One series as it would be forecast. */
+export interface CheckedSeries {
+  readonly name: string;
+  readonly period: Period;
+  readonly start: string;
+  readonly lastPeriod: string;
+  readonly observed: number;
+  readonly gaps: number;
+  /** Start of the newest gap, if any. */
+  readonly latestGap: string | null;
+  /** Periods that are over and have no value yet. */
+  readonly periodsLate: number;
+}
+
+export interface CheckedTable {
+  readonly table: string;
+  readonly readable: boolean;
+  readonly series: readonly CheckedSeries[];
+  readonly reading: Reading | null;
+  readonly problems: readonly Problem[];
+}
+
+/** What `check` found: plain data, from which `describeCheck` speaks. */
+export interface CheckReport {
+  readonly asOf: string;
+  readonly address: string;
+  readonly locale: string;
+  readonly timeZone: string;
+  readonly tables: readonly CheckedTable[];
+  readonly settings: { readonly found: boolean; readonly problems: readonly Problem[] };
+  readonly events: readonly {
+    readonly file: string;
+    readonly events: number;
+    readonly problems: readonly Problem[];
+  }[];
+  /** Files under `series/` of a kind that is not read. */
+  readonly otherFiles: readonly string[];
+  /** Tables that cannot be read, plus one if the settings cannot be used. */
+  readonly failed: number;
+}
+
+export interface CheckOptions {
+  readonly store: ObjectStore;
+  readonly asOf: Date | string;
+  /** Instead of the store's `settings.json`. */
+  readonly settings?: Settings;
+}
+
+function checkedSeries(series: Series, asOf: string, timeZone: string): CheckedSeries {
+  const { name, period, start, values, observed, gaps } = series;
+  const lastPeriod = periodStart(start, period, values.length - 1);
+  const gap = values.findLastIndex((value) => Number.isNaN(value));
+  return {
+    name,
+    period,
+    start,
+    lastPeriod,
+    observed,
+    gaps,
+    latestGap: gap < 0 ? null : periodStart(start, period, gap),
+    periodsLate: periodsLate(lastPeriod, period, asOf, timeZone),
+  };
+}
+
+async function checkTable(
+  store: ObjectStore,
+  table: string,
+  settings: Settings,
+  asOf: string,
+): Promise<CheckedTable> {
+  const { timeZone, locale } = settings;
+  const source = await readSource(store, table);
+  if (!source) return { table, readable: false, series: [], reading: null, problems: [] };
+  const tableSettings = settings.tables[table] ?? {};
+  const { series, problems, reading } = readTable(source.bytes, tableSettings, {
+    asOf,
+    timeZone,
+    locale,
+    table,
+  });
+  const zone = tableSettings.timeZone ?? timeZone;
+  return {
+    table,
+    readable: series.length > 0 && !problems.some((problem) => problem.fatal),
+    series: series.map((one) => checkedSeries(one, asOf, zone)),
+    reading,
+    problems,
+  };
+}
+
+/** Settings for tables that are not there are most often mistyped names. */
+function strangers(settings: Settings, tables: readonly string[]): Problem[] {
+  return Object.keys(settings.tables)
+    .filter((name) => !tables.includes(name))
+    .map((name) => {
+      const near = nearestName(name, tables);
+      return {
+        table: settingsKey,
+        code: "no-such-table",
+        message: `the settings speak of a table "${name}", but there is no series/${name}.csv`,
+        remedy: near ? `write "${near}", or remove it` : "remove it, or add the table",
+        fatal: false,
+      };
+    });
+}
+
+/**
+ * Reads settings, tables and events as a run would, writes nothing, and tells what it saw.
+ *
+ * @throws StoreError when the store cannot be listed or read
+ */
+export async function checkStore(options: CheckOptions): Promise<CheckReport> {
+  const { store } = options;
+  const asOf = asOfText(options.asOf);
+  const stored = options.settings ? undefined : await store.read(settingsKey);
+  const parsed = parseSettings(stored && decodeText(stored.bytes));
+  const settings = options.settings ?? parsed.settings;
+  const keys = (await store.list(seriesPrefix)).map(({ key }) => key);
+  const tables: CheckedTable[] = [];
+  const names = [...new Set(keys.map(tableOfKey).filter((table) => table !== undefined))].sort();
+  for (const table of names) {
+    const fault = tableNameFault(table);
+    if (fault) {
+      const message = `the name of the table ${fault}`;
+      const problem = {
+        table,
+        code: "table-name",
+        message,
+        remedy: "rename the file under series/",
+        fatal: true,
+      };
+      tables.push({ table, readable: false, series: [], reading: null, problems: [problem] });
+    } else tables.push(await checkTable(store, table, settings, asOf));
+  }
+  const events = [];
+  for (const { key } of await store.list("events/")) {
+    const found = await store.read(key);
+    if (!found || !key.endsWith(".csv")) continue;
+    const read: { events: KnownEvent[]; problems: Problem[] } = readEvents(found.bytes, key, settings.locale);
+    events.push({ file: key, events: read.events.length, problems: read.problems });
+  }
+  const settingsProblems = [
+    ...parsed.problems,
+    ...(parsed.problems.length > 0 ? [] : strangers(settings, names)),
+  ];
+  return {
+    asOf,
+    address: store.address,
+    locale: settings.locale,
+    timeZone: settings.timeZone,
+    tables,
+    settings: { found: stored !== undefined, problems: settingsProblems },
+    events,
+    otherFiles: keys.filter((key) => tableOfKey(key) === undefined),
+    failed:
+      tables.filter((table) => !table.readable).length +
+      (settingsProblems.some((problem) => problem.fatal) ? 1 : 0),
+  };
+}
