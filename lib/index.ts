@@ -57,6 +57,7 @@ export { autocovariances } from "./dynamics/autocovariances.ts";
 export { characteristicRoots, rhythm } from "./dynamics/characteristicRoots.ts";
 export { biasCorrected, firstOrderBias } from "./dynamics/firstOrderBias.ts";
 export { halfLife } from "./dynamics/halfLife.ts";
+export { halfLifeInterval } from "./dynamics/halfLifeInterval.ts";
 export {
   leastSquaresMean,
   leastSquaresQuantile,
@@ -66,10 +67,19 @@ export { longRun, spectralDensity } from "./dynamics/longRun.ts";
 export { movingAverageWeights } from "./dynamics/movingAverageWeights.ts";
 export { cumulativeResponse, persistence } from "./dynamics/persistence.ts";
 export { shockContributions } from "./dynamics/shockContributions.ts";
+export { shockFading } from "./dynamics/shockFading.ts";
 export { accuracy } from "./forecast/accuracy.ts";
 export { describeSeries } from "./forecast/describingModel.ts";
 export type { Forecast, ForecastOptions } from "./forecast/forecast.ts";
 export { forecastSeries } from "./forecast/forecastSeries.ts";
+export { SettingsError } from "./job/loadSettings.ts";
+export { planRun } from "./job/plan.ts";
+export type { Progress } from "./job/progress.ts";
+export { type RefitOptions, refitPortion } from "./job/refit.ts";
+export { dueRuns, replayRuns } from "./job/replay.ts";
+export { closeRun, OutdatedRunError, type RunOptions, runJob } from "./job/run.ts";
+export type { DeliveryRecord, FailedTable, Plan, PortionResult, RunSummary } from "./job/summary.ts";
+export type { Secrets, Webhook } from "./job/webhooks.ts";
 export { levinson } from "./numeric/levinson.ts";
 export { compareReadings, type EarlierReading, type Revisions } from "./series/compareReadings.ts";
 export { currentPeriod } from "./series/currentPeriod.ts";
@@ -88,5 +98,3 @@ export { type ComposedBody, composeBody } from "./webhook/composeBody.ts";
 export { type Delivery, type DeliveryOutcome, deliver } from "./webhook/deliver.ts";
 export type { BodyShape, Message } from "./webhook/message.ts";
 export { type SignatureInput, signatureHeaders } from "./webhook/signatureHeaders.ts";
-export { halfLifeInterval } from "./dynamics/halfLifeInterval.ts";
-export { shockFading } from "./dynamics/shockFading.ts";
