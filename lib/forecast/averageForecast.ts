@@ -62,12 +62,12 @@ export function averageForecast(
   const origins = rollingOrigins(count, horizon, least);
   const rolled = rollBank(values, scales, candidates, origins, maxOrder, workspace);
   const bank = forecastBank(scales, candidates, count, horizon, maxOrder, workspace);
-  const combined = combineBank(bank, candidates, scales, rolled.losses, -1, horizon);
+  const combined = combineBank(bank, candidates, scales, rolled, -1, horizon);
   const evidence: CalibrationEvidence = { scores: [], weights: [] };
   const past: CombinedForecast[] = [];
   for (let o = 0; o < origins.length; o++) {
     const origin = origins[o];
-    const at = combineBank(rolled.banks[o], candidates, scales, rolled.losses, o, origin.steps);
+    const at = combineBank(rolled.banks[o], candidates, scales, rolled, o, origin.steps);
     past.push(at);
     addOutcomes(evidence, at.spread, values, origin.count, 1);
   }

@@ -21,7 +21,13 @@ export interface Candidate {
 }
 
 /** The describing model needs no preparation of its own: its terms are in its fit. */
-const DESCRIBED: Preparation = { differences: [], season: 0, profile: "none", drifts: ["whole"] };
+const DESCRIBED: Preparation = {
+  differences: [],
+  season: 0,
+  profile: "none",
+  line: false,
+  drifts: ["whole"],
+};
 
 /** Forecasts of every candidate at one origin. */
 export interface BankForecast {
@@ -93,8 +99,13 @@ function describedFit({ fit }: SeriesDescription, count: number): MemberFit {
     stages: [],
     levelProfile: undefined,
     meanProfile: undefined,
-    model: { coefficients, innovationVariance, meanOrder: order },
+    model: {
+      coefficients,
+      innovationVariance,
+      meanOrder: order + (fit.regression?.coefficients.length ?? 1),
+    },
     wholeMean: fit.mean,
-    recentMean: fit.mean,
+    localMean: fit.mean,
+    slope: 0,
   };
 }

@@ -1,7 +1,7 @@
 /**
- * Weights of candidates from their rolling-origin losses: inversely proportional to the mean squared error
- * (Bates and Granger 1969), each error divided by the square root of its step ahead so that far steps, whose
- * errors grow like a random walk's, do not drown the near ones.
+ * Weights of candidates from their rolling-origin losses: inverse to a power of the mean squared error, each error
+ * divided by the square root of its step ahead so that far steps, whose errors grow like a random walk's, do not
+ * drown the near ones. Power 1 is the rule of Bates and Granger (1969); see `weightPower` for the one in use.
  *
  * `losses` row o (stride `count`) holds each candidate's loss at origin o, `NaN` when it could not be fitted there.
  * `leaveOut` is an origin to ignore, so that a combined forecast of the past can be judged by weights that did not
@@ -12,6 +12,7 @@ export function candidateWeights(
   leaveOut: number,
   usable: (candidate: number) => boolean,
   count: number,
+  power: number,
 ): Float64Array {
   const means = new Float64Array(count);
   let best = Number.POSITIVE_INFINITY;
@@ -37,7 +38,16 @@ export function candidateWeights(
   const floor = known > 0 ? (1e-9 * average) / known : 0;
   for (let i = 0; i < count; i++) {
     if (known === 0 || average === 0) weights[i] = usable(i) ? 1 : 0;
-    else if (!Number.isNaN(means[i])) weights[i] = (best + floor) / (means[i] + floor);
+    else if (!Number.isNaN(means[i])) weights[i] = ((best + floor) / (means[i] + floor)) ** power;
   }
   return weights;
+}
+
+/**
+ * Power for the evidence of so many independent horizons: 2E/(E + 4). From equal weights without evidence through
+ * 1 (inverse squared error) at four horizons to 2 with plenty, because weights fitted to a few errors cost more
+ * than they gain (Claeskens, Magnus, Vasnev and Wang 2016).
+ */
+export function weightPower(horizons: number): number {
+  return (2 * horizons) / (horizons + 4);
 }

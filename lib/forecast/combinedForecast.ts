@@ -1,9 +1,9 @@
 import { type BurgWorkspace, burgWorkspace } from "../autoregression/burg.ts";
 import { type BankForecast, type Candidate, forecastBank, type ScaledSeries } from "./candidateBank.ts";
-import { candidateWeights } from "./candidateWeights.ts";
-import { shockResponse } from "./memberFit.ts";
+import { candidateWeights, weightPower } from "./candidateWeights.ts";
+import { type MemberFit, shockResponse } from "./memberFit.ts";
 import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
-import type { Origin } from "./rollingOrigins.ts";
+import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
 import { weightedMiddle } from "./weightedMiddle.ts";
 
 /** The average at one origin: medians with their uncalibrated spread, and the part each candidate had. */
@@ -17,6 +17,8 @@ export interface CombinedForecast {
 export interface RolledBank {
   readonly banks: readonly BankForecast[];
   readonly losses: readonly Float64Array[];
+  /** Power of the weights that this much evidence allows. */
+  readonly power: number;
 }
 
 /** Makes every candidate's forecast at every origin and scores it on the values that were observed. */
@@ -43,12 +45,22 @@ export function rollBank(
         sum += (actual - bank.paths[i * steps + h]) ** 2 / (h + 1);
         seen++;
       }
-      if (seen > 0) loss[i] = Math.min(sum / seen, Number.MAX_VALUE / 1e6);
+      const optimism = candidates[i].description === undefined ? 1 : describedOptimism(bank.fits[i], count);
+      if (seen > 0) loss[i] = Math.min((optimism * sum) / seen, Number.MAX_VALUE / 1e6);
     }
     banks.push(bank);
     losses.push(loss);
   }
-  return { banks, losses };
+  return { banks, losses, power: weightPower(horizonsCovered(origins, values.length)) };
+}
+
+/**
+ * The describing model is fitted once, to the whole series, and so has seen the outcomes it is scored on. Akaike's
+ * final prediction error (1970), ((n + k)/(n − k))², puts its squared errors on the footing of the refitted ones.
+ */
+function describedOptimism(fit: MemberFit | undefined, count: number): number {
+  const terms = (fit?.model.meanOrder ?? 0) + 1;
+  return ((count + terms) / Math.max(1, count - terms)) ** 2;
 }
 
 /** Combines one bank by the losses of the origins, leaving one out when it is judged itself. */
@@ -56,13 +68,13 @@ export function combineBank(
   bank: BankForecast,
   candidates: readonly Candidate[],
   scales: readonly ScaledSeries[],
-  losses: readonly Float64Array[],
+  { losses, power }: Pick<RolledBank, "losses" | "power">,
   leaveOut: number,
   horizon: number,
 ): CombinedForecast {
   const count = candidates.length;
   const usable = (i: number): boolean => bank.fits[i] !== undefined;
-  const weights = candidateWeights(losses, leaveOut, usable, count);
+  const weights = candidateWeights(losses, leaveOut, usable, count, power);
   const column = new Float64Array(count);
   const order = new Int32Array(count);
   const stepShares = new Float64Array(count);

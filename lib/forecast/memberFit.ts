@@ -1,5 +1,6 @@
 import type { BurgWorkspace } from "../autoregression/burg.ts";
 import type { DriftKind, Preparation } from "./candidates.ts";
+import { localDrift } from "./localDrift.ts";
 import { type AveragedAutoregression, orderAverage } from "./orderAverage.ts";
 import { levelProfile, meanProfile } from "./seasonalProfile.ts";
 
@@ -12,20 +13,30 @@ export interface MemberFit {
   readonly levelProfile: Float64Array | undefined;
   readonly meanProfile: Float64Array | undefined;
   readonly model: AveragedAutoregression;
-  /** Mean of the last stage, whole and weighted to the recent past. */
+  /** Mean of the last stage, and of the recent stretch of it that foretells best. */
   readonly wholeMean: number;
-  readonly recentMean: number;
+  readonly localMean: number;
+  /** Slope of the line that was taken off, through period 0. */
+  readonly slope: number;
 }
-
-/** Half-life of the recent drift as a share of the series, and its floor in periods. */
-const RECENT_SHARE = 0.25;
-const RECENT_FLOOR = 3;
 
 /** Differences `values` at `lag`. */
 function difference(values: Float64Array, lag: number): Float64Array {
   const out = new Float64Array(values.length - lag);
   for (let t = 0; t < out.length; t++) out[t] = values[t + lag] - values[t];
   return out;
+}
+
+/** Least-squares slope a period. */
+function lineSlope(values: Float64Array): number {
+  const middle = (values.length - 1) / 2;
+  let across = 0;
+  let along = 0;
+  for (let t = 0; t < values.length; t++) {
+    across += (t - middle) * values[t];
+    along += (t - middle) ** 2;
+  }
+  return across / along;
 }
 
 /** Fits one preparation; `undefined` when too few values are left after differencing to say anything. */
@@ -44,6 +55,8 @@ export function fitMember(
     onLevels = levelProfile(values, season, count);
     for (let t = 0; t < count; t++) series[t] -= onLevels[t % season];
   }
+  const slope = preparation.line ? lineSlope(series) : 0;
+  if (slope !== 0) for (let t = 0; t < count; t++) series[t] -= slope * t;
   const stages = [series];
   for (const lag of differences) {
     if (series.length < lag + 4) return undefined;
@@ -56,13 +69,6 @@ export function fitMember(
   const onMeans = profile === "mean" ? meanProfile(series, season, length, offset) : undefined;
   let wholeMean = 0;
   for (let t = 0; t < length; t++) wholeMean += series[t] / length;
-  const decay = 0.5 ** (1 / Math.max(RECENT_FLOOR, RECENT_SHARE * length));
-  let weight = 0;
-  let recent = 0;
-  for (let t = 0; t < length; t++) {
-    weight = weight * decay + 1;
-    recent = recent * decay + series[t];
-  }
   const centred = new Float64Array(length);
   for (let t = 0; t < length; t++) {
     centred[t] = series[t] - wholeMean - (onMeans === undefined ? 0 : onMeans[(t + offset) % season]);
@@ -76,14 +82,15 @@ export function fitMember(
     meanProfile: onMeans,
     model,
     wholeMean,
-    recentMean: recent / weight,
+    localMean: preparation.drifts.includes("local") ? localDrift(series) : wholeMean,
+    slope,
   };
 }
 
 /** The centre a drift kind stands for. Levels always return to their mean. */
 function centreOf(fit: MemberFit, drift: DriftKind): number {
   if (drift === "none") return 0;
-  return drift === "whole" ? fit.wholeMean : fit.recentMean;
+  return drift === "whole" ? fit.wholeMean : fit.localMean;
 }
 
 /** Forecasts of the working scale 1..horizon steps after the fitted values, written to `out[at..at+horizon)`. */
@@ -119,7 +126,9 @@ export function forecastMember(
     for (let h = 0; h < horizon; h++)
       out[at + h] += h < lag ? base[base.length - lag + h] : out[at + h - lag];
   }
-  if (levels !== undefined) for (let h = 0; h < horizon; h++) out[at + h] += levels[(count + h) % season];
+  for (let h = 0; h < horizon; h++) {
+    out[at + h] += fit.slope * (count + h) + (levels === undefined ? 0 : levels[(count + h) % season]);
+  }
 }
 
 /**

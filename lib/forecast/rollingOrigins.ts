@@ -30,3 +30,10 @@ export function rollingOrigins(count: number, horizon: number, least: number): O
   }
   return origins;
 }
+
+/** How many whole horizons, laid end to end, the origins look back over: the independent evidence they hold. */
+export function horizonsCovered(origins: readonly Origin[], count: number): number {
+  if (origins.length === 0) return 0;
+  const longest = origins.reduce((most, { steps }) => Math.max(most, steps), 1);
+  return (count - origins[origins.length - 1].count) / longest;
+}
