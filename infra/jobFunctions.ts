@@ -36,7 +36,7 @@ const refitting: StoreRights = {
   list: [],
 };
 const closing: StoreRights = {
-  read: ["settings.json", "models/", "forecasts/", "runs/"],
+  read: ["settings.json", "models/", "runs/"],
   write: ["runs/"],
   list: ["series/"],
 };

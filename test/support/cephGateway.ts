@@ -14,6 +14,8 @@ export interface Gateway {
   readonly endpoint: string;
   readonly accessKey: string;
   readonly secretKey: string;
+  /** A second user without any right of its own: what a bucket's policy lets it do is all it can. */
+  readonly guest: { readonly arn: string; readonly accessKey: string; readonly secretKey: string };
 }
 
 /** Whether the programs are here: Debian's `ceph-mon ceph-osd radosgw ceph-common`. */
@@ -73,11 +75,14 @@ export async function startGateway(): Promise<{ gateway: Gateway; stop: () => Pr
     await rm(folder, { recursive: true, force: true, maxRetries: 5 });
   };
   try {
-    const gateway = { endpoint: `http://127.0.0.1:${web}`, accessKey: "AKTEST", secretKey: "SKTEST" };
+    const guest = { arn: "arn:aws:iam:::user/guest", accessKey: "AKGUEST", secretKey: "SKGUEST" };
+    const endpoint = `http://127.0.0.1:${web}`;
+    const gateway = { endpoint, accessKey: "AKTEST", secretKey: "SKTEST", guest };
     await answering(gateway.endpoint);
-    const who = ["--uid", "test", "--display-name", "test"];
-    const keys = ["--access-key", gateway.accessKey, "--secret-key", gateway.secretKey];
-    await ceph("radosgw-admin", "user", "create", ...who, ...keys);
+    for (const [name, user] of Object.entries({ test: gateway, guest })) {
+      const keys = ["--access-key", user.accessKey, "--secret-key", user.secretKey];
+      await ceph("radosgw-admin", "user", "create", "--uid", name, "--display-name", name, ...keys);
+    }
     return { gateway, stop };
   } catch (error) {
     await stop();
