@@ -29,14 +29,16 @@ export function businessMessage(run: RunFacts, voice: Voice): Note {
   const all = ranked(run);
   const candidates = voice.quietWhenSteady ? all.filter((one) => one.attention >= newsFrom) : all;
   const several = run.tables.length > 1;
-  const before = owedLines(run, dateWriter(voice)).flatMap(wrapLine);
-  const after = [...closingLines(all, candidates.length > 0, voice), ...troubleLines(run)].flatMap(wrapLine);
+  const before = owedLines(run, dateWriter(voice)).flatMap((line) => wrapLine(line));
+  const after = [...closingLines(all, candidates.length > 0, voice), ...troubleLines(run)].flatMap((line) =>
+    wrapLine(line),
+  );
   const link = all.length > 0 ? [`Why, with pictures: ${reportPlace(run.asOf, voice)}`] : [];
   const { lines, told } = fillRoom(
     candidates.map((one) => {
       const speech = speechFor(one.facts, voice, run.asOf);
       const label = several ? `${plainText(one.table.table, 30)}, ${speech.series}` : speech.series;
-      return { news: one.attention >= newsFrom, lines: seriesLines(speech, label) };
+      return { label, news: one.attention >= newsFrom, lines: seriesLines(speech, label) };
     }),
     Math.max(least, wholeNote - before.length - after.length - link.length - (all.length > 4 ? 1 : 0)),
   );

@@ -1,8 +1,9 @@
 import { wrapLine } from "./lineWidth.ts";
 import { type RankedLine, rank } from "./seriesLines.ts";
 
-/** The lines of one series, and whether it has news. */
+/** The lines of one series, what it is called at the start of each, and whether it has news. */
 export interface SeriesLines {
+  readonly label: string;
   readonly news: boolean;
   readonly lines: readonly RankedLine[];
 }
@@ -16,12 +17,12 @@ const steadyRank = rank.meaning + 0.5;
  * series are taken from the front without leaving one out.
  */
 export function fillRoom(series: readonly SeriesLines[], room: number): { lines: string[]; told: number } {
-  const all = series.flatMap(({ news, lines }, index) =>
+  const all = series.flatMap(({ label, news, lines }, index) =>
     lines.map((line, place) => ({
       index,
       place,
       order: news ? line.rank : line.rank === rank.next ? steadyRank : line.rank + 10,
-      texts: wrapLine(line.text),
+      texts: wrapLine(line.text, `${label}: … `),
     })),
   );
   const byNeed = [...all].sort((one, other) => one.order - other.order || one.index - other.index);

@@ -1,11 +1,10 @@
 import type { Voice } from "./facts.ts";
 import { dateFormat } from "./formats.ts";
 
-/** Dates of runs in the reader's time zone: "Monday 30 November 2026". */
+/** Dates of runs in the reader's time zone: "30 November 2026". */
 export function dateWriter(voice: Voice): (instant: string) => string {
   const format = dateFormat(voice.locale, {
     timeZone: voice.timeZone,
-    weekday: "long",
     day: "numeric",
     month: "long",
     year: "numeric",

@@ -9,15 +9,18 @@ export function sentence(label: string, text: string): string {
   return /[.!?…]$/.test(whole) ? whole : `${whole}.`;
 }
 
-/** Breaks a line into lines that fit, at spaces where it can; a word longer than half a line is cut. */
-export function wrapLine(line: string): string[] {
+/**
+ * Breaks a line into lines that fit, at spaces where it can; a word longer than half a line is cut. Lines after the
+ * first begin with `again`, so that each says what it is about.
+ */
+export function wrapLine(line: string, again = ""): string[] {
   const lines: string[] = [];
   let rest = [...line];
   while (rest.length > longestLine) {
     const space = rest.lastIndexOf(" ", longestLine);
     const at = space > longestLine / 2 ? space : longestLine;
     lines.push(rest.slice(0, at).join("").trimEnd());
-    rest = [...rest.slice(at).join("").trimStart()];
+    rest = [...again, ...rest.slice(at).join("").trimStart()];
   }
   return [...lines, rest.join("")];
 }

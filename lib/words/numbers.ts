@@ -40,7 +40,7 @@ export function roundTo(value: number, step: number): number {
   return rounded === 0 ? 0 : rounded;
 }
 
-/** Numbers as a locale writes them; beyond a thousand million in words, below a millionth by significant digits. */
+/** Numbers as a locale writes them; beyond a thousand million in words, the very smallest by significant digits. */
 export function numberWriter(locale: string): WriteNumber {
   return (value, step) => {
     const rounded = roundTo(value, step);
@@ -51,9 +51,9 @@ export function numberWriter(locale: string): WriteNumber {
         compactDisplay: "long",
         maximumSignificantDigits: 3,
       }).format(rounded);
-    if (step < 1e-7 && rounded !== 0)
+    if (step < 1e-12 && rounded !== 0)
       return numberFormat(locale, { notation: "scientific", maximumSignificantDigits: 3 }).format(rounded);
-    const digits = step < 1e-7 ? 0 : Math.max(0, Math.ceil(-Math.log10(step) - 1e-9));
+    const digits = step < 1e-12 ? 0 : Math.max(0, Math.ceil(-Math.log10(step) - 1e-9));
     return numberFormat(locale, { minimumFractionDigits: digits, maximumFractionDigits: digits }).format(
       rounded,
     );

@@ -40,15 +40,16 @@ export function noNewValuesSentence(finding: Of<"no-new-values">, speech: Speech
 
 /** "3 past figures were revised; the largest: week of 9 November from 140 to 152 loans". */
 export function revisedSentence(finding: Of<"revised">, speech: Speech): string {
-  const { largest } = finding;
-  const told = (value: number | null) =>
-    value === null ? "no figure" : speech.amount(value, valueStep(value));
+  const { before, after, period } = finding.largest;
+  const told = (value: number) => speech.amount(value, valueStep(value));
+  const from =
+    before === null ? "no figure" : after === null ? told(before) : speech.write(before, valueStep(before));
+  const to = after === null ? "no figure" : told(after);
   const many =
     finding.count === 1
       ? "1 past figure was revised"
       : `${speech.write(finding.count, 1)} past figures were revised`;
-  const which = finding.count === 1 ? "" : "the largest, ";
-  return `${many}: ${which}${speech.periods.name(largest.period)}, from ${told(largest.before)} to ${told(largest.after)}`;
+  return `${many}: ${finding.count === 1 ? "" : "the largest, "}${speech.periods.name(period)}, from ${from} to ${to}`;
 }
 
 export function incompleteSentence(finding: Of<"incomplete-period">, speech: Speech): string {

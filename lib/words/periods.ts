@@ -69,7 +69,7 @@ export function periodNames(period: Period, locale: string, timeZone: string, no
   const shortDay = format({ day: "numeric", month: "short" });
   const quarter = (start: string) => {
     const month = new Date(instantOf(start)).getUTCMonth();
-    return month % 3 === 0 ? `Q${month / 3 + 1} ${year(start)}` : `quarter from ${monthAndYear(start)}`;
+    return month % 3 === 0 ? `Q${month / 3 + 1} ${year(start)}` : `the quarter from ${monthAndYear(start)}`;
   };
   const bare = (name: (start: string) => string, short = name): PeriodNames => ({
     name,

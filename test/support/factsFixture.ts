@@ -176,7 +176,7 @@ export function branchFacts(branch: Branch): SeriesFacts {
 }
 
 /** Quay's shocks, once gone in two weeks, now take about six to lose half their effect. */
-export const quayChange: Finding = {
+export const quayChange: Extract<Finding, { code: "change" }> = {
   code: "change",
   kind: "persistence",
   alternative: null,

@@ -1,0 +1,191 @@
+import fc from "fast-check";
+import { describe, expect, it } from "vitest";
+import { businessMessage } from "../../lib/words/businessMessage.ts";
+import type { Finding, RunFacts, SeriesFacts } from "../../lib/words/facts.ts";
+import { hasNews } from "../../lib/words/hasNews.ts";
+import { changeOf, periodKind, seriesOf, surpriseOf } from "../support/factsArbitrary.ts";
+import {
+  branchFacts,
+  britishVoice,
+  loansRun,
+  quay,
+  quayChange,
+  stationSurprise,
+} from "../support/factsFixture.ts";
+
+const steadyBranch = (series: string, seed: number) =>
+  branchFacts({ series, level: 100, coefficient: 0.5, shockSize: 12, seed });
+const oneTable = (series: readonly SeriesFacts[]): RunFacts => ({
+  ...loansRun,
+  tables: [{ table: "loans", series, problems: [] }],
+});
+const quietVoice = { ...britishVoice, quietWhenSteady: true };
+
+describe("the business note", () => {
+  it("of one table says in twelve lines what to expect, what changed and what it means", () => {
+    // Read and agreed to, line by line: a change here is a change of what people are told.
+    const { title, lines } = businessMessage(loansRun, britishVoice);
+    expect([title, ...lines]).toEqual([
+      "loans: 1 lasting change, 1 one-off surprise",
+      "Quay: about 185 loans in the week of 7 December (155 to 210), about 1,400 over all 8 weeks (1,000 to 1,800). ▃▆▆▄▁▃▃▁▅▆▅█|███▇▇▇▇▇",
+      "Quay: shocks now lose half their effect in about 6 weeks; it was 2 (an early sign).",
+      "Quay: a busy week now stays with you longer; last week's surplus of 38 loans still adds about 19 in the week of 11 January.",
+      "Quay: about 30% chance of a week above 260 loans by the week of 25 January.",
+      "Station: about 114 loans in the week of 7 December (100 to 128), about 780 over all 8 weeks (710 to 840). ▄▄▃▁▄▄▂▁▃▃▂█|▆▄▄▃▃▃▃▃",
+      "Station: 148 loans in the week of 30 November, about 56 more than expected: a one-off so far, not a lasting change.",
+      "Station: it will have faded by the week of 28 December.",
+      "Mill: about 85 loans in the week of 7 December (71 to 99), about 700 over all 8 weeks (620 to 780). ▄▁▅▅▃██▆▃▇▇▅|▅▆▆▆▆▆▆▆",
+      "Park: about 113 loans in the week of 7 December (95 to 131), about 950 over all 8 weeks (870 to 1,030). ▃██▅▂▇▇▄▁▆▆▃|▅▅▆▆▆▆▆▆",
+      "In brackets the range that holds 80% of outcomes; bars: last 12 weeks | those to come.",
+      "So far 311 of 384 figures (81%) fell inside the range, where 80% should; misses are 25% smaller than by repeating the last figure.",
+      "Why, with pictures: runs/2026-12-07T06-00-00Z/report.html",
+    ]);
+  });
+
+  it("keeps to about twelve lines of at most 160 characters, each naming its series, without unexplained symbols", () => {
+    const series = periodKind.chain((period) =>
+      seriesOf(
+        period,
+        fc
+          .tuple(fc.option(changeOf(period)), fc.option(surpriseOf(period)))
+          .map((all) => all.filter((one): one is NonNullable<typeof one> => one !== null)),
+      ),
+    );
+    fc.assert(
+      fc.property(fc.array(series, { minLength: 1, maxLength: 30 }), (all) => {
+        const named = all.map((one, index) => ({ ...one, series: `Branch ${index + 1}` }));
+        const { title, lines, footer } = businessMessage(oneTable(named), britishVoice);
+        expect(lines.length).toBeLessThanOrEqual(13);
+        for (const line of [title, ...lines, footer]) {
+          expect([...line].length).toBeLessThanOrEqual(160);
+          // Letters, digits, plain punctuation, percent, and the bars that the note itself explains.
+          expect(line).toMatch(/^[\p{L}\d .,:;'"()%/…|▁▂▃▄▅▆▇█·-]+$/u);
+          expect(line).not.toMatch(/NaN|undefined|null|Infinity|\[object/);
+        }
+        for (const line of lines)
+          expect(line).toMatch(/^(Branch \d+: |… and |In brackets |So far |Why, with pictures: )/);
+        const counted = lines.join("\n").match(/… and (\d+) /);
+        const told = new Set(lines.flatMap((line) => line.match(/^Branch \d+/)?.[0] ?? []));
+        expect(told.size + Number(counted?.[1] ?? 0)).toBe(all.length);
+      }),
+      { numRuns: 300 },
+    );
+  });
+
+  it("for many tables tells the most changed first and counts the steady", () => {
+    const tables = Array.from({ length: 12 }, (_, table) => ({
+      table: `town-${table + 1}`,
+      series: [steadyBranch("Quay", table), steadyBranch("Mill", table + 20)],
+      problems: [],
+    }));
+    tables[7] = { ...tables[7], series: [tables[7].series[0], { ...quay, series: "Harbour" }] };
+    const { title, lines } = businessMessage({ ...loansRun, tables }, britishVoice);
+    expect(title).toBe("12 tables: 1 lasting change");
+    expect(lines[0]).toMatch(/^town-8, Harbour: about 185 loans/);
+    expect(lines[1]).toMatch(/^town-8, Harbour: shocks now lose half/);
+    expect(lines.some((line) => /^… and \d+ steady\.$/.test(line))).toBe(true);
+  });
+
+  it("gives news its room before steady series get theirs", () => {
+    const steady = Array.from({ length: 30 }, (_, index) => steadyBranch(`Steady ${index}`, index));
+    const news = Array.from({ length: 4 }, (_, index) => ({ ...quay, series: `Changed ${index}` }));
+    const { lines } = businessMessage(oneTable([...steady, ...news]), britishVoice);
+    for (const { series } of news)
+      expect(lines.filter((line) => line.startsWith(`${series}: shocks now`))).toHaveLength(1);
+  });
+
+  it("with the quiet setting tells only what changed, and counts the rest", () => {
+    const { lines } = businessMessage(loansRun, quietVoice);
+    expect(lines.some((line) => line.startsWith("Mill"))).toBe(false);
+    expect(lines).toContain("… and 2 steady.");
+    const calm = businessMessage(oneTable([steadyBranch("Mill", 1)]), quietVoice);
+    expect(calm.title).toBe("loans: nothing has changed");
+    expect(calm.lines[0]).toBe("1 steady.");
+  });
+
+  it("ends with what went wrong: the table, the line in the file and the remedy", () => {
+    const problem = {
+      table: "calls",
+      line: 14,
+      column: "date",
+      code: "bad-date",
+      message: "31/02/2026 is no date.",
+      remedy: "Correct the day.",
+      fatal: true,
+    };
+    const { title, lines } = businessMessage(
+      { ...loansRun, failed: [{ table: "calls", problems: [problem] }], left: ["members"] },
+      britishVoice,
+    );
+    expect(title).toBe("2 tables: 1 lasting change, 1 one-off surprise, 1 table not read");
+    expect(lines).toContain(
+      "calls was not refitted; its earlier forecast stands. line 14, column date: 31/02/2026 is no date. Correct the day.",
+    );
+    expect(lines).toContain("Not reached in time: members; the retry goes on with them.");
+  });
+
+  it("says first that an earlier note never arrived", () => {
+    const undelivered = [{ asOf: "2026-11-30T06:00:00Z", webhook: "counter" }];
+    const { lines } = businessMessage({ ...loansRun, undelivered }, britishVoice);
+    expect(lines[0]).toBe("The note of 30 November 2026 could not be delivered before this one.");
+  });
+
+  it("puts the report under the owner's base address when there is one", () => {
+    const { lines } = businessMessage(loansRun, {
+      ...britishVoice,
+      reportBase: "https://reports.example/tools/",
+    });
+    expect(lines.at(-1)).toBe(
+      "Why, with pictures: https://reports.example/tools/runs/2026-12-07T06-00-00Z/report.html",
+    );
+  });
+
+  it("carries data that stay within a receiver's budget however many series there are", () => {
+    const many = oneTable(Array.from({ length: 500 }, (_, index) => steadyBranch(`Branch ${index}`, index)));
+    const data = businessMessage(many, britishVoice).data as { series: unknown[]; omitted: number };
+    expect(new TextEncoder().encode(JSON.stringify(data)).length).toBeLessThan(14_000);
+    expect(data.series.length + data.omitted).toBe(500);
+  });
+
+  it("always carries the caution about decisions that need a qualified person", () => {
+    expect(businessMessage(loansRun, britishVoice).footer).toMatch(/qualified person's judgement/);
+  });
+});
+
+describe("news", () => {
+  const newsOf = (findings: readonly Finding[]) =>
+    hasNews(oneTable([{ ...steadyBranch("Mill", 1), findings }]));
+  it("is a fresh change, a surprise or late data, but not a change told before", () => {
+    expect(newsOf([])).toBe(false);
+    expect(newsOf([quayChange])).toBe(true);
+    expect(newsOf([{ ...quayChange, fresh: false }])).toBe(false);
+    expect(newsOf([stationSurprise])).toBe(true);
+    expect(newsOf([{ code: "stale", lastPeriod: "2026-11-09", periodsLate: 3 }])).toBe(true);
+    expect(newsOf([{ code: "no-new-values", since: "2026-11-30" }])).toBe(false);
+    expect(newsOf([{ code: "gaps", count: 2, latest: "2026-08-10" }])).toBe(false);
+  });
+
+  it("is a limit that is more likely passed than not", () => {
+    const limited = (any: number) => {
+      const facts = branchFacts({
+        series: "Mill",
+        level: 100,
+        coefficient: 0.5,
+        shockSize: 12,
+        seed: 1,
+        limit: 130,
+      });
+      const chances = facts.forecast.chances.map((one) => ({ ...one, any }));
+      return hasNews(oneTable([{ ...facts, forecast: { ...facts.forecast, chances } }]));
+    };
+    expect(limited(0.3)).toBe(false);
+    expect(limited(0.6)).toBe(true);
+  });
+
+  it("is a table that failed, was not reached, or a note still owed", () => {
+    const calm = oneTable([steadyBranch("Mill", 1)]);
+    expect(hasNews({ ...calm, failed: [{ table: "calls", problems: [] }] })).toBe(true);
+    expect(hasNews({ ...calm, left: ["calls"] })).toBe(true);
+    expect(hasNews({ ...calm, undelivered: [{ asOf: calm.asOf, webhook: "counter" }] })).toBe(true);
+  });
+});
