@@ -8,6 +8,7 @@ import {
   dickeyFullerGlsPValue,
 } from "./dickeyFullerDistribution.ts";
 import { constantColumn, trendColumn } from "./regressionTerms.ts";
+import { withoutTerms } from "./withoutTerms.ts";
 
 export interface UnitRootTest {
   readonly kind: "dickey-fuller-gls" | "kpss";
@@ -32,8 +33,8 @@ export interface UnitRootOptions {
  *
  * - `dickey-fuller-gls` (Elliott, Rothenberg & Stock 1996). Null: shocks are permanent; a very negative statistic
  *   speaks against it. Level (and trend) are removed by quasi-differences with 1 − 7/n (1 − 13.5/n), then a
- *   Dickey–Fuller regression without terms. Lagged changes by the modified AIC of Ng & Perron (2001) up to
- *   trunc(12 (n/100)^¼) unless given.
+ *   Dickey–Fuller regression without terms. Lagged changes, unless given, by the modified AIC of Ng & Perron
+ *   (2001) up to trunc(12 (n/100)^¼), on values detrended by least squares (Perron & Qu 2007).
  * - `kpss` (Kwiatkowski, Phillips, Schmidt & Shin 1992). Null: shocks fade; a large statistic speaks against it.
  *   Σ S_t²/n² over the long-run variance with a Bartlett kernel of bandwidth trunc(12 (n/100)^¼) unless given.
  *
@@ -56,7 +57,7 @@ export function unitRootTest(values: ArrayLike<number>, options: UnitRootOptions
 
 function dickeyFullerGls(values: ArrayLike<number>, trend: boolean, given: number | undefined): UnitRootTest {
   const detrended = quasiDetrend(values, trend);
-  const lags = given ?? modifiedLags(detrended);
+  const lags = given ?? modifiedLags(withoutTerms(values, trend));
   const { statistic, change } = changeRegression(detrended, "none", lags, lags + 1);
   return {
     kind: "dickey-fuller-gls",
@@ -113,12 +114,7 @@ const KPSS_TREND = [0.119, 0.146, 0.176, 0.216];
 
 function kpss(values: ArrayLike<number>, trend: boolean, lags: number): UnitRootTest {
   const n = values.length;
-  const origin = observedMean(values);
-  const fit = leastSquares(
-    trend ? [constantColumn(n), trendColumn(n)] : [constantColumn(n)],
-    Float64Array.from({ length: n }, (_, t) => values[t] - origin),
-  );
-  const residuals = fit?.residuals ?? new Float64Array(n);
+  const residuals = withoutTerms(values, trend);
   let partialSum = 0;
   let squares = 0;
   for (let t = 0; t < n; t++) {

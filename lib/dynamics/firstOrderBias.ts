@@ -58,23 +58,36 @@ export function biasCorrected(
 ): Float64Array {
   requireValues("biasCorrected", "coefficients", coefficients, "no-gaps");
   requireWhole("biasCorrected", "observations", observations, 1);
-  const p = coefficients.length;
-  if (p === 0) return new Float64Array(0);
+  const out = new Float64Array(coefficients.length);
+  biasCorrector(coefficients.length, observations, level)(coefficients, out);
+  return out;
+}
+
+/** The correction for one order and length, solved once; the function writes corrected coefficients to its second argument. */
+export function biasCorrector(
+  order: number,
+  observations: number,
+  level: EstimatedLevel,
+): (coefficients: ArrayLike<number>, out: Float64Array) => void {
   const slowTerms = SLOW_TERMS[level];
-  const constant = scaledBias(new Float64Array(p), slowTerms);
-  const columns: Float64Array[] = [];
-  for (let i = 0; i < p; i++) {
-    const unit = new Float64Array(p);
-    unit[i] = 1;
-    const slope = scaledBias(unit, slowTerms);
-    columns.push(unit.map((value, j) => value + (slope[j] - constant[j]) / observations));
-  }
-  const target = Float64Array.from(coefficients, (value, j) => value - constant[j] / observations);
-  const solution = leastSquares(columns, target);
-  if (observations <= p + 3 || solution === undefined) {
+  const constant = scaledBias(new Float64Array(order), slowTerms);
+  const unit = (i: number) => Float64Array.from({ length: order }, (_, j) => (i === j ? 1 : 0));
+  const columns = Array.from({ length: order }, (_, i) => {
+    const slope = scaledBias(unit(i), slowTerms);
+    return unit(i).map((value, j) => value + (slope[j] - constant[j]) / observations);
+  });
+  const inverse = columns.map((_, i) => leastSquares(columns, unit(i))?.coefficients);
+  if (observations <= order + 3 || inverse.includes(undefined)) {
     throw new RangeError(
-      `biasCorrected needs more than ${p + 3} observations for order ${p}, got ${observations}`,
+      `biasCorrected needs more than ${order + 3} observations for order ${order}, got ${observations}`,
     );
   }
-  return solution.coefficients;
+  return (coefficients, out) => {
+    out.fill(0);
+    for (let i = 0; i < order; i++) {
+      const target = coefficients[i] - constant[i] / observations;
+      const column = inverse[i] as Float64Array;
+      for (let j = 0; j < order; j++) out[j] += column[j] * target;
+    }
+  };
 }
