@@ -1,7 +1,7 @@
 import { type BurgWorkspace, burgWorkspace } from "../autoregression/burg.ts";
 import { type BankForecast, type Candidate, forecastBank, type ScaledSeries } from "./candidateBank.ts";
 import { candidateWeights, weightPower } from "./candidateWeights.ts";
-import { type MemberFit, shockResponse } from "./memberFit.ts";
+import { errorVariances, type MemberFit } from "./memberFit.ts";
 import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
 import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
 import { weightedMiddle } from "./weightedMiddle.ts";
@@ -85,42 +85,52 @@ export function combineBank(
     medians[h] = weightedMiddle(column, weights, order, stepShares);
     for (let i = 0; i < count; i++) shares[i] += stepShares[i] / horizon;
   }
-  return { spread: { medians, scales: scaleSpreads(bank, candidates, scales, shares, medians) }, shares };
+  return {
+    spread: { medians, scales: scaleSpreads(bank, candidates, scales, weights, shares, medians) },
+    shares,
+  };
 }
 
 /**
- * Spread of each working scale: the weighted mean over its candidates of innovation variance times the summed
- * squared shock response, plus how far the candidates stand apart (model uncertainty), on that scale.
+ * Spread of each working scale: the weighted middle over its candidates of innovation variance times the summed
+ * squared shock response (one explosive candidate must not widen every range), plus how far the candidates that make
+ * the average stand apart (model uncertainty).
  */
 function scaleSpreads(
   bank: BankForecast,
   candidates: readonly Candidate[],
   scales: readonly ScaledSeries[],
   weights: Float64Array,
+  shares: Float64Array,
   medians: Float64Array,
 ): ScaleSpread[] {
   const horizon = medians.length;
-  const total = weights.reduce((sum, weight) => sum + weight, 0);
   return scales.map(({ scale }, index) => {
-    const variances = new Float64Array(horizon);
-    let share = 0;
-    let response: Float64Array | undefined;
+    const members: number[] = [];
     for (let i = 0; i < candidates.length; i++) {
-      const fit = bank.fits[i];
-      if (candidates[i].scale !== index || !(weights[i] > 0) || fit === undefined) continue;
-      const weight = weights[i];
-      share += weight / total;
-      if (i === 0 || bank.fits[i - 1] !== fit || response === undefined)
-        response = shockResponse(fit, horizon);
-      let sum = 0;
-      for (let h = 0; h < horizon; h++) {
-        sum += response[h] * response[h];
-        const apart = scale.forward(bank.paths[i * horizon + h]) - scale.forward(medians[h]);
-        variances[h] +=
-          weight * (fit.model.innovationVariance * sum + (Number.isFinite(apart) ? apart * apart : 0));
-      }
+      if (candidates[i].scale === index && weights[i] > 0) members.push(i);
     }
-    const deviations = variances.map((variance) => (share > 0 ? Math.sqrt(variance / (share * total)) : 0));
+    const own = members.map((i) => {
+      const fit = bank.fits[i];
+      return fit === undefined
+        ? new Float64Array(horizon)
+        : errorVariances(fit, candidates[i].drift, horizon);
+    });
+    const ownWeights = Float64Array.from(members, (i) => weights[i]);
+    const share = members.reduce((sum, i) => sum + shares[i], 0);
+    const order = new Int32Array(members.length);
+    const deviations = new Float64Array(horizon);
+    for (let h = 0; h < horizon && members.length > 0; h++) {
+      const anchor = scale.forward(medians[h]);
+      let apart = 0;
+      for (const i of members) {
+        const distance = scale.forward(bank.paths[i * horizon + h]) - anchor;
+        if (Number.isFinite(distance)) apart += shares[i] * distance * distance;
+      }
+      const column = Float64Array.from(own, (variances) => variances[h]);
+      const model = weightedMiddle(column, ownWeights, order);
+      deviations[h] = Math.sqrt(model + (share > 0 ? apart / share : 0));
+    }
     return { scale, share, deviations };
   });
 }
