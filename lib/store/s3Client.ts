@@ -1,6 +1,6 @@
 import type { S3Client } from "@aws-sdk/client-s3";
 
-type S3Module = typeof import("@aws-sdk/client-s3");
+type S3Module = typeof import("./s3Sdk.ts");
 
 /** How to reach the server. */
 export interface S3Settings {
@@ -25,7 +25,7 @@ export interface S3Access {
  * refuse the newer ones (aws-sdk-js-v3 issue 6810).
  */
 export async function connectS3(settings: S3Settings): Promise<S3Access> {
-  const sdk = await import("@aws-sdk/client-s3");
+  const sdk = await import("./s3Sdk.ts");
   const { endpoint } = settings;
   const region = settings.region ?? (endpoint === undefined ? undefined : "us-east-1");
   const client = new sdk.S3Client({
