@@ -1,7 +1,8 @@
 import type { Speech } from "../words/speech.ts";
 import { html, type Markup } from "./markup.ts";
-import { plot, round, side, verticalScale } from "./plot.ts";
+import { heights, plot, round, side } from "./plot.ts";
 import { spreadLabels } from "./timeline.ts";
+import { verticalScale } from "./verticalScale.ts";
 
 const named = 3;
 
@@ -51,7 +52,8 @@ export function attributionChart(id: string, speech: Speech): Markup | null {
     id,
     title: `Where the forecast comes from: past shocks, ${unit}`.replace(/, $/, ""),
     description: `How far each of ${shocks.length} past shocks moves the coming ${steps} ${speech.facts.period}s away from the long-run level of ${speech.roughly(attribution.longRunLevel)}.`,
-    shape: "small",
+    height: heights.small,
+    grid: "y",
     x: spreadLabels(steps, (index) => speech.periods.short(forecast.periods[index]), 3).map((one) => ({
       ...one,
       at: (one.at * (steps - 1) + 0.5) / steps,

@@ -2,7 +2,8 @@ import { numberFormat } from "../words/formats.ts";
 import type { Speech } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { html, type Markup } from "./markup.ts";
-import { plot, round, side, verticalScale } from "./plot.ts";
+import { heights, plot, round, side } from "./plot.ts";
+import { verticalScale } from "./verticalScale.ts";
 
 /** Residual autocorrelations with the band ±1.96/√n that white noise keeps to 95 % of the time. `null` without any. */
 export function autocorrelationChart(id: string, speech: Speech, locale: string): Markup | null {
@@ -21,7 +22,8 @@ export function autocorrelationChart(id: string, speech: Speech, locale: string)
     id,
     title: "What the model leaves unexplained, by lag",
     description: `Autocorrelations of the residuals at ${values.length} lags; ${outside} outside the 95% band of ±${number.format(band)}, ${number.format(values.length * 0.05)} expected by chance.`,
-    shape: "small",
+    height: heights.small,
+    grid: "y",
     x: values.flatMap((_, index) =>
       index % every === 0 ? [{ at: (index + 0.5) / values.length, text: `${index + 1}` }] : [],
     ),

@@ -1,70 +1,72 @@
-import { numberFormat } from "../words/formats.ts";
 import type { Speech } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { html, type Markup } from "./markup.ts";
-import { plot, round, side, verticalScale } from "./plot.ts";
+import { plot, round, side } from "./plot.ts";
+import { horizontalScale } from "./verticalScale.ts";
 
 /** Two standard errors to each side hold a normal estimate about 95 % of the time. */
 const reach = 1.96;
+/** Lags with a row of their own; the table under the picture has them all. */
+const most = 12;
 
-/** Each coefficient with its 95 % interval now, and where the reference had it. `null` without coefficients. */
+/** Each coefficient with its 95 % interval now, and where the earlier model had it. `null` without coefficients. */
 export function coefficientChart(id: string, speech: Speech, locale: string): Markup | null {
   const { model, comparison } = speech.facts;
-  const tell = statisticsWriter(locale);
   const before = new Map(comparison?.coefficients.map((one) => [one.lag, one.before]) ?? []);
-  const count = Math.min(26, Math.max(model.order, ...[...before.keys()]));
+  const count = Math.max(model.order, 0, ...before.keys());
   if (count === 0) return null;
-  const rows = Array.from({ length: count }, (_, index) => {
+  const all = Array.from({ length: count }, (_, index) => {
     const value = model.coefficients[index] ?? null;
     const error = model.standardErrors[index] ?? null;
+    const arm = error === null || !Number.isFinite(error) ? 0 : reach * error;
     return {
       lag: index + 1,
       value,
-      low: value !== null && error !== null ? value - reach * error : value,
-      high: value !== null && error !== null ? value + reach * error : value,
-      before: before.get(index + 1) ?? null,
       error,
+      low: (value ?? 0) - arm,
+      high: (value ?? 0) + arm,
+      before: before.get(index + 1) ?? null,
     };
   });
-  const { scale, ticks, place } = verticalScale([
+  const rows = all.slice(0, most);
+  const { scale, ticks, place } = horizontalScale([
     0,
     ...rows.flatMap((one) => [one.low, one.high, one.before]),
   ]);
-  const x = (lag: number) => round(((lag - 0.5) / count) * side);
-  const y = (value: number) => round(scale(value));
-  const shift = Math.min(14, 120 / count);
-  const every = Math.ceil(count / 8);
-  const number = numberFormat(locale, { maximumFractionDigits: place < 0.1 ? 2 : 1 });
+  const tell = statisticsWriter(locale);
+  const x = (value: number) => round(scale(value));
+  const y = (index: number) => round(((index + 0.5) / rows.length) * side);
+  const lift = 140 / rows.length;
+  const compared = rows.some((one) => one.before !== null);
+  const cut = count > most ? ` (first ${most} of ${count} lags)` : "";
   return plot({
     id,
-    title: "Coefficients by lag, now and before",
-    description: `${count} coefficients with 95% intervals; ${rows.filter((one) => one.before !== null).length} of them can be compared with the earlier model.`,
-    shape: "small",
-    x: rows
-      .filter((_, index) => index % every === 0)
-      .map((one) => ({ at: (one.lag - 0.5) / count, text: `${one.lag}` })),
-    y: ticks.map((tick) => ({ at: scale(tick) / side, text: number.format(tick) })),
+    title: `Coefficients, now and before${cut}`,
+    description: `${count === 1 ? "1 coefficient" : `${count} coefficients`} with 95% intervals${compared ? ", beside those of the earlier model" : ""}.`,
+    height: Math.max(4, rows.length * 1.7),
+    grid: "x",
+    x: ticks.map((tick) => ({ at: scale(tick) / side, text: speech.write(tick, place) })),
+    y: rows.map((one, index) => ({ at: y(index) / side, text: `lag ${one.lag}` })),
     body: [
-      html`<path class="zero" d="M0,${y(0)}H${side}"/>`,
-      ...rows.map(
-        ({ lag, value, low, high, before: old }) =>
-          html`${
-            low !== null && high !== null
-              ? html`<path class="whisker" d="M${x(lag) + shift},${y(low)}V${y(high)}"/>`
-              : html``
-          }${value !== null ? html`<path class="dot" d="M${x(lag) + shift},${y(value)}h0"/>` : html``}${
-            old !== null ? html`<path class="dot old" d="M${x(lag) - shift},${y(old)}h0"/>` : html``
-          }`,
-      ),
+      html`<path class="zero" d="M${x(0)},0V${side}"/>`,
+      ...rows.flatMap(({ value, low, high, before: old }, index) => [
+        ...(value === null
+          ? []
+          : [
+              html`<path class="whisker" d="M${x(low)},${round(y(index) - lift)}H${x(high)}"/>`,
+              html`<path class="dot" d="M${x(value)},${round(y(index) - lift)}h0"/>`,
+            ]),
+        ...(old === null ? [] : [html`<path class="dot old" d="M${x(old)},${round(y(index) + lift)}h0"/>`]),
+      ]),
     ],
     legend: [
       { sample: "dot", text: "now, with 95% interval" },
-      ...(before.size > 0 ? [{ sample: "dot old", text: "model compared with" }] : []),
+      ...(compared ? [{ sample: "dot old", text: "model compared with" }] : []),
     ],
     table: {
       caption: "coefficients",
       head: ["lag", "before", "now", "standard error"],
-      rows: rows.map((one) => [
+      rows: all.map((one) => [
         `${one.lag}`,
         tell.coefficient(one.before),
         tell.coefficient(one.value),

@@ -2,8 +2,9 @@ import { area, line } from "d3-shape";
 import type { SeriesFacts } from "../words/facts.ts";
 import type { Speech } from "../words/speech.ts";
 import { html, type Markup } from "./markup.ts";
-import { type LegendEntry, plot, round, side, verticalScale } from "./plot.ts";
+import { heights, type LegendEntry, plot, round, side } from "./plot.ts";
 import { spreadLabels } from "./timeline.ts";
+import { verticalScale } from "./verticalScale.ts";
 
 /** Coefficients of the model a change or comparison is measured from, and how to name it; `null` without one. */
 function referenceOf(facts: SeriesFacts): { coefficients: readonly number[]; name: string } | null {
@@ -51,7 +52,7 @@ export function fadeChart(id: string, speech: Speech): Markup {
   const legend: LegendEntry[] = [
     { sample: "past", text: "now" },
     ...(reference ? [{ sample: "reference", text: reference.name }] : []),
-    { sample: "limit", text: "one half left" },
+    { sample: "half", text: "one half left" },
   ];
   const halfWords =
     half === null ? "It never falls to one half for good." : `Half is left after ${speech.span(half)}.`;
@@ -59,12 +60,13 @@ export function fadeChart(id: string, speech: Speech): Markup {
     id,
     title: `How a shock fades, by ${period}s after it`,
     description: `The share of a shock that is left. ${halfWords}`,
-    shape: "small",
+    height: heights.small,
+    grid: "y",
     x: spreadLabels(count, (lag) => `${lag}`),
     y: ticks.map((tick) => ({ at: scale(tick) / side, text: speech.percent(Math.round(tick * 100)) })),
     body: [
       html`<path class="ebb" d="${under(now) ?? ""}"/>`,
-      html`<path class="limit" d="M0,${y(0.5)}H${side}"/>`,
+      html`<path class="half" d="M0,${y(0.5)}H${side}"/>`,
       then ? html`<path class="reference" d="${curve(then) ?? ""}"/>` : html``,
       html`<path class="past" d="${curve(now) ?? ""}"/>`,
       half !== null && half <= count - 1 ? html`<path class="dot" d="M${x(half)},${y(0.5)}h0"/>` : html``,

@@ -5,8 +5,9 @@ import { roundingStep } from "../words/numbers.ts";
 import { valueStep } from "../words/otherFindings.ts";
 import type { Speech } from "../words/speech.ts";
 import { html, type Markup } from "./markup.ts";
-import { type LegendEntry, type Mark, plot, round, side, verticalScale } from "./plot.ts";
-import { spreadLabels, type Timeline, timelineOf } from "./timeline.ts";
+import { heights, type LegendEntry, type Mark, plot, round, side } from "./plot.ts";
+import { type Timeline, timelineLabels, timelineOf } from "./timeline.ts";
+import { verticalScale } from "./verticalScale.ts";
 
 /** The past, and the forecast fanning out of it; changes, surprises and limits are marked. */
 export function historyChart(id: string, speech: Speech): Markup {
@@ -56,8 +57,9 @@ export function historyChart(id: string, speech: Speech): Markup {
     id,
     title: `${speech.series}: past and forecast${speech.unit === null ? "" : `, in ${speech.unit}`}`,
     description: description(speech, timeline),
-    shape: "wide",
-    x: spreadLabels(starts.length, (index) => periods.short(starts[index])),
+    height: heights.wide,
+    grid: "y",
+    x: timelineLabels(starts, periods),
     y: ticks.map((tick) => ({ at: scale(tick) / side, text: write(tick, place) })),
     marks: events.map((one) => one.mark),
     body: [

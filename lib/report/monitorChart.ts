@@ -4,7 +4,8 @@ import { numberFormat } from "../words/formats.ts";
 import type { Speech } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { html, type Markup } from "./markup.ts";
-import { plot, round, side, verticalScale } from "./plot.ts";
+import { heights, plot, round, side } from "./plot.ts";
+import { verticalScale } from "./verticalScale.ts";
 
 const names = {
   persistence: "Persistence",
@@ -45,7 +46,8 @@ function monitorChart(
     id,
     title: `${names[kind]}: watched statistic by look`,
     description: `${statistics.length} of ${monitor.looks} looks; boundary ${tell.size(boundary)}${latest === null ? "" : `, latest ${tell.size(latest)}`}. ${verdict}`,
-    shape: "small",
+    height: heights.small,
+    grid: "y",
     x: [
       { at: 0, text: "look 1" },
       { at: 1, text: speech.write(monitor.looks, 1) },

@@ -2,8 +2,9 @@ import { ranked } from "../words/attention.ts";
 import type { RunFacts, Voice } from "../words/facts.ts";
 import { headline } from "../words/headline.ts";
 import { frontPage } from "./frontPage.ts";
-import { html, type Markup } from "./markup.ts";
+import { html, type Markup, nothing } from "./markup.ts";
 import { page } from "./page.ts";
+import { problemsSection } from "./problemsSection.ts";
 import { seriesSection } from "./seriesSection.ts";
 
 /** Characters of series sections a page may hold: far below 15 MB, so that a phone opens it at once. */
@@ -34,11 +35,16 @@ export function renderReport(run: RunFacts, voice: Voice): { key: string; html: 
     const others =
       pages.length > 1
         ? html`<p class="pages">Page ${number + 1} of ${pages.length}: ${pages.map((_, other) => (other === number ? html`<b>${other + 1}</b> ` : html`<a href="${key(other)}">${other + 1}</a> `))}</p>`
-        : html``;
-    const front = number === 0 ? frontPage(all, linkOf, run, voice) : html``;
+        : nothing;
+    const front = number === 0 ? frontPage(all, linkOf, run, voice) : nothing;
     return {
       key: key(number),
-      html: page(headline(run), html`${others}${front}${sections}${others}`, run, voice),
+      html: page(
+        headline(run),
+        html`${others}${front}${sections}${number === 0 ? problemsSection(run) : nothing}${others}`,
+        run,
+        voice,
+      ),
     };
   });
 }

@@ -1,11 +1,9 @@
 import type { Ranked } from "../words/attention.ts";
 import { changeDate, changeHeadline, changeMeaning } from "../words/changeWords.ts";
-import type { RunFacts, Voice } from "../words/facts.ts";
-import { chanceSentences, nextSentence, totalSentence } from "../words/forecastSentences.ts";
+import type { RunFacts, SeriesFacts, Voice } from "../words/facts.ts";
 import { plainText } from "../words/plainText.ts";
-import { remainderSentence } from "../words/remainder.ts";
 import { seriesAccount } from "../words/seriesAccount.ts";
-import { speechFor } from "../words/speech.ts";
+import { type Speech, speechFor } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { attributionChart } from "./attributionChart.ts";
 import { autocorrelationChart } from "./autocorrelationChart.ts";
@@ -15,46 +13,47 @@ import { historyChart } from "./historyChart.ts";
 import { html, type Markup, nothing } from "./markup.ts";
 import { monitorCharts } from "./monitorChart.ts";
 import { statusChip } from "./status.ts";
+import { tiles } from "./tiles.ts";
 import { trackChart } from "./trackChart.ts";
 
-/** Everything about one series: what to expect and what changed in words, then the pictures, then the account. */
+/** Everything about one series: the numbers to plan with, what changed, then the pictures, then the account. */
 export function seriesSection(one: Ranked, id: string, run: RunFacts, voice: Voice): Markup {
   const { facts, table } = one;
   const speech = speechFor(facts, voice, run.asOf);
   const account = seriesAccount(facts, speech, statisticsWriter(voice.locale), voice, false);
-  const lead = [nextSentence(speech), totalSentence(speech), ...chanceSentences(speech)].filter(
-    (text) => text !== "",
-  );
-  const changes = facts.findings.flatMap((finding) => {
-    if (finding.code !== "change") return [];
-    const rest = finding.kind === "persistence" ? remainderSentence(speech) : null;
-    return [
-      changeHeadline(finding, speech),
-      [changeMeaning(finding, speech), rest].filter(Boolean).join(": "),
-      changeDate(finding, speech),
-    ];
-  });
-  const list = (texts: readonly string[]) =>
-    texts.length > 0
-      ? html`<ul class="said">${texts.map((text) => html`<li>${closed(text)}</li>`)}</ul>`
-      : nothing;
-  const pictures = [
-    fadeChart(`${id}f`, speech),
-    attributionChart(`${id}a`, speech),
-    coefficientChart(`${id}c`, speech, voice.locale),
-    ...(facts.monitor ? monitorCharts(`${id}m`, facts.monitor, speech, voice.locale) : []),
-    autocorrelationChart(`${id}r`, speech, voice.locale),
-    trackChart(`${id}t`, speech, voice.locale),
-  ].flatMap((picture) => (picture ? [picture] : []));
-  const accountLines = [...account.changes, ...account.model, ...account.comparison, ...account.watch];
+  const group = (title: string, pictures: readonly (Markup | null)[]) => {
+    const drawn = pictures.flatMap((picture) => (picture ? [picture] : []));
+    return drawn.length > 0 ? html`<h3>${title}</h3><div class="pictures">${drawn}</div>` : nothing;
+  };
+  const lines = [...account.changes, ...account.model, ...account.comparison, ...account.watch];
   return html`<section id="${id}" class="series" aria-labelledby="${id}h">
-<h2 id="${id}h"><span class="of">${plainText(table.table)}</span> ${speech.series} ${statusChip(one)}</h2>
-${list([...changes.filter((text) => text !== ""), ...lead])}
+<h2 id="${id}h">${run.tables.length > 1 ? html`<span class="of">${plainText(table.table)}</span> ` : nothing}${speech.series} ${statusChip(one)}</h2>
+${tiles(speech)}
+${list([...changesOf(facts, speech), ...account.others])}
 ${historyChart(`${id}p`, speech)}
-<div class="pictures">${pictures}</div>
-${list([...account.others, ...account.record])}
-<details class="account"><summary>The analyst's account</summary><pre tabindex="0">${accountLines.join("\n")}</pre></details>
+${list(account.record)}
+${group("What carries the forecast", [fadeChart(`${id}f`, speech), attributionChart(`${id}a`, speech), trackChart(`${id}t`, speech, voice.locale)])}
+${group("The watch for change", facts.monitor ? monitorCharts(`${id}m`, facts.monitor, speech, voice.locale) : [])}
+${group("The model", [coefficientChart(`${id}c`, speech, voice.locale), autocorrelationChart(`${id}r`, speech, voice.locale)])}
+<details class="account"><summary>The analyst's account</summary><pre tabindex="0" role="region" aria-label="The analyst's account of ${speech.series}">${lines.join("\n")}</pre></details>
+<p class="back"><a href="report.html#all">All series</a></p>
 </section>`;
+}
+
+/** Every change that is known, the newest last: what, what it means, and since when. */
+function changesOf(facts: SeriesFacts, speech: Speech): string[] {
+  return facts.findings.flatMap((finding) =>
+    finding.code === "change"
+      ? [changeHeadline(finding, speech), changeMeaning(finding, speech), changeDate(finding, speech)]
+      : [],
+  );
+}
+
+function list(texts: readonly string[]): Markup {
+  const said = [...new Set(texts)].filter((text) => text !== "");
+  return said.length > 0
+    ? html`<ul class="said">${said.map((text) => html`<li>${closed(text)}</li>`)}</ul>`
+    : nothing;
 }
 
 /** A sentence with a capital and a full stop. */

@@ -10,13 +10,15 @@ html{-webkit-text-size-adjust:100%}
 body{margin:0;background:var(--paper);color:var(--ink);font:16px/1.5 system-ui,-apple-system,"Segoe UI",sans-serif;overflow-wrap:anywhere}
 header,main,footer{max-width:72rem;margin:0 auto;padding:0 1.25rem}
 header{padding-top:1.5rem}
-h1,h2,.mark,.name{font-family:Charter,"Iowan Old Style",Georgia,"Times New Roman",serif}
+h1,h2,h3,.mark,.name{font-family:Charter,"Iowan Old Style",Georgia,"Times New Roman",serif}
 .mark{margin:0;color:var(--water);font-size:1.05rem;letter-spacing:.06em}
 .tide{display:block;width:100%;height:44px;overflow:visible}
 .tide path{fill:none;stroke:var(--water);stroke-width:2;vector-effect:non-scaling-stroke}
 h1{margin:.4rem 0 0;font-weight:500;font-size:clamp(1.5rem,4.5vw,2.3rem);line-height:1.2}
 .when,.hint{margin:.3rem 0 0;color:var(--soft)}
 h2{margin:0;font-weight:500;font-size:1.45rem;line-height:1.25}
+h3{margin:1.6rem 0 0;padding-top:.8rem;border-top:1px solid var(--grid);font-weight:500;font-size:1.05rem}
+h3 small{margin-left:.5em}
 a{color:var(--water)}
 :focus-visible{outline:3px solid var(--sand);outline-offset:2px}
 .troubles{margin-top:1.5rem;border-left:4px solid var(--alarm);padding:.2rem 0 .2rem 1rem}
@@ -41,6 +43,11 @@ small,.of{font:400 .85rem/1.3 system-ui,-apple-system,"Segoe UI",sans-serif;colo
 .chip.late,.chip.limit{border-color:var(--alarm)}
 .chip.late::before{content:"▲ ";color:var(--alarm)}
 .chip.limit::before{content:"▬ ";color:var(--alarm)}
+.tiles{display:flex;flex-wrap:wrap;gap:.75rem 2.5rem;margin:1rem 0}
+.tiles dt{font-size:.85rem;color:var(--soft)}
+.tiles dd{margin:0}
+.tiles b{font:500 1.9rem/1.15 Charter,"Iowan Old Style",Georgia,"Times New Roman",serif}
+.tiles small{display:block}
 .series{margin:2rem 0;padding:1.25rem;background:var(--card);border:1px solid var(--rule);border-radius:.6rem;content-visibility:auto;contain-intrinsic-size:auto 1600px}
 .said{margin:.6rem 0;padding:0 0 0 1.1rem;max-width:70ch}
 .said li{margin:.2rem 0}
@@ -48,13 +55,12 @@ small,.of{font:400 .85rem/1.3 system-ui,-apple-system,"Segoe UI",sans-serif;colo
 .plot{margin:1.2rem 0 .4rem;min-width:0}
 figcaption{font-weight:600;font-size:.95rem;margin-bottom:.35rem}
 .frame{position:relative;padding:0 .6rem 1.5rem calc(var(--gutter) + .6rem);font-size:.78rem;color:var(--soft);font-variant-numeric:tabular-nums}
-.frame svg{display:block;width:100%;height:11rem;overflow:visible}
-.wide .frame svg{height:17rem}
+.body{position:relative}
+.body svg{display:block;width:100%;height:var(--height);overflow:visible}
 .frame svg path,.mini path{vector-effect:non-scaling-stroke;fill:none}
-.marks{position:relative;height:2.8em}
+.marks{position:relative}
 .marks b{position:absolute;color:var(--ink);line-height:1.3}
-.ys{position:absolute;left:0;width:calc(var(--gutter) + .1rem);bottom:1.5rem;height:11rem}
-.wide .ys{height:17rem}
+.ys{position:absolute;right:calc(100% + .5rem);top:0;bottom:0;width:var(--gutter)}
 .ys span{position:absolute;right:0;transform:translateY(-50%);white-space:nowrap}
 .xs{position:relative;height:0}
 .xs span{position:absolute;top:.3rem;white-space:nowrap}
@@ -65,6 +71,7 @@ figcaption{font-weight:600;font-size:.95rem;margin-bottom:.35rem}
 .coming{stroke:var(--sand);stroke-width:2.2;stroke-dasharray:5 3}
 .frame svg .fan{stroke:none}.frame svg .fan1{fill:var(--fan1)}.frame svg .fan2{fill:var(--fan2)}
 .limit{stroke:var(--alarm);stroke-width:1.5;stroke-dasharray:2 3}
+.half{stroke:var(--stone);stroke-width:1.5;stroke-dasharray:2 3}
 .boundary{stroke:var(--alarm);stroke-width:1.8}
 .reference{stroke:var(--stone);stroke-width:1.8;stroke-dasharray:6 4}
 .now{stroke:var(--rule);stroke-width:1}
@@ -73,7 +80,7 @@ figcaption{font-weight:600;font-size:.95rem;margin-bottom:.35rem}
 .frame svg .between{fill:var(--grid);stroke:none}
 .frame svg .ebb{fill:var(--water-pale);stroke:none}
 .dot{stroke:var(--water);stroke-width:8;stroke-linecap:round}
-.dot.old{stroke:var(--stone);stroke-width:6;stroke-linecap:square}
+.dot.old{stroke:var(--stone);stroke-width:7;stroke-linecap:square}
 .dot.surprise{stroke:var(--alarm);stroke-width:9}
 .whisker,.stem{stroke:var(--water);stroke-width:2.4}
 .frame svg .part{stroke:var(--card);stroke-width:1}
@@ -82,9 +89,10 @@ figcaption{font-weight:600;font-size:.95rem;margin-bottom:.35rem}
 .legend{list-style:none;display:flex;flex-wrap:wrap;gap:.15rem 1rem}
 .told{list-style:upper-alpha;padding-left:1.6rem;color:var(--ink)}
 .legend i{display:inline-block;width:1.4rem;height:.7rem;margin-right:.4rem;border:0 solid transparent;vertical-align:-.05rem}
-.legend i.past,.legend i.coming,.legend i.limit,.legend i.boundary,.legend i.reference,.legend i.stem{height:0;border-top:2px solid var(--water);vertical-align:.25rem}
+.legend i.past,.legend i.coming,.legend i.limit,.legend i.half,.legend i.boundary,.legend i.reference,.legend i.stem{height:0;border-top:2px solid var(--water);vertical-align:.25rem}
 .legend i.coming{border-top:2px dashed var(--sand)}
 .legend i.limit{border-top:2px dotted var(--alarm)}
+.legend i.half{border-top:2px dotted var(--stone)}
 .legend i.boundary{border-top-color:var(--alarm)}
 .legend i.reference{border-top:2px dashed var(--stone)}
 .legend i.stem{width:.2rem;height:.8rem;border:0;background:var(--water);vertical-align:-.1rem}
@@ -92,6 +100,7 @@ figcaption{font-weight:600;font-size:.95rem;margin-bottom:.35rem}
 .legend i.dot.old{border-radius:0;background:var(--stone)}
 .legend i.fan1{background:var(--fan1)}.legend i.fan2{background:var(--fan2)}.legend i.between{background:var(--grid)}
 .legend i.part1{background:var(--p1)}.legend i.part2{background:var(--p2)}.legend i.part3{background:var(--p3)}.legend i.part4{background:var(--p4)}
+.back{margin:.8rem 0 0;font-size:.85rem}
 details{font-size:.85rem}
 summary{cursor:pointer;color:var(--soft);padding:.25rem 0}
 .scroll,pre{overflow:auto;max-height:24rem;border:1px solid var(--rule);border-radius:.3rem}
@@ -102,11 +111,11 @@ th:first-child{text-align:left}
 thead th{font-weight:600;border-bottom-color:var(--rule)}
 footer{padding-top:1rem;padding-bottom:2.5rem;color:var(--soft);font-size:.9rem}
 @media(max-width:46rem){
+.xs .more{display:none}
 header,main,footer{padding-left:.9rem;padding-right:.9rem}
 .front a{grid-template-columns:1fr auto;gap:.3rem .75rem}
 .front .mini{grid-column:1/-1}.front .next{grid-column:1/-1}
 .series{margin:1.25rem -.35rem;padding:.9rem .75rem}
-.wide .frame svg,.wide .ys{height:14rem}
 }
 @media print{
 :root{--paper:#fff;--card:#fff;--ink:#000;--soft:#333}

@@ -1,5 +1,5 @@
 import type { SeriesFacts } from "../words/facts.ts";
-import { addPeriods } from "../words/periods.ts";
+import { addPeriods, instantOf, type PeriodNames } from "../words/periods.ts";
 import type { AxisLabel } from "./plot.ts";
 
 /** The periods a picture of past and future shows, oldest first. */
@@ -10,13 +10,25 @@ export interface Timeline {
   readonly now: number;
 }
 
-/** The last `longest` periods of the history, and the forecast's periods after them. */
-export function timelineOf(facts: SeriesFacts, longest = 156): Timeline {
+/**
+ * The recent past, about six times as long as the forecast so that the forecast stays large enough to read, but
+ * reaching back before every change that is spoken of where the history allows it; then the forecast's periods.
+ */
+export function timelineOf(facts: SeriesFacts): Timeline {
   const { history, forecast, period } = facts;
-  const past = history.values.slice(-longest);
-  const first = history.values.length - past.length;
-  const starts = past.map((_, index) => addPeriods(history.start, period, first + index));
-  return { starts: [...starts, ...forecast.periods], past, now: past.length };
+  const all = history.values.map((_, index) => addPeriods(history.start, period, index));
+  const [firstChange] = facts.findings
+    .flatMap((one) => (one.code === "change" ? [one.change.low] : []))
+    .sort();
+  const changeAt = firstChange === undefined ? -1 : all.findIndex((start) => start >= firstChange);
+  const sinceChange = changeAt === -1 ? 0 : all.length - changeAt + 8;
+  const shown = Math.min(all.length, 156, Math.max(40, 6 * forecast.periods.length, sinceChange));
+  const first = all.length - shown;
+  return {
+    starts: [...all.slice(first), ...forecast.periods],
+    past: history.values.slice(first),
+    now: shown,
+  };
 }
 
 /** Up to four labels, evenly spread, so that they stay apart on a phone. */
@@ -27,4 +39,15 @@ export function spreadLabels(count: number, text: (index: number) => string, mos
     const index = Math.round((label * (count - 1)) / (labels - 1));
     return { at: index / (count - 1), text: text(index) };
   });
+}
+
+/**
+ * Labels under a timeline: days while it spans less than most of a year, else months with their year. Every other
+ * one is spared on a narrow screen.
+ */
+export function timelineLabels(starts: readonly string[], names: PeriodNames): AxisLabel[] {
+  const days = (instantOf(starts[starts.length - 1]) - instantOf(starts[0])) / 86_400_000;
+  const name = days > 300 ? names.coarse : names.short;
+  const labels = spreadLabels(starts.length, (index) => name(starts[index]), 5);
+  return labels.map((label, index) => ({ ...label, spare: index % 2 === 1 }));
 }

@@ -2,8 +2,9 @@ import { line } from "d3-shape";
 import type { Speech } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { html, type Markup } from "./markup.ts";
-import { plot, round, side, verticalScale } from "./plot.ts";
+import { heights, plot, round, side } from "./plot.ts";
 import { spreadLabels } from "./timeline.ts";
+import { verticalScale } from "./verticalScale.ts";
 
 /** What earlier forecasts were worth: the typical miss by how far ahead, against repeating the past. */
 export function trackChart(id: string, speech: Speech, locale: string): Markup | null {
@@ -24,7 +25,8 @@ export function trackChart(id: string, speech: Speech, locale: string): Markup |
     id,
     title: `Typical miss by ${period}s ahead${inUnit}`,
     description: `Mean absolute error of ${record.forecasts} forecasts by how far ahead they looked, ours and by repeating the past.`,
-    shape: "small",
+    height: heights.small,
+    grid: "y",
     x: spreadLabels(steps.length, (index) => `${steps[index].step}`),
     y: ticks.map((tick) => ({ at: scale(tick) / side, text: speech.write(tick, place) })),
     body: [

@@ -41,6 +41,8 @@ export interface PeriodNames {
   readonly when: (start: string) => string;
   /** Short label for an axis: "7 Dec". */
   readonly short: (start: string) => string;
+  /** Short label for an axis over more than most of a year: "Dec 2026". */
+  readonly coarse: (start: string) => string;
 }
 
 /**
@@ -71,11 +73,13 @@ export function periodNames(period: Period, locale: string, timeZone: string, no
     const month = new Date(instantOf(start)).getUTCMonth();
     return month % 3 === 0 ? `Q${month / 3 + 1} ${year(start)}` : `the quarter from ${monthAndYear(start)}`;
   };
+  const shortMonth = format({ month: "short", year: "numeric" });
   const bare = (name: (start: string) => string, short = name): PeriodNames => ({
     name,
     inText: name,
     when: (start) => `in ${name(start)}`,
     short,
+    coarse: short,
   });
   switch (period) {
     case "hour":
@@ -84,9 +88,16 @@ export function periodNames(period: Period, locale: string, timeZone: string, no
         inText: (start) => `${time(start)} on ${weekday(start)}`,
         when: (start) => `at ${time(start)} on ${weekday(start)}`,
         short: (start) => `${shortDay(start)} ${time(start)}`,
+        coarse: shortMonth,
       };
     case "day":
-      return { name: weekday, inText: weekday, when: (start) => `on ${weekday(start)}`, short: shortDay };
+      return {
+        name: weekday,
+        inText: weekday,
+        when: (start) => `on ${weekday(start)}`,
+        short: shortDay,
+        coarse: shortMonth,
+      };
     case "week": {
       const name = (start: string) => `week of ${dayAndMonth(start)}`;
       return {
@@ -94,10 +105,11 @@ export function periodNames(period: Period, locale: string, timeZone: string, no
         inText: (start) => `the ${name(start)}`,
         when: (start) => `in the ${name(start)}`,
         short: shortDay,
+        coarse: shortMonth,
       };
     }
     case "month":
-      return bare(monthAndYear, format({ month: "short", year: "numeric" }));
+      return bare(monthAndYear, shortMonth);
     case "quarter":
       return bare(quarter);
     case "year":
