@@ -6,6 +6,7 @@ import { halfLife } from "../dynamics/halfLife.ts";
 import { halfLifeInterval } from "../dynamics/halfLifeInterval.ts";
 import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
 import { persistence } from "../dynamics/persistence.ts";
+import { shockFading } from "../dynamics/shockFading.ts";
 import type { DescribingModel } from "../forecast/forecast.ts";
 import type { ModelFacts } from "../words/facts.ts";
 import type { DescribedLevel } from "./describedLevel.ts";
@@ -13,6 +14,8 @@ import type { DescribedLevel } from "./describedLevel.ts";
 /** Weights and residual autocorrelations kept for pictures. */
 const weightsKept = 27;
 const residualLags = 20;
+/** Fewer values say nothing about permanence. */
+const shortestTested = 30;
 
 const orNull = (value: number) => (Number.isFinite(value) ? value : null);
 
@@ -46,18 +49,24 @@ function rhythmOf(coefficients: ArrayLike<number>): ModelFacts["rhythm"] {
   return dominant.modulus > 0 ? { length: dominant.period, damping: dominant.modulus } : null;
 }
 
-/** Whether shocks are known to fade: not, when the range of the half-life has no end. */
-function fadingOf(range: { high: number | null }, halfLife: number | null): ModelFacts["fading"] {
-  if (halfLife === null) return "permanent";
-  return range.high === null ? "cannot-tell" : "fades";
+/**
+ * Whether shocks fade, by tests of both hypotheses; with gaps, which the tests do not take, by whether the range of the
+ * half-life has an end.
+ */
+function fadingOf(values: Float64Array, trend: boolean, rangeEnd: number | null): ModelFacts["fading"] {
+  const varies = values.some((value) => value !== values[0]);
+  if (!varies) return "fades";
+  if (values.length < shortestTested || values.some(Number.isNaN))
+    return rangeEnd === null ? "cannot-tell" : "fades";
+  return shockFading(values, { trend }).verdict;
 }
 
-/** The describing model in numbers that survive JSON. */
-export function modelFacts(model: DescribingModel, level: DescribedLevel): ModelFacts {
+/** The describing model in numbers that survive JSON; `values` are those it describes, on its own scale less its season. */
+export function modelFacts(model: DescribingModel, level: DescribedLevel, values: Float64Array): ModelFacts {
   const { fit } = model;
   const lags = Math.max(fit.order + 3, Math.min(residualLags, Math.floor(fit.observations / 5)));
   const life = orNull(halfLife(fit.coefficients));
-  const interval = halfLifeInterval(fit);
+  const interval = halfLifeInterval(fit, { estimated: model.trend ? "trend" : "estimate" });
   const range = { low: orNull(interval.low), high: orNull(interval.high) };
   return {
     scale: model.scale,
@@ -80,7 +89,7 @@ export function modelFacts(model: DescribingModel, level: DescribedLevel): Model
     residualAutocorrelations: residualAutocorrelations(fit.residuals),
     ljungBox:
       fit.observations > 2 * lags ? ljungBox(fit.residuals, { lags, fittedParameters: fit.order }) : null,
-    fading: fadingOf(range, life),
+    fading: fadingOf(values, model.trend, range.high),
     observations: fit.observations,
   };
 }

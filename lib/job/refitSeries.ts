@@ -113,7 +113,8 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
 
   const { model } = forecast;
   const level = describedLevel(model);
-  const described = modelFacts(model, level);
+  const departing = departures(model, values);
+  const described = modelFacts(model, level, departing);
   const weights = movingAverageWeights(model.fit.coefficients, 13);
   const findings: Finding[] = [
     ...changeFindings(watched.notices, previous?.stored.facts.findings ?? [], {
@@ -148,7 +149,7 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     forecast: forecasts,
     model: described,
     comparison: previous ? comparisonFacts(previous.asOf, previous.stored.facts.model, described) : null,
-    attribution: attributionFacts(model, departures(model, values), horizon, level.value, periodOf),
+    attribution: attributionFacts(model, departing, horizon, level.value, periodOf),
     monitor: monitorFacts(watched.watch, periodOf),
     findings,
     trackRecord: trackRecord(track),
