@@ -1,4 +1,3 @@
-import { compensatedSum } from "../numeric/sums.ts";
 import { requireObserved, requireValues, requireWhole } from "./checks.ts";
 import type { AutoregressiveFit, EstimationMethod } from "./fit.ts";
 import { fitByLeastSquares } from "./leastSquaresFit.ts";
@@ -65,10 +64,12 @@ export function fitAutoregression(values: ArrayLike<number>, options: FitOptions
 
 /** Refuses values that are all the same (all zero, when the mean is known): their variance is zero. */
 export function requireVariation(values: ArrayLike<number>, meanKnown: boolean): void {
-  const observed = Array.from(values).filter((value) => !Number.isNaN(value));
-  const centre = meanKnown ? 0 : observed[0];
-  if (compensatedSum(observed.map((value) => Math.abs(value - centre))) > 0) return;
-  throw new RangeError(
-    `fitAutoregression needs values that vary, got ${observed.length} times ${observed[0]}`,
-  );
+  let first = meanKnown ? 0 : Number.NaN;
+  for (let t = 0; t < values.length; t++) {
+    const value = values[t];
+    if (Number.isNaN(value)) continue;
+    if (Number.isNaN(first)) first = value;
+    else if (value !== first) return;
+  }
+  throw new RangeError(`fitAutoregression needs values that vary, got ${first} throughout`);
 }

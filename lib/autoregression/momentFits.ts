@@ -1,7 +1,8 @@
 import { invertPositive } from "../numeric/cholesky.ts";
 import { countObserved, observedMean } from "../numeric/sums.ts";
-import { burgAllOrders, burgWorkspace } from "./burg.ts";
+import { burgReflections, reflectionWorkspace } from "./burg.ts";
 import type { AutoregressiveFit } from "./fit.ts";
+import { partialsToCoefficients } from "./partials.ts";
 import { autocovariancesAbout } from "./sampleMoments.ts";
 import { summarise } from "./summarise.ts";
 import { yuleWalkerAllOrders } from "./yuleWalker.ts";
@@ -29,14 +30,12 @@ export function momentOrders(
       innovationVariances: orders.innovationVariances,
     };
   }
-  const workspace = burgWorkspace(values.length, maxOrder);
-  burgAllOrders(values, centre, maxOrder, workspace);
-  const row = (order: number) => (order - 1) * maxOrder;
+  const reflections = reflectionWorkspace(values.length, maxOrder);
+  burgReflections(values, centre, maxOrder, reflections);
   return {
     centre,
-    coefficients: (order) =>
-      order === 0 ? new Float64Array(0) : workspace.coefficients.slice(row(order), row(order) + order),
-    innovationVariances: workspace.innovationVariances,
+    coefficients: (order) => partialsToCoefficients(reflections.partials.subarray(0, order)),
+    innovationVariances: reflections.innovationVariances,
   };
 }
 

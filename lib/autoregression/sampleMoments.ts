@@ -1,5 +1,5 @@
 import { levinson } from "../numeric/levinson.ts";
-import { centred, observedMean } from "../numeric/sums.ts";
+import { centred, countObserved, observedMean } from "../numeric/sums.ts";
 import { requireObserved, requireValues, requireWhole } from "./checks.ts";
 
 /**
@@ -31,13 +31,12 @@ export function autocovariancesAbout(
 ): Float64Array {
   const deviations = centred(values, centre);
   const n = deviations.length;
-  let gaps = 0;
-  for (let t = 0; t < n; t++) if (Number.isNaN(deviations[t])) gaps++;
+  const complete = countObserved(deviations) === n;
   const out = new Float64Array(maxLag + 1);
   for (let lag = 0; lag <= maxLag; lag++) {
     let sum = 0;
     let pairs = n - lag;
-    if (gaps === 0) {
+    if (complete) {
       for (let t = lag; t < n; t++) sum += deviations[t] * deviations[t - lag];
     } else {
       pairs = 0;

@@ -21,10 +21,22 @@ export interface Estimates {
 
 /** The fit that callers see. */
 export function summarise(estimates: Estimates): AutoregressiveFit {
-  const { parameters, effectiveObservations, ...rest } = estimates;
+  const { logLikelihood, parameters, effectiveObservations, regression } = estimates;
+  const { aic, aicc, bic } = informationCriteria(logLikelihood, parameters, effectiveObservations);
   return {
-    ...rest,
+    method: estimates.method,
     order: estimates.coefficients.length,
-    ...informationCriteria(estimates.logLikelihood, parameters, effectiveObservations),
+    coefficients: estimates.coefficients,
+    standardErrors: estimates.standardErrors,
+    mean: estimates.mean,
+    meanStandardError: estimates.meanStandardError,
+    innovationVariance: estimates.innovationVariance,
+    logLikelihood,
+    aic,
+    aicc,
+    bic,
+    observations: estimates.observations,
+    residuals: estimates.residuals,
+    ...(regression && { regression }),
   };
 }
