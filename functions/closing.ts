@@ -4,6 +4,7 @@ import { type Cloud, ownCloud } from "./cloud/cloud.ts";
 import { closingRequest } from "./cloud/events.ts";
 import type { LambdaContext } from "./cloud/lambda.ts";
 import { jsonLog } from "./cloud/log.ts";
+import { readSecret } from "./cloud/readSecret.ts";
 import { type RunOutcome, reportRun } from "./cloud/report.ts";
 import { secretsOf } from "./cloud/secrets.ts";
 
@@ -14,7 +15,7 @@ import { secretsOf } from "./cloud/secrets.ts";
  * @throws EventError, SettingsError, StoreError
  */
 export function handler(event: unknown, context: LambdaContext): Promise<RunOutcome> {
-  return runClosing(event, context, ownCloud());
+  return runClosing(event, context, ownCloud({ readSecret }));
 }
 
 /** The handler on a given cloud. */

@@ -11,8 +11,10 @@ import { type HandedOver, handOver } from "./cloud/handOver.ts";
 import type { LambdaContext } from "./cloud/lambda.ts";
 import { jsonLog, type Log } from "./cloud/log.ts";
 import { outgrown } from "./cloud/outgrown.ts";
+import { readSecret } from "./cloud/readSecret.ts";
 import { type RunOutcome, reportRun, UnfinishedError } from "./cloud/report.ts";
 import { secretsOf } from "./cloud/secrets.ts";
+import { startFleet } from "./cloud/startFleet.ts";
 import { type Watched, watchRuns } from "./cloud/watch.ts";
 
 /** A repeated trigger that came after a newer run: there is nothing left to do for it. */
@@ -32,7 +34,7 @@ interface Outdated {
  * @throws EventError, SettingsError, StoreError, UnfinishedError
  */
 export function handler(event: unknown, context: LambdaContext) {
-  return runScheduled(event, context, ownCloud());
+  return runScheduled(event, context, ownCloud({ readSecret, startFleet }));
 }
 
 /** The handler on a given cloud. */

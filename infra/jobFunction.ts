@@ -23,13 +23,17 @@ export interface JobFunctionProps {
 const requireBanner =
   "import { createRequire as requireMaker } from 'node:module'; const require = requireMaker(import.meta.url);";
 
+// Lambda gives credentials in the environment; the SDK's other ways to find some are a fifth of the bundle.
+const credentialProviders = "@aws-sdk/credential-provider-node";
+const lambdaCredentials = "functions/cloud/lambdaCredentials.ts";
+
 /**
  * One function of the job: Node 24 on arm64, one ESM file with everything in it, a log group of its own with
  * a retention, JSON logs, tracing, and a role that may write to that log group, send traces and do what
  * `statements` say: nothing else.
  *
- * White space goes from the bundle but names stay, so a stack trace can be read without a source map. (A source
- * map holds paths that differ from folder to folder, and with them the template would.)
+ * The bundle is minified for the sake of cold starts. There is no source map: it would hold paths that differ from
+ * folder to folder, and with them the template would.
  */
 export class JobFunction extends Construct {
   readonly function: NodejsFunction;
@@ -69,7 +73,11 @@ export class JobFunction extends Construct {
         target: "node24",
         bundleAwsSDK: true,
         banner: requireBanner,
-        esbuildArgs: { "--minify-whitespace": true, "--minify-syntax": true, "--legal-comments": "none" },
+        minify: true,
+        esbuildArgs: {
+          "--legal-comments": "none",
+          [`--alias:${credentialProviders}`]: `./${lambdaCredentials}`,
+        },
         forceDockerBundling: false,
       },
     });

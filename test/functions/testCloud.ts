@@ -1,7 +1,7 @@
 import { readFileSync } from "node:fs";
 import type { Cloud } from "../../functions/cloud/cloud.ts";
 import type { LambdaContext } from "../../functions/cloud/lambda.ts";
-import type { FleetRun } from "../../functions/cloud/services.ts";
+import type { FleetRun } from "../../functions/cloud/startFleet.ts";
 import type { ObjectStore } from "../../lib/store/objectStore.ts";
 import { MemoryStore } from "../support/memoryStore.ts";
 

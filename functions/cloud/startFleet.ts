@@ -8,17 +8,6 @@ export interface FleetRun {
 /** Starts an execution; `standing` when one of this name was started before. */
 export type StartFleet = (run: FleetRun) => Promise<"started" | "standing">;
 
-/** Reads a secret's text. The client is loaded at the first use: most cold starts never need it. */
-export async function readSecret(secretId: string): Promise<string | undefined> {
-  const { GetSecretValueCommand, SecretsManagerClient } = await import("@aws-sdk/client-secrets-manager");
-  const client = new SecretsManagerClient({ maxAttempts: 5 });
-  try {
-    return (await client.send(new GetSecretValueCommand({ SecretId: secretId }))).SecretString;
-  } finally {
-    client.destroy();
-  }
-}
-
 /**
  * Starts an execution of the state machine. Step Functions takes the same name with the same input as the same
  * execution while it runs, and says `ExecutionAlreadyExists` once it has ended: both mean that it was started.
