@@ -1,6 +1,6 @@
 import { backTestOf } from "./backTest.ts";
 import { addOutcomes, type CalibrationEvidence, spreadFactor } from "./calibration.ts";
-import { type Candidate, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
+import { type Candidate, fitBank, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
 import { type CombinedForecast, combineBank, forecastWorkspace, rollBank } from "./combinedForecast.ts";
 import { dampOutliers } from "./dampOutliers.ts";
 import type { SeriesDescription } from "./describingModel.ts";
@@ -61,7 +61,8 @@ export function averageForecast(
   const least = Math.max(8, seasons.length > 0 ? 3 * season : 0);
   const origins = rollingOrigins(count, horizon, least);
   const rolled = rollBank(values, scales, candidates, origins, maxOrder, workspace);
-  const bank = forecastBank(scales, candidates, count, horizon, maxOrder, workspace);
+  const fitted = fitBank(scales, candidates, count, maxOrder, workspace);
+  const bank = forecastBank(scales, candidates, fitted, count, horizon);
   const combined = combineBank(bank, candidates, scales, rolled, -1, horizon);
   const evidence: CalibrationEvidence = { scores: [], weights: [] };
   const past: CombinedForecast[] = [];

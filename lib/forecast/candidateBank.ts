@@ -29,12 +29,15 @@ const DESCRIBED: Preparation = {
   drifts: ["whole"],
 };
 
+/** Every candidate fitted to the first values of the series; `undefined` where one could not be. */
+export interface FittedBank {
+  readonly fits: readonly (MemberFit | undefined)[];
+}
+
 /** Forecasts of every candidate at one origin. */
-export interface BankForecast {
+export interface BankForecast extends FittedBank {
   /** Row i (stride `horizon`) holds candidate i in units of the series; `NaN` where it could not be fitted. */
   readonly paths: Float64Array;
-  /** The fit a candidate came from, `undefined` where none. */
-  readonly fits: readonly (MemberFit | undefined)[];
 }
 
 /** Every scale with every preparation with every drift, and the describing model. */
@@ -56,35 +59,43 @@ export function listCandidates(
   return bank;
 }
 
-/** Fits all candidates on the first `count` values and forecasts `horizon` steps. */
-export function forecastBank(
+/** Fits all candidates on the first `count` values. */
+export function fitBank(
   scales: readonly ScaledSeries[],
   candidates: readonly Candidate[],
   count: number,
-  horizon: number,
   maxOrder: number,
   workspace: BurgWorkspace,
+): FittedBank {
+  const fits: (MemberFit | undefined)[] = [];
+  for (let i = 0; i < candidates.length; i++) {
+    const { scale, preparation, description } = candidates[i];
+    const before = candidates[i - 1];
+    if (description !== undefined) fits.push(describedFit(description, count));
+    // Drift kinds of one preparation stand side by side in the list and share a fit.
+    else if (before?.scale === scale && before.preparation === preparation) fits.push(fits[i - 1]);
+    else fits.push(fitMember(scales[scale].values, count, preparation, maxOrder, workspace));
+  }
+  return { fits };
+}
+
+/** Forecasts `horizon` steps after the first `count` values, which may be more than the bank was fitted to. */
+export function forecastBank(
+  scales: readonly ScaledSeries[],
+  candidates: readonly Candidate[],
+  { fits }: FittedBank,
+  count: number,
+  horizon: number,
 ): BankForecast {
   const paths = new Float64Array(candidates.length * horizon).fill(Number.NaN);
-  const fits: (MemberFit | undefined)[] = [];
-  let fit: MemberFit | undefined;
   for (let i = 0; i < candidates.length; i++) {
-    const { scale, preparation, drift, description } = candidates[i];
+    const { scale, drift, description } = candidates[i];
+    const { values } = scales[scale];
     const { back } = scales[scale].scale;
-    if (description !== undefined) {
-      fits.push(describedFit(description, count));
-      const path = describedPath(description, scales[scale].values, count, horizon);
-      for (let h = 0; h < horizon; h++) paths[i * horizon + h] = back(path[h]);
-      continue;
-    }
-    const before = candidates[i - 1];
-    // Drift kinds of one preparation stand side by side in the list and share a fit.
-    if (before === undefined || before.scale !== scale || before.preparation !== preparation) {
-      fit = fitMember(scales[scale].values, count, preparation, maxOrder, workspace);
-    }
-    fits.push(fit);
-    if (fit === undefined) continue;
-    forecastMember(fit, drift, horizon, paths, i * horizon);
+    const fit = fits[i];
+    if (description !== undefined) paths.set(describedPath(description, values, count, horizon), i * horizon);
+    else if (fit !== undefined) forecastMember(fit, drift, count, horizon, paths, i * horizon);
+    else continue;
     for (let h = 0; h < horizon; h++) paths[i * horizon + h] = back(paths[i * horizon + h]);
   }
   return { paths, fits };

@@ -1,5 +1,12 @@
 import { type BurgWorkspace, burgWorkspace } from "../autoregression/burg.ts";
-import { type BankForecast, type Candidate, forecastBank, type ScaledSeries } from "./candidateBank.ts";
+import {
+  type BankForecast,
+  type Candidate,
+  type FittedBank,
+  fitBank,
+  forecastBank,
+  type ScaledSeries,
+} from "./candidateBank.ts";
 import { candidateWeights, weightPower } from "./candidateWeights.ts";
 import { errorVariances, type MemberFit } from "./memberFit.ts";
 import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
@@ -32,8 +39,12 @@ export function rollBank(
 ): RolledBank {
   const banks: BankForecast[] = [];
   const losses: Float64Array[] = [];
-  for (const { count, steps } of origins) {
-    const bank = forecastBank(scales, candidates, count, steps, maxOrder, workspace);
+  let fitted: FittedBank = { fits: [] };
+  origins.forEach(({ count, steps, fitted: known }, o) => {
+    if (o === 0 || origins[o - 1].fitted !== known) {
+      fitted = fitBank(scales, candidates, known, maxOrder, workspace);
+    }
+    const bank = forecastBank(scales, candidates, fitted, count, steps);
     const loss = new Float64Array(candidates.length).fill(Number.NaN);
     for (let i = 0; i < candidates.length; i++) {
       if (bank.fits[i] === undefined) continue;
@@ -50,7 +61,7 @@ export function rollBank(
     }
     banks.push(bank);
     losses.push(loss);
-  }
+  });
   return { banks, losses, power: weightPower(horizonsCovered(origins, values.length)) };
 }
 

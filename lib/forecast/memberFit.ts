@@ -8,7 +8,10 @@ import { levelProfile, meanProfile } from "./seasonalProfile.ts";
 export interface MemberFit {
   readonly preparation: Preparation;
   readonly count: number;
-  /** The series (level profile taken off) and each stage of differencing; the last is what the autoregression sees. */
+  /**
+   * The whole series (profile and line taken off) and each stage of differencing; the last is what the autoregression
+   * sees, and only its values up to `count` were fitted. Later ones let the same fit forecast from later on.
+   */
   readonly stages: readonly Float64Array[];
   readonly levelProfile: Float64Array | undefined;
   readonly meanProfile: Float64Array | undefined;
@@ -27,12 +30,12 @@ function difference(values: Float64Array, lag: number): Float64Array {
   return out;
 }
 
-/** Least-squares slope a period. */
-function lineSlope(values: Float64Array): number {
-  const middle = (values.length - 1) / 2;
+/** Least-squares slope a period of the first `count` values. */
+function lineSlope(values: Float64Array, count: number): number {
+  const middle = (count - 1) / 2;
   let across = 0;
   let along = 0;
-  for (let t = 0; t < values.length; t++) {
+  for (let t = 0; t < count; t++) {
     across += (t - middle) * values[t];
     along += (t - middle) ** 2;
   }
@@ -48,30 +51,33 @@ export function fitMember(
   workspace: BurgWorkspace,
 ): MemberFit | undefined {
   const { differences, season, profile } = preparation;
-  let series: Float64Array = values.slice(0, count);
-  let onLevels: Float64Array | undefined;
-  if (profile === "level") {
-    if (count < 3 * season) return undefined;
-    onLevels = levelProfile(values, season, count);
-    for (let t = 0; t < count; t++) series[t] -= onLevels[t % season];
+  let lost = 0;
+  for (const lag of differences) lost += lag;
+  const length = count - lost;
+  if (
+    length < 4 ||
+    (profile === "level" && count < 3 * season) ||
+    (profile === "mean" && length < 2 * season)
+  ) {
+    return undefined;
   }
-  const slope = preparation.line ? lineSlope(series) : 0;
-  if (slope !== 0) for (let t = 0; t < count; t++) series[t] -= slope * t;
+  let series: Float64Array = values.slice();
+  const onLevels = profile === "level" ? levelProfile(values, season, count) : undefined;
+  if (onLevels !== undefined) for (let t = 0; t < series.length; t++) series[t] -= onLevels[t % season];
+  const slope = preparation.line ? lineSlope(series, count) : 0;
+  if (slope !== 0) for (let t = 0; t < series.length; t++) series[t] -= slope * t;
   const stages = [series];
   for (const lag of differences) {
-    if (series.length < lag + 4) return undefined;
     series = difference(series, lag);
     stages.push(series);
   }
-  const length = series.length;
-  const offset = count - length;
-  if (profile === "mean" && length < 2 * season) return undefined;
-  const onMeans = profile === "mean" ? meanProfile(series, season, length, offset) : undefined;
+  const fitted = series.subarray(0, length);
+  const onMeans = profile === "mean" ? meanProfile(fitted, season, length, lost) : undefined;
   let wholeMean = 0;
-  for (let t = 0; t < length; t++) wholeMean += series[t] / length;
+  for (let t = 0; t < length; t++) wholeMean += fitted[t] / length;
   const centred = new Float64Array(length);
   for (let t = 0; t < length; t++) {
-    centred[t] = series[t] - wholeMean - (onMeans === undefined ? 0 : onMeans[(t + offset) % season]);
+    centred[t] = fitted[t] - wholeMean - (onMeans === undefined ? 0 : onMeans[(t + lost) % season]);
   }
   const model = orderAverage(centred, Math.min(maxOrder, Math.floor(length / 3)), 1, workspace);
   return {
@@ -82,7 +88,7 @@ export function fitMember(
     meanProfile: onMeans,
     model,
     wholeMean,
-    localMean: preparation.drifts.includes("local") ? localDrift(series) : wholeMean,
+    localMean: preparation.drifts.includes("local") ? localDrift(fitted) : wholeMean,
     slope,
   };
 }
@@ -93,19 +99,20 @@ function centreOf(fit: MemberFit, drift: DriftKind): number {
   return drift === "whole" ? fit.wholeMean : fit.localMean;
 }
 
-/** Forecasts of the working scale 1..horizon steps after the fitted values, written to `out[at..at+horizon)`. */
+/** Forecasts of the working scale 1..horizon steps after the first `count` values, to `out[at..at+horizon)`. */
 export function forecastMember(
   fit: MemberFit,
   drift: DriftKind,
+  count: number,
   horizon: number,
   out: Float64Array,
   at: number,
 ): void {
-  const { stages, model, preparation, count, meanProfile: means, levelProfile: levels } = fit;
+  const { stages, model, preparation, meanProfile: means, levelProfile: levels } = fit;
   const { coefficients } = model;
   const series = stages[stages.length - 1];
-  const length = series.length;
-  const offset = count - length;
+  const offset = stages[0].length - series.length;
+  const length = count - offset;
   const season = preparation.season;
   const centre = centreOf(fit, drift);
   const order = Math.min(coefficients.length, length);
@@ -123,8 +130,8 @@ export function forecastMember(
   for (let stage = preparation.differences.length - 1; stage >= 0; stage--) {
     const base = stages[stage];
     const lag = preparation.differences[stage];
-    for (let h = 0; h < horizon; h++)
-      out[at + h] += h < lag ? base[base.length - lag + h] : out[at + h - lag];
+    const last = count - (stages[0].length - base.length) - lag;
+    for (let h = 0; h < horizon; h++) out[at + h] += h < lag ? base[last + h] : out[at + h - lag];
   }
   for (let h = 0; h < horizon; h++) {
     out[at + h] += fit.slope * (count + h) + (levels === undefined ? 0 : levels[(count + h) % season]);
