@@ -1,250 +1,137 @@
-import type { SeriesCells } from "./cells.ts";
-import { isoDay } from "./civil.ts";
+import { type Calendar, type DateFacts, findCalendar } from "./calendar.ts";
 import type { Collected } from "./collect.ts";
-import { currentPeriod } from "./currentPeriod.ts";
-import type { Resolution } from "./dateKeys.ts";
-import { periodOfDays, weekStartOfDays } from "./findPeriod.ts";
-import { ordinalOf, ordinalStart, weekdays } from "./periods.ts";
+import { countRepeats, foldSeries } from "./foldSeries.ts";
+import { type Grid, layGrid, startOf } from "./grid.ts";
+import { dropLonelyDates } from "./lonelyDates.ts";
 import type { Complain } from "./problems.ts";
-import type { CombineRule, Reading } from "./reading.ts";
-import type { Period, Problem, Series } from "./series.ts";
+import type { Reading } from "./reading.ts";
+import type { Problem, Series } from "./series.ts";
 import { TableFault } from "./tableFault.ts";
 import type { TableSettings } from "./tableSettings.ts";
-
-/** The calendar of a table: its step, where weeks begin, and how that was found. */
-export interface Calendar {
-  readonly every: Period;
-  readonly weekStart: number;
-  readonly how: Reading["period"]["how"];
-}
-
-const hourLength = 3_600_000;
-
-/** The ordinal of the period that holds a key. */
-const ordinalOfKey = (key: number, resolution: Resolution, { every, weekStart }: Calendar) =>
-  ordinalOf(every, resolution === "hour" && every === "hour" ? key * hourLength : key, weekStart);
-
-/**
- * The step of the table: as set, as its dates state it, or from the distances between them.
- *
- * @throws TableFault when it cannot be told
- */
-export function findCalendar(
-  collected: Collected,
-  resolution: Resolution,
-  stated: Period | undefined,
-  settings: TableSettings,
-  complain: Complain,
-): Calendar {
-  const days = [...collected.keys].sort((a, b) => a - b);
-  const weekStartFor = (every: Period) =>
-    every !== "week"
-      ? 0
-      : settings.weekStartsOn
-        ? weekdays.indexOf(settings.weekStartsOn)
-        : stated === "week" || periodOfDays(days) !== "week"
-          ? 0
-          : weekStartOfDays(days);
-  if (settings.every) return { every: settings.every, weekStart: weekStartFor(settings.every), how: "set" };
-  if (stated) return { every: stated, weekStart: weekStartFor(stated), how: "format" };
-  if (resolution === "hour") return { every: "hour", weekStart: 0, how: "dates" };
-  const every = periodOfDays(days);
-  if (every) return { every, weekStart: weekStartFor(every), how: "dates" };
-  throw new TableFault(
-    complain(
-      "no-period",
-      true,
-      days.length < 2
-        ? "there is only one date, so the step between periods cannot be told"
-        : "the dates are spaced like no period",
-      'say "every" in the settings of this table: hour, day, week, month, quarter or year',
-    ),
-  );
-}
 
 export interface Built {
   readonly series: Series[];
   readonly problems: readonly Problem[];
+  readonly calendar: Calendar;
   readonly combine: Reading["combine"];
   readonly incompletePeriod: string | null;
-  readonly laterKeys: ReadonlySet<number>;
+  /** Rows of the period that is not over, and after it. */
+  readonly later: number;
 }
 
-/** Keys by period: key indexes ascending by key, each with the ordinal of its period. */
-interface Grid {
-  readonly order: Int32Array;
-  readonly ordinals: Int32Array;
+/** Values that fit into memory beside what was collected. */
+const mostValues = 60_000_000;
+
+function refuseWideSpans(
+  grid: Grid,
+  calendar: Calendar,
+  collected: Collected,
+  column: string,
+  complain: Complain,
+) {
+  const { ordinals } = grid;
+  if (ordinals.length === 0) return;
+  const span = ordinals[ordinals.length - 1] - ordinals[0] + 1;
+  if (span <= 1000 + 200 * ordinals.length && span * collected.series.length <= mostValues) return;
+  const [from, to] = [startOf(calendar, ordinals[0]), startOf(calendar, ordinals[ordinals.length - 1])];
+  throw new TableFault(
+    complain(
+      "dates-far-apart",
+      true,
+      `the dates run from ${from} to ${to}: ${span} periods of one ${calendar.every}, with dates in ${ordinals.length}`,
+      "look for a mistyped year, or say a longer step under every in the settings",
+      { column },
+    ),
+  );
 }
 
-function layGrid(collected: Collected, resolution: Resolution, calendar: Calendar): Grid {
-  const { keys } = collected;
-  const order = Int32Array.from(keys.keys()).sort((a, b) => keys[a] - keys[b]);
-  return { order, ordinals: order.map((index) => ordinalOfKey(keys[index], resolution, calendar)) };
-}
-
-interface Folding {
-  readonly rule: CombineRule | undefined;
-  readonly emptyMeans: "gap" | "zero";
-}
-
-/** How often a period holds several rows, where no rule was given. */
-function countRepeats(cells: SeriesCells, grid: Grid, end: number) {
+/** The rule for several rows of a period: as set; a sum for rows that are clearly parts of a period; else none. */
+function chooseRule(collected: Collected, grid: Grid, facts: DateFacts, settings: TableSettings) {
   let periods = 0;
   let several = 0;
-  let rows = 0;
-  let previous = Number.NaN;
-  let inPeriod = 0;
-  const close = () => {
-    if (inPeriod > 0) periods++;
-    if (inPeriod > 1) several++;
-  };
-  for (let at = 0; at < grid.order.length && grid.ordinals[at] < end; at++) {
-    const index = grid.order[at];
-    if (index >= cells.used || Number.isNaN(cells.values[index])) continue;
-    if (grid.ordinals[at] !== previous) {
-      close();
-      inPeriod = 0;
-      previous = grid.ordinals[at];
-    }
-    const here = cells.repeats?.get(index)?.count ?? 1;
-    inPeriod += here;
-    rows += here;
+  for (const cells of collected.series) {
+    const counted = countRepeats(cells, grid);
+    periods += counted.periods;
+    several += counted.several;
   }
-  close();
-  return { periods, several, rows };
+  const partsOfPeriods =
+    several >= 0.5 * periods || (several > 0.2 * periods && (facts.hasTimes || settings.every !== undefined));
+  const rule = settings.combine ?? (several > 0 && partsOfPeriods ? ("sum" as const) : undefined);
+  return { rule, several, periods, isAssumed: settings.combine === undefined && rule !== undefined };
 }
 
-/** One series on the grid up to `end` (exclusive), or `undefined` when it has no value. */
-function foldSeries(
-  cells: SeriesCells,
-  grid: Grid,
-  end: number,
-  calendar: Calendar,
-  { rule, emptyMeans }: Folding,
-): { series: Series; conflicts: number[] } | undefined {
-  let first = Number.NaN;
-  let last = Number.NaN;
-  for (let at = 0; at < grid.order.length && grid.ordinals[at] < end; at++) {
-    const index = grid.order[at];
-    if (index >= cells.used || Number.isNaN(cells.values[index])) continue;
-    if (Number.isNaN(first)) first = grid.ordinals[at];
-    last = grid.ordinals[at];
-  }
-  if (Number.isNaN(first)) return undefined;
-  const values = new Float64Array(last - first + 1).fill(Number.NaN);
-  const counts = rule === "mean" ? new Uint32Array(values.length) : undefined;
-  const conflicts: number[] = [];
-  for (let at = 0; at < grid.order.length && grid.ordinals[at] < end; at++) {
-    const index = grid.order[at];
-    const value = index < cells.used ? cells.values[index] : Number.NaN;
-    if (Number.isNaN(value)) continue;
-    const slot = grid.ordinals[at] - first;
-    const before = values[slot];
-    const isFirst = Number.isNaN(before);
-    const repeat = cells.repeats?.get(index);
-    if (rule === undefined) {
-      if ((!isFirst && before !== value) || repeat?.differs) conflicts.push(index);
-      else values[slot] = value;
-    } else if (rule === "sum" || rule === "count") {
-      const amount = repeat ? (rule === "count" ? repeat.count : repeat.sum) : value;
-      values[slot] = isFirst ? amount : before + amount;
-    } else if (rule === "mean") {
-      values[slot] = isFirst ? value : before + value;
-      if (counts) counts[slot] += cells.counts?.[index] ?? 1;
-    } else if (rule === "max") values[slot] = isFirst ? value : Math.max(before, value);
-    else values[slot] = value;
-  }
-  for (const index of conflicts) {
-    const at = grid.order.indexOf(index);
-    values[grid.ordinals[at] - first] = Number.NaN;
-  }
-  let observed = 0;
-  for (let slot = 0; slot < values.length; slot++) {
-    if (counts && counts[slot] > 0) values[slot] /= counts[slot];
-    if (emptyMeans === "zero" && Number.isNaN(values[slot])) values[slot] = 0;
-    if (!Number.isNaN(values[slot])) observed++;
-  }
-  return {
-    series: {
-      name: cells.name,
-      period: calendar.every,
-      start: ordinalStart(calendar.every, first, calendar.weekStart),
-      values,
-      observed,
-      gaps: values.length - observed,
-    },
-    conflicts,
-  };
-}
-
-const mostCells = 60_000_000;
-
-/** Lays what was collected on the grid of periods that were over at `asOf`. */
+/**
+ * Lays what was collected on the grid of the periods that are over at `asOf`.
+ *
+ * @param at day or instant by key index
+ * @throws TableFault when the dates allow no grid
+ */
 export function buildSeries(
   collected: Collected,
-  resolution: Resolution,
-  calendar: Calendar,
+  at: Float64Array,
+  facts: DateFacts,
   settings: TableSettings,
   asOf: Date | string,
   timeZone: string,
   complain: Complain,
 ): Built {
-  const { every, weekStart } = calendar;
-  const grid = layGrid(collected, resolution, calendar);
-  const current = currentPeriod(asOf, every, timeZone, weekdays[weekStart]);
-  const end = ordinalOf(every, every === "hour" ? Date.parse(current) : isoDay(current), weekStart);
-  const span = grid.ordinals.length > 0 ? grid.ordinals[grid.ordinals.length - 1] - grid.ordinals[0] + 1 : 0;
-  if (span > 200 + 400 * collected.keys.length || span * collected.series.length > mostCells)
-    throw new TableFault(
-      complain(
-        "dates-far-apart",
-        true,
-        `the dates span ${span} periods of a ${every} with only ${collected.keys.length} dates between`,
-        "look for a mistyped year, or say a longer step under every in the settings",
-      ),
-    );
-  const problems: Problem[] = [];
-  let rule = settings.combine;
-  let combine: Reading["combine"] = rule ? { rule, how: "set" } : null;
-  const repeats = collected.series.map((cells) => countRepeats(cells, grid, end));
-  const periods = repeats.reduce((sum, one) => sum + one.periods, 0);
-  const several = repeats.reduce((sum, one) => sum + one.several, 0);
-  if (several === 0) combine = null;
-  else if (!rule && several > 0.2 * periods) {
-    rule = "sum";
-    combine = { rule, how: "assumed" };
+  const problems: Problem[] = dropLonelyDates(at, collected.keys, facts, complain);
+  const distinct = [...new Set(at)].filter((one) => !Number.isNaN(one)).sort((a, b) => a - b);
+  const calendar = findCalendar(distinct, facts, settings, timeZone, complain);
+  const grid = layGrid(at, calendar, asOf, timeZone);
+  refuseWideSpans(grid, calendar, collected, facts.column, complain);
+  const { rule, several, periods, isAssumed } = chooseRule(collected, grid, facts, settings);
+  if (isAssumed)
     problems.push(
       complain(
         "combine-assumed",
         false,
-        `most periods have several rows; they were summed up`,
-        'say "combine" in the settings: sum, mean, last, count or max; or name the column of names under "seriesName"',
+        `there are several rows a ${calendar.every}; they were summed up`,
+        'say "combine" for this table in the settings (sum, mean, last, count or max), or name the column of names under "seriesName"',
       ),
     );
-  }
   const series: Series[] = [];
   const conflicts = new Map<number, string>();
+  let conflicting = 0;
   for (const cells of collected.series) {
-    const folded = foldSeries(cells, grid, end, calendar, { rule, emptyMeans: settings.emptyMeans ?? "gap" });
+    const folded = foldSeries(cells, grid, calendar, rule, settings.emptyMeans ?? "gap");
     if (!folded) continue;
-    for (const index of folded.conflicts) if (!conflicts.has(index)) conflicts.set(index, cells.name);
+    conflicting += folded.conflicts.size;
+    for (const ordinal of folded.conflicts) if (!conflicts.has(ordinal)) conflicts.set(ordinal, cells.name);
     if (folded.series.observed > 0) series.push(folded.series);
   }
-  for (const [index, name] of [...conflicts].slice(0, 5)) {
-    const key = collected.keys[index];
-    const start = ordinalStart(every, ordinalOfKey(key, resolution, calendar), weekStart);
+  for (const [ordinal, name] of [...conflicts].slice(0, 1)) {
+    const lines = [...grid.order]
+      .filter((_, place) => grid.ordinals[place] === ordinal)
+      .map((index) => collected.keys[index].line);
+    const where =
+      lines.length > 1
+        ? ` (lines ${lines
+            .sort((a, b) => a - b)
+            .slice(0, 4)
+            .join(", ")})`
+        : "";
+    const rest = conflicting === 1 ? "" : `; so it is ${conflicting} times in all`;
     problems.push(
       complain(
         "repeated-date",
-        false,
-        `${start} has several values that differ; left as a gap`,
-        'remove all but one, or say under "combine" in the settings which counts',
-        { line: collected.lines[index], column: name },
+        conflicting > 0.2 * periods,
+        `the ${calendar.every} of ${startOf(calendar, ordinal)} has several rows with different values${where}, and is left as a gap${rest}`,
+        'keep the row that is right, or say "combine" for this table in the settings',
+        { line: Math.min(...lines), column: name },
       ),
     );
   }
-  const reaches = grid.ordinals.some((ordinal) => ordinal === end);
-  const laterKeys = new Set<number>();
-  for (let at = 0; at < grid.order.length; at++) if (grid.ordinals[at] >= end) laterKeys.add(grid.order[at]);
-  return { series, problems, combine, incompletePeriod: reaches ? current : null, laterKeys };
+  let later = 0;
+  for (let place = grid.complete; place < grid.order.length; place++)
+    later += collected.keys[grid.order[place]].rows;
+  const reaches = grid.ordinals.includes(grid.current);
+  return {
+    series,
+    problems,
+    calendar,
+    combine: several > 0 && rule ? { rule, how: isAssumed ? "assumed" : "set" } : null,
+    incompletePeriod: reaches ? startOf(calendar, grid.current) : null,
+    later,
+  };
 }

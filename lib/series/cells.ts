@@ -18,7 +18,6 @@ export interface Repeat {
   count: number;
   sum: number;
   differs: boolean;
-  readonly line: number;
 }
 
 export const emptyCells = (name: string): SeriesCells => ({
@@ -57,7 +56,6 @@ export function addValue(
   value: number,
   rule: CombineRule | undefined,
   moment: number,
-  line: number,
 ): void {
   if (index >= cells.used) makeRoom(cells, index, rule);
   const { values } = cells;
@@ -69,8 +67,7 @@ export function addValue(
       else {
         cells.repeats ??= new Map();
         const repeat = cells.repeats.get(index);
-        if (!repeat)
-          cells.repeats.set(index, { count: 2, sum: before + value, differs: before !== value, line });
+        if (!repeat) cells.repeats.set(index, { count: 2, sum: before + value, differs: before !== value });
         else {
           repeat.count++;
           repeat.sum += value;

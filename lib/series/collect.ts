@@ -1,196 +1,164 @@
 import { addValue, emptyCells, type SeriesCells } from "./cells.ts";
-import type { DateKeys } from "./dateKeys.ts";
+import { cleanName } from "./columnNames.ts";
+import type { KeyKind, KeyReader } from "./dateKeys.ts";
+import type { Doubts } from "./doubts.ts";
 import { isMissing, parseNumber } from "./numbers.ts";
 import { type Complain, quoted } from "./problems.ts";
 import type { CombineRule } from "./reading.ts";
-import type { Problem } from "./series.ts";
 import { TableFault } from "./tableFault.ts";
-import { cleanName, type TablePlan } from "./tablePlan.ts";
+import type { TablePlan } from "./tablePlan.ts";
 
 /** Observations by series and key, in the order the keys were met. */
 export interface Collected {
   readonly series: readonly SeriesCells[];
-  /** Days or hours, by key index. */
-  readonly keys: readonly number[];
-  /** Line where each key was first met. */
-  readonly lines: readonly number[];
-  readonly problems: readonly Problem[];
+  readonly keys: readonly DateKey[];
+  /** Rows below the header that are not blank. */
   readonly read: number;
-  readonly used: number;
+}
+
+/** One distinct date of the table. */
+export interface DateKey {
+  /** As the key reader gave it. */
+  readonly key: number;
+  readonly kind: KeyKind;
+  /** The local hour came a second time: clocks had gone back. */
+  readonly isSecondPass: boolean;
+  /** Line where it was first met. */
+  readonly line: number;
+  rows: number;
 }
 
 export interface Collector {
   row(cells: readonly string[], line: number): void;
-  finish(): Collected;
+  collected(): Collected;
 }
 
 /** More names than any table of series has: the wrong column was named. */
 const mostSeries = 100_000;
 
-interface Doubt {
-  count: number;
-  readonly line: number;
-  readonly text: string;
+/** Copied, so that a short name does not keep its whole piece of the file in memory. */
+const copied = (text: string) => Buffer.from(text).toString();
+
+/** What tells the two passes of a repeated hour apart: the clock jumping back, or standing still, in row order. */
+function createPassTest(newestFirst: boolean): (owner: string, key: number, moment: number) => boolean {
+  const last = new Map<string, { key: number; moment: number; turned: boolean }>();
+  return (owner, key, moment) => {
+    const before = last.get(owner);
+    const isSame = before?.key === key;
+    const turned =
+      isSame && (before.turned || (newestFirst ? moment >= before.moment : moment <= before.moment));
+    last.set(owner, { key, moment, turned });
+    return turned !== newestFirst;
+  };
 }
 
 /** Gathers the rows of a table, whatever their order, one after another. */
 export function createCollector(
   plan: TablePlan,
-  dateKeys: DateKeys,
-  rule: CombineRule | undefined,
-  table: string,
+  keyReader: KeyReader,
+  doubts: Doubts,
+  options: { readonly rule: CombineRule | undefined; readonly newestFirst: boolean; readonly table: string },
   complain: Complain,
 ): Collector {
   const { names, dateColumn, seriesColumn, valueColumns, style } = plan;
+  const { rule } = options;
   const width = names.length;
   const columns = valueColumns.length > 0 ? valueColumns : [dateColumn];
-  const isCount = rule === "count";
+  const labels =
+    valueColumns.length > 0 ? columns.map((at) => names[at]) : [options.table.split("/").at(-1) ?? "rows"];
   const series: SeriesCells[] = [];
   const byName = new Map<string, SeriesCells[]>();
-  const seriesOf = (name: string | undefined): SeriesCells[] => {
-    const made = columns.map((column) => {
-      const label = valueColumns.length > 0 ? names[column] : (table.split("/").at(-1) ?? "count");
-      return emptyCells(name === undefined ? label : columns.length === 1 ? name : `${name}, ${label}`);
-    });
+  const keys: DateKey[] = [];
+  const indexOf = new Map<number, number>();
+  const isSecondPass = createPassTest(options.newestFirst);
+  let read = 0;
+  let lastKey = Number.NaN;
+  let lastIndex = -1;
+
+  const addSeries = (name: string | undefined): SeriesCells[] => {
+    const made = labels.map((label) =>
+      emptyCells(name === undefined ? label : labels.length === 1 ? name : `${name}, ${label}`),
+    );
     series.push(...made);
-    if (series.length > mostSeries)
+    if (series.length > mostSeries) {
+      const column = names[seriesColumn ?? 0];
       throw new TableFault(
         complain(
           "too-many-series",
           true,
-          `the column ${quoted(names[seriesColumn ?? 0])} holds more than ${mostSeries} different names`,
+          `the column ${quoted(column)} holds more than ${mostSeries} different names`,
           "name the right column under seriesName in the settings, or null when there is none",
-          { column: names[seriesColumn ?? 0] },
+          { column },
         ),
       );
+    }
     return made;
   };
-  const wide = seriesColumn === null ? seriesOf(undefined) : undefined;
-  const indexOf = new Map<number, number>();
-  const keys: number[] = [];
-  const lines: number[] = [];
-  let lastKey = Number.NaN;
-  let lastIndex = -1;
-  let read = 0;
-  let used = 0;
-  let dateless: Doubt[] = [];
-  const dateDoubts: Doubt[] = [];
-  const numberDoubts = new Map<number, Doubt>();
-  let wideRow: Doubt | undefined;
-  let nameless: Doubt | undefined;
-
-  const again = (doubt: Doubt | undefined, line: number, text: string): Doubt => {
-    if (!doubt) return { count: 1, line, text };
-    doubt.count++;
-    return doubt;
+  const wide = seriesColumn === null ? addSeries(undefined) : undefined;
+  const seriesOf = (cell: string): SeriesCells[] | undefined => {
+    const known = byName.get(cell);
+    if (known) return known;
+    const name = copied(cleanName(cell));
+    if (name === "") return undefined;
+    const into = byName.get(name) ?? addSeries(name);
+    byName.set(name, into);
+    byName.set(copied(cell), into);
+    return into;
   };
-  const numberOf = (text: string, column: number, line: number): number => {
-    const value = parseNumber(text, style);
-    if (!Number.isNaN(value) || isMissing(text)) return value;
-    numberDoubts.set(column, again(numberDoubts.get(column), line, text));
-    return Number.NaN;
+  const indexOfKey = (key: number, again: boolean, line: number): number => {
+    const mark = again ? key + 0.5 : key;
+    let index = indexOf.get(mark);
+    if (index === undefined) {
+      index = keys.length;
+      indexOf.set(mark, index);
+      keys.push({ key, kind: keyReader.kind(), isSecondPass: again, line, rows: 0 });
+    }
+    return index;
   };
 
   return {
     row(cells, line) {
-      read++;
-      const key = dateKeys.read((cells[dateColumn] ?? "").trim());
+      const dateText = (cells[dateColumn] ?? "").trim();
+      keyReader.at(line);
+      const key = dateText === "" ? Number.NaN : keyReader.read(dateText);
       if (Number.isNaN(key)) {
-        if (cells.some((cell) => cell.trim() !== ""))
-          dateless.push({ count: 1, line, text: cells[dateColumn] ?? "" });
-        else read--;
+        if (cells.every((cell) => cell.trim() === "")) return;
+        read++;
+        doubts.dateless(line, dateText, cells);
         return;
       }
-      if (dateless.length > 0) {
-        dateDoubts.push(...dateless.slice(0, 1000));
-        dateless = [];
-      }
+      read++;
+      doubts.dated();
       if (cells.length > width && cells.slice(width).some((cell) => cell.trim() !== "")) {
-        wideRow = again(wideRow, line, cells.join(plan.delimiter));
+        doubts.tooWide(line, cells);
         return;
       }
-      let into = wide;
-      if (seriesColumn !== null) {
-        const cell = cells[seriesColumn] ?? "";
-        into = byName.get(cell);
-        if (!into) {
-          // Copied, so that the name does not keep its whole piece of the file in memory.
-          const name = Buffer.from(cleanName(cell)).toString();
-          if (name === "") {
-            nameless = again(nameless, line, cells.join(plan.delimiter));
-            return;
-          }
-          into = byName.get(name) ?? seriesOf(name);
-          byName.set(name, into);
-          byName.set(Buffer.from(cell).toString(), into);
-        }
+      const into = wide ?? seriesOf(cells[seriesColumn ?? 0] ?? "");
+      if (!into) {
+        doubts.nameless(line, cells);
+        return;
       }
-      if (key !== lastKey) {
+      if (key !== lastKey || keyReader.mayRepeat()) {
+        const again =
+          keyReader.mayRepeat() &&
+          isSecondPass(seriesColumn === null ? "" : (cells[seriesColumn] ?? ""), key, keyReader.moment());
+        lastIndex = indexOfKey(key, again, line);
         lastKey = key;
-        lastIndex = indexOf.get(key) ?? -1;
-        if (lastIndex < 0) {
-          lastIndex = keys.length;
-          indexOf.set(key, lastIndex);
-          keys.push(key);
-          lines.push(line);
-        }
       }
-      used++;
-      const moment = dateKeys.lastMoment();
+      keys[lastIndex].rows++;
+      const moment = keyReader.moment();
       for (let at = 0; at < columns.length; at++) {
         const text = cells[columns[at]];
         if (text === undefined || text === "") continue;
-        const value = isCount ? (isMissing(text) ? Number.NaN : 1) : numberOf(text, columns[at], line);
-        if (!Number.isNaN(value)) addValue((into as SeriesCells[])[at], lastIndex, value, rule, moment, line);
+        let value: number;
+        if (rule === "count") value = isMissing(text) ? Number.NaN : 1;
+        else {
+          value = parseNumber(text, style);
+          if (Number.isNaN(value) && !isMissing(text)) doubts.badNumber(columns[at], line, copied(text));
+        }
+        if (!Number.isNaN(value)) addValue(into[at], lastIndex, value, rule, moment);
       }
     },
-    finish() {
-      const problems: Problem[] = [];
-      const others = (count: number) =>
-        count === 1 ? "" : count === 2 ? "; one more like it" : `; ${count - 1} more like it`;
-      if (dateDoubts.length > 0) {
-        const [first] = dateDoubts;
-        problems.push(
-          complain(
-            "bad-date",
-            dateDoubts.length > 0.5 * read,
-            `${first.text.trim() === "" ? "the date is empty" : `${quoted(first.text)} is no date written as ${plan.dateFormat.pattern}`}${others(dateDoubts.length)}; left out`,
-            "correct the date",
-            { line: first.line, column: names[dateColumn] },
-          ),
-        );
-      }
-      if (wideRow)
-        problems.push(
-          complain(
-            "too-many-cells",
-            wideRow.count > 0.5 * read,
-            `the row has more cells than the header (${quoted(wideRow.text)})${others(wideRow.count)}; left out`,
-            `put cells that hold ${quoted(plan.delimiter)} in quotes: a number such as 1,234 too`,
-            { line: wideRow.line },
-          ),
-        );
-      if (nameless)
-        problems.push(
-          complain(
-            "no-name",
-            false,
-            `the row does not say which series it belongs to${others(nameless.count)}; left out`,
-            `fill in ${quoted(names[seriesColumn ?? 0])}`,
-            { line: nameless.line, column: names[seriesColumn ?? 0] },
-          ),
-        );
-      for (const [column, doubt] of numberDoubts)
-        problems.push(
-          complain(
-            "bad-number",
-            false,
-            `${quoted(doubt.text)} is no number with a decimal ${style.decimal === "." ? "point" : "comma"}${others(doubt.count)}; taken as a gap`,
-            "correct it, or leave the cell empty if the value is not known",
-            { line: doubt.line, column: names[column] },
-          ),
-        );
-      return { series, keys, lines, problems, read, used };
-    },
+    collected: () => ({ series, keys, read }),
   };
 }

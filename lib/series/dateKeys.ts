@@ -1,98 +1,92 @@
 import { dayNumber, isCivilDate } from "./civil.ts";
 import { localDay } from "./currentPeriod.ts";
-import { type DateCell, emptyDateCell } from "./dateCell.ts";
+import { emptyDateCell } from "./dateCell.ts";
 import type { DateFormat } from "./dateFormats.ts";
-import { stepOfInstants } from "./findPeriod.ts";
-import { instantsOf } from "./zone.ts";
+import { instantsOf, zoneOffset } from "./zone.ts";
 
 export type DateOrder = "day-first" | "month-first";
 
 /** Whether rows are kept by calendar day or by hour. */
 export type Resolution = "day" | "hour";
 
-/** Turns date cells into whole numbers: days since 1970-01-01 or hours since 1970-01-01T00:00Z; `NaN` for no date. */
-export interface DateKeys {
-  readonly resolution: Resolution;
-  read(text: string): number;
-  /** The instant (or local reading) the last cell named, in milliseconds, to tell which of two is later. */
-  lastMoment(): number;
-}
-
-const dayLength = 86_400_000;
 const hourLength = 3_600_000;
+const dayLength = 86_400_000;
 
-/** Settles day and month of a numeric date by the order; false when the date does not exist then. */
-export function settleOrder(cell: DateCell, order: DateOrder): boolean {
-  const day = order === "day-first" ? cell.first : cell.second;
-  const month = order === "day-first" ? cell.second : cell.first;
-  if (!isCivilDate(cell.year, month, day)) return false;
-  cell.day = dayNumber(cell.year, month, day);
-  return true;
-}
-
-/** Milliseconds since 1970 of a cell: the instant where it has an offset, else its local clock read as UTC. */
-const momentOf = (cell: DateCell) =>
-  cell.day * dayLength + Math.max(cell.clock, 0) - (Number.isNaN(cell.offset) ? 0 : cell.offset);
-
-/** Every instant is a midnight in UTC: the table means days, and wrote them as instants. */
-export interface ClockUse {
-  readonly resolution: Resolution | undefined;
+/** How the date cells of one table become keys. */
+export interface KeySettings {
+  readonly format: DateFormat;
+  readonly resolution: Resolution;
+  /** Every instant is a midnight in UTC: days were meant. */
   readonly midnightsOnly: boolean;
+  readonly timeZone: string;
 }
 
-/** From sample cells: are there clock times, and do they step by the hour? */
-export function findClockUse(
-  texts: readonly string[],
-  format: DateFormat,
-  order: DateOrder | null,
-): ClockUse {
-  const cell = emptyDateCell();
-  const moments = new Set<number>();
-  let midnightsOnly = true;
-  let withClock = 0;
-  for (const text of texts) {
-    if (!format.read(text, cell)) continue;
-    if (
-      Number.isNaN(cell.day) &&
-      !settleOrder(cell, order ?? "day-first") &&
-      !settleOrder(cell, "month-first")
-    )
-      continue;
-    if (cell.clock >= 0) withClock++;
-    if (cell.clock > 0) midnightsOnly = false;
-    moments.add(momentOf(cell));
-  }
-  if (midnightsOnly || withClock === 0) return { resolution: "day", midnightsOnly };
-  return { resolution: stepOfInstants([...moments].sort((a, b) => a - b)), midnightsOnly };
+/**
+ * A key keeps what a date cell says as one whole number. `calendar` keys are counted: days since 1970-01-01, or local
+ * clock hours since then. `instant` keys are UTC hours. `parts` keys hold year, first and second number of a date whose
+ * order is settled only when the whole column has been seen.
+ */
+export type KeyKind = "calendar" | "instant" | "parts";
+
+export interface KeyReader {
+  /** `NaN` when the text is no date. */
+  read(text: string): number;
+  /** Of the last cell read. */
+  kind(): KeyKind;
+  /** Milliseconds that order the rows of one key. */
+  moment(): number;
+  /** First cells that can only be read with the day, or only with the month, in front. */
+  evidence(): ReadonlyMap<DateOrder, { readonly line: number; readonly text: string }>;
+  /** The last cell names a local clock hour that may come twice, on the night clocks go back. */
+  mayRepeat(): boolean;
+  /** Told before each cell, so that evidence has its line. */
+  at(line: number): void;
+  /** A cell had points between its numbers. */
+  dotted(): boolean;
 }
 
-/** A reader of date cells, for the order of day and month that was settled. */
-export function createDateKeys(
-  format: DateFormat,
-  order: DateOrder | null,
-  resolution: Resolution,
-  midnightsOnly: boolean,
-  timeZone: string,
-): DateKeys {
+/** Slots a day in a key of parts: the hours from 0 to 24, as 24:00 ends a day whichever day it is. */
+const slots = 25;
+
+/** Reads date cells one after another; a text that repeats is not read again. */
+export function createKeyReader({ format, resolution, midnightsOnly, timeZone }: KeySettings): KeyReader {
   const cell = emptyDateCell();
+  const evidence = new Map<DateOrder, { line: number; text: string }>();
+  const perDay = resolution === "hour" ? 24 : 1;
   let lastText: string | undefined;
   let lastKey = Number.NaN;
-  let moment = Number.NaN;
+  let lastKind: KeyKind = "calendar";
+  let moment = 0;
+  let line = 0;
+  let hasPoints = false;
   const keyOf = (text: string): number => {
     if (!format.read(text, cell)) return Number.NaN;
-    if (Number.isNaN(cell.day) && !settleOrder(cell, order ?? "day-first")) return Number.NaN;
-    moment = momentOf(cell);
-    const isLocal = Number.isNaN(cell.offset) || midnightsOnly;
-    if (resolution === "day")
-      return isLocal
-        ? cell.day + Math.floor(Math.max(cell.clock, 0) / dayLength)
-        : localDay(moment, timeZone);
-    if (!isLocal) return Math.floor(moment / hourLength);
-    const instant = instantsOf(moment, timeZone)[0];
-    return instant === undefined ? Number.NaN : Math.floor(instant / hourLength);
+    const clock = Math.max(cell.clock, 0);
+    if (Number.isNaN(cell.day)) {
+      if (cell.first > 12 && !evidence.has("day-first")) evidence.set("day-first", { line, text });
+      if (cell.second > 12 && !evidence.has("month-first")) evidence.set("month-first", { line, text });
+      if (text.charCodeAt(1) === 46 || text.charCodeAt(2) === 46) hasPoints = true;
+      lastKind = "parts";
+      moment = clock;
+      const slot = perDay === 24 || clock >= dayLength ? Math.floor(clock / hourLength) : 0;
+      return ((cell.year * 32 + cell.first) * 32 + cell.second) * slots + slot;
+    }
+    const local = cell.day * dayLength + clock;
+    if (Number.isNaN(cell.offset) || midnightsOnly) {
+      lastKind = "calendar";
+      moment = local;
+      return Math.floor(local / (dayLength / perDay));
+    }
+    moment = local - cell.offset;
+    if (resolution === "day") {
+      lastKind = "calendar";
+      return localDay(moment, timeZone);
+    }
+    lastKind = "instant";
+    return Math.floor(moment / hourLength);
   };
+  const mayRepeat = createRepeatTest(timeZone);
   return {
-    resolution,
     read(text) {
       if (text !== lastText) {
         lastText = text;
@@ -100,6 +94,52 @@ export function createDateKeys(
       }
       return lastKey;
     },
-    lastMoment: () => moment,
+    kind: () => lastKind,
+    moment: () => moment,
+    evidence: () => evidence,
+    mayRepeat() {
+      if (resolution === "day" || lastKind === "instant") return false;
+      if (lastKind === "calendar") return mayRepeat(lastKey);
+      return (["day-first", "month-first"] as const).some((order) =>
+        mayRepeat(settleParts(lastKey, resolution, order)),
+      );
+    },
+    at(now) {
+      line = now;
+    },
+    dotted: () => hasPoints,
+  };
+}
+
+/** The calendar key of a key of parts under an order, `NaN` when there is no such date. */
+export function settleParts(key: number, resolution: Resolution, order: DateOrder): number {
+  const slot = key % slots;
+  const packed = Math.floor(key / slots);
+  const second = packed % 32;
+  const first = Math.floor(packed / 32) % 32;
+  const year = Math.floor(packed / 1024);
+  const [day, month] = order === "day-first" ? [first, second] : [second, first];
+  if (!isCivilDate(year, month, day)) return Number.NaN;
+  const days = dayNumber(year, month, day);
+  return resolution === "hour" ? days * 24 + slot : days + Math.floor(slot / 24);
+}
+
+/** The instants, in milliseconds, that a local clock hour may be: two in the hour that is repeated in autumn. */
+export const instantsOfHour = (localHour: number, timeZone: string) =>
+  instantsOf(localHour * hourLength, timeZone);
+
+/** Whether a local clock hour is one that the zone's clocks show twice; remembers the days without a change. */
+function createRepeatTest(timeZone: string): (localHour: number) => boolean {
+  const changes = new Map<number, boolean>();
+  return (localHour) => {
+    if (Number.isNaN(localHour)) return false;
+    const day = Math.floor(localHour / 24);
+    let goesBack = changes.get(day);
+    if (goesBack === undefined) {
+      const middle = day * dayLength + dayLength / 2;
+      goesBack = zoneOffset(middle + dayLength, timeZone) < zoneOffset(middle - dayLength, timeZone);
+      changes.set(day, goesBack);
+    }
+    return goesBack && instantsOfHour(localHour, timeZone).length > 1;
   };
 }

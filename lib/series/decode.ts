@@ -3,6 +3,11 @@ export type Encoding = "utf-8" | "utf-16le" | "utf-16be" | "windows-1252";
 
 const startsWith = (bytes: Uint8Array, ...codes: number[]) => codes.every((code, at) => bytes[at] === code);
 
+export const isGzip = (head: Uint8Array) => startsWith(head, 0x1f, 0x8b);
+
+/** Parquet files begin (and end) with PAR1. */
+export const isParquet = (head: Uint8Array) => startsWith(head, 0x50, 0x41, 0x52, 0x31);
+
 /** Some other kind of file, recognised by its first bytes; `undefined` for what may be a table. */
 export function foreignFile(head: Uint8Array): string | undefined {
   if (startsWith(head, 0x50, 0x4b, 3, 4)) return "a workbook or archive (zip)";
@@ -10,7 +15,7 @@ export function foreignFile(head: Uint8Array): string | undefined {
   if (startsWith(head, 0x25, 0x50, 0x44, 0x46)) return "a PDF";
   if (startsWith(head, 0x89, 0x50, 0x4e, 0x47) || startsWith(head, 0xff, 0xd8, 0xff)) return "a picture";
   if (startsWith(head, 0x53, 0x51, 0x4c, 0x69, 0x74, 0x65)) return "a database";
-  if (startsWith(head, 0x1f, 0x8b)) return "compressed twice";
+  if (isGzip(head)) return "compressed twice";
   return undefined;
 }
 

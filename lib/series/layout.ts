@@ -1,3 +1,4 @@
+import { emptyDateCell } from "./dateCell.ts";
 import type { DateFormat } from "./dateFormats.ts";
 import { isMissing, parseNumber } from "./numbers.ts";
 import { createRowSplitter } from "./rows.ts";
@@ -10,7 +11,7 @@ export interface Row {
 export interface Sample {
   readonly rows: readonly Row[];
   readonly comments: readonly { readonly line: number; readonly text: string }[];
-  /** Line of a quote that never closes, when the sample is the whole text. */
+  /** Line of a quote that never closes. */
   readonly unclosedQuote?: number;
 }
 
@@ -52,7 +53,7 @@ export function countColumn(rows: readonly Row[], column: number): ColumnCounts 
 
 /** Rows whose cell in a column is written in a format. */
 export function countDates(rows: readonly Row[], column: number, format: DateFormat): number {
-  const cell = { day: 0, clock: -1, offset: 0, first: 0, second: 0, year: 0, grain: "day" as const };
+  const cell = emptyDateCell();
   let found = 0;
   for (const { cells } of rows) {
     const text = cells[column];
@@ -83,22 +84,22 @@ export function findDateColumn(
   return best;
 }
 
-export const delimiters = [",", ";", "\t", "|"] as const;
+const delimiters = [",", ";", "\t", "|"] as const;
 
 /**
  * The delimiter under which most rows hold a date of an unmistakable format beside another cell; failing that, most
  * rows with two cells or more of which one is a number.
  */
-export function findDelimiter(text: string, whole: boolean, formats: readonly DateFormat[]): string {
+export function findDelimiter(head: string, formats: readonly DateFormat[]): string {
   const clear = formats.filter((format) => !format.digitsOnly);
-  let best = ",";
+  let best: string = ",";
   let bestScore = 0;
   for (const delimiter of delimiters) {
-    const rows = sampleRows(text, delimiter, whole).rows.filter(({ cells }) => cells.length > 1);
+    if (!head.includes(delimiter)) continue;
+    const rows = sampleRows(head, delimiter, true).rows.filter(({ cells }) => cells.length > 1);
     if (rows.length === 0) continue;
     const width = Math.min(40, Math.max(...rows.map(({ cells }) => cells.length)));
-    const columns = Array.from({ length: width }, (_, at) => at);
-    const dates = findDateColumn(rows, clear, columns)?.found ?? 0;
+    const dates = findDateColumn(rows, clear, [...Array(width).keys()])?.found ?? 0;
     const numbers = rows.filter(({ cells }) => cells.some(looksNumeric)).length;
     const score = dates * 4 + numbers + rows.length * 0.1;
     if (score > bestScore) {

@@ -37,7 +37,7 @@ export function readEvents(
       ? input.replace(/^\uFEFF/, "")
       : new TextDecoder(findEncoding(input)).decode(input);
   const formats = dateFormats(locale).filter(({ name }) => name === "iso-date" || name === "month-name");
-  const { rows } = sampleRows(text, findDelimiter(text, true, formats), true);
+  const { rows } = sampleRows(text, findDelimiter(text, formats), true);
   const header = rows[0]?.cells.map((cell) => cell.trim()) ?? [];
   const at = (role: keyof typeof roles) => header.findIndex((cell) => roles[role].test(cell));
   const [dateAt, nameAt, untilAt, tablesAt] = [at("date"), at("name"), at("until"), at("tables")];

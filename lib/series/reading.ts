@@ -28,7 +28,7 @@ export interface Reading {
   readonly period: {
     readonly every: Period;
     readonly weekStartsOn: string | null;
-    readonly how: "set" | "dates" | "format" | "assumed";
+    readonly how: "set" | "dates" | "format";
   };
   /** How several rows of one period became one value; `null` when no period had several. */
   readonly combine: { readonly rule: CombineRule; readonly how: "set" | "assumed" } | null;
@@ -37,7 +37,7 @@ export interface Reading {
   readonly rows: {
     readonly read: number;
     readonly used: number;
-    /** Title, comment, blank and closing lines, and rows with a problem. */
+    /** Totals, notes and repeated headers, and rows with a problem. */
     readonly ignored: number;
     /** Rows of the incomplete period and after it. */
     readonly later: number;

@@ -1,18 +1,19 @@
-import type { DateFormat } from "./dateFormats.ts";
-import { dateFormats } from "./dateFormats.ts";
+import { columnNamed, columnNames, speaksOfDates } from "./columnNames.ts";
+import { type DateFormat, dateFormats } from "./dateFormats.ts";
 import { findDecimal } from "./findDecimal.ts";
 import { findHeader } from "./findHeader.ts";
 import { findShape } from "./findShape.ts";
 import {
   type ColumnCounts,
   countColumn,
+  type DateColumn,
   findDateColumn,
-  findDelimiter,
   type Row,
-  sampleRows,
+  type Sample,
 } from "./layout.ts";
 import type { NumberStyle } from "./numbers.ts";
-import { type Complain, nearestName, quoted } from "./problems.ts";
+import { periodLabels } from "./periodLabels.ts";
+import { type Complain, quoted } from "./problems.ts";
 import type { Reading } from "./reading.ts";
 import { TableFault } from "./tableFault.ts";
 import type { TableSettings } from "./tableSettings.ts";
@@ -32,140 +33,116 @@ export interface TablePlan {
   readonly sample: readonly Row[];
 }
 
-const dateWords =
-  /\b(?:dates?|day|week|month|quarter|year|period|time(?:stamp)?|datetime|hour|ts|epoch|datum|tag|woche|kw|monat|quartal|jahr|zeit(?:punkt)?|fecha|d[ií]a|semana|mes|a[nñ]o|data|jour|mois|ann[eé]e|semaine|giorno|mese|anno|dato|dag|maand|jaar|m[aå]ned|[aå]r)\b/i;
+/** A column that only counts its rows, as data frames write one beside their data. */
+function countsRows(data: readonly Row[], column: number, name: string): boolean {
+  if (!/^(?:column \d+|unnamed: ?\d+|index|row|#)$/i.test(name) || data.length < 3) return false;
+  const first = Number(data[0].cells[column]);
+  return data.every(
+    ({ cells }, at) => (cells[column] ?? "").trim() !== "" && Number(cells[column]) === first + at,
+  );
+}
 
-/** A cell of the header as the name of a column or series. */
-export const cleanName = (cell: string) => cell.replace(/[\p{Cc}\p{Cf}\s]+/gu, " ").trim();
-
-function columnNamed(name: string, names: readonly string[], key: string, complain: Complain): number {
-  const exact = names.indexOf(name.trim());
-  if (exact >= 0) return exact;
-  const folded = names.findIndex((one) => one.toLowerCase() === name.trim().toLowerCase());
-  if (folded >= 0) return folded;
-  const near = nearestName(name, names);
+function findDates(
+  data: readonly Row[],
+  names: readonly string[],
+  formats: readonly DateFormat[],
+  settings: TableSettings,
+  complain: Complain,
+): DateColumn {
+  const setting = settings.period === undefined ? "date" : "period";
+  const chosen = settings.period ?? settings.date;
+  const columns = chosen === undefined ? [...names.keys()] : [columnNamed(chosen, names, setting, complain)];
+  const trusted = columns.filter((at) => chosen !== undefined || speaksOfDates(names[at]));
+  const clear = formats.filter((format) => !format.digitsOnly);
+  const probe = data.slice(0, 2000);
+  const enough = (found: DateColumn | undefined) =>
+    found !== undefined && found.found >= 0.5 * probe.length ? found : undefined;
+  const found =
+    settings.period === undefined
+      ? (enough(findDateColumn(probe, clear, columns)) ?? enough(findDateColumn(probe, formats, trusted)))
+      : enough(findDateColumn(probe, [periodLabels(settings.every ?? "month")], columns));
+  if (found) return found;
+  const at = trusted[0] ?? columns[0];
+  const example = data.find(({ cells }) => (cells[at] ?? "").trim() !== "");
+  const what = setting === "period" ? "a year and the number of a period, such as 2026-P03" : "a date";
   throw new TableFault(
     complain(
-      "no-such-column",
+      setting === "period" ? "no-periods" : "no-dates",
       true,
-      `the settings name ${quoted(name)} under "${key}", but the table has no such column`,
-      near ? `write ${quoted(near)}, or one of: ${names.join(", ")}` : `use one of: ${names.join(", ")}`,
-      { column: name },
+      example
+        ? `${chosen === undefined ? "no column holds dates; " : ""}${quoted(names[at])} holds ${quoted(example.cells[at])}, which cannot be read as ${what}`
+        : "no column holds dates",
+      "write dates as 2026-11-30 (or 2026-W49, 2026-11, 2026-Q4), or name the column of dates under date in the settings",
+      { line: example?.line, column: names[at] },
     ),
   );
 }
 
-function withoutDoubles(names: readonly string[]): string[] {
-  const seen = new Map<string, number>();
-  return names.map((name, at) => {
-    const base = name === "" ? `column ${at + 1}` : name;
-    const count = (seen.get(base) ?? 0) + 1;
-    seen.set(base, count);
-    return count === 1 ? base : `${base} (${count})`;
-  });
-}
-
 /**
- * Decides from the head of a text how to read the whole. `whole` says that the head is all there is.
+ * Decides from the first rows of a table how to read the whole. `whole` says that the sample is all there is.
  *
  * @throws TableFault when the table has no readable shape
  */
 export function planTable(
-  head: string,
+  { rows, comments }: Sample,
   whole: boolean,
+  delimiter: string,
   settings: TableSettings,
   locale: string,
   complain: Complain,
 ): TablePlan {
   const formats = dateFormats(locale);
-  const delimiter =
-    settings.delimiter ?? findDelimiter(head.slice(0, 100_000), whole && head.length <= 100_000, formats);
-  const { rows, comments, unclosedQuote } = sampleRows(head, delimiter, whole);
-  if (unclosedQuote !== undefined)
+  const { header, data } = findHeader(rows, comments, delimiter, formats, settings, complain);
+  const names = columnNames(header.cells);
+  if (data.length === 0)
     throw new TableFault(
       complain(
-        "quote-not-closed",
+        "no-rows",
         true,
-        "a quotation mark opens here and never closes",
-        "close or remove it",
+        "below the line that names the columns there are no rows",
+        "export the table again",
         {
-          line: unclosedQuote,
+          line: header.line,
         },
       ),
     );
-  if (rows.length === 0)
-    throw new TableFault(
-      complain(
-        "empty",
-        true,
-        "the table holds no rows",
-        "export it again: a header line and rows of dates and numbers are needed",
-      ),
-    );
-  if (rows.every(({ cells }) => cells.length < 2))
-    throw new TableFault(
-      complain(
-        "one-column",
-        true,
-        "every row holds one cell only, where a date and a value are needed",
-        "separate the columns by comma, semicolon, tab or |, or name the delimiter in the settings",
-        { line: rows[0].line },
-      ),
-    );
-  const { header, data } = findHeader(rows, comments, delimiter, formats, settings, complain);
-  const names = withoutDoubles(header.cells.map(cleanName));
-  const every = names.map((_, at) => at);
-  const columns = settings.date === undefined ? every : [columnNamed(settings.date, names, "date", complain)];
-  const trusted = columns.filter(
-    (at) => settings.date !== undefined || dateWords.test(names[at].replaceAll("_", " ")),
-  );
-  const clear = formats.filter((format) => !format.digitsOnly);
-  const probe = data.slice(0, 2000);
-  const dates =
-    [findDateColumn(probe, clear, columns), findDateColumn(probe, formats, trusted)]
-      .filter((found) => found !== undefined && found.found >= 0.5 * probe.length)
-      .sort((a, b) => (b?.found ?? 0) - (a?.found ?? 0))[0] ?? undefined;
-  if (!dates) {
-    const at = trusted[0] ?? columns[0];
-    const example = data.find(({ cells }) => (cells[at] ?? "").trim() !== "");
-    throw new TableFault(
-      complain(
-        "no-dates",
-        true,
-        example
-          ? `no column holds dates; ${quoted(names[at])} holds ${quoted(example.cells[at])}, which is no date`
-          : "no column holds dates",
-        "write dates as 2026-11-30 (or 2026-W49, 2026-11, 2026-Q4), or name the date column in the settings",
-        { line: example?.line, column: names[at] },
-      ),
-    );
-  }
+  const dates = findDates(data, names, formats, settings, complain);
   const named =
     settings.values === undefined
       ? undefined
       : [settings.values].flat().map((name) => columnNamed(name, names, "values", complain));
-  const others = every.filter((at) => at !== dates.column);
-  const counts = new Map<number, ColumnCounts>(others.map((at) => [at, countColumn(probe, at)]));
+  const others = [...names.keys()].filter((at) => at !== dates.column);
+  const counts = new Map<number, ColumnCounts>(others.map((at) => [at, countColumn(data, at)]));
   const seriesColumn =
     typeof settings.seriesName === "string"
       ? columnNamed(settings.seriesName, names, "seriesName", complain)
       : settings.seriesName === null
         ? null
         : findShape(data, dates, others, counts, named);
-  const isNumeric = (at: number) => {
-    const count = counts.get(at);
-    return count !== undefined && count.numbers > 0 && count.numbers >= count.texts;
+  const holdsNumbers = (at: number) => {
+    const { numbers, texts } = counts.get(at) ?? { numbers: 0, texts: 0 };
+    // A column that is still empty may begin later, while there is more to read.
+    return (numbers > 0 || (!whole && texts === 0)) && 3 * numbers >= texts;
   };
-  const valueColumns = named ?? others.filter((at) => at !== seriesColumn && isNumeric(at));
-  if (valueColumns.length === 0 && settings.combine !== "count")
+  const valueColumns =
+    named ??
+    others.filter((at) => at !== seriesColumn && holdsNumbers(at) && !countsRows(data, at, names[at]));
+  if (valueColumns.length === 0 && settings.combine !== "count") {
+    const text = others.find((at) => at !== seriesColumn && (counts.get(at)?.texts ?? 0) > 0);
+    const example =
+      text === undefined ? undefined : data.find(({ cells }) => (cells[text] ?? "").trim() !== "");
     throw new TableFault(
       complain(
         "no-values",
         true,
-        `beside the dates in ${quoted(names[dates.column])} no column holds numbers`,
-        "add a column of numbers, or set combine to count to count the rows",
+        example && text !== undefined
+          ? `beside the dates no column holds numbers; ${quoted(names[text])} holds ${quoted(example.cells[text])}`
+          : "beside the dates no column holds numbers",
+        "add a column of numbers, or set combine to count to count the rows of each period",
+        example && text !== undefined ? { line: example.line, column: names[text] } : {},
       ),
     );
+  }
   const decimal = findDecimal(data, valueColumns, names, delimiter, settings, complain);
   return {
     delimiter,

@@ -1,0 +1,58 @@
+import type { Built } from "./buildSeries.ts";
+import type { Collected } from "./collect.ts";
+import type { FoundOrder } from "./findOrder.ts";
+import { weekdays } from "./periods.ts";
+import type { Reading } from "./reading.ts";
+import type { TablePlan } from "./tablePlan.ts";
+
+/** Where the rows came from. */
+export interface Source {
+  readonly format: Reading["format"];
+  readonly compressed: boolean;
+  readonly encoding: string | null;
+}
+
+const delimiterNames: Record<string, string> = { ",": "comma", ";": "semicolon", "\t": "tab", "|": "pipe" };
+
+/** Puts together what was taken for what. */
+export function describeReading(
+  plan: TablePlan,
+  source: Source,
+  order: FoundOrder | null,
+  collected: Collected,
+  built: Built,
+): Reading {
+  const roleOf = (at: number): Reading["columns"][number]["role"] => {
+    if (at === plan.dateColumn) return plan.dateFormat.name === "period-label" ? "period" : "date";
+    if (at === plan.seriesColumn) return "series";
+    return plan.valueColumns.includes(at) ? "value" : "ignored";
+  };
+  const dated = collected.keys.reduce((rows, key) => rows + key.rows, 0);
+  const { every, weekStart, how } = built.calendar;
+  const isText = source.format === "text";
+  return {
+    ...source,
+    delimiter: isText ? delimiterNames[plan.delimiter] : null,
+    headerLine: isText ? plan.headerLine : null,
+    columns: plan.names.map((name, at) => ({ name, role: roleOf(at) })),
+    date: {
+      column: plan.names[plan.dateColumn],
+      format: order
+        ? plan.dateFormat.pattern.split(" or ")[order.order === "day-first" ? 0 : 1]
+        : plan.dateFormat.pattern,
+      order: order?.order ?? null,
+      how: order?.how ?? null,
+    },
+    decimal: { mark: plan.style.decimal, how: plan.decimalHow },
+    shape: plan.seriesColumn === null ? "wide" : "long",
+    period: { every, weekStartsOn: every === "week" ? weekdays[weekStart] : null, how },
+    combine: built.combine,
+    incompletePeriod: built.incompletePeriod,
+    rows: {
+      read: collected.read,
+      used: dated - built.later,
+      ignored: collected.read - dated,
+      later: built.later,
+    },
+  };
+}
