@@ -1,18 +1,34 @@
 import type { Forecast } from "../forecast/forecast.ts";
 import type { ForecastFacts } from "../words/facts.ts";
 
-/** A forecast in numbers that survive JSON; `periods` name its steps. */
-export function forecastFacts(forecast: Forecast, periods: readonly string[]): ForecastFacts {
+/**
+ * A forecast in numbers that survive JSON; `periods` name its steps, `coming` is what known events add to each.
+ */
+export function forecastFacts(
+  forecast: Forecast,
+  periods: readonly string[],
+  coming: ArrayLike<number>,
+): ForecastFacts {
+  const shifted = (values: ArrayLike<number>) => Array.from(values, (value, step) => value + coming[step]);
+  const added = Array.from(coming).reduce((sum, value) => sum + value, 0);
+  const { total } = forecast;
   return {
     periods,
-    point: Array.from(forecast.point),
-    median: Array.from(forecast.median),
+    point: shifted(forecast.point),
+    median: shifted(forecast.median),
     intervals: forecast.intervals.map(({ level, low, high }) => ({
       level,
-      low: Array.from(low),
-      high: Array.from(high),
+      low: shifted(low),
+      high: shifted(high),
     })),
-    total: { point: forecast.total.point, intervals: forecast.total.intervals },
+    total: {
+      point: total.point + added,
+      intervals: total.intervals.map(({ level, low, high }) => ({
+        level,
+        low: low + added,
+        high: high + added,
+      })),
+    },
     chances: forecast.chances.map(({ direction, limit, each, any }) => ({
       direction,
       limit,

@@ -1,6 +1,8 @@
 import type { ObjectStore } from "../store/objectStore.ts";
 import { createDocument } from "./documents.ts";
 import { asOfText, planKey, seriesPrefix, tableNameFault, tableOfKey } from "./keys.ts";
+import { loadEvents } from "./loadEvents.ts";
+import { defaultSettings, type Settings } from "./settings.ts";
 import type { FailedTable, Plan } from "./summary.ts";
 
 /** Tables a worker takes at a time; small enough that a retried portion costs little. */
@@ -23,11 +25,15 @@ function refusal(table: string, key: string, fault: string): FailedTable {
  *
  * @throws StoreError when the store cannot be listed or written
  */
-export async function planRun(options: { store: ObjectStore; asOf: Date | string }): Promise<Plan> {
+export async function planRun(options: {
+  readonly store: ObjectStore;
+  readonly asOf: Date | string;
+  readonly settings?: Pick<Settings, "locale">;
+}): Promise<Plan> {
   const { store } = options;
   const asOf = asOfText(options.asOf);
   const tables = new Set<string>();
-  const refused: FailedTable[] = [];
+  const { refused } = await loadEvents(store, (options.settings ?? defaultSettings).locale);
   for (const { key } of await store.list(seriesPrefix)) {
     const table = tableOfKey(key);
     if (table === undefined) continue;

@@ -1,5 +1,6 @@
 import type { ObjectStore } from "../store/objectStore.ts";
 import { asOfText } from "./keys.ts";
+import { loadEvents } from "./loadEvents.ts";
 import { loadSettings } from "./loadSettings.ts";
 import type { Progress } from "./progress.ts";
 import { refitTable } from "./refitTable.ts";
@@ -30,6 +31,7 @@ export async function refitPortion(options: RefitOptions): Promise<PortionResult
   const { store, tables, remainingMilliseconds, clock, progress } = options;
   const asOf = asOfText(options.asOf);
   const settings = options.settings ?? (await loadSettings(store));
+  const { events } = await loadEvents(store, settings.locale);
   const refitted: string[] = [];
   const already: string[] = [];
   const failed: FailedTable[] = [];
@@ -40,7 +42,7 @@ export async function refitPortion(options: RefitOptions): Promise<PortionResult
       return { refitted, already, failed, left: tables.slice(done), series };
     const table = tables[done];
     const began = clock?.() ?? 0;
-    const outcome = await refitTable({ store, asOf, table, settings });
+    const outcome = await refitTable({ store, asOf, table, settings, events });
     slowest = Math.max(slowest, (clock?.() ?? 0) - began);
     if (outcome.status === "failed") failed.push({ table, problems: outcome.problems });
     else {

@@ -1,3 +1,4 @@
+import type { KnownEvent } from "../series/readEvents.ts";
 import type { Reading } from "../series/reading.ts";
 import { readTable } from "../series/readTable.ts";
 import type { Problem, Series } from "../series/series.ts";
@@ -16,7 +17,8 @@ import {
   type StoredSeries,
 } from "./modelDocument.ts";
 import { readSource } from "./readSource.ts";
-import { refitSeries, type SeriesTask, seriesDigest } from "./refitSeries.ts";
+import { refitSeries, type SeriesTask } from "./refitSeries.ts";
+import { seriesDigest } from "./seriesDigest.ts";
 import type { Settings } from "./settings.ts";
 
 interface TableTask {
@@ -24,6 +26,7 @@ interface TableTask {
   readonly asOf: string;
   readonly table: string;
   readonly settings: Settings;
+  readonly events: readonly KnownEvent[];
 }
 
 type TableOutcome =
@@ -64,7 +67,7 @@ function refitOrCarry(
 }
 
 async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutcome> {
-  const { store, asOf, table, settings } = task;
+  const { store, asOf, table, settings, events } = task;
   const source = await readSource(store, table);
   if (!source) {
     const message = "the file was there when the run began and is gone";
@@ -92,7 +95,11 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     reading,
     problems,
     series: series.map((one) =>
-      refitOrCarry(one, { asOf, table, settings, tableSettings, previous: earlier.get(one.name) }, reading),
+      refitOrCarry(
+        one,
+        { asOf, table, settings, tableSettings, events, previous: earlier.get(one.name) },
+        reading,
+      ),
     ),
   };
   const model = await createDocument(store, modelKey(table, asOf), made);

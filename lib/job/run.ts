@@ -73,7 +73,7 @@ export async function runJob(options: RunOptions): Promise<RunSummary> {
   const { store, remainingMilliseconds, progress } = options;
   const { clock, asOf, settings, undelivered } = await prepare(options);
   const began = clock();
-  const plan = await planRun({ store, asOf });
+  const plan = await planRun({ store, asOf, settings });
   await refitPortion({ store, asOf, tables: plan.tables, settings, remainingMilliseconds, clock, progress });
   return close({ ...options, settings }, plan, clock, began, undelivered);
 }
@@ -81,7 +81,7 @@ export async function runJob(options: RunOptions): Promise<RunSummary> {
 /** Ends a run whose tables other workers refitted: the messages, the report, the deliveries. */
 export async function closeRun(options: RunOptions): Promise<RunSummary> {
   const { clock, asOf, settings, undelivered } = await prepare({ ...options, replaying: true });
-  const plan = await planRun({ store: options.store, asOf });
+  const plan = await planRun({ store: options.store, asOf, settings });
   return close({ ...options, settings }, plan, clock, clock(), undelivered);
 }
 

@@ -1,6 +1,8 @@
 import { monitorPaths } from "../drift/monitorPaths.ts";
 import { readWatch } from "../drift/storedWatch.ts";
 import { type Watch, type WatchOptions, type WatchResult, watchSeries } from "../drift/watchSeries.ts";
+import { describeSeries } from "../forecast/describingModel.ts";
+import type { Period } from "../series/series.ts";
 import type { MonitorFacts } from "../words/facts.ts";
 
 /** Looks over which the false-alarm rate holds: a year of weeks, and as many periods of any other step. */
@@ -9,10 +11,20 @@ const looks = 52;
 export interface WatchTask {
   readonly values: Float64Array;
   readonly falseAlarmRate: number;
+  readonly period: Period;
   readonly seed: number;
-  /** Terms of the describing model: they become columns of the reference. */
-  readonly trend: boolean;
-  readonly season: number;
+}
+
+/** Trend and season that the describing model finds: they become columns of the reference. */
+function referenceTerms({ values, period }: WatchTask): { trend: boolean; season: number } {
+  try {
+    const { trend, season } = describeSeries(values, { period });
+    return { trend, season };
+  } catch (error) {
+    // Too few values, or all the same: there is nothing to take off.
+    if (error instanceof RangeError) return { trend: false, season: 0 };
+    throw error;
+  }
 }
 
 /**
@@ -22,13 +34,14 @@ export interface WatchTask {
 export function advanceWatch(stored: unknown, task: WatchTask): WatchResult {
   const read = readWatch(stored);
   const previous = "watch" in read ? read.watch : undefined;
+  // A reference keeps the terms it was made with; the describing model may choose others from run to run.
+  const { trend, season } = previous?.settings ?? referenceTerms(task);
   const options: WatchOptions = {
     looks,
     falseAlarmRate: task.falseAlarmRate,
     seed: task.seed,
-    // A reference keeps the terms it was made with; the describing model may choose others from run to run.
-    trend: previous?.settings.trend ?? task.trend,
-    season: previous?.settings.season ?? task.season,
+    trend,
+    season,
   };
   if (previous) return watchSeries(previous, task.values, options);
   const before = task.values.subarray(0, Math.max(0, task.values.length - looks));
