@@ -22,10 +22,14 @@ export interface RefitOptions {
 /** Time kept back for closing the run: the digest, the report and the deliveries. */
 const closingMilliseconds = 30_000;
 
+/** Tables under way at once: while one is computed, others are read and written. */
+const underWay = 4;
+
 /**
- * Refits every table of a portion, one after another. A table that fails is reported and the rest go on.
- * With the time running low it takes no further table: those left are named in the result, and a retry of the
- * same run goes on from there.
+ * Refits every table of a portion. A table that fails is reported and the rest go on. With the time running low it
+ * takes no further table: those left are named in the result, and a retry of the same run goes on from there.
+ *
+ * @throws StoreError when the store itself fails
  */
 export async function refitPortion(options: RefitOptions): Promise<PortionResult> {
   const { store, tables, remainingMilliseconds, clock, progress } = options;
@@ -36,20 +40,41 @@ export async function refitPortion(options: RefitOptions): Promise<PortionResult
   const already: string[] = [];
   const failed: FailedTable[] = [];
   let series = 0;
+  let next = 0;
+  let done = 0;
   let slowest = 0;
-  for (let done = 0; done < tables.length; done++) {
-    if (remainingMilliseconds && remainingMilliseconds() < closingMilliseconds + 2 * slowest)
-      return { refitted, already, failed, left: tables.slice(done), series };
-    const table = tables[done];
-    const began = clock?.() ?? 0;
-    const outcome = await refitTable({ store, asOf, table, settings, events });
-    slowest = Math.max(slowest, (clock?.() ?? 0) - began);
-    if (outcome.status === "failed") failed.push({ table, problems: outcome.problems });
-    else {
-      (outcome.status === "refitted" ? refitted : already).push(table);
-      series += outcome.series;
+  let faulty = false;
+  const inTime = () => !remainingMilliseconds || remainingMilliseconds() >= closingMilliseconds + 2 * slowest;
+
+  async function takeTables(): Promise<void> {
+    while (next < tables.length && !faulty && inTime()) {
+      const table = tables[next++];
+      const began = clock?.() ?? 0;
+      const outcome = await refitTable({ store, asOf, table, settings, events });
+      slowest = Math.max(slowest, (clock?.() ?? 0) - began);
+      if (outcome.status === "failed") failed.push({ table, problems: outcome.problems });
+      else {
+        (outcome.status === "refitted" ? refitted : already).push(table);
+        series += outcome.series;
+      }
+      progress?.({ stage: "table", table, done: ++done, of: tables.length });
     }
-    progress?.({ stage: "table", table, done: done + 1, of: tables.length });
   }
-  return { refitted, already, failed, left: [], series };
+  const takers = Array.from({ length: Math.min(underWay, tables.length) }, () =>
+    takeTables().catch((error: unknown) => {
+      faulty = true;
+      throw error;
+    }),
+  );
+  // All are waited for, so that nothing is still being written when a fault is told.
+  const ends = await Promise.allSettled(takers);
+  for (const end of ends) if (end.status === "rejected") throw end.reason;
+  const byName = (a: FailedTable, b: FailedTable) => (a.table < b.table ? -1 : 1);
+  return {
+    refitted: refitted.sort(),
+    already: already.sort(),
+    failed: failed.sort(byName),
+    left: tables.slice(next),
+    series,
+  };
 }
