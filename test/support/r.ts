@@ -1,5 +1,5 @@
-import { WebR } from "webr";
 import { afterAll, beforeAll } from "vitest";
+import { type RDouble, WebR } from "webr";
 
 /** R itself (the `webr` package), for checks against R's own functions. */
 export interface RSession {
@@ -26,8 +26,10 @@ export async function startR(): Promise<RSession & { end(): void }> {
 
 function sessionOf(session: WebR): RSession {
   const evaluate = async (code: string): Promise<number[]> => {
-    const answer = await session.evalRRaw(`as.numeric({ ${code} })`, "number[]");
-    return Array.from(answer);
+    const answer = (await session.evalR(`as.numeric({ ${code} })`)) as RDouble;
+    const numbers = Array.from(await answer.toTypedArray());
+    await session.destroy(answer);
+    return numbers;
   };
   return {
     evaluate,
