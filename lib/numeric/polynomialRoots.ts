@@ -11,13 +11,20 @@ export interface ComplexNumber {
  * @example polynomialRoots([-3, 2]) // 2 and 1
  */
 export function polynomialRoots(coefficients: ArrayLike<number>): ComplexNumber[] {
-  let degree = coefficients.length;
-  while (degree > 0 && coefficients[degree - 1] === 0) degree--;
-  const zeros = Array.from({ length: coefficients.length - degree }, () => ({ re: 0, im: 0 }));
+  let radius = 0;
+  for (let i = 0; i < coefficients.length; i++) {
+    radius = Math.max(radius, Math.abs(coefficients[i]) ** (1 / (i + 1)));
+  }
+  // In units of the radius no power over- or underflows, and a last coefficient this small is a root of zero.
+  const scaled = Float64Array.from(coefficients, (value, i) => value / radius ** (i + 1));
+  let degree = radius > 0 ? scaled.length : 0;
+  while (degree > 0 && Math.abs(scaled[degree - 1]) < 1e-200) degree--;
+  const zeros = Array.from({ length: scaled.length - degree }, () => ({ re: 0, im: 0 }));
   if (degree === 0) return zeros;
   if (degree === 1) return [{ re: -coefficients[0], im: 0 }, ...zeros];
   if (degree === 2) return [...quadraticRoots(coefficients[0], coefficients[1]), ...zeros];
-  return [...aberth(coefficients, degree), ...zeros];
+  const unit = aberth(scaled, degree);
+  return [...unit.map(({ re, im }) => ({ re: re * radius, im: im * radius })), ...zeros];
 }
 
 function quadraticRoots(b: number, c: number): ComplexNumber[] {
@@ -38,18 +45,15 @@ function quadraticRoots(b: number, c: number): ComplexNumber[] {
   ];
 }
 
+/** Roots in units of the radius. */
 function aberth(coefficients: ArrayLike<number>, degree: number): ComplexNumber[] {
-  let radius = 0;
-  for (let i = 0; i < degree; i++) {
-    radius = Math.max(radius, Math.abs(coefficients[i]) ** (1 / (i + 1)));
-  }
   const re = new Float64Array(degree);
   const im = new Float64Array(degree);
   for (let i = 0; i < degree; i++) {
     // An angle that avoids the real axis and symmetry.
     const angle = (2 * Math.PI * i) / degree + 0.4;
-    re[i] = radius * Math.cos(angle);
-    im[i] = radius * Math.sin(angle);
+    re[i] = Math.cos(angle);
+    im[i] = Math.sin(angle);
   }
   for (let iteration = 0; iteration < 500; iteration++) {
     let moved = 0;
