@@ -8,8 +8,8 @@ export const demoTruths = {
   loans: {
     firstWeek: "2021-12-06",
     weeks: 260,
-    /** Shocks begin to fade slowly here: φ goes from 0.35 to 0.9, so the half-life from 0.8 to 6.6 weeks. */
-    Quay: { level: 260, shockSize: 17, before: 0.35, after: 0.9, changedInWeek: "2026-03-30" },
+    /** Shocks begin to fade slowly here: φ goes from 0.35 to 0.88, so the half-life from 0.8 to 5.4 weeks. */
+    Quay: { level: 260, shockSize: 17, before: 0.35, after: 0.88, changedInWeek: "2026-05-25" },
     /** Closed for a fortnight at the turn of the year: two gaps. */
     Mill: { level: 182, shockSize: 13, coefficient: 0.5, closedWeeks: ["2025-12-22", "2025-12-29"] },
     /** Nothing ever happens here. */

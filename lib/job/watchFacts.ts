@@ -8,6 +8,9 @@ import type { MonitorFacts } from "../words/facts.ts";
 /** Looks over which the false-alarm rate holds: a year of weeks, and as many periods of any other step. */
 const looks = 52;
 
+/** Values before the first run that are looked at as if they had arrived one by one. */
+const lookedBackOn = 26;
+
 export interface WatchTask {
   readonly values: Float64Array;
   readonly falseAlarmRate: number;
@@ -28,8 +31,8 @@ function referenceTerms({ values, period }: WatchTask): { trend: boolean; season
 }
 
 /**
- * Advances the watch of a series with the values that arrived. At first sight the last year is looked back upon as if
- * its values had arrived one by one, so that a new user hears of a change that came before the first run.
+ * Advances the watch of a series with the values that arrived. At first sight the newest values are looked
+ * at as if they had arrived one by one, so that a new user hears of a change that came shortly before the first run.
  */
 export function advanceWatch(stored: unknown, task: WatchTask): WatchResult {
   const read = readWatch(stored);
@@ -44,7 +47,7 @@ export function advanceWatch(stored: unknown, task: WatchTask): WatchResult {
     season,
   };
   if (previous) return watchSeries(previous, task.values, options);
-  const before = task.values.subarray(0, Math.max(0, task.values.length - looks));
+  const before = task.values.subarray(0, Math.max(0, task.values.length - lookedBackOn));
   const first = watchSeries(undefined, before, options);
   const result = watchSeries(first.watch, task.values, options);
   return first.pastBreak ? { ...result, pastBreak: first.pastBreak } : result;
