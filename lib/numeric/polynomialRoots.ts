@@ -15,10 +15,11 @@ export function polynomialRoots(coefficients: ArrayLike<number>): ComplexNumber[
   for (let i = 0; i < coefficients.length; i++) {
     radius = Math.max(radius, Math.abs(coefficients[i]) ** (1 / (i + 1)));
   }
-  // In units of the radius no power over- or underflows, and a last coefficient this small is a root of zero.
+  // In units of the radius no power overflows. A last coefficient below 1e-60 is far below the rounding of the others:
+  // its root is taken as zero.
   const scaled = Float64Array.from(coefficients, (value, i) => value / radius ** (i + 1));
   let degree = radius > 0 ? scaled.length : 0;
-  while (degree > 0 && Math.abs(scaled[degree - 1]) < 1e-200) degree--;
+  while (degree > 0 && Math.abs(scaled[degree - 1]) < 1e-60) degree--;
   const zeros = Array.from({ length: scaled.length - degree }, () => ({ re: 0, im: 0 }));
   if (degree === 0) return zeros;
   if (degree === 1) return [{ re: -coefficients[0], im: 0 }, ...zeros];
