@@ -50,7 +50,7 @@ export function attributionChart(id: string, speech: Speech): Markup | null {
   const unit = inShares ? "in percent" : speech.unit === null ? "" : `in ${speech.unit}`;
   return plot({
     id,
-    title: `Where the forecast comes from: past shocks, ${unit}`.replace(/, $/, ""),
+    title: `Past shocks in the forecast, ${unit}`.replace(/, $/, ""),
     description: `How far each of ${shocks.length} past shocks moves the coming ${steps} ${speech.facts.period}s away from the long-run level of ${speech.roughly(attribution.longRunLevel)}.`,
     height: heights.small,
     grid: "y",

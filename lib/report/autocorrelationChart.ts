@@ -20,7 +20,7 @@ export function autocorrelationChart(id: string, speech: Speech, locale: string)
   const every = Math.ceil(values.length / 6);
   return plot({
     id,
-    title: "What the model leaves unexplained, by lag",
+    title: "Left unexplained, by lag",
     description: `Autocorrelations of the residuals at ${values.length} lags; ${outside} outside the 95% band of ±${number.format(band)}, ${number.format(values.length * 0.05)} expected by chance.`,
     height: heights.small,
     grid: "y",

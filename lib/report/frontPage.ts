@@ -4,7 +4,7 @@ import { percentWriter } from "../words/chances.ts";
 import { changeHeadline } from "../words/changeWords.ts";
 import type { RunFacts, Voice } from "../words/facts.ts";
 import { staleSentence, surpriseSentence } from "../words/otherFindings.ts";
-import { plainText } from "../words/plainText.ts";
+import { plainName } from "../words/plainText.ts";
 import { type Speech, speechFor, spokenInterval } from "../words/speech.ts";
 import { html, type Markup, nothing } from "./markup.ts";
 import { round } from "./plot.ts";
@@ -32,7 +32,7 @@ function row(one: Ranked, link: string, several: boolean, run: RunFacts, voice: 
   const interval = spokenInterval(forecast.intervals);
   const told = (value: number) => speech.write(value, speech.forecastStep);
   const news = newsOf(one, speech);
-  return html`<li><a href="${link}"><span class="name">${several ? html`<small>${plainText(one.table.table)}</small> ` : nothing}${speech.series}</span>${statusChip(one)}${mini(one)}<span class="next"><b>${told(forecast.point[0])}</b> ${speech.unit ?? ""} <small>${told(interval.low[0])} to ${told(interval.high[0])}, ${speech.periods.name(forecast.periods[0])}</small></span>${news ? html`<span class="news">${news}</span>` : nothing}</a></li>`;
+  return html`<li><a href="${link}"><span class="name">${several ? html`<small>${plainName(one.table.table, 120)}</small> ` : nothing}${plainName(one.facts.series, 120)}</span>${statusChip(one)}${mini(one)}<span class="next"><b>${told(forecast.point[0])}</b> ${speech.unit ?? ""} <small>${told(interval.low[0])} to ${told(interval.high[0])}, ${speech.periods.name(forecast.periods[0])}</small></span>${news ? html`<span class="news">${news}</span>` : nothing}</a></li>`;
 }
 
 function newsOf({ facts }: Ranked, speech: Speech): string | null {

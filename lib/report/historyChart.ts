@@ -146,7 +146,7 @@ function eventsOf(speech: Speech, { starts, past }: Timeline): ChartEvent[] {
       if (index === -1 || index >= past.length) return [];
       const than = `expected about ${speech.roughNumber(finding.expected)}`;
       const text = `${capital(speech.periods.name(finding.period))}: a one-off surprise of ${speech.amount(finding.value, valueStep(finding.value))}, ${than}.`;
-      return [{ index, value: finding.value, mark: { at: index / last, text }, shape: () => html`` }];
+      return [{ index, value: past[index], mark: { at: index / last, text }, shape: () => html`` }];
     })
     .sort((one, other) => one.index - other.index)
     .slice(-8);

@@ -28,7 +28,7 @@ function monitorChart(
   locale: string,
 ): Markup {
   const tell = statisticsWriter(locale);
-  const { scale, ticks, place } = verticalScale([0, boundary, ...statistics], 3);
+  const { scale, ticks, place } = verticalScale([0, boundary * 1.15, ...statistics], 3);
   const x = (look: number) => round((look / Math.max(1, monitor.looks - 1)) * side);
   const y = (value: number) => round(scale(value));
   const path = line<number | null>(

@@ -10,7 +10,7 @@ export interface NumbersTable {
 
 /** A closed drawer under a picture: its numbers as a table that can be read, copied and scrolled within itself. */
 export function numbersTable({ caption, head, rows }: NumbersTable): Markup {
-  return html`<details><summary>Numbers: ${caption}</summary><div class="scroll" tabindex="0" role="region" aria-label="${caption}"><table><thead><tr>${head.map((cell) => html`<th scope="col">${cell}</th>`)}</tr></thead><tbody>${rows.map(row)}</tbody></table></div></details>`;
+  return html`<details><summary>Numbers: ${caption}</summary><div class="scroll" tabindex="0" role="group" aria-label="${caption}"><table><thead><tr>${head.map((cell) => html`<th scope="col">${cell}</th>`)}</tr></thead><tbody>${rows.map(row)}</tbody></table></div></details>`;
 }
 
 function row([name, ...cells]: readonly string[]): Markup {

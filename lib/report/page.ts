@@ -9,7 +9,7 @@ const policy = "default-src 'none'; style-src 'unsafe-inline'; img-src data:";
 /** The document around the sections: head, title with the tide line, the caution at its foot. */
 export function page(title: string, main: Markup, run: RunFacts, voice: Voice): string {
   return `<!doctype html>\n${
-    html`<html lang="en"><head><meta charset="utf-8"><meta http-equiv="Content-Security-Policy" content="${policy}"><meta name="viewport" content="width=device-width, initial-scale=1"><meta name="color-scheme" content="light dark"><meta name="referrer" content="no-referrer"><title>${title}</title><style>${{ markup: style }}</style></head>
+    html`<html lang="en"><head><meta charset="utf-8"><meta http-equiv="Content-Security-Policy" content="${{ markup: policy }}"><meta name="viewport" content="width=device-width, initial-scale=1"><meta name="color-scheme" content="light dark"><meta name="referrer" content="no-referrer"><title>${title}</title><style>${{ markup: style }}</style></head>
 <body><header><p class="mark">ebbwire</p>${tide}<h1>${title}</h1><p class="when">${timeWriter(voice)(run.asOf)} (${voice.timeZone})</p></header>
 <main>${main}</main>
 <footer><p>${caution}</p></footer></body></html>`.markup

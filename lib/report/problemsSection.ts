@@ -1,6 +1,6 @@
 import type { Problem } from "../series/series.ts";
 import type { RunFacts } from "../words/facts.ts";
-import { plainText } from "../words/plainText.ts";
+import { plainName } from "../words/plainText.ts";
 import { list, problemText } from "../words/troubleLines.ts";
 import { html, type Markup, nothing } from "./markup.ts";
 
@@ -16,7 +16,7 @@ export function problemsSection(run: RunFacts): Markup {
   if (tables.length === 0 && run.left.length === 0) return nothing;
   return html`<section class="troubles" aria-labelledby="troubles"><h2 id="troubles">Problems in the data</h2>
 ${run.left.length > 0 ? html`<p>Not reached before time ran out: ${list(run.left)}.</p>` : nothing}
-${tables.map(({ table, note, problems }) => html`<h3>${plainText(table)}${note === "" ? nothing : html` <small>${note}</small>`}</h3>${problemList(problems)}`)}
+${tables.map(({ table, note, problems }) => html`<h3>${plainName(table, 120)}${note === "" ? nothing : html` <small>${note}</small>`}</h3>${problemList(problems)}`)}
 </section>`;
 }
 

@@ -1,7 +1,7 @@
 import type { Ranked } from "../words/attention.ts";
 import { changeDate, changeHeadline, changeMeaning } from "../words/changeWords.ts";
 import type { RunFacts, SeriesFacts, Voice } from "../words/facts.ts";
-import { plainText } from "../words/plainText.ts";
+import { plainName } from "../words/plainText.ts";
 import { seriesAccount } from "../words/seriesAccount.ts";
 import { type Speech, speechFor } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
@@ -27,7 +27,7 @@ export function seriesSection(one: Ranked, id: string, run: RunFacts, voice: Voi
   };
   const lines = [...account.changes, ...account.model, ...account.comparison, ...account.watch];
   return html`<section id="${id}" class="series" aria-labelledby="${id}h">
-<h2 id="${id}h">${run.tables.length > 1 ? html`<span class="of">${plainText(table.table)}</span> ` : nothing}${speech.series} ${statusChip(one)}</h2>
+<h2 id="${id}h">${run.tables.length > 1 ? html`<span class="of">${plainName(table.table, 120)}</span> ` : nothing}${plainName(facts.series, 120)} ${statusChip(one)}</h2>
 ${tiles(speech)}
 ${list([...changesOf(facts, speech), ...account.others])}
 ${historyChart(`${id}p`, speech)}
@@ -35,7 +35,7 @@ ${list(account.record)}
 ${group("What carries the forecast", [fadeChart(`${id}f`, speech), attributionChart(`${id}a`, speech), trackChart(`${id}t`, speech, voice.locale)])}
 ${group("The watch for change", facts.monitor ? monitorCharts(`${id}m`, facts.monitor, speech, voice.locale) : [])}
 ${group("The model", [coefficientChart(`${id}c`, speech, voice.locale), autocorrelationChart(`${id}r`, speech, voice.locale)])}
-<details class="account"><summary>The analyst's account</summary><pre tabindex="0" role="region" aria-label="The analyst's account of ${speech.series}">${lines.join("\n")}</pre></details>
+<details class="account"><summary>The analyst's account</summary><pre tabindex="0" role="group" aria-label="The analyst's account of ${speech.series}">${lines.join("\n")}</pre></details>
 <p class="back"><a href="report.html#all">All series</a></p>
 </section>`;
 }
@@ -44,7 +44,7 @@ ${group("The model", [coefficientChart(`${id}c`, speech, voice.locale), autocorr
 function changesOf(facts: SeriesFacts, speech: Speech): string[] {
   return facts.findings.flatMap((finding) =>
     finding.code === "change"
-      ? [changeHeadline(finding, speech), changeMeaning(finding, speech), changeDate(finding, speech)]
+      ? [`${changeHeadline(finding, speech)}; ${changeDate(finding, speech)}`, changeMeaning(finding, speech)]
       : [],
   );
 }

@@ -3,8 +3,8 @@
  * and line style for all. Contrasts meet WCAG 2.2 AA in both schemes.
  */
 export const style = `
-:root{--paper:#f6f4ee;--card:#fffdf8;--ink:#12262e;--soft:#4a5b62;--rule:#d9d5c9;--grid:#ebe7dc;--water:#0b5563;--water-pale:#cfe3e4;--sand:#a8480f;--fan1:#f6dcc6;--fan2:#edbf99;--stone:#5f6b70;--alarm:#9b1c3f;--p1:#0b3d48;--p2:#2f7f8d;--p3:#86bcc2;--p4:#c9c3b2}
-@media(prefers-color-scheme:dark){:root{--paper:#0d181d;--card:#13232a;--ink:#e8ecea;--soft:#a9b9bd;--rule:#2c4049;--grid:#20333b;--water:#74c7d3;--water-pale:#1c434b;--sand:#f2a76b;--fan1:#45301f;--fan2:#6b4526;--stone:#a3afb3;--alarm:#ff8fa8;--p1:#d8f1f3;--p2:#74c7d3;--p3:#3a8391;--p4:#6d6a5f}}
+:root{--paper:#f6f4ee;--card:#fffdf8;--ink:#12262e;--soft:#4a5b62;--rule:#d9d5c9;--grid:#ebe7dc;--water:#0b5563;--water-pale:#cfe3e4;--sand:#a8480f;--fan1:#f6dcc6;--fan2:#edbf99;--stone:#5f6b70;--alarm:#9b1c3f;--p1:#0b3d48;--p2:#2f7f8d;--p3:#8abfc5;--p4:#e4dccb}
+@media(prefers-color-scheme:dark){:root{--paper:#0d181d;--card:#13232a;--ink:#e8ecea;--soft:#a9b9bd;--rule:#2c4049;--grid:#20333b;--water:#74c7d3;--water-pale:#1c434b;--sand:#f2a76b;--fan1:#45301f;--fan2:#6b4526;--stone:#a3afb3;--alarm:#ff8fa8;--p1:#d8f1f3;--p2:#74c7d3;--p3:#3a8391;--p4:#3f4b4c}}
 *{box-sizing:border-box}
 html{-webkit-text-size-adjust:100%}
 body{margin:0;background:var(--paper);color:var(--ink);font:16px/1.5 system-ui,-apple-system,"Segoe UI",sans-serif;overflow-wrap:anywhere}
@@ -51,9 +51,9 @@ small,.of{font:400 .85rem/1.3 system-ui,-apple-system,"Segoe UI",sans-serif;colo
 .series{margin:2rem 0;padding:1.25rem;background:var(--card);border:1px solid var(--rule);border-radius:.6rem;content-visibility:auto;contain-intrinsic-size:auto 1600px}
 .said{margin:.6rem 0;padding:0 0 0 1.1rem;max-width:70ch}
 .said li{margin:.2rem 0}
-.pictures{display:grid;grid-template-columns:repeat(auto-fill,minmax(min(100%,19rem),1fr));gap:.5rem 2rem}
+.pictures{display:grid;grid-template-columns:repeat(auto-fit,minmax(min(100%,19rem),1fr));gap:.5rem 2rem}
 .plot{margin:1.2rem 0 .4rem;min-width:0}
-figcaption{font-weight:600;font-size:.95rem;margin-bottom:.35rem}
+figcaption{font-weight:600;font-size:.95rem;margin-bottom:.7rem}
 .frame{position:relative;padding:0 .6rem 1.5rem calc(var(--gutter) + .6rem);font-size:.78rem;color:var(--soft);font-variant-numeric:tabular-nums}
 .body{position:relative}
 .body svg{display:block;width:100%;height:var(--height);overflow:visible}
@@ -83,7 +83,7 @@ figcaption{font-weight:600;font-size:.95rem;margin-bottom:.35rem}
 .dot.old{stroke:var(--stone);stroke-width:7;stroke-linecap:square}
 .dot.surprise{stroke:var(--alarm);stroke-width:9}
 .whisker,.stem{stroke:var(--water);stroke-width:2.4}
-.frame svg .part{stroke:var(--card);stroke-width:1}
+.frame svg .part{stroke:var(--stone);stroke-width:.8}
 .frame svg .part1{fill:var(--p1)}.frame svg .part2{fill:var(--p2)}.frame svg .part3{fill:var(--p3)}.frame svg .part4{fill:var(--p4)}
 .legend,.told{margin:.3rem 0;padding:0;font-size:.82rem;color:var(--soft)}
 .legend{list-style:none;display:flex;flex-wrap:wrap;gap:.15rem 1rem}
@@ -99,6 +99,7 @@ figcaption{font-weight:600;font-size:.95rem;margin-bottom:.35rem}
 .legend i.dot{width:.55rem;height:.55rem;border-radius:50%;background:var(--water)}
 .legend i.dot.old{border-radius:0;background:var(--stone)}
 .legend i.fan1{background:var(--fan1)}.legend i.fan2{background:var(--fan2)}.legend i.between{background:var(--grid)}
+.legend i[class^=part]{outline:1px solid var(--stone);outline-offset:-1px}
 .legend i.part1{background:var(--p1)}.legend i.part2{background:var(--p2)}.legend i.part3{background:var(--p3)}.legend i.part4{background:var(--p4)}
 .back{margin:.8rem 0 0;font-size:.85rem}
 details{font-size:.85rem}

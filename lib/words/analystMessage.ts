@@ -5,7 +5,7 @@ import { reportPlace } from "./instants.ts";
 import { messageData } from "./messageData.ts";
 import { caution, type Note } from "./note.ts";
 import { numberWriter } from "./numbers.ts";
-import { plainText } from "./plainText.ts";
+import { plainName } from "./plainText.ts";
 import { seriesAccount } from "./seriesAccount.ts";
 import { speechFor } from "./speech.ts";
 import { statisticsWriter } from "./statistics.ts";
@@ -26,7 +26,7 @@ export function analystMessage(run: RunFacts, voice: Voice): Note {
       account.changes.length > 0
         ? [...account.changes, ...account.others, ...account.model, ...account.comparison]
         : [...account.others, account.model[0]];
-    return [`${plainText(table.table)}, ${speech.series}`, ...parts.map((one) => `  ${one}`)];
+    return [`${plainName(table.table)}, ${speech.series}`, ...parts.map((one) => `  ${one}`)];
   });
   const rest = all.length - Math.min(news.length, inFull);
   return {

@@ -8,7 +8,7 @@ import { dateWriter, reportPlace } from "./instants.ts";
 import { wrapLine } from "./lineWidth.ts";
 import { messageData } from "./messageData.ts";
 import { caution, type Note } from "./note.ts";
-import { plainText } from "./plainText.ts";
+import { plainName } from "./plainText.ts";
 import { seriesLines } from "./seriesLines.ts";
 import { speechFor, spokenInterval } from "./speech.ts";
 import { trackSentence } from "./trackSentence.ts";
@@ -37,7 +37,7 @@ export function businessMessage(run: RunFacts, voice: Voice): Note {
   const { lines, told } = fillRoom(
     candidates.map((one) => {
       const speech = speechFor(one.facts, voice, run.asOf);
-      const label = several ? `${plainText(one.table.table, 30)}, ${speech.series}` : speech.series;
+      const label = several ? `${plainName(one.table.table, 30)}, ${speech.series}` : speech.series;
       return { label, news: one.attention >= newsFrom, lines: seriesLines(speech, label) };
     }),
     Math.max(least, wholeNote - before.length - after.length - link.length - (all.length > 4 ? 1 : 0)),

@@ -2,7 +2,7 @@ import { changeDate, changeHeadline } from "./changeWords.ts";
 import type { SeriesFacts, Voice } from "./facts.ts";
 import { nextSentence, sparkSentence, totalSentence } from "./forecastSentences.ts";
 import { caution } from "./note.ts";
-import { plainText } from "./plainText.ts";
+import { plainName } from "./plainText.ts";
 import { seriesAccount } from "./seriesAccount.ts";
 import { speechFor } from "./speech.ts";
 import { statisticsWriter } from "./statistics.ts";
@@ -19,7 +19,7 @@ export function explainSeries(table: string, facts: SeriesFacts, voice: Voice): 
   const section = (title: string, lines: readonly string[]) =>
     lines.length > 0 ? ["", title, ...lines.map((line) => `  ${line}`)] : [];
   return [
-    `${plainText(table)}, ${speech.series}${speech.unit === null ? "" : `, in ${speech.unit}`}`,
+    `${plainName(table)}, ${speech.series}${speech.unit === null ? "" : `, in ${speech.unit}`}`,
     ...section("What to expect", [...forecast, sparkSentence(speech, 24)]),
     ...section("What changed", [...headlines, ...account.changes]),
     ...section("Also worth knowing", account.others),

@@ -1,6 +1,6 @@
 import { newsFrom, ranked } from "./attention.ts";
 import type { Finding, RunFacts } from "./facts.ts";
-import { plainText } from "./plainText.ts";
+import { plainName } from "./plainText.ts";
 
 /** How many of each sort of news a run holds. */
 export function newsCounts(run: Pick<RunFacts, "tables" | "failed">) {
@@ -30,6 +30,6 @@ export function headline(run: RunFacts): string {
   ];
   const tables = run.tables.length + run.failed.length;
   const only = run.tables[0]?.table ?? run.failed[0]?.table;
-  const what = tables === 1 && only !== undefined ? plainText(only) : `${tables} tables`;
+  const what = tables === 1 && only !== undefined ? plainName(only) : `${tables} tables`;
   return `${what}: ${news.length > 0 ? news.join(", ") : "nothing has changed"}`;
 }

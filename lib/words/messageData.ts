@@ -1,6 +1,6 @@
 import type { Ranked } from "./attention.ts";
 import type { RunFacts } from "./facts.ts";
-import { plainText } from "./plainText.ts";
+import { plainName } from "./plainText.ts";
 import { spokenInterval } from "./speech.ts";
 
 /** Bytes of JSON that the facts in a message may take: a receiver's budget is 20 KB with lines and escapes. */
@@ -29,7 +29,7 @@ export function messageData(
     asOf: run.asOf,
     series,
     omitted: all.length - series.length,
-    failed: run.failed.slice(0, 20).map((one) => plainText(one.table, 120)),
+    failed: run.failed.slice(0, 20).map((one) => plainName(one.table, 120)),
     left: run.left.length,
     expectedFalseNotices: run.expectedFalseNotices,
   };
@@ -40,8 +40,8 @@ function seriesData({ table, facts }: Ranked) {
   const next = spokenInterval(forecast.intervals);
   const total = spokenInterval(forecast.total.intervals);
   return {
-    table: plainText(table.table, 120),
-    series: plainText(facts.series, 120),
+    table: plainName(table.table, 120),
+    series: plainName(facts.series, 120),
     unit: facts.unit,
     every: facts.period,
     next: {

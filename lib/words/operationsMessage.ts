@@ -5,7 +5,7 @@ import { reportPlace, timeWriter } from "./instants.ts";
 import { messageData } from "./messageData.ts";
 import { caution, type Note } from "./note.ts";
 import { numberWriter } from "./numbers.ts";
-import { plainText } from "./plainText.ts";
+import { plainName } from "./plainText.ts";
 import { countOf } from "./spans.ts";
 import { list, problemText } from "./troubleLines.ts";
 
@@ -26,7 +26,7 @@ export function operationsMessage(
   const failures = run.failed
     .slice(0, 8)
     .flatMap(({ table, problems }) => [
-      `Failed: ${plainText(table)}. ${problems[0] ? problemText(problems[0]) : "No reason was recorded."}`,
+      `Failed: ${plainName(table)}. ${problems[0] ? problemText(problems[0]) : "No reason was recorded."}`,
     ]);
   return {
     title: `${run.failed.length + run.left.length + run.undelivered.length > 0 ? "Needs a look" : "All done"}: run of ${time(run.asOf)}`,
@@ -50,7 +50,7 @@ export function operationsMessage(
         : []),
       ...run.undelivered
         .slice(0, 5)
-        .map((one) => `Undelivered: the note of ${time(one.asOf)} to ${plainText(one.webhook)}.`),
+        .map((one) => `Undelivered: the note of ${time(one.asOf)} to ${plainName(one.webhook)}.`),
       ...(run.undelivered.length > 5 ? [`… and ${run.undelivered.length - 5} more undelivered.`] : []),
       `Report: ${reportPlace(run.asOf, voice)}`,
     ],

@@ -21,7 +21,7 @@ import {
   surpriseRemainder,
   surpriseSentence,
 } from "./otherFindings.ts";
-import { plainText } from "./plainText.ts";
+import { plainName } from "./plainText.ts";
 import { remainderSentence } from "./remainder.ts";
 import type { Speech } from "./speech.ts";
 import type { Statistics } from "./statistics.ts";
@@ -78,7 +78,7 @@ const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 function candidateLine({ forecast }: SeriesFacts, tell: Statistics): string[] {
   if (forecast.candidates.length === 0) return [];
   const parts = forecast.candidates.map(
-    ({ name, weight }) => `${plainText(name, 60)} ${tell.coefficient(weight)}`,
+    ({ name, weight }) => `${plainName(name, 60)} ${tell.coefficient(weight)}`,
   );
   return [`Forecast from: ${parts.join(", ")}.`];
 }
@@ -129,7 +129,7 @@ function otherLines(finding: Finding, speech: Speech, tell: Statistics): string[
       return line(gapsSentence(finding, speech));
     case "event-effect":
       return line(
-        `${eventSentence(finding, plainText(finding.name, 40), speech)} (standard error ${tell.size(finding.standardError)})`,
+        `${eventSentence(finding, plainName(finding.name, 40), speech)} (standard error ${tell.size(finding.standardError)})`,
       );
   }
 }

@@ -9,7 +9,7 @@ import {
   type WriteNumber,
 } from "./numbers.ts";
 import { addPeriods, type PeriodNames, periodNames } from "./periods.ts";
-import { plainText } from "./plainText.ts";
+import { plainName } from "./plainText.ts";
 import { span } from "./spans.ts";
 import { unitAfter } from "./units.ts";
 
@@ -45,14 +45,14 @@ export function speechFor(facts: SeriesFacts, voice: Voice, asOf?: string): Spee
   const now = asOf ?? addPeriods(facts.lastPeriod, facts.period, 1);
   const write = numberWriter(voice.locale);
   const whole = allWhole(facts.history.values);
-  const unit = facts.unit === null ? null : plainText(facts.unit, 24);
+  const unit = facts.unit === null ? null : plainName(facts.unit, 24);
   const interval = spokenInterval(facts.forecast.intervals);
   const amount = (value: number, step: number) =>
     `${write(value, step)} ${unitAfter(unit, roundTo(value, step))}`.trimEnd();
   const roughStep = (value: number) => significantStep(value, 2, whole);
   return {
     facts,
-    series: plainText(facts.series, 40),
+    series: plainName(facts.series, 40),
     unit,
     now,
     periods: periodNames(facts.period, voice.locale, voice.timeZone, now),

@@ -1,12 +1,12 @@
 import type { Problem } from "../series/series.ts";
 import type { RunFacts } from "./facts.ts";
-import { plainText } from "./plainText.ts";
+import { plainName, plainText } from "./plainText.ts";
 
 /** Where a problem is, what it is and what to do: "line 14, column date: …". */
 export function problemText(problem: Problem): string {
   const place = [
     problem.line === undefined ? "" : `line ${problem.line}`,
-    problem.column === undefined ? "" : `column ${plainText(problem.column, 30)}`,
+    problem.column === undefined ? "" : `column ${plainName(problem.column, 30)}`,
   ].filter((one) => one !== "");
   const said = [plainText(problem.message, 200), plainText(problem.remedy, 200)]
     .map((one) => (/[.!?…]$/.test(one) ? one : `${one}.`))
@@ -19,7 +19,7 @@ export function troubleLines(run: RunFacts, most = 4): string[] {
   const failed = run.failed.map(({ table, problems }) => {
     const worst = problems.find((one) => one.fatal) ?? problems[0];
     const why = worst ? ` ${problemText(worst)}` : "";
-    return `${plainText(table)} was not refitted; its earlier forecast stands.${why}`;
+    return `${plainName(table)} was not refitted; its earlier forecast stands.${why}`;
   });
   const left =
     run.left.length > 0 ? [`Not reached in time: ${list(run.left)}; the retry goes on with them.`] : [];
@@ -27,7 +27,7 @@ export function troubleLines(run: RunFacts, most = 4): string[] {
     problems.length === 0
       ? []
       : [
-          `${plainText(table)}: ${problemText(problems[0])}${problems.length > 1 ? ` (and ${problems.length - 1} more)` : ""}`,
+          `${plainName(table)}: ${problemText(problems[0])}${problems.length > 1 ? ` (and ${problems.length - 1} more)` : ""}`,
         ],
   );
   const all = [...failed, ...left, ...noted];
@@ -38,7 +38,7 @@ export function troubleLines(run: RunFacts, most = 4): string[] {
 
 /** Up to three names and how many more. */
 export function list(names: readonly string[]): string {
-  const shown = names.slice(0, 3).map((name) => plainText(name, 40));
+  const shown = names.slice(0, 3).map((name) => plainName(name, 40));
   return names.length > 3 ? `${shown.join(", ")} and ${names.length - 3} more` : shown.join(", ");
 }
 

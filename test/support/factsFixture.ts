@@ -208,7 +208,7 @@ export const quayChange: Extract<Finding, { code: "change" }> = {
 };
 
 /** One odd week at Station: a fair borrowed far more than usual. */
-export const stationSurprise: Finding = {
+export const stationSurprise: Extract<Finding, { code: "surprise" }> = {
   code: "surprise",
   period: "2026-11-30",
   value: 148,

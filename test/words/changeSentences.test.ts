@@ -12,6 +12,7 @@ import { number, readNumber } from "../support/readSentence.ts";
 const told = (facts: SeriesFacts): string =>
   businessMessage({ ...loansRun, tables: [{ table: "loans", series: [facts], problems: [] }] }, britishVoice)
     .lines.join(" ")
+    .replaceAll(" Quay: … ", " ")
     .replaceAll(/\s+/g, " ");
 
 const changed = periodKind.chain((period) =>
