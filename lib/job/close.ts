@@ -25,6 +25,8 @@ export interface Closing {
   readonly posting: PostingContext;
   /** First marks of notes that earlier runs could not deliver. */
   readonly undelivered: readonly string[];
+  /** The report of the whole run stands already. */
+  readonly reported: boolean;
   /** How long the run has taken so far. */
   readonly elapsedMilliseconds: () => number;
 }
@@ -69,8 +71,9 @@ export async function closeTables(closing: Closing): Promise<Closed> {
     owed.map(({ message, webhook }) => ({ asOf: message.asOf, webhook: webhook.name })),
   );
   const voice = voiceOf(settings);
-  for (const page of renderReport(facts, voice))
-    await store.write(`${runPrefix(plan.asOf)}${page.key}`, encodeText(page.html));
+  if (!closing.reported)
+    for (const page of renderReport({ ...facts, undelivered: [] }, voice))
+      await store.write(`${runPrefix(plan.asOf)}${page.key}`, encodeText(page.html));
 
   const deliveries: DeliveryRecord[] = [];
   for (const { message, part, webhook } of owed)

@@ -3,7 +3,7 @@ import { setTimeout as sleepFor } from "node:timers/promises";
 import type { ObjectStore } from "../store/objectStore.ts";
 import type { RunFacts } from "../words/facts.ts";
 import { closeTables } from "./close.ts";
-import { encodeDocument } from "./documents.ts";
+import { encodeDocument, readDocument } from "./documents.ts";
 import { asOfText, runPrefix, summaryKey } from "./keys.ts";
 import { loadSettings } from "./loadSettings.ts";
 import { planRun } from "./plan.ts";
@@ -40,6 +40,9 @@ export interface RunOptions {
 
 /** The longest one webhook may keep a run waiting, retries included. */
 const postMilliseconds = 20_000;
+
+/** What `runs/<asOf>/summary.json` holds. */
+type LastingSummary = Omit<RunSummary, "durationMilliseconds" | "deliveries">;
 
 /** `asOf` lies before the newest run: its forecasts would be older than those that stand. */
 export class OutdatedRunError extends Error {
@@ -93,11 +96,15 @@ async function close(
   undelivered: readonly string[],
 ): Promise<RunSummary> {
   const { store, settings } = options;
+  // A whole run is summed up once; after that neither its report nor its summary is touched again.
+  const standing = await readDocument<LastingSummary>(store, summaryKey(plan.asOf));
+  const reported = standing !== undefined && standing.left.length === 0;
   const { facts, report, deliveries } = await closeTables({
     store,
     plan,
     settings,
     undelivered,
+    reported,
     elapsedMilliseconds: () => clock() - began,
     posting: {
       store,
@@ -114,7 +121,7 @@ async function close(
   const summary = summarise(facts, report, deliveries, clock() - began);
   // What depends on the clock or on this try alone stays out, so that a repeated run writes the same bytes.
   const { durationMilliseconds: _duration, deliveries: _deliveries, ...lasting } = summary;
-  await store.write(summaryKey(plan.asOf), encodeDocument(lasting));
+  if (!reported) await store.write(summaryKey(plan.asOf), encodeDocument(lasting satisfies LastingSummary));
   return summary;
 }
 
