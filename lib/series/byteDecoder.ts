@@ -1,6 +1,7 @@
 import { type Encoding, findEncoding, foreignFile } from "./decode.ts";
 import type { Complain } from "./problems.ts";
 import { TableFault } from "./tableFault.ts";
+import { windows1252 } from "./windows1252.ts";
 
 /** Turns the bytes of a text, given in pieces, into text. */
 export interface ByteDecoder {
@@ -8,6 +9,8 @@ export interface ByteDecoder {
   end(): string;
   encoding(): Encoding;
 }
+
+type Decoder = InstanceType<typeof TextDecoder>;
 
 /** Bytes looked at to tell the encoding. */
 const headLength = 1 << 16;
@@ -22,17 +25,21 @@ export function createByteDecoder(set: Encoding | undefined, complain: Complain)
   let head: Uint8Array[] = [];
   let held = 0;
   let found: Encoding | undefined;
-  let decoder: InstanceType<typeof TextDecoder> | undefined;
+  let decoder: Decoder | undefined;
   let onlyAscii = true;
 
   const decode = (bytes: Uint8Array, last: boolean): string => {
+    if (found === "windows-1252") return windows1252(bytes);
     try {
-      const text = (decoder as InstanceType<typeof TextDecoder>).decode(bytes, { stream: !last });
+      const text = (decoder as Decoder).decode(bytes, { stream: !last });
       if (found === "utf-8" && onlyAscii && text.length !== bytes.length) onlyAscii = false;
       return text;
     } catch {
-      found = onlyAscii ? "windows-1252" : "utf-8";
-      decoder = new TextDecoder(found);
+      if (onlyAscii) {
+        found = "windows-1252";
+        return windows1252(bytes);
+      }
+      decoder = new TextDecoder("utf-8");
       return decoder.decode(bytes, { stream: !last });
     }
   };
@@ -45,7 +52,10 @@ export function createByteDecoder(set: Encoding | undefined, complain: Complain)
         complain("not-a-table", true, `the file is ${foreign}, not a table`, "save the table as CSV"),
       );
     found = set ?? findEncoding(bytes);
-    decoder = new TextDecoder(found, { fatal: set === undefined && found === "utf-8" });
+    // ASCII reads the same in Windows-1252, whose own decoder has no state and needs no object.
+    decoder = new TextDecoder(found === "windows-1252" ? "utf-8" : found, {
+      fatal: set === undefined && found === "utf-8",
+    });
     return decode(bytes, last);
   };
   return {

@@ -1,6 +1,6 @@
 import { dayNumber } from "./civil.ts";
 import { emptyDateCell } from "./dateCell.ts";
-import type { DateFormat } from "./dateFormats.ts";
+import type { DateFormat } from "./dateFormat.ts";
 import type { Resolution } from "./dateKeys.ts";
 import { stepOfInstants } from "./findPeriod.ts";
 import type { Period } from "./series.ts";

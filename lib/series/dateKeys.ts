@@ -1,7 +1,7 @@
 import { dayNumber, isCivilDate } from "./civil.ts";
 import { localDay } from "./currentPeriod.ts";
 import { emptyDateCell } from "./dateCell.ts";
-import type { DateFormat } from "./dateFormats.ts";
+import type { DateFormat } from "./dateFormat.ts";
 import { instantsOf, zoneOffset } from "./zone.ts";
 
 export type DateOrder = "day-first" | "month-first";

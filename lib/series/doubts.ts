@@ -39,6 +39,7 @@ const others = ({ count }: Doubt, one: string, many = `${one}s`) =>
 export function createDoubts(plan: TablePlan, complain: Complain): Doubts {
   const { names, dateColumn, seriesColumn, delimiter, dateFormat, style } = plan;
   let waiting: { line: number; text: string }[] = [];
+  let begun = false;
   let badDate: Doubt | undefined;
   let tooWide: Doubt | undefined;
   let nameless: Doubt | undefined;
@@ -53,8 +54,11 @@ export function createDoubts(plan: TablePlan, complain: Complain): Doubts {
       else badDate = again(badDate, line, text);
     },
     dated() {
+      // What stands above the first date are units and remarks.
+      const isFirst = !begun;
+      begun = true;
       if (waiting.length === 0) return;
-      for (const { line, text } of waiting) badDate = again(badDate, line, text);
+      if (!isFirst) for (const { line, text } of waiting) badDate = again(badDate, line, text);
       waiting = [];
     },
     tooWide(line, row) {

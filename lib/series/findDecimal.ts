@@ -5,6 +5,9 @@ import type { Reading } from "./reading.ts";
 import { TableFault } from "./tableFault.ts";
 import type { TableSettings } from "./tableSettings.ts";
 
+/** So many rows are searched for contradictions; later ones only while nothing has told the mark. */
+const fewRows = 3000;
+
 interface Found {
   readonly mark: NumberStyle["decimal"];
   readonly how: Reading["decimal"]["how"];
@@ -28,7 +31,8 @@ export function findDecimal(
   if (settings.decimal !== undefined) return { mark: settings.decimal, how: "set" };
   const seen = new Map<string, { line: number; column: number; cell: string }>();
   let small = 0;
-  for (const { line, cells } of rows) {
+  for (const [at, { line, cells }] of rows.entries()) {
+    if (at >= fewRows && (seen.has(".") || seen.has(","))) break;
     for (const column of columns) {
       const cell = cells[column];
       if (cell === undefined || /^-?\d*$/.test(cell)) {
@@ -39,7 +43,6 @@ export function findDecimal(
       const evidence = decimalEvidence(cell);
       if (!seen.has(evidence)) seen.set(evidence, { line, column, cell });
     }
-    if (seen.has(".") && seen.has(",")) break;
   }
   const point = seen.get(".");
   const comma = seen.get(",");

@@ -1,4 +1,4 @@
-import type { DateFormat } from "./dateFormats.ts";
+import type { DateFormat } from "./dateFormat.ts";
 import { findDateColumn, type Row } from "./layout.ts";
 import { isMissing, parseNumber } from "./numbers.ts";
 import { type Complain, quoted } from "./problems.ts";

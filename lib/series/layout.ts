@@ -1,6 +1,6 @@
 import { emptyDateCell } from "./dateCell.ts";
-import type { DateFormat } from "./dateFormats.ts";
-import { isMissing, parseNumber } from "./numbers.ts";
+import type { DateFormat } from "./dateFormat.ts";
+import { decimalEvidence, isMissing } from "./numbers.ts";
 import { createRowSplitter } from "./rows.ts";
 
 export interface Row {
@@ -30,8 +30,7 @@ export function sampleRows(text: string, delimiter: string, whole: boolean): Sam
   return { rows, comments, unclosedQuote };
 }
 
-const looksNumeric = (cell: string) =>
-  !Number.isNaN(parseNumber(cell, { decimal: "." })) || !Number.isNaN(parseNumber(cell, { decimal: "," }));
+const looksNumeric = (cell: string) => decimalEvidence(cell) !== "none";
 
 /** What the cells of one column are. */
 export interface ColumnCounts {

@@ -124,6 +124,7 @@ export type DecimalEvidence = "." | "," | "maybe-." | "maybe-," | "whole" | "non
  * for the mark it holds); a whole number without marks is `whole`.
  */
 export function decimalEvidence(cell: string): DecimalEvidence {
+  if (/^-?\d+$/.test(cell)) return "whole";
   const digits = bareNumber(cell)?.digits;
   if (digits === undefined) return "none";
   const dots = digits.split(".").length - 1;

@@ -1,6 +1,6 @@
 import { dayNumber } from "./civil.ts";
 import { fullYear } from "./dateCell.ts";
-import type { DateFormat } from "./dateFormats.ts";
+import type { DateFormat } from "./dateFormat.ts";
 import type { Period } from "./series.ts";
 
 /**

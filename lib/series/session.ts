@@ -8,6 +8,7 @@ import { describeReading, type Source } from "./describeReading.ts";
 import { createDoubts } from "./doubts.ts";
 import { findOrder, refuseShortYearsInFront } from "./findOrder.ts";
 import { type Complain, quoted } from "./problems.ts";
+import type { Problem } from "./series.ts";
 import { settleKeys } from "./settleKeys.ts";
 import { TableFault } from "./tableFault.ts";
 import type { TablePlan } from "./tablePlan.ts";
@@ -85,6 +86,8 @@ export function openSession(
     row: collector.row,
     finish(source) {
       const collected = collector.collected();
+      const rowProblems = doubts.problems(collected.read);
+      if (collected.keys.length === 0) return nothingDated(rowProblems, complain);
       const parts = collected.keys.filter(({ kind }) => kind === "parts").map(({ key }) => key);
       const example = dateCells[0] ?? { line: plan.headerLine + 1, text: "" };
       const order =
@@ -93,7 +96,6 @@ export function openSession(
           : settings.dateOrder
             ? { order: settings.dateOrder, how: "set" }
             : findOrder(parts, keyReader, resolution, example, column, complain);
-      const rowProblems = doubts.problems(collected.read);
       const settled = settleKeys(
         collected.keys,
         resolution,
@@ -112,6 +114,13 @@ export function openSession(
       };
     },
   };
+}
+
+function nothingDated(problems: Problem[], complain: Complain): TableResult {
+  const fatal = problems.some((problem) => problem.fatal)
+    ? []
+    : [complain("no-values", true, "no row of the table can be used", "look at the first rows of the table")];
+  return { series: [], problems: [...problems, ...fatal], reading: null };
 }
 
 function nothingRead(hasLater: boolean, complain: Complain) {

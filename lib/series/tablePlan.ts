@@ -1,5 +1,6 @@
 import { columnNamed, columnNames, speaksOfDates } from "./columnNames.ts";
-import { type DateFormat, dateFormats } from "./dateFormats.ts";
+import type { DateFormat } from "./dateFormat.ts";
+import { dateFormats } from "./dateFormats.ts";
 import { findDecimal } from "./findDecimal.ts";
 import { findHeader } from "./findHeader.ts";
 import { findShape } from "./findShape.ts";
@@ -32,6 +33,10 @@ export interface TablePlan {
   /** Rows of data in the head, for what must be decided before all is read. */
   readonly sample: readonly Row[];
 }
+
+/** A column beside the dates that spells out a part of them. */
+const partOfDate =
+  /^(?:year|quarter|month|week|day|hour|weekday|day of week|jahr|quartal|monat|woche|kw|tag|wochentag|stunde|a[nñ]o|mes|semana|d[ií]a|hora|ann[eé]e|mois|semaine|jour|heure)$/i;
 
 /** A column that only counts its rows, as data frames write one beside their data. */
 function countsRows(data: readonly Row[], column: number, name: string): boolean {
@@ -91,6 +96,16 @@ export function planTable(
   locale: string,
   complain: Complain,
 ): TablePlan {
+  if (settings.combine !== "count" && rows.length > 0 && rows.every(({ cells }) => cells.length < 2))
+    throw new TableFault(
+      complain(
+        "one-column",
+        true,
+        "every row has one cell only, where a date and a value are needed",
+        "separate the cells by comma, semicolon, tab or |, or name the delimiter in the settings",
+        { line: rows[0].line },
+      ),
+    );
   const formats = dateFormats(locale);
   const { header, data } = findHeader(rows, comments, delimiter, formats, settings, complain);
   const names = columnNames(header.cells);
@@ -124,9 +139,11 @@ export function planTable(
     // A column that is still empty may begin later, while there is more to read.
     return (numbers > 0 || (!whole && texts === 0)) && 3 * numbers >= texts;
   };
-  const valueColumns =
-    named ??
-    others.filter((at) => at !== seriesColumn && holdsNumbers(at) && !countsRows(data, at, names[at]));
+  const numeric = others.filter(
+    (at) => at !== seriesColumn && holdsNumbers(at) && !countsRows(data, at, names[at]),
+  );
+  const measured = numeric.filter((at) => !partOfDate.test(names[at].replaceAll("_", " ")));
+  const valueColumns = named ?? (measured.length > 0 ? measured : numeric);
   if (valueColumns.length === 0 && settings.combine !== "count") {
     const text = others.find((at) => at !== seriesColumn && (counts.get(at)?.texts ?? 0) > 0);
     const example =
