@@ -1,0 +1,48 @@
+import { writeFileSync } from "node:fs";
+import { parseArgs } from "node:util";
+import type { BenchRow } from "./benchRow.ts";
+import { coreBench } from "./coreBench.ts";
+
+/** Each part of the bench by the name it is asked for. */
+const PARTS: Record<string, () => Promise<BenchRow[]>> = {
+  core: coreBench,
+};
+
+/**
+ * `npm run bench -- [core | accuracy | drift | reading | job] [--json FILE]`: runs one part, or all, and prints a table
+ * of what was measured, against what, and the goal.
+ */
+async function main(): Promise<void> {
+  const { values: options, positionals } = parseArgs({
+    options: { json: { type: "string" } },
+    allowPositionals: true,
+  });
+  const asked = positionals.length > 0 ? positionals : Object.keys(PARTS);
+  const rows: BenchRow[] = [];
+  for (const name of asked) {
+    const part = PARTS[name];
+    if (part === undefined) {
+      console.error(`no bench part is called ${name}; there are ${Object.keys(PARTS).join(", ")}`);
+      process.exitCode = 2;
+      return;
+    }
+    console.log(`\n${name}`);
+    const found = await part();
+    console.log(found.map(line).join("\n"));
+    rows.push(...found);
+  }
+  if (options.json !== undefined) writeFileSync(options.json, `${JSON.stringify(rows, null, 2)}\n`);
+}
+
+function line(row: BenchRow): string {
+  const ratio = Number.isNaN(row.ratio) ? "" : `  ratio ${format(row.ratio)}`;
+  const against = row.against === "" ? "" : `  against ${row.against}`;
+  const goal = row.goal === "" ? "" : `  (goal: ${row.goal})`;
+  return `  ${row.name}: ${format(row.value)} ${row.unit}${against}${ratio}${goal}`;
+}
+
+function format(value: number): string {
+  return Math.abs(value) >= 1e4 ? value.toFixed(0) : String(Number(value.toPrecision(4)));
+}
+
+await main();
