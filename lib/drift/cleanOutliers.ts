@@ -1,4 +1,5 @@
 import type { LookState } from "./lookState.ts";
+import { judgePatch, longestPatch, type Patch, scoreValues } from "./outlierPatch.ts";
 
 /** How many outliers may be removed, and beyond how many standard errors. */
 interface CleaningRule {
@@ -7,63 +8,73 @@ interface CleaningRule {
 }
 
 /** For the statistics, and for naming a change, where a value taken out is evidence lost. */
-export const watching: CleaningRule = { beyond: 3.5, most: 3 };
+export const watching: CleaningRule = { beyond: 4, most: 3 };
 export const naming: CleaningRule = { beyond: 4, most: 1 };
-/** The shock size loses only what is plainly no shock of the model's. */
-const forShockSizeBeyond = 4;
-const forShockSizeMost = 2;
+/** The shock size loses only what is plainly no shock of the model's, by this many standard errors. */
+const forShockSizeBeyond = 4.2;
+/** What two and three neighbours must pass beyond a single value, in standard errors. */
+const patchMargins = [0, 0, 0.6, 1];
 
 /**
- * Makes the cleaned copies anew from the raw values: the monitored value with the largest additive-outlier
- * statistic |ω̂|·√(Σπ²), ω̂ = Σ π_j e_{s+j} / Σ π_j² (Chang, Tiao and Chen 1988), is moved back by ω̂, until
- * none passes 3.5 or three are moved. Starting from the raw values at every look lets a value that looked
- * wild alone come back once later ones bear it out.
+ * Makes the cleaned copies anew from the raw values: the monitored value, or patch of two or three neighbours,
+ * that is most beyond its limit is moved back to where the model puts it (additive outliers: Chang, Tiao and
+ * Chen 1988; patches: Justel, Peña and Tsay 2001), until none passes or the rule's number is reached. Patches
+ * are tried as one because neighbours hide each other. Starting from the raw values at every look lets a value
+ * that looked wild alone come back once later ones bear it out.
  */
 export function cleanOutliers(state: LookState, rule: CleaningRule): void {
-  const { reference, start, count, order } = state;
+  const { reference, start, count, order, cleaned, cleanedResiduals, shockValues, outliers } = state;
   const { weights } = reference;
-  const { residuals, cleaned, cleanedResiduals, shockValues, outliers } = state;
   for (let time = start; time < count; time++) {
     cleaned[time] = state.values[time];
-    cleanedResiduals[time] = residuals[time];
+    cleanedResiduals[time] = state.residuals[time];
     shockValues[time] = state.values[time];
   }
   state.outlierCount = 0;
-  let forShockSize = 0;
+  let cleansShockSize = true;
   while (state.outlierCount < rule.most) {
-    let largest = rule.beyond;
-    let place = -1;
-    let size = 0;
-    for (let time = start; time < count; time++) {
-      if (state.isGap[time]) continue;
-      let sum = 0;
-      let squares = 0;
-      const reach = Math.min(order, count - 1 - time);
-      for (let j = 0; j <= reach; j++) {
-        sum += weights[j] * cleanedResiduals[time + j];
-        squares += weights[j] * weights[j];
-      }
-      const ratio = Math.abs(sum) / Math.sqrt(squares);
-      if (ratio > largest && !isListed(outliers, state.outlierCount, time)) {
-        largest = ratio;
-        place = time;
-        size = sum / squares;
-      }
+    const { patch } = state.work;
+    const found = largestPatch(state, rule, patch);
+    if (!found) return;
+    const limit = forShockSizeBeyond + patchMargins[patch.length];
+    cleansShockSize = cleansShockSize && patch.statistic > limit * limit;
+    for (let i = 0; i < patch.length; i++) {
+      const time = patch.time + i;
+      const size = patch.sizes[i];
+      cleaned[time] -= size;
+      if (cleansShockSize) shockValues[time] -= size;
+      for (let j = 0; j <= order && time + j < count; j++) cleanedResiduals[time + j] -= size * weights[j];
+      outliers[state.outlierCount++] = time;
     }
-    if (place < 0) return;
-    const alsoForShockSize =
-      forShockSize === state.outlierCount && forShockSize < forShockSizeMost && largest > forShockSizeBeyond;
-    cleaned[place] -= size;
-    for (let j = 0; j <= order && place + j < count; j++) cleanedResiduals[place + j] -= size * weights[j];
-    if (alsoForShockSize) {
-      shockValues[place] -= size;
-      forShockSize++;
-    }
-    outliers[state.outlierCount++] = place;
   }
 }
 
-function isListed(outliers: Int32Array, count: number, time: number): boolean {
-  for (let i = 0; i < count; i++) if (outliers[i] === time) return true;
+/** Finds the patch that passes its limit by the largest factor, among those that still may be removed. */
+function largestPatch(state: LookState, rule: CleaningRule, best: Patch): boolean {
+  const { start, count } = state;
+  const { candidate } = state.work;
+  const longest = Math.min(longestPatch, rule.most - state.outlierCount);
+  scoreValues(state);
+  let excess = 1;
+  for (let time = start; time < count; time++) {
+    for (let length = 1; length <= longest && time + length <= count; length++) {
+      if (isTaken(state, time + length - 1)) break;
+      judgePatch(state, time, length, candidate);
+      const limit = rule.beyond + patchMargins[length];
+      const ratio = candidate.statistic / (limit * limit);
+      if (ratio <= excess) continue;
+      excess = ratio;
+      best.time = time;
+      best.length = length;
+      best.statistic = candidate.statistic;
+      best.sizes.set(candidate.sizes);
+    }
+  }
+  return excess > 1;
+}
+
+function isTaken(state: LookState, time: number): boolean {
+  if (state.isGap[time]) return true;
+  for (let i = 0; i < state.outlierCount; i++) if (state.outliers[i] === time) return true;
   return false;
 }

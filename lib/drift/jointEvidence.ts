@@ -82,7 +82,12 @@ export function planColumns(state: LookState): ColumnPlan {
   return { size: place + 1, first, priors, columnsOf };
 }
 
-/** Fills the lower triangle of the weighted normal matrix of all columns; returns the log Jacobian of the weights. */
+/**
+ * Fills the lower triangle of the weighted normal matrix of all columns; returns the log Jacobian of the scales.
+ * Weights are those of Student's likelihood at the scale in force, (ν+1)/(ν+z²) of z = e/(σ ρ), and what the
+ * weighted square lacks to the loss (ν+1)·ln(1+z²/ν) is added to the square of the value itself, so that the
+ * weighted sum of squares is the loss and a larger scale is neither favoured nor held against.
+ */
 export function fillMatrix(
   state: LookState,
   plan: ColumnPlan,
@@ -90,34 +95,34 @@ export function fillMatrix(
   logRatio: number,
   matrix: Float64Array,
 ): number {
-  const { columns, order, terms, start, count, cleaned } = state;
+  const { columns, order, terms, count, reference, cleaned } = state;
   const { size } = plan;
+  const nu = reference.degreesOfFreedom;
   matrix.fill(0);
-  for (let i = 0; i < columns; i++) {
-    for (let j = 0; j <= i; j++) matrix[i * size + j] = state.referenceCross[i * columns + j];
-    matrix[(size - 1) * size + i] = state.referenceMoment[i];
-  }
-  matrix[size * size - 1] = state.referenceSquares;
   const row = new Float64Array(size);
-  const ratio = Math.exp(logRatio);
   let after = 0;
-  for (let time = start; time < count; time++) {
+  for (let time = order; time < count; time++) {
     if (state.isGap[time]) continue;
     for (let i = 0; i < terms; i++) row[i] = state.termRows[time * terms + i];
     for (let lag = 1; lag <= order; lag++) row[terms + lag - 1] = cleaned[time - lag];
     row[size - 1] = cleaned[time];
-    const residual = Math.abs(state.cleanedResiduals[time]);
-    let weight = Math.min(1, huber / residual);
+    let scale = reference.studentScale;
     if (time >= change) {
       writeChangeColumns(state, plan, change, time, row);
-      weight = Math.min(1, (huber * ratio) / residual) / (ratio * ratio);
+      scale *= Math.exp(logRatio);
       after++;
     }
-    for (let i = 0; i < size; i++) {
+    const z2 = (state.cleanedResiduals[time] / scale) ** 2;
+    const unscaled = (nu + 1) / (nu + z2);
+    const weight = unscaled / (scale * scale);
+    const last = time < change ? columns : size - 1;
+    for (let i = 0; i < last; i++) {
       const weighted = weight * row[i];
-      if (weighted === 0) continue;
       for (let j = 0; j <= i; j++) matrix[i * size + j] += weighted * row[j];
     }
+    const base = (size - 1) * size;
+    for (let j = 0; j < size; j++) matrix[base + j] += weight * row[size - 1] * row[j];
+    matrix[base + size - 1] += (nu + 1) * Math.log1p(z2 / nu) - unscaled * z2;
   }
   return -after * logRatio;
 }

@@ -1,5 +1,6 @@
 import { type ColumnSums, emptySums } from "./columnSums.ts";
 import type { ChangeKind } from "./notice.ts";
+import { emptyPatch, overlapTable, type Patch } from "./outlierPatch.ts";
 import type { Reference } from "./reference.ts";
 import { studentTable } from "./studentTable.ts";
 import { seasonColumns, termColumns, writeTerms } from "./terms.ts";
@@ -75,6 +76,10 @@ export interface LookState {
 
 /** Scratch of the single steps. */
 interface LookWork {
+  readonly scores: Float64Array;
+  readonly overlaps: Float64Array;
+  readonly patch: Patch;
+  readonly candidate: Patch;
   readonly row: Float64Array;
   readonly tail: ColumnSums;
   readonly here: ColumnSums;
@@ -97,7 +102,7 @@ interface LookWork {
 }
 
 /** Prior size of a change of level, in standard deviations of the series. */
-const levelPrior = 1.5;
+const levelPrior = 1.2;
 /** A change of slope is expected to move the series by `levelPrior` deviations within this many periods. */
 const slopeSpan = 26;
 /** Prior size of a change of the seasonal pattern, in standard deviations of the series. */
@@ -105,7 +110,7 @@ const seasonPrior = 1.2;
 /** Prior standard deviation of a change of each coefficient. */
 const persistencePrior = 0.35;
 
-function openWork(reference: Reference, kinds: readonly ChangeKind[]): LookWork {
+function openWork(reference: Reference, kinds: readonly ChangeKind[], capacity: number): LookWork {
   const { order, deviation } = reference;
   const terms = termColumns(reference);
   const columns = terms + order;
@@ -118,6 +123,10 @@ function openWork(reference: Reference, kinds: readonly ChangeKind[]): LookWork 
   };
   const slopePerUnit = (levelPrior * reference.values.length) / slopeSpan;
   return {
+    scores: new Float64Array(capacity),
+    overlaps: overlapTable(reference.weights),
+    patch: emptyPatch(),
+    candidate: emptyPatch(),
     row: new Float64Array(columns),
     tail: emptySums(terms, columns),
     here: emptySums(terms, columns),
@@ -195,7 +204,7 @@ export function openLookState(reference: Reference, looks: number, capacity: num
     judged: new Int32Array(kinds.length),
     statistics: new Float64Array(kinds.length),
     sums: new Float64Array(kinds.length),
-    work: openWork(reference, kinds),
+    work: openWork(reference, kinds, capacity),
   };
   for (let time = 0; time < total; time++) {
     writeTerms(state.termRows, time * terms, reference, time, start, start);
