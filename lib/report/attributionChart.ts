@@ -12,7 +12,7 @@ export function attributionChart(id: string, speech: Speech): Markup | null {
   if (!attribution || attribution.shocks.length === 0) return null;
   const inShares = model.scale === "log";
   const told = (value: number) =>
-    inShares ? speech.percent(Math.round(Math.expm1(value) * 1000) / 10) : speech.roughNumber(value);
+    inShares ? speech.percent(Math.round(Math.expm1(value) * 100)) : speech.roughNumber(value);
   const { shocks } = attribution;
   const rest = shocks.slice(named);
   const groups = [

@@ -40,10 +40,11 @@ function fadingWords(finding: ChangeFinding, speech: Speech): string {
   return `shocks now fade ${how} than before, still losing half their effect in ${now}`;
 }
 
-/** "about 2 weeks" as "2" where "weeks" has just been said. */
+/** "about 2 weeks" as "2" where "weeks" has just been said, else as "2 weeks". */
 function shortened(was: string, now: string): string {
-  const [noun] = now.split(" ").slice(-1);
-  return was.endsWith(` ${noun}`) && noun.endsWith("s") ? was.slice("about ".length, -noun.length - 1) : was;
+  const noun = now.split(" ").at(-1) ?? "";
+  const plain = was.replace(/^about /, "");
+  return noun.endsWith("s") && plain.endsWith(` ${noun}`) ? plain.slice(0, -noun.length - 1) : plain;
 }
 
 /** Two amounts with enough digits to tell them apart, where two digits would hide the difference. */
@@ -74,8 +75,10 @@ function ratioWords(ratio: number, speech: Speech): string {
 
 /** The headline of a lasting change, in words a counter or a shop uses; without the name of the series. */
 export function changeHeadline(finding: ChangeFinding, speech: Speech): string {
+  const again = finding.noticed < speech.facts.lastPeriod;
   const doubts = [
-    ...(finding.status === "provisional" ? ["an early sign"] : []),
+    ...(again ? [`first told for ${speech.periods.inText(finding.noticed)}`] : []),
+    ...(finding.status === "provisional" ? ["an early sign"] : again ? ["now confirmed"] : []),
     ...(finding.alternative ? [`it may instead be ${kindNames[finding.alternative]}`] : []),
   ];
   return `${changeWords(finding, speech)}${doubts.length > 0 ? ` (${doubts.join("; ")})` : ""}`;

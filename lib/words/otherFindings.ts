@@ -14,15 +14,23 @@ export function surpriseSentence(finding: Of<"surprise">, speech: Speech): strin
   return `${value} ${speech.periods.when(finding.period)}, about ${speech.roughNumber(Math.abs(difference))} ${than} than expected: a one-off so far, not a lasting change`;
 }
 
-/** What is left of a surprise later: the last remainder that is told; `null` when nothing is. */
+/** A remainder below this share of the surprise is not worth planning for. */
+const faded = 0.1;
+
+/**
+ * What is left of a surprise in the first coming period that is known, and from when it hardly matters; `null` when
+ * nothing is known of the periods to come.
+ */
 export function surpriseRemainder(finding: Of<"surprise">, speech: Speech): string | null {
-  const last = finding.remaining.at(-1);
-  const difference = finding.value - finding.expected;
-  if (!last) return null;
-  if (Math.abs(last.amount) < Math.abs(difference) / 20)
-    return `it will have faded by ${speech.periods.inText(last.period)}`;
-  const what = last.amount > 0 ? "adds" : "takes off";
-  return `if nothing else happens it still ${what} about ${speech.roughNumber(Math.abs(last.amount))} ${speech.periods.when(last.period)}`;
+  const { inText, when } = speech.periods;
+  const small = faded * Math.abs(finding.value - finding.expected);
+  const [next, ...later] = finding.remaining.filter((one) => one.period >= speech.facts.forecast.periods[0]);
+  if (!next) return null;
+  if (Math.abs(next.amount) < small) return `it will have all but faded by ${inText(next.period)}`;
+  const what = next.amount > 0 ? "adds" : "takes off";
+  const gone = later.find((one) => Math.abs(one.amount) < small);
+  const end = gone ? ` and has all but faded by ${inText(gone.period)}` : "";
+  return `if nothing else happens it still ${what} about ${speech.roughNumber(Math.abs(next.amount))} ${when(next.period)}${end}`;
 }
 
 /** Observed values are told as they were recorded, to at most six digits. */
@@ -90,7 +98,7 @@ export function forecastNoteSentence(finding: Of<"forecast-note">, speech: Speec
     case "naive-used":
       return "no model beat repeating the past here, so the forecast does just that";
     case "level-step":
-      return `the level stepped around ${speech.periods.inText(periodAt(note.index, speech))}; older figures count for less`;
+      return `for the forecast, figures before ${speech.periods.inText(periodAt(note.index, speech))} count for less: the level may have stepped there`;
     case "outliers-damped":
       return `${figures(note.indexes.length, speech)} far from the rest ${note.indexes.length === 1 ? "counts" : "count"} for less`;
   }

@@ -51,8 +51,11 @@ function whose(speech: Speech, start: string): { before: string; after: string }
   return { before: period === "day" ? "yesterday's" : `last ${period}'s`, after: "" };
 }
 
-/** "last week's surplus of 38 loans still adds about 19 in the week of 11 January", or `null` without such a shock. */
-export function remainderSentence(speech: Speech): string | null {
+/**
+ * "last week's surplus of 38 loans still adds about 19 in the week of 11 January", or `null` without such a shock.
+ * With `lasting`, `null` also when it will have faded: for a sentence that says that shocks stay.
+ */
+export function remainderSentence(speech: Speech, lasting = false): string | null {
   const remainder = remainderOf(speech.facts);
   if (!remainder) return null;
   const { shock, later, period } = remainder;
@@ -63,6 +66,6 @@ export function remainderSentence(speech: Speech): string | null {
   const start = `${before} ${shock > 0 ? "surplus" : "shortfall"} of ${size}${after}`;
   const when = speech.periods.when(later.period);
   if (Math.abs(later.effect) < Math.abs(shock) / 20)
-    return `${start} will have faded by ${speech.periods.inText(later.period)}`;
+    return lasting ? null : `${start} will have faded by ${speech.periods.inText(later.period)}`;
   return `${start} still ${later.effect > 0 ? "adds" : "takes off"} about ${left} ${when}`;
 }

@@ -100,7 +100,7 @@ function otherLines(finding: Finding, speech: Speech, tell: Statistics): string[
     case "surprise":
       return [
         ...line(
-          `${surpriseSentence(finding, speech)} (${tell.signed(finding.size)} one-step standard deviations)`,
+          `${surpriseSentence(finding, speech)} (${tell.size(Math.abs(finding.size))} one-step standard deviations)`,
         ),
         ...line(surpriseRemainder(finding, speech)),
       ];

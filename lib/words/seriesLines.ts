@@ -1,6 +1,6 @@
 import { changeDate, changeHeadline, changeMeaning } from "./changeWords.ts";
 import type { Finding } from "./facts.ts";
-import { bars, chanceSentences, nextSentence, totalSentence } from "./forecastSentences.ts";
+import { bars, barsPast, chanceSentences, nextSentence, totalSentence } from "./forecastSentences.ts";
 import { fits, sentence } from "./lineWidth.ts";
 import {
   forecastNoteSentence,
@@ -10,6 +10,7 @@ import {
   surpriseRemainder,
   surpriseSentence,
 } from "./otherFindings.ts";
+import { addPeriods } from "./periods.ts";
 import { remainderSentence } from "./remainder.ts";
 import type { Speech } from "./speech.ts";
 
@@ -61,7 +62,8 @@ function said(finding: Finding, speech: Speech): [number, string][] {
   switch (finding.code) {
     case "change": {
       if (!finding.fresh) return [];
-      const rest = finding.kind === "persistence" ? remainderSentence(speech) : null;
+      const slower = (finding.after.halfLife ?? Infinity) > (finding.before.halfLife ?? Infinity);
+      const rest = finding.kind === "persistence" ? remainderSentence(speech, slower) : null;
       const meaning = [changeMeaning(finding, speech), rest].filter((one) => one !== null && one !== "");
       return [
         ...line(rank.change, changeHeadline(finding, speech)),
@@ -79,10 +81,20 @@ function said(finding: Finding, speech: Speech): [number, string][] {
     case "revised":
       return line(rank.small, revisedSentence(finding, speech));
     case "gaps":
-      return line(rank.small, gapsSentence(finding, speech));
+      return isRecent(finding.latest, speech) ? line(rank.small, gapsSentence(finding, speech)) : [];
     case "forecast-note":
-      return line(rank.small, forecastNoteSentence(finding, speech));
+      return forAnalysts.has(finding.note.code)
+        ? []
+        : line(rank.small, forecastNoteSentence(finding, speech));
     default:
       return [];
   }
+}
+
+/** Decisions of the forecaster that change nothing for whoever plans with its numbers. */
+const forAnalysts = new Set(["outliers-damped", "level-step", "naive-used"]);
+
+/** Within the periods that the small bars show. */
+function isRecent(start: string, { facts }: Speech): boolean {
+  return start > addPeriods(facts.lastPeriod, facts.period, -barsPast);
 }

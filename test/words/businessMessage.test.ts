@@ -33,7 +33,7 @@ describe("the business note", () => {
       "Quay: about 30% chance of a week above 260 loans by the week of 25 January.",
       "Station: about 114 loans in the week of 7 December (100 to 128), about 780 over all 8 weeks (710 to 840). ▄▄▃▁▄▄▂▁▃▃▂█|▆▄▄▃▃▃▃▃",
       "Station: 148 loans in the week of 30 November, about 56 more than expected: a one-off so far, not a lasting change.",
-      "Station: it will have faded by the week of 28 December.",
+      "Station: if nothing else happens it still adds about 25 in the week of 7 December and has all but faded by the week of 28 December.",
       "Mill: about 85 loans in the week of 7 December (71 to 99), about 700 over all 8 weeks (620 to 780). ▄▁▅▅▃██▆▃▇▇▅|▅▆▆▆▆▆▆▆",
       "Park: about 113 loans in the week of 7 December (95 to 131), about 950 over all 8 weeks (870 to 1,030). ▃██▅▂▇▇▄▁▆▆▃|▅▅▆▆▆▆▆▆",
       "In brackets the range that holds 80% of outcomes; bars: last 12 weeks | those to come.",
