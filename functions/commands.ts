@@ -80,7 +80,7 @@ export async function runCommand(words: readonly string[]): Promise<number> {
     return await command(positionals.slice(1), values);
   } catch (error) {
     if (error instanceof UsageError) {
-      process.stderr.write(`${error.message}\n\n${usage}`);
+      process.stderr.write(`${error.message}\n(npm start -- --help lists the commands)\n`);
       return 2;
     }
     if (error instanceof SettingsError || error instanceof OutdatedRunError) {

@@ -1,0 +1,99 @@
+import { execFile } from "node:child_process";
+import { mkdir, writeFile } from "node:fs/promises";
+import { join } from "node:path";
+import { promisify } from "node:util";
+import { buildSync } from "esbuild";
+import { beforeAll, describe, expect, it } from "vitest";
+import { smallTables } from "../support/jobStores.ts";
+import { temporaryFolder } from "../support/temporaryFolder.ts";
+
+const bundle = "dist/test-local.js";
+beforeAll(() => {
+  buildSync({
+    entryPoints: ["functions/local.ts"],
+    bundle: true,
+    platform: "node",
+    format: "esm",
+    packages: "external",
+    outfile: bundle,
+  });
+});
+
+interface Ended {
+  readonly code: number;
+  readonly stdout: string;
+  readonly stderr: string;
+}
+
+async function command(...words: string[]): Promise<Ended> {
+  try {
+    return { code: 0, ...(await promisify(execFile)("node", [bundle, ...words])) };
+  } catch (error) {
+    return error as Ended;
+  }
+}
+
+async function smallStore(): Promise<string> {
+  const folder = await temporaryFolder();
+  for (const [key, text] of Object.entries(smallTables())) {
+    await mkdir(join(folder, key, ".."), { recursive: true });
+    await writeFile(join(folder, key), text);
+  }
+  return folder;
+}
+
+describe("the command line", () => {
+  it.each([
+    [["frob"], /no command "frob"/],
+    [["run"], /--store/],
+    [["run", "--store", "x", "--as-of", "yesterday"], /--as-of.*yesterday/],
+    [["replay", "--store", "x", "--from", "2026-01-01", "--every", "fortnight"], /--every.*fortnight/],
+    [["replay", "--store", "x"], /--from/],
+    [["explain", "--store", "x"], /name of a table/],
+    [["run", "--frob"], /--frob/],
+    [["run", "--store", "ftp://x"], /ftp/],
+  ])("refuses %j with exit code 2 and says what is wrong", async (words, expected) => {
+    const { code, stderr } = await command(...words);
+    expect(code).toBe(2);
+    expect(stderr).toMatch(expected);
+    expect(stderr).not.toMatch(/\bat .*\.js:\d/); // no stack trace
+  });
+
+  it("runs, explains in words and JSON, and ends with 1 when a table failed", async () => {
+    const store = await smallStore();
+    const run = await command("run", "--store", store, "--as-of", "2026-11-30T06:00:00Z");
+    expect(run.code).toBe(0);
+    expect(run.stdout).toMatch(/3 tables, 4 series/);
+    const explained = await command("explain", "weekly", "East", "--store", store);
+    expect(explained.code).toBe(0);
+    expect(explained.stdout).toMatch(/half-life/i);
+    const json = JSON.parse((await command("explain", "weekly", "East", "--store", store, "--json")).stdout);
+    expect(json).toMatchObject({
+      table: "weekly",
+      asOf: "2026-11-30T06:00:00Z",
+      series: [{ series: "East" }],
+    });
+    await writeFile(join(store, "series/bad.csv"), "");
+    const failing = await command("run", "--store", store, "--as-of", "2026-12-01T06:00:00Z");
+    expect(failing.code).toBe(1);
+    expect(failing.stdout).toMatch(/failed: bad/);
+  });
+
+  it("checks without writing a byte", async () => {
+    const store = await smallStore();
+    const { code, stdout } = await command("check", "--store", store, "--as-of", "2026-11-30T06:00:00Z");
+    expect(code).toBe(0);
+    expect(stdout).toMatch(/weekly/);
+    expect((await command("explain", "weekly", "--store", store)).stderr).toMatch(/run first/);
+  });
+
+  it("ends with 2 on settings that cannot be used, every problem at once, nothing written", async () => {
+    const store = await smallStore();
+    await writeFile(join(store, "settings.json"), '{ "horizont": 8, "levels": [80, 950] }');
+    const { code, stderr } = await command("run", "--store", store);
+    expect(code).toBe(2);
+    expect(stderr).toMatch(/horizont/);
+    expect(stderr).toMatch(/horizon\b/);
+    expect(stderr).toMatch(/levels/);
+  });
+});
