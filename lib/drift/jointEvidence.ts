@@ -1,4 +1,4 @@
-import { huber, type LookState, lastChangeTime } from "./lookState.ts";
+import { type LookState, lastChangeTime } from "./lookState.ts";
 import type { ChangeKind } from "./notice.ts";
 import { factorInPlace } from "./smallMatrix.ts";
 
