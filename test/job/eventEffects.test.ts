@@ -1,0 +1,75 @@
+import { describe, expect, it } from "vitest";
+import { adjustForEvents } from "../../lib/job/eventEffects.ts";
+import { periodStart } from "../../lib/series/periods.ts";
+import type { KnownEvent } from "../../lib/series/readEvents.ts";
+import type { Series } from "../../lib/series/series.ts";
+import { withR } from "../support/r.ts";
+
+const start = "2022-01-03";
+const weeks = 180;
+const fairWeeks = [20, 45, 72, 97, 124, 149, 171];
+
+/** An AR(1) around 200 with a fair that adds 60 in some weeks; shocks from a fixed congruential generator. */
+function fairSeries(effect: number): Series {
+  let state = 2024;
+  const uniform = () => {
+    state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
+    return state / 2 ** 32 - 0.5;
+  };
+  let deviation = 0;
+  const values = Float64Array.from({ length: weeks }, (_, week) => {
+    deviation = 0.5 * deviation + 12 * (uniform() + uniform() + uniform());
+    return 200 + deviation + (fairWeeks.includes(week) ? effect : 0);
+  });
+  return { name: "Quay", period: "week", start, values, observed: weeks, gaps: 0 };
+}
+
+const fair = (week: number): KnownEvent => {
+  const from = periodStart(start, "week", week);
+  return { name: "fair", from, until: periodStart(from, "day", 6), tables: null };
+};
+const context = { table: "loans", horizon: 4, timeZone: "UTC" };
+const r = withR();
+
+describe("known events", () => {
+  it("have the effect that R's arima gives the same regression, and come off the past", async () => {
+    const series = fairSeries(60);
+    const { findings, values, coming } = adjustForEvents(
+      series,
+      [...fairWeeks, weeks + 1].map(fair),
+      context,
+    );
+    expect(findings).toMatchObject([{ code: "event-effect", name: "fair" }]);
+    // R: arima(x, order = c(p, 0, 0), xreg = fair, method = "ML"), whatever small order was chosen here.
+    await r.assign("x", series.values);
+    await r.assign(
+      "fair",
+      Array.from({ length: weeks }, (_, week) => (fairWeeks.includes(week) ? 1 : 0)),
+    );
+    const [effect, error] = await r.evaluate(
+      'f <- arima(x, order = c(1, 0, 0), xreg = fair, method = "ML"); c(coef(f)["fair"], sqrt(diag(f$var.coef))["fair"])',
+    );
+    expect(Math.abs(findings[0].effect - effect)).toBeLessThan(error);
+    expect(Math.abs(findings[0].effect - 60)).toBeLessThan(3 * findings[0].standardError);
+    expect(values[20]).toBeCloseTo(series.values[20] - findings[0].effect, 9);
+    expect(Array.from(coming, (amount) => amount !== 0)).toEqual([false, true, false, false]);
+    expect(coming[1]).toBeCloseTo(findings[0].effect, 9);
+  });
+
+  it("without evidence of an effect change nothing", () => {
+    const series = fairSeries(0);
+    const { findings, values } = adjustForEvents(series, fairWeeks.map(fair), context);
+    expect(findings).toEqual([]);
+    expect(Array.from(values)).toEqual(Array.from(series.values));
+  });
+
+  it("meant for other tables are left aside", () => {
+    const events = fairWeeks.map((week) => ({ ...fair(week), tables: ["desk-calls"] }));
+    expect(adjustForEvents(fairSeries(60), events, context).findings).toEqual([]);
+  });
+
+  it("that fall on every period cannot be told from the level, and are left aside without a failure", () => {
+    const always = Array.from({ length: weeks + 4 }, (_, week) => fair(week));
+    expect(adjustForEvents(fairSeries(60), always, context).findings).toEqual([]);
+  });
+});
