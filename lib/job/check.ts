@@ -1,6 +1,6 @@
+import { nearestName } from "../series/nearestName.ts";
 import { periodStart } from "../series/periods.ts";
 import { periodsLate } from "../series/periodsLate.ts";
-import { nearestName } from "../series/problems.ts";
 import { type KnownEvent, readEvents } from "../series/readEvents.ts";
 import type { Reading } from "../series/reading.ts";
 import { readTable } from "../series/readTable.ts";

@@ -1,7 +1,7 @@
 import * as z from "zod/mini";
 import type { Problem } from "../series/series.ts";
-import { tableSettingsSchema } from "../series/tableSettings.ts";
-import { settingsProblems } from "./settingsProblems.ts";
+import { tableSettingsSchema, timeZoneSchema } from "../series/tableSettings.ts";
+import { problemOfSyntax, problemsOfIssues } from "./settingsProblems.ts";
 
 const say = (text: string) => z.describe(text);
 
@@ -14,16 +14,13 @@ const reference = (meaning: string) =>
     say(meaning),
   );
 
-const timeZone = z.string().check(
-  z.refine((name) => isKnown(() => new Intl.DateTimeFormat("en", { timeZone: name })), {
-    error: "is not a time zone; use an IANA name such as Europe/Lisbon",
-  }),
+const timeZone = timeZoneSchema.check(
   say("IANA name of the zone whose calendar days and clock times the tables use."),
 );
 
 const locale = z.string().check(
   z.refine((name) => isKnown(() => new Intl.NumberFormat(name)), {
-    error: "is not a language tag; use one such as en-GB",
+    error: "must be a language tag such as en-GB",
   }),
   say("BCP 47 language tag: how numbers and dates are written, and in which language month names may stand."),
 );
@@ -80,14 +77,12 @@ export const settingsSchema = z.strictObject({
     2,
   ),
   country: z.optional(
-    z
-      .string()
-      .check(
-        z.regex(/^[A-Z]{2}(-[A-Z0-9]{1,3})?$/, {
-          error: "must be a country code such as PT, or with a region DE-BY",
-        }),
-        say("ISO 3166 code whose public holidays explain values; no holidays are used without it."),
-      ),
+    z.string().check(
+      z.regex(/^[A-Z]{2}(-[A-Z0-9]{1,3})?$/, {
+        error: "must be a country code such as PT, or with a region DE-BY",
+      }),
+      say("ISO 3166 code whose public holidays explain values; no holidays are used without it."),
+    ),
   ),
   reportBase: z.optional(
     z
@@ -97,7 +92,15 @@ export const settingsSchema = z.strictObject({
         say("https:// address under which the store can be opened, for links to reports."),
       ),
   ),
-  webhooks: z._default(z.array(webhookSchema).check(say("Where messages are posted.")), []),
+  webhooks: z._default(
+    z.array(webhookSchema).check(
+      z.refine((all) => new Set(all.map(({ name }) => name)).size === all.length, {
+        error: "must have different names",
+      }),
+      say("Where messages are posted."),
+    ),
+    [],
+  ),
   tables: z._default(
     z
       .record(z.string(), tableSettingsSchema)
@@ -110,6 +113,13 @@ export type Settings = z.infer<typeof settingsSchema>;
 export type WebhookSettings = Settings["webhooks"][number];
 
 export const defaultSettings: Settings = settingsSchema.parse({});
+
+/** The keys the schema knows at a path. */
+function knownKeys(path: readonly PropertyKey[]): readonly string[] {
+  if (path.length === 0) return Object.keys(settingsSchema.shape).filter((key) => key !== "$schema");
+  if (path[0] === "webhooks") return Object.keys(webhookSchema.shape);
+  return path.length > 2 ? ["above", "below"] : Object.keys(tableSettingsSchema.shape);
+}
 
 function isKnown(make: () => unknown): boolean {
   try {
@@ -132,9 +142,12 @@ export function parseSettings(text: string | undefined): { settings: Settings; p
   try {
     value = JSON.parse(text.replace(/^\uFEFF/, ""));
   } catch (error) {
-    return { settings: defaultSettings, problems: [settingsProblems.notJson(text, error as Error)] };
+    return { settings: defaultSettings, problems: [problemOfSyntax(text, error as Error)] };
   }
   const parsed = settingsSchema.safeParse(value);
   if (parsed.success) return { settings: parsed.data, problems: [] };
-  return { settings: defaultSettings, problems: settingsProblems.ofIssues(text, value, parsed.error.issues) };
+  return {
+    settings: defaultSettings,
+    problems: problemsOfIssues(text, value, parsed.error.issues, knownKeys),
+  };
 }

@@ -1,4 +1,5 @@
-import { type Complain, nearestName, quoted } from "./problems.ts";
+import { nearestName } from "./nearestName.ts";
+import { type Complain, quoted } from "./problems.ts";
 import { TableFault } from "./tableFault.ts";
 
 /** A cell of the header as the name of a column or series: on one line, without control characters. */

@@ -5,8 +5,21 @@ const say = (text: string) => z.describe(text);
 const text = (meaning: string) => z.string().check(z.minLength(1), say(meaning));
 const number = (meaning: string) => z.number().check(say(meaning));
 
+function isTimeZone(name: string): boolean {
+  try {
+    return new Intl.DateTimeFormat("en", { timeZone: name }) !== undefined;
+  } catch {
+    return false;
+  }
+}
+
+/** The name of a time zone, as the IANA database has it. */
+export const timeZoneSchema = z
+  .string()
+  .check(z.refine(isTimeZone, { error: "must be a time zone by its IANA name, such as Europe/Lisbon" }));
+
 /** What a user may say about one table in `settings.json`; what is left out is found in the table itself. */
-export const tableSettingsSchema = z.strictObject({
+const tableShape = z.strictObject({
   every: z.optional(
     z.enum(periods).check(say("The step of the series. Found from the dates when left out.")),
   ),
@@ -47,7 +60,9 @@ export const tableSettingsSchema = z.strictObject({
   headerLine: z.optional(
     z.int().check(z.minimum(1), say("The line, counted from 1, that names the columns.")),
   ),
-  timeZone: z.optional(text("The time zone of clock times without an offset, if not that of the store.")),
+  timeZone: z.optional(
+    timeZoneSchema.check(say("The time zone of clock times without an offset, if not that of the store.")),
+  ),
   emptyMeans: z.optional(
     z
       .enum(["gap", "zero"])
@@ -76,5 +91,12 @@ export const tableSettingsSchema = z.strictObject({
       ),
   ),
 });
+
+/** `TableSettings` as the settings may hold them. */
+export const tableSettingsSchema = tableShape.check(
+  z.refine(({ atLeast, atMost }) => atLeast === undefined || atMost === undefined || atLeast < atMost, {
+    error: "must have atLeast below atMost",
+  }),
+);
 
 export type TableSettings = z.infer<typeof tableSettingsSchema>;
