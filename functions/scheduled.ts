@@ -4,6 +4,7 @@ import { planRun } from "../lib/job/plan.ts";
 import { refitPortion } from "../lib/job/refit.ts";
 import { closeRun, OutdatedRunError, runJob } from "../lib/job/run.ts";
 import { readRunHistory } from "../lib/job/runHistory.ts";
+import type { Settings } from "../lib/job/settings.ts";
 import type { Plan, RunSummary } from "../lib/job/summary.ts";
 import { type Cloud, ownCloud } from "./cloud/cloud.ts";
 import { scheduledRequest } from "./cloud/events.ts";
@@ -67,19 +68,24 @@ async function runWithFleet(cloud: Cloud, log: Log, context: LambdaContext, asOf
   const began = cloud.clock();
   const { newest } = await readRunHistory(cloud.store, asOf, new Date(began));
   if (newest !== undefined && newest > asOf) throw new OutdatedRunError(`a run at ${newest} stands`);
-  const plan = await planRun({ store: cloud.store, asOf });
+  const settings = await loadSettings(cloud.store);
+  const plan = await planRun({ store: cloud.store, asOf, settings });
   if (cloud.fleet === "always") return handOver(cloud, log, plan, "chosen for this deployment");
-  if (!(await refitAlone(cloud, context, plan)))
+  if (!(await refitAlone(cloud, context, plan, settings)))
     return handOver(cloud, log, plan, "more work than one function has time for");
-  const summary = await closeRun(runOptions(cloud, log, context, asOf));
+  const summary = await closeRun({ ...runOptions(cloud, log, context, asOf), settings });
   return finish(cloud, log, { ...summary, durationMilliseconds: cloud.clock() - began });
 }
 
 /** Refits portion after portion; `false` as soon as the pace shows that the time will not do. */
-async function refitAlone(cloud: Cloud, context: LambdaContext, plan: Plan): Promise<boolean> {
+async function refitAlone(
+  cloud: Cloud,
+  context: LambdaContext,
+  plan: Plan,
+  settings: Settings,
+): Promise<boolean> {
   const { store, clock } = cloud;
   const remainingMilliseconds = () => context.getRemainingTimeInMillis();
-  const settings = await loadSettings(store);
   const began = clock();
   let doneTables = 0;
   for (const tables of plan.portions) {

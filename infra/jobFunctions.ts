@@ -29,14 +29,18 @@ export interface JobFunctions {
 }
 
 // What each function does in the store. A repeated create reads what stands, so whatever is written may be read.
-const planning: StoreRights = { read: ["runs/"], write: ["runs/"], list: ["series/"] };
+const planning: StoreRights = {
+  read: ["settings.json", "events/", "runs/"],
+  write: ["runs/"],
+  list: ["series/"],
+};
 const refitting: StoreRights = {
-  read: ["settings.json", "series/", "models/", "forecasts/", "runs/"],
+  read: ["settings.json", "events/", "series/", "models/", "forecasts/", "runs/"],
   write: ["models/", "forecasts/", "runs/"],
   list: [],
 };
 const closing: StoreRights = {
-  read: ["settings.json", "models/", "runs/"],
+  read: ["settings.json", "events/", "models/", "runs/"],
   write: ["runs/"],
   list: ["series/"],
 };

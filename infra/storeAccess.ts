@@ -4,7 +4,7 @@ import type { IKey } from "aws-cdk-lib/aws-kms";
 import type { IBucket } from "aws-cdk-lib/aws-s3";
 
 /** The parts of the store, as the keys below the prefix begin. */
-export type StorePart = "settings.json" | "series/" | "models/" | "forecasts/" | "runs/";
+export type StorePart = "settings.json" | "events/" | "series/" | "models/" | "forecasts/" | "runs/";
 
 /** Where the store lies: a bucket, and a prefix in it that is empty or ends with `/`. */
 export interface StoreLocation {

@@ -45,7 +45,7 @@ describe.each(Object.entries(shapes))("the roles of the deployment %s", (_, choi
     for (const { actions, resources } of statements)
       if (actions.some((action) => /^s3:(Get|Put)/.test(action)))
         for (const resource of resources)
-          expect(resource).toMatch(/\/(settings\.json|(series|models|forecasts|runs)\/.*\*?.*)$/);
+          expect(resource).toMatch(/\/(settings\.json|(events|series|models|forecasts|runs)\/.*\*?.*)$/);
   });
 
   it("write nothing where the user's own files lie", () => {
