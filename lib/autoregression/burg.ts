@@ -26,6 +26,20 @@ export function reflectionWorkspace(capacity: number, maxOrder: number): BurgRef
   };
 }
 
+let shared = reflectionWorkspace(0, 0);
+
+/**
+ * A workspace that lives on between calls, for callers that are done with the results before anyone else can ask: making
+ * buffers costs as much as the recursion itself.
+ */
+export function sharedReflections(capacity: number, maxOrder: number): BurgReflections {
+  if (shared.forward.length < capacity || shared.partials.length < maxOrder) {
+    const length = Math.max(capacity, shared.forward.length);
+    shared = reflectionWorkspace(length, Math.max(maxOrder, shared.partials.length));
+  }
+  return shared;
+}
+
 /** Space for series of up to `capacity` values and orders up to `maxOrder`. */
 export function burgWorkspace(capacity: number, maxOrder: number): BurgWorkspace {
   return {

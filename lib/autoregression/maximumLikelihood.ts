@@ -1,6 +1,6 @@
 import { invertPositive } from "../numeric/cholesky.ts";
 import { minimise } from "../numeric/minimise.ts";
-import { burgReflections, reflectionWorkspace } from "./burg.ts";
+import { burgReflections, sharedReflections } from "./burg.ts";
 import { requireValues } from "./checks.ts";
 import type { AutoregressiveFit } from "./fit.ts";
 import { isConstant, type LikelihoodDesign, likelihoodDesign } from "./likelihoodDesign.ts";
@@ -86,9 +86,9 @@ function checkRegressors(regressors: readonly ArrayLike<number>[], length: numbe
 function maximise(likelihood: ProfileLikelihood, design: LikelihoodDesign): Float64Array {
   const { order } = likelihood;
   if (order === 0) return new Float64Array(0);
-  const workspace = reflectionWorkspace(design.length, order);
+  const workspace = sharedReflections(design.length, order);
   burgReflections(design.series[0], 0, order, workspace);
-  const starts = [Float64Array.from(workspace.partials, (partial) => Math.atanh(0.999 * partial))];
+  const starts = [workspace.partials.slice(0, order).map((partial) => Math.atanh(0.999 * partial))];
   if (design.missing.length > 0 || design.observations < 4 * (order + 4))
     starts.push(new Float64Array(order));
   const evaluate = (point: Float64Array, gradient: Float64Array) => likelihood.evaluate(point, gradient);

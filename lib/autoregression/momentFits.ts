@@ -1,15 +1,17 @@
 import { invertPositive } from "../numeric/cholesky.ts";
-import { countObserved, observedMean } from "../numeric/sums.ts";
-import { burgReflections, reflectionWorkspace } from "./burg.ts";
+import { centred, countObserved, observedMean } from "../numeric/sums.ts";
+import { burgReflections, sharedReflections } from "./burg.ts";
 import type { AutoregressiveFit } from "./fit.ts";
 import { partialsToCoefficients } from "./partials.ts";
-import { autocovariancesAbout } from "./sampleMoments.ts";
+import { autocovariancesOf } from "./sampleMoments.ts";
 import { summarise } from "./summarise.ts";
 import { yuleWalkerAllOrders } from "./yuleWalker.ts";
 
 /** Coefficients and innovation variance of every order 0..maxOrder by Yule–Walker or Burg. */
 export interface MomentOrders {
   readonly centre: number;
+  /** Values minus the centre. */
+  readonly deviations: Float64Array;
   coefficients(order: number): Float64Array;
   readonly innovationVariances: Float64Array;
 }
@@ -22,18 +24,21 @@ export function momentOrders(
   meanKnown: boolean,
 ): MomentOrders {
   const centre = meanKnown ? 0 : observedMean(values);
+  const deviations = centred(values, centre);
   if (method === "yule-walker") {
-    const orders = yuleWalkerAllOrders(values, centre, maxOrder);
+    const orders = yuleWalkerAllOrders(deviations, maxOrder);
     return {
       centre,
+      deviations,
       coefficients: (order) => (order === 0 ? new Float64Array(0) : orders.coefficients[order - 1]),
       innovationVariances: orders.innovationVariances,
     };
   }
-  const reflections = reflectionWorkspace(values.length, maxOrder);
-  burgReflections(values, centre, maxOrder, reflections);
+  const reflections = sharedReflections(values.length, maxOrder);
+  burgReflections(deviations, 0, maxOrder, reflections);
   return {
     centre,
+    deviations,
     coefficients: (order) => partialsToCoefficients(reflections.partials.subarray(0, order)),
     innovationVariances: reflections.innovationVariances,
   };
@@ -59,56 +64,51 @@ export function fitByMoments(
   meanKnown: boolean,
   orders: MomentOrders = momentOrders(values, order, method, meanKnown),
 ): AutoregressiveFit {
-  const { centre } = orders;
+  const { centre, deviations } = orders;
   const coefficients = orders.coefficients(order);
   const innovationVariance = orders.innovationVariances[order];
-  const observations = countObserved(values);
-  const persistence = coefficients.reduce((sum, value) => sum + value, 0);
-  const level = Math.sqrt(innovationVariance / observations) / Math.abs(1 - persistence);
+  const observations = countObserved(deviations);
+  let slack = 1;
+  for (let j = 0; j < order; j++) slack -= coefficients[j];
+  const scale = innovationVariance / observations;
   return summarise({
     method,
     coefficients,
-    standardErrors: momentErrors(values, centre, order, innovationVariance),
+    standardErrors: momentErrors(deviations, order, scale),
     mean: centre,
-    meanStandardError: meanKnown ? 0 : level,
+    meanStandardError: meanKnown ? 0 : Math.sqrt(scale) / Math.abs(slack),
     innovationVariance,
     logLikelihood: momentLogLikelihood(innovationVariance, observations),
     parameters: order + (meanKnown ? 1 : 2),
     effectiveObservations: observations,
     observations,
-    residuals: laggedResiduals(values, coefficients, centre),
+    residuals: laggedResiduals(deviations, coefficients),
   });
 }
 
-function momentErrors(
-  values: ArrayLike<number>,
-  centre: number,
-  order: number,
-  innovationVariance: number,
-): Float64Array {
-  const gamma = autocovariancesAbout(values, centre, Math.max(0, order - 1));
+/** sqrt(diag(scale · Γ̂⁻¹)). */
+function momentErrors(deviations: Float64Array, order: number, scale: number): Float64Array {
+  const errors = new Float64Array(order);
+  if (order === 0) return errors;
+  const gamma = autocovariancesOf(deviations, order - 1);
   const matrix = new Float64Array(order * order);
   for (let i = 0; i < order; i++) {
     for (let j = 0; j < order; j++) matrix[i * order + j] = gamma[Math.abs(i - j)];
   }
   const inverse = invertPositive(matrix, order);
-  const scale = innovationVariance / countObserved(values);
-  return Float64Array.from({ length: order }, (_, i) =>
-    inverse ? Math.sqrt(scale * inverse[i * order + i]) : 0,
-  );
+  if (inverse !== undefined) {
+    for (let i = 0; i < order; i++) errors[i] = Math.sqrt(scale * inverse[i * order + i]);
+  }
+  return errors;
 }
 
-/** x_t − c − Σ φ_j (x_{t−j} − c); `NaN` where the value or one of its lags is missing. */
-export function laggedResiduals(
-  values: ArrayLike<number>,
-  coefficients: ArrayLike<number>,
-  centre: number,
-): Float64Array {
+/** z_t − Σ φ_j z_{t−j}; `NaN` where the value or one of its lags is missing. */
+function laggedResiduals(deviations: Float64Array, coefficients: Float64Array): Float64Array {
   const p = coefficients.length;
-  const residuals = new Float64Array(values.length).fill(Number.NaN);
-  for (let t = p; t < values.length; t++) {
-    let error = values[t] - centre;
-    for (let j = 1; j <= p; j++) error -= coefficients[j - 1] * (values[t - j] - centre);
+  const residuals = new Float64Array(deviations.length);
+  for (let t = 0; t < deviations.length; t++) {
+    let error = t < p ? Number.NaN : deviations[t];
+    for (let j = 1; j <= p && t >= p; j++) error -= coefficients[j - 1] * deviations[t - j];
     residuals[t] = error;
   }
   return residuals;

@@ -20,16 +20,11 @@ export function sampleAutocovariances(values: ArrayLike<number>, maxLag: number)
       `sampleAutocovariances needs maxLag below the number of values (${values.length}), got ${maxLag}`,
     );
   }
-  return autocovariancesAbout(values, observedMean(values), maxLag);
+  return autocovariancesOf(centred(values, observedMean(values)), maxLag);
 }
 
-/** The same about a given centre, unchecked. */
-export function autocovariancesAbout(
-  values: ArrayLike<number>,
-  centre: number,
-  maxLag: number,
-): Float64Array {
-  const deviations = centred(values, centre);
+/** The same of values whose mean is already taken off, unchecked. */
+export function autocovariancesOf(deviations: Float64Array, maxLag: number): Float64Array {
   const n = deviations.length;
   const complete = countObserved(deviations) === n;
   const out = new Float64Array(maxLag + 1);
