@@ -44,10 +44,10 @@ export function candidateWeights(
 }
 
 /**
- * Power for the evidence of so many independent horizons: 2E/(E + 4). From equal weights without evidence through
- * 1 (inverse squared error) at four horizons to 2 with plenty, because weights fitted to a few errors cost more
- * than they gain (Claeskens, Magnus, Vasnev and Wang 2016).
+ * Power for the evidence of so many independent horizons: half their number. With a Gaussian error of unknown size,
+ * E independent errors have likelihood proportional to MSE^(−E/2), so that these are the posterior odds of equally
+ * likely candidates; without evidence all weigh alike.
  */
 export function weightPower(horizons: number): number {
-  return (2 * horizons) / (horizons + 4);
+  return horizons / 2;
 }

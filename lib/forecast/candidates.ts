@@ -14,33 +14,39 @@ export interface Preparation {
   readonly drifts: readonly DriftKind[];
 }
 
-const DRIFTS: readonly DriftKind[] = ["none", "local", "whole"];
+const ALL_DRIFTS: readonly DriftKind[] = ["none", "local", "whole"];
 
 /**
  * The bank of preparations: levels about a mean, levels about a line, first differences with three kinds of drift,
- * second differences. With seasons, for each length: all of these after a profile is taken off, first differences
- * also about a profile of their own, and seasonal differences. Simple and unlike each other, for it is the
- * differences between candidates that make an average better than its parts.
+ * second differences. With a season: these after a profile is taken off, first differences also about a profile of
+ * their own, seasonal differences, levels about a profile, and plain levels, whose long lags carry the season. A
+ * further, longer season adds its levels about a profile, with and without a line, and its differences. Simple and
+ * unlike each other, for it is what candidates do not share that makes an average better than its parts.
  */
 export function preparations(seasons: readonly number[]): Preparation[] {
-  const bank: Preparation[] = [];
   const plain = { season: 0, profile: "none", line: false } as const;
+  const levels: Preparation = { ...plain, differences: [], drifts: ["whole"] };
   if (seasons.length === 0) {
-    bank.push({ ...plain, differences: [1], drifts: DRIFTS });
-    bank.push({ ...plain, differences: [1, 1], drifts: ["none"] });
-    bank.push({ ...plain, differences: [], drifts: ["whole"] });
-    bank.push({ ...plain, differences: [], line: true, drifts: ["whole"] });
+    return [
+      { ...plain, differences: [1], drifts: ALL_DRIFTS },
+      { ...plain, differences: [1, 1], drifts: ["none"] },
+      levels,
+      { ...levels, line: true },
+    ];
   }
-  for (const season of seasons) {
+  const bank: Preparation[] = [levels];
+  seasons.forEach((season, place) => {
     const level = { season, profile: "level", line: false } as const;
     const mean = { season, profile: "mean", line: false } as const;
-    bank.push({ ...level, differences: [1], drifts: DRIFTS });
-    bank.push({ ...mean, differences: [1], drifts: DRIFTS });
-    bank.push({ ...plain, differences: [season], drifts: DRIFTS });
-    bank.push({ ...level, differences: [1, 1], drifts: ["none"] });
+    const first = place === 0;
+    bank.push({ ...level, differences: [1], drifts: first ? ALL_DRIFTS : ["none"] });
+    bank.push({ ...plain, differences: [season], drifts: first ? ["none", "whole"] : ["none"] });
     bank.push({ ...mean, differences: [], drifts: ["whole"] });
     bank.push({ ...level, differences: [], line: true, drifts: ["whole"] });
-  }
+    if (!first) return;
+    bank.push({ ...mean, differences: [1], drifts: ["none", "whole"] });
+    bank.push({ ...level, differences: [1, 1], drifts: ["none"] });
+  });
   return bank;
 }
 
