@@ -19,7 +19,8 @@ const usage = `ebbwire: forecasts for every series in a store, and a note when s
                                                          an analyst's account
 
   S is a folder or s3://bucket/prefix; T an ISO instant such as 2026-11-30T06:00:00Z (default: now)
-  run also takes --allow-local-webhook (plain http to this machine, for tests) and --replaying (an older T)
+  run also takes --workers N (threads; default: all processors but one), --replaying (an older T), and
+  --allow-local-webhook (plain http to this machine, for tests)
   exit codes: 0 done, 1 some table failed, 2 wrong use, 3 a delivery failed
 `;
 
@@ -32,6 +33,7 @@ export interface CommandOptions {
   readonly json?: boolean;
   readonly replaying?: boolean;
   readonly "allow-local-webhook"?: boolean;
+  readonly workers?: string;
 }
 
 type Command = (words: readonly string[], options: CommandOptions) => Promise<number>;
@@ -58,6 +60,7 @@ function parse(words: readonly string[]) {
         json: { type: "boolean" },
         replaying: { type: "boolean" },
         "allow-local-webhook": { type: "boolean" },
+        workers: { type: "string" },
         help: { type: "boolean", short: "h" },
       },
     });

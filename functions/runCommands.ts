@@ -2,16 +2,19 @@ import { readMessage } from "../lib/job/readBack.ts";
 import { replayRuns } from "../lib/job/replay.ts";
 import { runJob } from "../lib/job/run.ts";
 import type { CommandOptions } from "./commands.ts";
+import { refitOnThreads } from "./tableWorkers.ts";
 import { exitCodeOf, messageText, progressLine, say, summaryLines } from "./terminal.ts";
-import { instantOf, localSecrets, periodOf, storeOf, UsageError } from "./usage.ts";
+import { instantOf, localSecrets, periodOf, storeOf, UsageError, workersOf } from "./usage.ts";
 
 /** `run`: one run at one instant. */
 export async function runOnceCommand(_words: readonly string[], options: CommandOptions): Promise<number> {
   const store = storeOf(options.store);
+  const threads = workersOf(options.workers);
   const summary = await runJob({
     store,
     asOf: instantOf("as-of", options["as-of"]),
     secrets: localSecrets,
+    refit: threads > 1 ? refitOnThreads(store.address, threads) : undefined,
     allowLocalWebhooks: options["allow-local-webhook"] ?? false,
     replaying: options.replaying ?? false,
     progress: progressLine(),

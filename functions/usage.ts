@@ -1,3 +1,4 @@
+import { availableParallelism } from "node:os";
 import { periods } from "../lib/series/periods.ts";
 import type { Period } from "../lib/series/series.ts";
 import type { ObjectStore } from "../lib/store/objectStore.ts";
@@ -30,6 +31,15 @@ export function periodOf(text: string): Period {
   const period = periods.find((one) => one === text);
   if (!period) throw new UsageError(`--every takes one of ${periods.join(", ")}, not "${text}"`);
   return period;
+}
+
+/** Threads to refit on: all processors but one unless said. */
+export function workersOf(text: string | undefined): number {
+  if (text === undefined) return Math.max(1, availableParallelism() - 1);
+  const workers = Number(text);
+  if (!Number.isInteger(workers) || workers < 1 || workers > 256)
+    throw new UsageError(`--workers takes a whole number from 1 to 256, not "${text}"`);
+  return workers;
 }
 
 /** `env:NAME` from the environment. `secret:` names live in the cloud's secret store, which a laptop does not ask. */

@@ -8,10 +8,10 @@ import { asOfText, runPrefix, summaryKey } from "./keys.ts";
 import { loadSettings } from "./loadSettings.ts";
 import { planRun } from "./plan.ts";
 import type { Progress } from "./progress.ts";
-import { refitPortion } from "./refit.ts";
+import { type RefitOptions, refitPortion } from "./refit.ts";
 import { readRunHistory } from "./runHistory.ts";
 import type { Settings } from "./settings.ts";
-import type { DeliveryRecord, Plan, RunSummary } from "./summary.ts";
+import type { DeliveryRecord, Plan, PortionResult, RunSummary } from "./summary.ts";
 import type { Secrets, Webhook } from "./webhooks.ts";
 
 export interface RunOptions {
@@ -33,6 +33,8 @@ export interface RunOptions {
   /** Milliseconds since 1970. */
   readonly clock?: () => number;
   readonly sleep?: (milliseconds: number) => Promise<void>;
+  /** Instead of refitting in this thread. */
+  readonly refit?: (options: RefitOptions) => Promise<PortionResult>;
   /** Names this process among others at work on the same run. */
   readonly owner?: string;
   readonly progress?: (progress: Progress) => void;
@@ -77,7 +79,8 @@ export async function runJob(options: RunOptions): Promise<RunSummary> {
   const { clock, asOf, settings, undelivered } = await prepare(options);
   const began = clock();
   const plan = await planRun({ store, asOf, settings });
-  await refitPortion({ store, asOf, tables: plan.tables, settings, remainingMilliseconds, clock, progress });
+  const refit = options.refit ?? refitPortion;
+  await refit({ store, asOf, tables: plan.tables, settings, remainingMilliseconds, clock, progress });
   return close({ ...options, settings }, plan, clock, began, undelivered);
 }
 

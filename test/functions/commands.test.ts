@@ -1,5 +1,5 @@
 import { execFile } from "node:child_process";
-import { mkdir, writeFile } from "node:fs/promises";
+import { mkdir, readFile, writeFile } from "node:fs/promises";
 import { join } from "node:path";
 import { promisify } from "node:util";
 import { buildSync } from "esbuild";
@@ -7,15 +7,15 @@ import { beforeAll, describe, expect, it } from "vitest";
 import { smallTables } from "../support/jobStores.ts";
 import { temporaryFolder } from "../support/temporaryFolder.ts";
 
-const bundle = "dist/test-local.js";
+const bundle = "dist/test/local.js";
 beforeAll(() => {
   buildSync({
-    entryPoints: ["functions/local.ts"],
+    entryPoints: ["functions/local.ts", "functions/tableWorker.ts"],
     bundle: true,
     platform: "node",
     format: "esm",
     packages: "external",
-    outfile: bundle,
+    outdir: "dist/test",
   });
 });
 
@@ -77,6 +77,28 @@ describe("the command line", () => {
     const failing = await command("run", "--store", store, "--as-of", "2026-12-01T06:00:00Z");
     expect(failing.code).toBe(1);
     expect(failing.stdout).toMatch(/failed: bad/);
+  });
+
+  it("gives the same forecasts on two threads as on one", async () => {
+    const stores = [await smallStore(), await smallStore()];
+    for (const [index, store] of stores.entries()) {
+      const run = await command(
+        "run",
+        "--store",
+        store,
+        "--as-of",
+        "2026-11-30T06:00:00Z",
+        "--workers",
+        `${index + 1}`,
+      );
+      expect(run.code).toBe(0);
+    }
+    for (const table of ["weekly", "monthly", "north/daily"]) {
+      const [one, two] = await Promise.all(
+        stores.map((store) => readFile(join(store, `models/${table}/2026-11-30T06-00-00Z.json`), "utf8")),
+      );
+      expect(two).toBe(one);
+    }
   });
 
   it("checks without writing a byte", async () => {
