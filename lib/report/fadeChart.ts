@@ -1,45 +1,57 @@
 import { area, line } from "d3-shape";
+import { lastPersistenceChange } from "../words/changeWords.ts";
 import type { SeriesFacts } from "../words/facts.ts";
+import { fadingWeights } from "../words/fadingWeights.ts";
 import type { Speech } from "../words/speech.ts";
 import { html, type Markup } from "./markup.ts";
 import { heights, type LegendEntry, plot, round, side } from "./plot.ts";
 import { spreadLabels } from "./timeline.ts";
 import { verticalScale } from "./verticalScale.ts";
 
-/** Coefficients of the model a change or comparison is measured from, and how to name it; `null` without one. */
-function referenceOf(facts: SeriesFacts): { coefficients: readonly number[]; name: string } | null {
-  const change = facts.findings.findLast((one) => one.code === "change");
-  if (change?.code === "change")
-    return { coefficients: change.before.coefficients, name: "before the change" };
-  const old = facts.comparison?.coefficients.filter((one) => one.before !== null) ?? [];
-  if (!facts.comparison || old.length === 0) return null;
-  const coefficients = new Array<number>(Math.max(...old.map((one) => one.lag))).fill(0);
-  for (const one of old) coefficients[one.lag - 1] = one.before ?? 0;
-  return { coefficients, name: "model compared with" };
+interface Curves {
+  readonly now: readonly number[];
+  readonly nowName: string;
+  readonly before: readonly number[] | null;
+  readonly beforeName: string;
+  readonly halfLife: number | null;
 }
 
-/** Moving-average weights ψ_0.. of φ: ψ_j = Σ φ_i ψ_{j−i} (Brockwell and Davis 1991, section 3.3). */
-export function fadingWeights(coefficients: readonly number[], count: number): number[] {
-  const weights = [1];
-  for (let lag = 1; lag < count; lag++) {
-    let sum = 0;
-    for (let back = 1; back <= Math.min(lag, coefficients.length); back++) {
-      sum += coefficients[back - 1] * weights[lag - back];
-    }
-    weights.push(sum);
+/**
+ * What to compare: both sides of the last change of persistence, since the model over the whole past is a mixture of
+ * them; without one, the model with the earlier model that it was compared with.
+ */
+function curvesOf(facts: SeriesFacts): Curves {
+  const { model, comparison } = facts;
+  const change = lastPersistenceChange(facts);
+  const count = Math.max(2, Math.min(27, model.weights.length));
+  if (change) {
+    return {
+      now: fadingWeights(change.after.coefficients, count),
+      nowName: "since the change",
+      before: fadingWeights(change.before.coefficients, count),
+      beforeName: "before the change",
+      halfLife: change.after.halfLife,
+    };
   }
-  return weights.slice(0, count);
+  const old = comparison?.coefficients.filter((one) => one.before !== null) ?? [];
+  const coefficients = new Array<number>(Math.max(0, ...old.map((one) => one.lag))).fill(0);
+  for (const one of old) coefficients[one.lag - 1] = one.before ?? 0;
+  return {
+    now: Array.from({ length: count }, (_, lag) => model.weights[lag] ?? 0),
+    nowName: "now",
+    before: old.length > 0 ? fadingWeights(coefficients, count) : null,
+    beforeName: "model compared with",
+    halfLife: model.halfLife,
+  };
 }
 
 /** How much of a shock is left period by period, now and by the reference. */
 export function fadeChart(id: string, speech: Speech): Markup {
   const { facts } = speech;
-  const { model, period } = facts;
-  const count = Math.max(2, Math.min(27, model.weights.length));
-  const now = model.weights.slice(0, count);
-  const reference = referenceOf(facts);
-  const then = reference ? fadingWeights(reference.coefficients, now.length) : null;
-  const { scale, ticks } = verticalScale([0, 1, ...now, ...(then ?? [])]);
+  const { period } = facts;
+  const { now, nowName, before, beforeName, halfLife: half } = curvesOf(facts);
+  const count = now.length;
+  const { scale, ticks } = verticalScale([0, 1, ...now, ...(before ?? [])]);
   const x = (lag: number) => round((lag / (count - 1)) * side);
   const y = (value: number) => round(scale(value));
   const curve = line<number>((_, lag) => x(lag), y).digits(1);
@@ -48,10 +60,9 @@ export function fadeChart(id: string, speech: Speech): Markup {
     () => y(0),
     y,
   ).digits(1);
-  const half = model.halfLife;
   const legend: LegendEntry[] = [
-    { sample: "past", text: "now" },
-    ...(reference ? [{ sample: "reference", text: reference.name }] : []),
+    { sample: "past", text: nowName },
+    ...(before ? [{ sample: "reference", text: beforeName }] : []),
     { sample: "half", text: "one half left" },
   ];
   const halfWords =
@@ -67,18 +78,18 @@ export function fadeChart(id: string, speech: Speech): Markup {
     body: [
       html`<path class="ebb" d="${under(now) ?? ""}"/>`,
       html`<path class="half" d="M0,${y(0.5)}H${side}"/>`,
-      then ? html`<path class="reference" d="${curve(then) ?? ""}"/>` : html``,
+      before ? html`<path class="reference" d="${curve(before) ?? ""}"/>` : html``,
       html`<path class="past" d="${curve(now) ?? ""}"/>`,
       half !== null && half <= count - 1 ? html`<path class="dot" d="M${x(half)},${y(0.5)}h0"/>` : html``,
     ],
     legend,
     table: {
       caption: "how a shock fades",
-      head: [`${period}s after`, "left now", ...(then ? ["left by the reference"] : [])],
+      head: [`${period}s after`, `left, ${nowName}`, ...(before ? [`left, ${beforeName}`] : [])],
       rows: now.map((value, lag) => [
         `${lag}`,
         speech.percent(Math.round(value * 1000) / 10),
-        ...(then ? [speech.percent(Math.round(then[lag] * 1000) / 10)] : []),
+        ...(before ? [speech.percent(Math.round(before[lag] * 1000) / 10)] : []),
       ]),
     },
   });

@@ -1,6 +1,7 @@
 import { area, line } from "d3-shape";
 import { changeHeadline } from "../words/changeWords.ts";
 import type { SeriesFacts } from "../words/facts.ts";
+import { limitStep } from "../words/forecastSentences.ts";
 import { roundingStep } from "../words/numbers.ts";
 import { valueStep } from "../words/otherFindings.ts";
 import type { Speech } from "../words/speech.ts";
@@ -93,7 +94,7 @@ function legend(
 ): LegendEntry[] {
   const limits = facts.forecast.chances.map((one) => ({
     sample: "limit",
-    text: `limit ${one.direction} ${speech.write(one.limit, valueStep(one.limit))}`,
+    text: `limit ${one.direction} ${speech.write(one.limit, limitStep(one.limit))}`,
   }));
   return [
     { sample: "past", text: "past" },

@@ -1,11 +1,22 @@
 import type { ChangeKind } from "../drift/notice.ts";
-import type { Finding } from "./facts.ts";
+import type { Finding, SeriesFacts } from "./facts.ts";
 import { roundTo, significantStep } from "./numbers.ts";
 import { remainderOf } from "./remainder.ts";
 import { anOrA } from "./spans.ts";
 import type { Speech } from "./speech.ts";
 
 export type ChangeFinding = Extract<Finding, { code: "change" }>;
+
+/** The newest change of persistence that the series still has on record. */
+export function lastPersistenceChange(facts: SeriesFacts): ChangeFinding | null {
+  const changes = facts.findings
+    .filter((one) => one.code === "change")
+    .filter((one) => one.kind === "persistence");
+  return changes.reduce<ChangeFinding | null>(
+    (newest, one) => (newest === null || one.change.period > newest.change.period ? one : newest),
+    null,
+  );
+}
 
 /** What each kind of change is called when a sentence names it as a possibility. */
 export const kindNames: Record<ChangeKind, string> = {

@@ -49,11 +49,14 @@ export function chanceSentences(speech: Speech): string[] {
   const last = forecast.periods.at(-1);
   if (last === undefined) return [];
   return forecast.chances.map(({ direction, limit, any }) => {
-    const step = Number.isInteger(limit) ? 1 : 10 ** -Math.min(6, decimals(limit));
     const time =
       forecast.periods.length === 1 ? speech.periods.when(last) : `by ${speech.periods.inText(last)}`;
-    return `${speech.chance(any)} chance of ${anOrA(period)} ${period} ${direction} ${speech.amount(limit, step)} ${time}`;
+    return `${speech.chance(any)} chance of ${anOrA(period)} ${period} ${direction} ${speech.amount(limit, limitStep(limit))} ${time}`;
   });
 }
+
+/** A limit is told as it was set, to at most six decimals. */
+export const limitStep = (limit: number) =>
+  Number.isInteger(limit) ? 1 : 10 ** -Math.min(6, decimals(limit));
 
 const decimals = (value: number) => `${value}`.split(".")[1]?.length ?? 0;

@@ -1,6 +1,9 @@
-import type { SeriesFacts } from "./facts.ts";
+import type { Finding, SeriesFacts } from "./facts.ts";
+import { fadingWeights } from "./fadingWeights.ts";
 import { addPeriods, instantOf } from "./periods.ts";
 import type { Speech } from "./speech.ts";
+
+type ChangeFinding = Extract<Finding, { code: "change" }>;
 
 /** One past shock and what is left of it later, in the unit of the series. */
 export interface Remainder {
@@ -15,25 +18,45 @@ export interface Remainder {
  * forecast. It is the latest period's shock unless that was small (below half the usual size); then the one that
  * moves the forecast most; `null` when that is small too. A model of logarithms tells effects as shares; they are
  * turned into amounts against the value or forecast they act on: `amount = value · (1 − e^(−effect))`.
+ *
+ * With `coefficients`, those of one side of a change, the shock fades by them and not by the describing model, which
+ * is a mixture of what was before and after.
  */
-export function remainderOf(facts: SeriesFacts): Remainder | null {
+export function remainderOf(facts: SeriesFacts, coefficients?: readonly number[]): Remainder | null {
   const { attribution, forecast, model } = facts;
   const latest = attribution?.shocks.find((one) => one.period === facts.lastPeriod);
   const told = [latest, attribution?.shocks[0]].find(
     (one) => one !== undefined && one.effects.length > 0 && Math.abs(one.shock) >= model.shockSize / 2,
   );
   if (!told) return null;
-  const found = told.effects.findIndex((effect) => Math.abs(effect) <= Math.abs(told.shock) / 2);
-  const index = found === -1 ? told.effects.length - 1 : found;
-  const later = { period: forecast.periods[index], effect: told.effects[index] };
-  if (model.scale === "raw") return { period: told.period, shock: told.shock, later };
-  const value = valueAt(facts, told.period);
+  const shares = model.scale === "log";
+  const value = shares ? valueAt(facts, told.period) : 0;
   if (value === null) return null;
-  return {
-    period: told.period,
-    shock: value * -Math.expm1(-told.shock),
-    later: { period: later.period, effect: forecast.point[index] * -Math.expm1(-later.effect) },
-  };
+  const shock = shares ? value * -Math.expm1(-told.shock) : told.shock;
+  const effects = coefficients
+    ? laterEffects(shock, coefficients, periodsSince(facts, told.period), forecast.periods.length)
+    : told.effects.map((effect, step) => (shares ? forecast.point[step] * -Math.expm1(-effect) : effect));
+  const found = effects.findIndex((effect) => Math.abs(effect) <= Math.abs(shock) / 2);
+  const index = found === -1 ? effects.length - 1 : found;
+  return { period: told.period, shock, later: { period: forecast.periods[index], effect: effects[index] } };
+}
+
+/** Effects on the coming periods of a shock that happened `age` periods before the last one. */
+function laterEffects(
+  shock: number,
+  coefficients: readonly number[],
+  age: number,
+  horizon: number,
+): number[] {
+  return fadingWeights(coefficients, age + 1 + horizon)
+    .slice(age + 1)
+    .map((weight) => shock * weight);
+}
+
+function periodsSince({ lastPeriod, period }: SeriesFacts, start: string): number {
+  let age = 0;
+  while (addPeriods(lastPeriod, period, -age) > start) age++;
+  return age;
 }
 
 function valueAt({ history, period }: SeriesFacts, start: string): number | null {
@@ -51,12 +74,16 @@ function whose(speech: Speech, start: string): { before: string; after: string }
   return { before: period === "day" ? "yesterday's" : `last ${period}'s`, after: "" };
 }
 
+const saysSlower = ({ before, after }: ChangeFinding) =>
+  (after.halfLife ?? Number.POSITIVE_INFINITY) > (before.halfLife ?? Number.POSITIVE_INFINITY);
+
 /**
  * "last week's surplus of 38 loans still adds about 19 in the week of 11 January", or `null` without such a shock.
- * With `lasting`, `null` also when it will have faded: for a sentence that says that shocks stay.
+ * With a change of persistence the shock fades as it does since the change; and `null` too when the change is to
+ * slower fading but the shock will have faded.
  */
-export function remainderSentence(speech: Speech, lasting = false): string | null {
-  const remainder = remainderOf(speech.facts);
+export function remainderSentence(speech: Speech, change?: ChangeFinding): string | null {
+  const remainder = remainderOf(speech.facts, change?.after.coefficients);
   if (!remainder) return null;
   const { shock, later, period } = remainder;
   const size = speech.roughly(Math.abs(shock));
@@ -66,6 +93,8 @@ export function remainderSentence(speech: Speech, lasting = false): string | nul
   const start = `${before} ${shock > 0 ? "surplus" : "shortfall"} of ${size}${after}`;
   const when = speech.periods.when(later.period);
   if (Math.abs(later.effect) < Math.abs(shock) / 20)
-    return lasting ? null : `${start} will have faded by ${speech.periods.inText(later.period)}`;
+    return change && saysSlower(change)
+      ? null
+      : `${start} will have faded by ${speech.periods.inText(later.period)}`;
   return `${start} still ${later.effect > 0 ? "adds" : "takes off"} about ${left} ${when}`;
 }

@@ -1,4 +1,5 @@
 import { changeAccount, monitorLines } from "./changeAccount.ts";
+import { lastPersistenceChange } from "./changeWords.ts";
 import type { Finding, SeriesFacts, Voice } from "./facts.ts";
 import { chanceSentences } from "./forecastSentences.ts";
 import { dateWriter } from "./instants.ts";
@@ -21,7 +22,7 @@ import {
   surpriseRemainder,
   surpriseSentence,
 } from "./otherFindings.ts";
-import { plainName } from "./plainText.ts";
+import { plainName, plainText } from "./plainText.ts";
 import { remainderSentence } from "./remainder.ts";
 import type { Speech } from "./speech.ts";
 import type { Statistics } from "./statistics.ts";
@@ -48,7 +49,7 @@ export function seriesAccount(
   const changes = facts.findings.flatMap((finding) =>
     finding.code === "change" && (finding.fresh || !onlyFresh) ? changeAccount(finding, speech, tell) : [],
   );
-  const remainder = remainderSentence(speech);
+  const remainder = remainderSentence(speech, lastPersistenceChange(facts) ?? undefined);
   return {
     changes,
     others: [
@@ -75,12 +76,15 @@ export function seriesAccount(
 
 const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
+/** The heaviest members of the average that makes the forecast, and what the rest carry together. */
 function candidateLine({ forecast }: SeriesFacts, tell: Statistics): string[] {
-  if (forecast.candidates.length === 0) return [];
-  const parts = forecast.candidates.map(
-    ({ name, weight }) => `${plainName(name, 60)} ${tell.coefficient(weight)}`,
-  );
-  return [`Forecast from: ${parts.join(", ")}.`];
+  const sorted = [...forecast.candidates].sort((one, other) => other.weight - one.weight);
+  const [shown, rest] = [sorted.slice(0, 3), sorted.slice(3)];
+  if (shown.length === 0) return [];
+  const parts = shown.map(({ name, weight }) => `${plainText(name, 80)} (${tell.coefficient(weight)})`);
+  const others = rest.reduce((sum, one) => sum + one.weight, 0);
+  const more = rest.length > 0 ? `; ${rest.length} more carry ${tell.coefficient(others)}` : "";
+  return [`Forecast from: ${parts.join("; ")}${more}.`];
 }
 
 function backTestLine({ backTest }: SeriesFacts, speech: Speech, tell: Statistics): string | null {

@@ -62,8 +62,7 @@ function said(finding: Finding, speech: Speech): [number, string][] {
   switch (finding.code) {
     case "change": {
       if (!finding.fresh) return [];
-      const slower = (finding.after.halfLife ?? Infinity) > (finding.before.halfLife ?? Infinity);
-      const rest = finding.kind === "persistence" ? remainderSentence(speech, slower) : null;
+      const rest = finding.kind === "persistence" ? remainderSentence(speech, finding) : null;
       const meaning = [changeMeaning(finding, speech), rest].filter((one) => one !== null && one !== "");
       return [
         ...line(rank.change, changeHeadline(finding, speech)),

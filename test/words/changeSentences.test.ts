@@ -4,7 +4,7 @@ import { businessMessage } from "../../lib/words/businessMessage.ts";
 import type { ChangeFinding } from "../../lib/words/changeWords.ts";
 import type { SeriesFacts } from "../../lib/words/facts.ts";
 import { changeOf, periodKind, seriesOf } from "../support/factsArbitrary.ts";
-import { britishVoice, loansRun } from "../support/factsFixture.ts";
+import { britishVoice, loansRun, quay, quayChange } from "../support/factsFixture.ts";
 import { number, readNumber } from "../support/readSentence.ts";
 
 // Each sentence is read back with a pattern of its own and compared with the finding it was made from.
@@ -169,5 +169,12 @@ describe("the sentence of a change", () => {
       }),
       { numRuns: 500 },
     );
+  });
+
+  it("told again in later runs says since when, and whether it is confirmed by now", () => {
+    const later = (status: "provisional" | "confirmed") =>
+      told({ ...quay, findings: [{ ...quayChange, noticed: "2026-10-05", status }] });
+    expect(later("confirmed")).toContain("it was 2 (first told for the week of 5 October; now confirmed).");
+    expect(later("provisional")).toContain("it was 2 (first told for the week of 5 October; an early sign).");
   });
 });

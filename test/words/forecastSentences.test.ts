@@ -5,7 +5,7 @@ import { chanceSentences, nextSentence, totalSentence } from "../../lib/words/fo
 import { remainderSentence } from "../../lib/words/remainder.ts";
 import { speechFor } from "../../lib/words/speech.ts";
 import { periodKind, seriesOf } from "../support/factsArbitrary.ts";
-import { branchFacts, britishVoice, quay } from "../support/factsFixture.ts";
+import { branchFacts, britishVoice, quay, quayChange } from "../support/factsFixture.ts";
 import { number, readNumber } from "../support/readSentence.ts";
 
 const steady = periodKind.chain((period) => seriesOf(period, fc.constant([])));
@@ -131,6 +131,20 @@ describe("the sentence of what is left of a shock", () => {
     // ln 1.1 is the first effect below half of ln 1.25: 180 · (1 − 1/1.1) = 16.4.
     expect(remainderSentence(speech(facts))).toBe(
       "last week's surplus of 40 loans still adds about 16 in the week of 14 December",
+    );
+  });
+
+  it("after a change follows the fading since the change, not that of the model over the whole past", () => {
+    // 0.89^6 = 0.497 is the first share at or below one half: the sixth coming week, that of 11 January.
+    const facts = {
+      ...branchFacts({ series: "Quay", level: 155, coefficient: 0.5, shockSize: 22, seed: 3, lastShock: 38 }),
+      findings: [quayChange],
+    };
+    expect(remainderSentence(speech(facts))).toBe(
+      "last week's surplus of 38 loans still adds about 19 in the week of 7 December",
+    );
+    expect(remainderSentence(speech(facts), quayChange)).toBe(
+      "last week's surplus of 38 loans still adds about 19 in the week of 11 January",
     );
   });
 
