@@ -22,6 +22,18 @@ export interface MonthNames {
  * Case, accents and points do not matter; a clear beginning of three letters or more will do.
  */
 export function monthNames(locale: string): MonthNames {
+  let names = made.get(locale);
+  if (!names) {
+    names = makeNames(locale);
+    made.set(locale, names);
+  }
+  return names;
+}
+
+/** Making the names takes longer than reading a small table. */
+const made = new Map<string, MonthNames>();
+
+function makeNames(locale: string): MonthNames {
   const months = new Map<string, number>();
   const weekdayNames = new Set<string>();
   for (const language of [locale, "en"]) {

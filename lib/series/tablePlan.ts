@@ -96,7 +96,11 @@ export function planTable(
   locale: string,
   complain: Complain,
 ): TablePlan {
-  if (settings.combine !== "count" && rows.length > 0 && rows.every(({ cells }) => cells.length < 2))
+  if (rows.length === 0)
+    throw new TableFault(
+      complain("empty", true, "the file holds only blank lines and comments", "export the table again"),
+    );
+  if (settings.combine !== "count" && rows.every(({ cells }) => cells.length < 2))
     throw new TableFault(
       complain(
         "one-column",
