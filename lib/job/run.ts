@@ -11,7 +11,7 @@ import type { Progress } from "./progress.ts";
 import { type RefitOptions, refitPortion } from "./refit.ts";
 import { readRunHistory } from "./runHistory.ts";
 import type { Settings } from "./settings.ts";
-import type { DeliveryRecord, Plan, PortionResult, RunSummary } from "./summary.ts";
+import type { DeliveryRecord, LastingSummary, Plan, PortionResult, RunSummary } from "./summary.ts";
 import type { Secrets, Webhook } from "./webhooks.ts";
 
 export interface RunOptions {
@@ -42,9 +42,6 @@ export interface RunOptions {
 
 /** The longest one webhook may keep a run waiting, retries included. */
 const postMilliseconds = 20_000;
-
-/** What `runs/<asOf>/summary.json` holds. */
-type LastingSummary = Omit<RunSummary, "durationMilliseconds" | "deliveries">;
 
 /** `asOf` lies before the newest run: its forecasts would be older than those that stand. */
 export class OutdatedRunError extends Error {

@@ -36,7 +36,7 @@ export interface DeliveryRecord {
   readonly reason?: string;
 }
 
-/** What a run did: written as `runs/<asOf>/summary.json` (without the duration, so that a retry writes the same bytes). */
+/** What a run did, for its caller. */
 export interface RunSummary {
   readonly schema: 1;
   readonly asOf: string;
@@ -52,3 +52,6 @@ export interface RunSummary {
   readonly report: string;
   readonly durationMilliseconds: number;
 }
+
+/** What `runs/<asOf>/summary.json` holds: nothing of the clock or of one try, so that a retry writes the same bytes. */
+export type LastingSummary = Omit<RunSummary, "durationMilliseconds" | "deliveries">;

@@ -15,9 +15,9 @@ const published = publishedSchemas();
 const settings = JSON.parse(published["settings.schema.json"]) as Schema;
 
 describe("published schemas", () => {
-  it("stand in schemas/ as `npm run schemas` writes them", () => {
+  it("stand in events/schemas/ as `npm run schemas` writes them", () => {
     for (const [name, text] of Object.entries(published))
-      expect(readFileSync(`schemas/${name}`, "utf8")).toBe(text);
+      expect(readFileSync(`events/schemas/${name}`, "utf8")).toBe(text);
   });
 
   it("describe every setting, so that an editor can explain it", () => {

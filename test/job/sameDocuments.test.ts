@@ -1,6 +1,7 @@
 import { createServer } from "node:http";
 import type { AddressInfo } from "node:net";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { modelDocumentSchema, summarySchema } from "../../lib/job/documentSchemas.ts";
 import { runJob } from "../../lib/job/run.ts";
 import type { Webhook } from "../../lib/job/webhooks.ts";
 import { FolderStore } from "../../lib/store/folderStore.ts";
@@ -50,6 +51,10 @@ describe("a run", () => {
     const second = await run(store);
     expect(second.deliveries).toMatchObject([{ status: "already-delivered" }]);
     expect(received).toHaveLength(1);
+    for (const [key, text] of Object.entries(before)) {
+      if (key.startsWith("models/")) modelDocumentSchema.parse(JSON.parse(text));
+      if (key.endsWith("/summary.json")) summarySchema.parse(JSON.parse(text));
+    }
     expect(await storeTexts(store)).toEqual(before);
   });
 
