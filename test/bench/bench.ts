@@ -1,20 +1,22 @@
 import { writeFileSync } from "node:fs";
 import { parseArgs } from "node:util";
+import { accuracyBench } from "./accuracyBench.ts";
 import type { BenchRow } from "./benchRow.ts";
 import { coreBench } from "./coreBench.ts";
 
 /** Each part of the bench by the name it is asked for. */
-const PARTS: Record<string, () => Promise<BenchRow[]>> = {
+const PARTS: Record<string, (data: string | undefined) => Promise<BenchRow[]>> = {
+  accuracy: accuracyBench,
   core: coreBench,
 };
 
 /**
- * `npm run bench -- [core | accuracy | drift | reading | job] [--json FILE]`: runs one part, or all, and prints a table
+ * `npm run bench -- [core | accuracy | drift | reading | job] [--data FILE] [--json FILE]`: runs one part, or all, and prints a table
  * of what was measured, against what, and the goal.
  */
 async function main(): Promise<void> {
   const { values: options, positionals } = parseArgs({
-    options: { json: { type: "string" } },
+    options: { json: { type: "string" }, data: { type: "string" } },
     allowPositionals: true,
   });
   const asked = positionals.length > 0 ? positionals : Object.keys(PARTS);
@@ -27,7 +29,7 @@ async function main(): Promise<void> {
       return;
     }
     console.log(`\n${name}`);
-    const found = await part();
+    const found = await part(options.data);
     console.log(found.map(line).join("\n"));
     rows.push(...found);
   }

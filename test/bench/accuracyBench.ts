@@ -1,0 +1,192 @@
+import { readFileSync } from "node:fs";
+import { performance } from "node:perf_hooks";
+import { selectOrder } from "../../lib/autoregression/selectOrder.ts";
+import { movingAverageWeights } from "../../lib/dynamics/movingAverageWeights.ts";
+import { accuracy } from "../../lib/forecast/accuracy.ts";
+import type { ForecastInterval, ForecastOptions } from "../../lib/forecast/forecast.ts";
+import { forecastSeries } from "../../lib/forecast/forecastSeries.ts";
+import { naive2 } from "../../lib/forecast/naive2.ts";
+import type { BenchRow } from "./benchRow.ts";
+
+type Period = NonNullable<ForecastOptions["period"]>;
+
+interface HeldOut {
+  readonly id: string;
+  readonly period: Period;
+  readonly values: readonly number[];
+  readonly holdout: readonly number[];
+}
+
+/** Season of the scaled measures and of Naive2, as the M4 competition set it (week and year: none). */
+const SEASON: Readonly<Record<Period, number>> = {
+  hour: 24,
+  day: 1,
+  week: 1,
+  month: 12,
+  quarter: 4,
+  year: 1,
+};
+const NAMES: Readonly<Record<string, Period>> = {
+  hourly: "hour",
+  daily: "day",
+  weekly: "week",
+  monthly: "month",
+  quarterly: "quarter",
+  yearly: "year",
+};
+
+/** Sums over the series of one period. */
+interface Tally {
+  series: number;
+  values: number;
+  errors: { percentage: number; scaled: number };
+  ofMean: { percentage: number; scaled: number };
+  naive: { percentage: number; scaled: number };
+  plain: { percentage: number; scaled: number; interval: number };
+  interval: number;
+  inside80: number;
+  inside95: number;
+  milliseconds: number[];
+}
+
+/**
+ * Accuracy of `forecastSeries` on held-out ends of series: JSON lines `{id, period, values, holdout}` at `path`. By
+ * period: sMAPE, MASE and OWA (mean of both over Naive2's) of the median, which is what these measures reward, and
+ * of the mean; mean scaled interval score and coverage at 80 and 95; median time a series. The plain rival is one
+ * Burg autoregression of raw first differences by AICc with its Gaussian interval.
+ */
+export async function accuracyBench(path: string | undefined): Promise<BenchRow[]> {
+  if (path === undefined) {
+    console.log("  left out: give the series with --data FILE");
+    return [];
+  }
+  const tallies = new Map<Period, Tally>();
+  for (const line of readFileSync(path, "utf8").split("\n")) {
+    if (line.trim() === "") continue;
+    const one = JSON.parse(line) as HeldOut;
+    const period = NAMES[one.period] ?? one.period;
+    const tally = tallies.get(period) ?? emptyTally();
+    tallies.set(period, tally);
+    score(tally, one, period);
+  }
+  return [...tallies].flatMap(([period, tally]) => rowsOf(period, tally));
+}
+
+function emptyTally(): Tally {
+  const none = { percentage: 0, scaled: 0 };
+  return {
+    series: 0,
+    values: 0,
+    errors: { ...none },
+    ofMean: { ...none },
+    naive: { ...none },
+    plain: { ...none, interval: 0 },
+    interval: 0,
+    inside80: 0,
+    inside95: 0,
+    milliseconds: [],
+  };
+}
+
+function score(tally: Tally, { values, holdout }: HeldOut, period: Period): void {
+  const season = SEASON[period];
+  const horizon = holdout.length;
+  const scaling = { training: values, season };
+  const started = performance.now();
+  const forecast = forecastSeries(values, { horizon, levels: [80, 95], period });
+  tally.milliseconds.push(performance.now() - started);
+  const plain = plainForecast(values, horizon);
+  tally.series++;
+  add(tally.errors, holdout, forecast.median, scaling);
+  add(tally.ofMean, holdout, forecast.point, scaling);
+  add(tally.naive, holdout, naive2(values, season, horizon), scaling);
+  add(tally.plain, holdout, plain.point, scaling);
+  const [narrow, wide] = forecast.intervals;
+  tally.interval += accuracy.meanScaledIntervalScore(holdout, wide, scaling);
+  tally.plain.interval += accuracy.meanScaledIntervalScore(holdout, plain.interval, scaling);
+  holdout.forEach((value, h) => {
+    tally.values++;
+    if (value >= narrow.low[h] && value <= narrow.high[h]) tally.inside80++;
+    if (value >= wide.low[h] && value <= wide.high[h]) tally.inside95++;
+  });
+}
+
+function add(
+  sum: { percentage: number; scaled: number },
+  actual: readonly number[],
+  forecast: Float64Array,
+  scaling: { training: readonly number[]; season: number },
+): void {
+  sum.percentage += accuracy.symmetricMeanAbsolutePercentageError(actual, forecast);
+  sum.scaled += accuracy.meanAbsoluteScaledError(actual, forecast, scaling);
+}
+
+/** One Burg autoregression of first differences, summed up, with the Gaussian 95 % interval of its shocks alone. */
+function plainForecast(
+  values: readonly number[],
+  horizon: number,
+): { point: Float64Array; interval: ForecastInterval } {
+  const steps = values.slice(1).map((value, t) => value - values[t]);
+  const last = values[values.length - 1];
+  const level = new Float64Array(horizon).fill(last);
+  const flat = steps.every((step) => step === steps[0]);
+  if (flat) return { point: level, interval: { level: 95, low: level, high: level } };
+  const maxOrder = Math.min(60, Math.floor(steps.length / 3));
+  const { fit } = selectOrder(steps, { maxOrder, criterion: "aicc", method: "burg" });
+  const past = steps.map((step) => step - fit.mean);
+  const weights = movingAverageWeights(fit.coefficients, horizon);
+  const point = new Float64Array(horizon);
+  const low = new Float64Array(horizon);
+  const high = new Float64Array(horizon);
+  let level95 = last;
+  let response = 0;
+  let power = 0;
+  for (let h = 0; h < horizon; h++) {
+    let step = 0;
+    for (let j = 0; j < fit.order; j++) step += fit.coefficients[j] * (past[past.length - 1 - j] ?? 0);
+    past.push(step);
+    level95 += step + fit.mean;
+    response += weights[h];
+    power += response * response;
+    const reach = 1.959963984540054 * Math.sqrt(fit.innovationVariance * power);
+    point[h] = level95;
+    low[h] = level95 - reach;
+    high[h] = level95 + reach;
+  }
+  return { point, interval: { level: 95, low, high } };
+}
+
+function rowsOf(period: Period, tally: Tally): BenchRow[] {
+  const { series, errors, ofMean, naive, plain } = tally;
+  const overall = (sum: { percentage: number; scaled: number }): number =>
+    (sum.percentage / naive.percentage + sum.scaled / naive.scaled) / 2;
+  const times = tally.milliseconds.sort((a, b) => a - b);
+  const row = (
+    name: string,
+    value: number,
+    unit = "",
+    against = "",
+    ratio = Number.NaN,
+    goal = "",
+  ): BenchRow => ({
+    name: `${period}, ${series} series: ${name}`,
+    value,
+    unit,
+    against,
+    ratio,
+    goal,
+  });
+  const plainScore = tally.plain.interval / series;
+  const intervalScore = tally.interval / series;
+  return [
+    row("OWA", overall(errors), "", "plain Burg on differences", overall(errors) / overall(plain)),
+    row("OWA of the mean", overall(ofMean)),
+    row("sMAPE", errors.percentage / series, "%"),
+    row("MASE", errors.scaled / series),
+    row("MSIS at 95", intervalScore, "", "plain Gaussian interval", intervalScore / plainScore, "below 1"),
+    row("coverage of 80", (100 * tally.inside80) / tally.values, "%", "", Number.NaN, "78.5 to 81.5"),
+    row("coverage of 95", (100 * tally.inside95) / tally.values, "%", "", Number.NaN, "93.5 to 96.5"),
+    row("median time a series", times[times.length >> 1], "ms"),
+    row("longest time a series", times[times.length - 1], "ms"),
+  ];
+}
