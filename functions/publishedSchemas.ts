@@ -27,11 +27,4 @@ export function publishedSchemas(): Record<string, string> {
   };
 }
 
-/** Short lists on one line, as the formatter of this repository writes them. */
-function formatted(value: unknown): string {
-  const text = JSON.stringify(value, null, 2).replace(/\[\n\s+([^[\]{}]*?)\n\s+\]/g, (_, entries: string) => {
-    const inline = entries.replace(/\n\s+/g, " ");
-    return `[${inline}]`;
-  });
-  return `${text}\n`;
-}
+const formatted = (value: unknown) => `${JSON.stringify(value, null, 2)}\n`;
