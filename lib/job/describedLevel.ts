@@ -7,21 +7,21 @@ export interface DescribedLevel {
   readonly standardError: number;
 }
 
-/** The model's terms (level, trend, season) over `count` periods from the first value on, on the model's scale. */
-export function describedTerms(model: DescribingModel, length: number, count: number): Float64Array {
-  const terms = model.fit.regression?.coefficients;
-  const sums = new Float64Array(count);
-  if (!terms || terms.length === 0) return sums.fill(model.fit.mean);
-  const columns = describingColumns(model.trend, model.season, 0, count, length);
-  for (const [index, column] of columns.entries())
-    for (let time = 0; time < count; time++) sums[time] += terms[index] * column[time];
-  return sums;
-}
-
-/** Departures of the values from the model's terms, on its scale: what the autoregression describes. Gaps stay `NaN`. */
+/**
+ * Departures of the values from the model's terms (level, trend, season), on its scale: what the autoregression
+ * describes. Gaps stay `NaN`. The model was fitted to the stretch that ends with the last observed value.
+ */
 export function departures(model: DescribingModel, values: Float64Array): Float64Array {
-  const terms = describedTerms(model, values.length, values.length);
-  return values.map((value, time) => (model.scale === "log" ? Math.log(value) : value) - terms[time]);
+  const { fit, trend, season } = model;
+  const span = fit.residuals.length;
+  const offset = values.findLastIndex((value) => !Number.isNaN(value)) + 1 - span;
+  const terms = fit.regression?.coefficients ?? new Float64Array(0);
+  const columns = terms.length > 0 ? describingColumns(trend, season, -offset, values.length, span) : [];
+  const levelAt = (time: number) =>
+    terms.length > 0
+      ? columns.reduce((sum, column, index) => sum + terms[index] * column[time], 0)
+      : fit.mean;
+  return values.map((value, time) => (model.scale === "log" ? Math.log(value) : value) - levelAt(time));
 }
 
 /**
