@@ -1,22 +1,18 @@
 import { invertPositive } from "../numeric/cholesky.ts";
-import { minimise } from "../numeric/minimise.ts";
-import { burgReflections, sharedReflections } from "./burg.ts";
 import { requireValues } from "./checks.ts";
 import type { AutoregressiveFit } from "./fit.ts";
 import { isConstant, type LikelihoodDesign, likelihoodDesign } from "./likelihoodDesign.ts";
 import { logLikelihood } from "./logLikelihood.ts";
+import { maximise } from "./maximise.ts";
 import { observedInformation, regressionCovariance, sandwich } from "./observedInformation.ts";
 import { coefficientsToPartials } from "./partials.ts";
 import { processAutocovariances } from "./processAutocovariances.ts";
 import { ProfileLikelihood } from "./profileLikelihood.ts";
 import { summarise } from "./summarise.ts";
 
-/** |artanh π| stays below this, which keeps 1 − π² above 1e-8. */
-const EDGE = 10;
-
 /**
- * Exact Gaussian maximum likelihood (see `ProfileLikelihood`), started at Burg's estimate, and at no dependence
- * too where gaps or few values could hide the better of two maxima. Arguments are taken as checked by
+ * Exact Gaussian maximum likelihood (see `ProfileLikelihood`), started at Burg's estimate and, with gaps or few
+ * values, at others too. Arguments are taken as checked by
  * `fitAutoregression`, apart from the regressors.
  */
 export function fitByMaximumLikelihood(
@@ -80,20 +76,6 @@ function checkRegressors(regressors: readonly ArrayLike<number>[], length: numbe
       );
     }
   });
-}
-
-/** artanh of the partial autocorrelations at the highest likelihood found. */
-function maximise(likelihood: ProfileLikelihood, design: LikelihoodDesign): Float64Array {
-  const { order } = likelihood;
-  if (order === 0) return new Float64Array(0);
-  const workspace = sharedReflections(design.length, order);
-  burgReflections(design.series[0], 0, order, workspace);
-  const starts = [workspace.partials.slice(0, order).map((partial) => Math.atanh(0.999 * partial))];
-  if (design.missing.length > 0 || design.observations < 4 * (order + 4))
-    starts.push(new Float64Array(order));
-  const evaluate = (point: Float64Array, gradient: Float64Array) => likelihood.evaluate(point, gradient);
-  const found = starts.map((start) => minimise(evaluate, start, { bound: EDGE }));
-  return found.reduce((best, next) => (next.value < best.value ? next : best)).point;
 }
 
 /** Coefficients of the columns as given, on the scale of the values. */
