@@ -4,7 +4,7 @@
  */
 export const style = `
 :root{--paper:#f6f4ee;--card:#fffdf8;--ink:#12262e;--soft:#4a5b62;--rule:#d9d5c9;--grid:#ebe7dc;--water:#0b5563;--water-pale:#cfe3e4;--sand:#a8480f;--fan1:#f6dcc6;--fan2:#edbf99;--stone:#5f6b70;--alarm:#9b1c3f;--p1:#0b3d48;--p2:#2f7f8d;--p3:#8abfc5;--p4:#e4dccb}
-@media(prefers-color-scheme:dark){:root{--paper:#0d181d;--card:#13232a;--ink:#e8ecea;--soft:#a9b9bd;--rule:#2c4049;--grid:#20333b;--water:#74c7d3;--water-pale:#1c434b;--sand:#f2a76b;--fan1:#45301f;--fan2:#6b4526;--stone:#a3afb3;--alarm:#ff8fa8;--p1:#d8f1f3;--p2:#74c7d3;--p3:#3a8391;--p4:#3f4b4c}}
+@media screen and (prefers-color-scheme:dark){:root{--paper:#0d181d;--card:#13232a;--ink:#e8ecea;--soft:#a9b9bd;--rule:#2c4049;--grid:#20333b;--water:#74c7d3;--water-pale:#1c434b;--sand:#f2a76b;--fan1:#45301f;--fan2:#6b4526;--stone:#a3afb3;--alarm:#ff8fa8;--p1:#d8f1f3;--p2:#74c7d3;--p3:#3a8391;--p4:#3f4b4c}}
 *{box-sizing:border-box}
 html{-webkit-text-size-adjust:100%}
 body{margin:0;background:var(--paper);color:var(--ink);font:16px/1.5 system-ui,-apple-system,"Segoe UI",sans-serif;overflow-wrap:anywhere}
@@ -72,7 +72,7 @@ figcaption{font-weight:600;font-size:.95rem;margin-bottom:.7rem}
 .frame svg .fan{stroke:none}.frame svg .fan1{fill:var(--fan1)}.frame svg .fan2{fill:var(--fan2)}
 .limit{stroke:var(--alarm);stroke-width:1.5;stroke-dasharray:2 3}
 .half{stroke:var(--stone);stroke-width:1.5;stroke-dasharray:2 3}
-.boundary{stroke:var(--alarm);stroke-width:1.8}
+.boundary{stroke:var(--alarm);stroke-width:2.4;stroke-dasharray:9 4}
 .reference{stroke:var(--stone);stroke-width:1.8;stroke-dasharray:6 4}
 .now{stroke:var(--rule);stroke-width:1}
 .zero{stroke:var(--stone);stroke-width:1}
@@ -93,7 +93,7 @@ figcaption{font-weight:600;font-size:.95rem;margin-bottom:.7rem}
 .legend i.coming{border-top:2px dashed var(--sand)}
 .legend i.limit{border-top:2px dotted var(--alarm)}
 .legend i.half{border-top:2px dotted var(--stone)}
-.legend i.boundary{border-top-color:var(--alarm)}
+.legend i.boundary{border-top:2.5px dashed var(--alarm)}
 .legend i.reference{border-top:2px dashed var(--stone)}
 .legend i.stem{width:.2rem;height:.8rem;border:0;background:var(--water);vertical-align:-.1rem}
 .legend i.dot{width:.55rem;height:.55rem;border-radius:50%;background:var(--water)}
@@ -121,6 +121,6 @@ header,main,footer{padding-left:.9rem;padding-right:.9rem}
 @media print{
 :root{--paper:#fff;--card:#fff;--ink:#000;--soft:#333}
 body{font-size:10.5pt}.series{border:0;padding:0;content-visibility:visible}.plot{break-inside:avoid}details:not([open]){display:none}
-.series{break-before:page}*{print-color-adjust:exact;-webkit-print-color-adjust:exact}
+.series{break-before:page}.back{display:none}.pictures{grid-template-columns:repeat(3,minmax(0,1fr));gap:.4rem 1.2rem}.pictures .body svg{height:calc(var(--height)*.75)}.plot{font-size:.9em}*{print-color-adjust:exact;-webkit-print-color-adjust:exact}
 }
 `;
