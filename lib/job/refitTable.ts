@@ -7,6 +7,7 @@ import { carryOver } from "./carryOver.ts";
 import { dataFindings } from "./dataFindings.ts";
 import type { ProblemsDocument } from "./digest.ts";
 import { createDocument, encodeText } from "./documents.ts";
+import { tellDiscoveries } from "./falseDiscoveries.ts";
 import { forecastCsv } from "./forecastCsv.ts";
 import { forecastKey, latestForecastKey, modelKey, problemsKey } from "./keys.ts";
 import {
@@ -87,6 +88,14 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
   const earlier = new Map(
     previous?.series.map((stored) => [stored.facts.series, { asOf: previous.asOf, stored }]),
   );
+  const accounts = series.map((one) =>
+    refitOrCarry(
+      one,
+      { asOf, table, settings, tableSettings, events, previous: earlier.get(one.name) },
+      reading,
+    ),
+  );
+  const { falseDiscoveryRate } = settings;
   const made: ModelDocument = {
     schema: 1,
     table,
@@ -94,13 +103,7 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     source: source.digest,
     reading,
     problems,
-    series: series.map((one) =>
-      refitOrCarry(
-        one,
-        { asOf, table, settings, tableSettings, events, previous: earlier.get(one.name) },
-        reading,
-      ),
-    ),
+    series: falseDiscoveryRate === undefined ? accounts : tellDiscoveries(accounts, falseDiscoveryRate),
   };
   const model = await createDocument(store, modelKey(table, asOf), made);
   await writeForecasts(store, model, shelf);
