@@ -28,10 +28,14 @@ export interface Identity {
 
 const path = "/hooks/T00/B00/pathsecret";
 
-/** Starts a real HTTP (or, with an identity, HTTPS) server that ends with the test. Answers 200 by default. */
+/**
+ * Starts a real HTTP (or, with an identity, HTTPS) server that ends with the test, or when `atEnd` says. Answers 200
+ * by default.
+ */
 export async function receiver(
   answer: Answer = (response) => response.writeHead(200).end("ok"),
   identity?: Identity,
+  atEnd: (work: () => void) => void = onTestFinished,
 ): Promise<Receiver> {
   const received: Received[] = [];
   const listener = (request: IncomingMessage, response: ServerResponse) => {
@@ -50,7 +54,7 @@ export async function receiver(
   };
   const server: Server = identity ? createSecureServer(identity, listener) : createServer(listener);
   await new Promise<void>((resolve) => server.listen(0, "127.0.0.1", resolve));
-  onTestFinished(() => {
+  atEnd(() => {
     server.close();
     server.closeAllConnections();
   });
