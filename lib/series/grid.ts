@@ -1,7 +1,7 @@
 import type { Calendar } from "./calendar.ts";
 import { isoDay } from "./civil.ts";
 import { currentPeriod } from "./currentPeriod.ts";
-import { ordinalOf, ordinalStart, weekdays } from "./periods.ts";
+import { isoInstant, ordinalOf, ordinalStart, weekdays } from "./periods.ts";
 
 /** The dates of a table on the count of its periods. */
 export interface Grid {
@@ -25,7 +25,7 @@ export function ordinalAt({ every, weekStart, phase }: Calendar, at: number): nu
 /** Start of a period, as an ISO date or instant. */
 export function startOf({ every, weekStart, phase }: Calendar, ordinal: number): string {
   if (every !== "hour" || phase === 0) return ordinalStart(every, ordinal, weekStart);
-  return `${new Date(ordinal * hourLength + phase).toISOString().slice(0, 19)}Z`;
+  return isoInstant(ordinal * hourLength + phase);
 }
 
 export function layGrid(at: Float64Array, calendar: Calendar, asOf: Date | string, timeZone: string): Grid {

@@ -26,7 +26,11 @@ export function sampleRows(text: string, delimiter: string, whole: boolean): Sam
     comment: (comment, line) => void comments.push({ line, text: comment }),
   });
   splitter.push(text);
-  const { unclosedQuote } = whole ? splitter.end() : {};
+  // In a head cut off, a last row of half its length is no row.
+  const { line, length } = splitter.pending();
+  const { unclosedQuote } = whole
+    ? splitter.end()
+    : { unclosedQuote: length > text.length / 2 ? line : undefined };
   return { rows, comments, unclosedQuote };
 }
 

@@ -37,9 +37,12 @@ export function ordinalOf(period: Period, at: number, weekStart: number): number
   return Math.floor((year * 12 + month - 1) / monthsIn[period]);
 }
 
+/** An instant to the second. */
+export const isoInstant = (milliseconds: number) => `${new Date(milliseconds).toISOString().slice(0, 19)}Z`;
+
 /** The start of the period with that ordinal, as an ISO date (an instant for hours). */
 export function ordinalStart(period: Period, ordinal: number, weekStart: number): string {
-  if (period === "hour") return `${new Date(ordinal * hourLength).toISOString().slice(0, 19)}Z`;
+  if (period === "hour") return isoInstant(ordinal * hourLength);
   if (period === "day") return isoDate(ordinal);
   if (period === "week") return isoDate(ordinal * 7 - 3 + weekStart);
   const months = ordinal * monthsIn[period];
@@ -55,13 +58,14 @@ function atOf(text: string, period: Period): number {
 
 /**
  * The start of the period `index` steps after the one that starts at `start`: an ISO date, or for hours an instant.
- * Hours are 60 minutes of elapsed time, whatever a local clock does. Months, quarters and years start on a first.
+ * Hours are 60 minutes of elapsed time from `start`, whatever a local clock does. Months, quarters and years start on a first.
  *
  * @example periodStart("2026-11-30", "week", 1) // "2026-12-07"
  * @throws RangeError when `start` is not a date
  */
 export function periodStart(start: string, period: Period, index: number): string {
   const at = atOf(start, period);
+  if (period === "hour") return isoInstant(at + index * hourLength);
   const weekStart = period === "week" ? weekday(at) : 0;
   return ordinalStart(period, ordinalOf(period, at, weekStart) + index, weekStart);
 }
@@ -74,6 +78,7 @@ export function periodStart(start: string, period: Period, index: number): strin
  */
 export function periodIndex(start: string, period: Period, date: string): number {
   const at = atOf(start, period);
+  if (period === "hour") return Math.floor((atOf(date, period) - at) / hourLength);
   const weekStart = period === "week" ? weekday(at) : 0;
   return ordinalOf(period, atOf(date, period), weekStart) - ordinalOf(period, at, weekStart);
 }

@@ -15,6 +15,8 @@ export function periodsLate(
   asOf: Date | string,
   timeZone: string,
 ): number {
+  if (period === "hour")
+    return Math.max(0, periodIndex(lastPeriod, period, new Date(asOf).toISOString()) - 1);
   const weekStart = period === "week" ? weekdays[weekday(isoDay(lastPeriod))] : "monday";
   const current = currentPeriod(asOf, period, timeZone, weekStart);
   return Math.max(0, periodIndex(lastPeriod, period, current) - 1);

@@ -1,6 +1,7 @@
-import { parquetMetadataAsync, parquetReadObjects, parquetSchema } from "hyparquet";
+import * as zlib from "node:zlib";
+import { type Compressors, parquetMetadataAsync, parquetReadObjects, parquetSchema } from "hyparquet";
 import type { Row } from "./layout.ts";
-import { type Complain, quoted } from "./problems.ts";
+import type { Complain } from "./problems.ts";
 import { openSession } from "./session.ts";
 import { TableFault } from "./tableFault.ts";
 import { planTable } from "./tablePlan.ts";
@@ -11,6 +12,14 @@ import type { TableSettings } from "./tableSettings.ts";
 const headRows = 20_000;
 /** Rows read at a time. */
 const batchRows = 50_000;
+
+// Snappy and plain pages are read by hyparquet itself; Zstandard needs Node 22.15 or newer.
+const { zstdDecompressSync } = zlib as { zstdDecompressSync?: (bytes: Uint8Array) => Uint8Array };
+const compressors: Compressors = {
+  GZIP: (bytes) => zlib.gunzipSync(bytes),
+  BROTLI: (bytes) => zlib.brotliDecompressSync(bytes),
+  ...(zstdDecompressSync ? { ZSTD: (bytes: Uint8Array) => zstdDecompressSync(bytes) } : {}),
+};
 
 /** A value as the text a CSV export would have written: dates and instants as ISO, numbers in full. */
 function cellText(value: unknown): string {
@@ -39,42 +48,41 @@ export async function readParquet(
   complain: Complain,
 ): Promise<TableResult> {
   const file = bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength) as ArrayBuffer;
-  const broken = (error: unknown) =>
-    new TableFault(
-      complain(
-        "bad-parquet",
-        true,
-        `the Parquet file cannot be opened (${error instanceof Error ? error.message : quoted(String(error))})`,
-        "write it again, or save it as CSV",
-      ),
+  /** What the library throws at a broken file is the file's fault; anything else would be ours. */
+  const reading = async <T>(work: () => Promise<T>): Promise<T> => {
+    try {
+      return await work();
+    } catch (error) {
+      throw new TableFault(
+        complain(
+          "bad-parquet",
+          true,
+          `the Parquet file cannot be opened (${error instanceof Error ? error.message : String(error)})`,
+          "write it again, compressed with Snappy or not at all, or save it as CSV",
+        ),
+      );
+    }
+  };
+  const metadata = await reading(() => parquetMetadataAsync(file));
+  const names = parquetSchema(metadata).children.map(({ element }) => element.name);
+  const count = Number(metadata.num_rows);
+  const rowsFrom = async (from: number, size: number): Promise<Row[]> => {
+    const rowEnd = Math.min(count, from + size);
+    const objects = await reading(() =>
+      parquetReadObjects({ file, metadata, rowStart: from, rowEnd, compressors }),
     );
-  try {
-    const metadata = await parquetMetadataAsync(file);
-    const names = parquetSchema(metadata).children.map(({ element }) => element.name);
-    const count = Number(metadata.num_rows);
-    const rowsFrom = async (from: number, size: number): Promise<Row[]> => {
-      const objects = await parquetReadObjects({
-        file,
-        metadata,
-        rowStart: from,
-        rowEnd: Math.min(count, from + size),
-      });
-      return objects.map((object, at) => ({
-        line: from + at + 2,
-        cells: names.map((name) => cellText(object[name])),
-      }));
-    };
-    const head = await rowsFrom(0, headRows);
-    const sample = { rows: [{ line: 1, cells: names }, ...head], comments: [] };
-    const fixed = { ...settings, headerLine: 1, decimal: "." as const };
-    const plan = planTable(sample, count <= headRows, ",", fixed, context.locale ?? "en-GB", complain);
-    const session = openSession(plan, fixed, context, complain);
-    for (const { cells, line } of head) session.row(cells, line);
-    for (let from = headRows; from < count; from += batchRows)
-      for (const { cells, line } of await rowsFrom(from, batchRows)) session.row(cells, line);
-    return session.finish({ format: "parquet", compressed: false, encoding: null });
-  } catch (error) {
-    if (error instanceof TableFault) throw error;
-    throw broken(error);
-  }
+    return objects.map((object, at) => ({
+      line: from + at + 2,
+      cells: names.map((name) => cellText(object[name])),
+    }));
+  };
+  const head = await rowsFrom(0, headRows);
+  const sample = { rows: [{ line: 1, cells: names }, ...head], comments: [] };
+  const fixed = { ...settings, headerLine: 1, decimal: "." as const };
+  const plan = planTable(sample, count <= headRows, ",", fixed, context.locale ?? "en-GB", complain);
+  const session = openSession(plan, fixed, context, complain);
+  for (const { cells, line } of head) session.row(cells, line);
+  for (let from = headRows; from < count; from += batchRows)
+    for (const { cells, line } of await rowsFrom(from, batchRows)) session.row(cells, line);
+  return session.finish({ format: "parquet", compressed: false, encoding: null });
 }

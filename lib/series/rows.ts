@@ -8,6 +8,8 @@ export interface RowSplitter {
   push(text: string): void;
   /** Hands out what is left. The line of a quote that never closes is returned, and its row is not handed out. */
   end(): { readonly unclosedQuote?: number };
+  /** The row that has begun and not ended yet. */
+  pending(): { readonly line: number; readonly length: number };
 }
 
 const quoteCode = 34;
@@ -64,6 +66,7 @@ export function createRowSplitter(delimiter: string, handler: RowHandler): RowSp
       const buffer = rest === "" ? text : rest + text;
       rest = buffer.slice(take(buffer, false));
     },
+    pending: () => ({ line, length: rest.length }),
     end() {
       if (unclosedQuote === undefined && rest !== "") take(rest, true);
       rest = "";
