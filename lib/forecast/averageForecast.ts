@@ -1,5 +1,5 @@
 import { backTestOf } from "./backTest.ts";
-import { addOutcomes, type CalibrationEvidence, spreadFactor } from "./calibration.ts";
+import { addOutcomes, type Calibration, type CalibrationEvidence, calibrate } from "./calibration.ts";
 import { type Candidate, fitBank, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
 import { type CombinedForecast, combineBank, forecastWorkspace, rollBank } from "./combinedForecast.ts";
 import { dampOutliers } from "./dampOutliers.ts";
@@ -8,7 +8,7 @@ import { fillGaps } from "./fillGaps.ts";
 import type { BackTest } from "./forecast.ts";
 import type { MemberFit } from "./memberFit.ts";
 import type { PredictiveSpread } from "./predictiveSpread.ts";
-import { rollingOrigins } from "./rollingOrigins.ts";
+import { horizonsCovered, rollingOrigins } from "./rollingOrigins.ts";
 import { workingScales } from "./workingScale.ts";
 
 /** The average of the whole bank at the end of the series, with what the past says about it. */
@@ -20,9 +20,7 @@ export interface AverageForecast {
   readonly paths: Float64Array;
   readonly shares: Float64Array;
   readonly spread: PredictiveSpread;
-  readonly factor: number;
-  /** Degrees of freedom of the tails. */
-  readonly freedom: number;
+  readonly calibration: Calibration;
   readonly backTest: BackTest;
   readonly outliers: readonly number[];
   readonly steps: readonly number[];
@@ -70,11 +68,11 @@ export function averageForecast(
     const origin = origins[o];
     const at = combineBank(rolled.banks[o], candidates, scales, rolled, o, origin.steps);
     past.push(at);
-    addOutcomes(evidence, at.spread, values, origin.count, 1);
+    addOutcomes(evidence, at.spread, values, origin.count);
   }
   const terms = meanTerms(bank.fits, combined.shares);
   const prior = Math.sqrt((observed.length + terms) / Math.max(1, observed.length - terms));
-  const factor = spreadFactor(evidence, prior);
+  const calibration = calibrate(evidence, prior, horizonsCovered(origins, count), observed.length);
   return {
     candidates,
     scales,
@@ -82,9 +80,8 @@ export function averageForecast(
     paths: bank.paths,
     shares: combined.shares,
     spread: combined.spread,
-    factor,
-    freedom: Math.max(4, observed.length - terms),
-    backTest: backTestOf(values, past, origins, season, horizon, factor),
+    calibration,
+    backTest: backTestOf(values, past, origins, season, horizon, calibration),
     outliers: [...outliers].sort((a, b) => a - b),
     steps: [...steps].sort((a, b) => a - b),
   };

@@ -1,16 +1,17 @@
+import { type Calibration, calibratedReach } from "./calibration.ts";
 import type { CombinedForecast } from "./combinedForecast.ts";
 import type { BackTest } from "./forecast.ts";
 import { naiveForecast } from "./naiveForecast.ts";
 import { spreadQuantile } from "./predictiveSpread.ts";
 import type { Origin } from "./rollingOrigins.ts";
 
-/** Half-width of a central 80 % range in standard deviations. */
-const REACH_80 = 1.2815515655446004;
+/** Normal quantile of a central 80 % range. */
+const NORMAL_80 = 1.2815515655446004;
 
 /**
  * Rolling-origin record of the average: each past forecast was combined with weights that did not see its outcome.
- * The naive rival repeats the last value or, where that did better over all, the last season. `factor` is the
- * calibrated factor on the spread, for the coverage of the 80 % range.
+ * The naive rival repeats the last value or, where that did better over all, the last season. `calibration`
+ * is that of the forecast, for the coverage of the 80 % range.
  */
 export function backTestOf(
   values: Float64Array,
@@ -18,7 +19,7 @@ export function backTestOf(
   origins: readonly Origin[],
   season: number,
   horizon: number,
-  factor: number,
+  calibration: Calibration,
 ): BackTest {
   const model = new Float64Array(horizon);
   const plain = new Float64Array(horizon);
@@ -39,7 +40,7 @@ export function backTestOf(
       seasonal[h] += Math.abs(actual - same[h]);
       seen[h]++;
       total++;
-      const reach = REACH_80 * factor;
+      const reach = calibratedReach(calibration, NORMAL_80);
       if (actual >= spreadQuantile(spread, h, -reach) && actual <= spreadQuantile(spread, h, reach)) inside++;
     }
   }

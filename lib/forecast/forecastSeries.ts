@@ -1,5 +1,6 @@
 import { requireValues, requireWhole } from "../autoregression/checks.ts";
 import { type AverageForecast, averageForecast } from "./averageForecast.ts";
+import { calibratedReach } from "./calibration.ts";
 import { candidateName } from "./candidates.ts";
 import { describeSeries, type SeriesDescription } from "./describingModel.ts";
 import type {
@@ -15,7 +16,6 @@ import { spreadQuantile } from "./predictiveSpread.ts";
 import { seasonLengths } from "./seasonLengths.ts";
 import { intermittentLevel, lastLevel, simpleForecast, steadyLevel, within } from "./simpleForecast.ts";
 import { spreadMean } from "./spreadMean.ts";
-import { studentFromNormal } from "./student.ts";
 import { totalQuantile } from "./totals.ts";
 import { trivialDescription } from "./trivialDescription.ts";
 
@@ -119,13 +119,13 @@ function assemble(
   const { horizon, levels, bounds } = options;
   const steps = Array.from({ length: horizon }, (_, h) => h);
   const reach = (level: number): number =>
-    average.factor * studentFromNormal(normalQuantile(0.5 + level / 200), average.freedom);
+    calibratedReach(average.calibration, normalQuantile(0.5 + level / 200));
   const median = Float64Array.from(steps, (h) => within(average.spread.medians[late + h], bounds));
   const intervals = orderedIntervals(levels, median, (level, h, side) =>
     within(spreadQuantile(average.spread, late + h, side * reach(level)), bounds),
   );
   const point = Float64Array.from(steps, (h) => {
-    let mean = within(spreadMean(average.spread, late + h, average.factor), bounds);
+    let mean = within(spreadMean(average.spread, late + h, average.calibration.narrow), bounds);
     // A skewed mean may leave a narrow central range; what is shown must stay inside it.
     for (const { low, high } of intervals) mean = Math.min(high[h], Math.max(low[h], mean));
     return mean;

@@ -1,10 +1,10 @@
 import type { AverageForecast } from "./averageForecast.ts";
+import { normalOfReach } from "./calibration.ts";
 import type { ForecastOptions, LimitChance } from "./forecast.ts";
 import { shockResponse } from "./memberFit.ts";
 import { normalProbability } from "./normal.ts";
 import { normalDraws } from "./normalDraws.ts";
 import { spreadScore } from "./predictiveSpread.ts";
-import { normalFromStudent } from "./student.ts";
 
 /** Simulated paths for the chance that any period passes: its Monte Carlo error is at most 0.8 points. */
 const PATHS = 4000;
@@ -36,8 +36,8 @@ function chanceOf(
   // How many normal deviations the limit lies on the passing side of the median.
   const away = new Float64Array(horizon);
   for (let h = 0; h < horizon; h++) {
-    const score = spreadScore(average.spread, h, limit) / average.factor;
-    away[h] = normalFromStudent(score, average.freedom) * (direction === "above" ? 1 : -1);
+    const reach = spreadScore(average.spread, h, limit);
+    away[h] = normalOfReach(average.calibration, reach) * (direction === "above" ? 1 : -1);
   }
   const each = away.subarray(from).map((distance) => normalProbability(-distance));
   let any = simulateAny(away, heaviestResponse(average, horizon), seed, from);

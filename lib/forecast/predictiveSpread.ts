@@ -11,8 +11,8 @@ export interface ScaleSpread {
 
 /**
  * A predictive distribution by horizon step. Its quantile function is the average over scales (Vincent 1912) of each
- * scale's normal quantile, all anchored at the same median: Q(z) = Σ share · back(forward(median) + z · deviation),
- * z being a standard normal quantile. Averaging quantiles keeps the shape of its parts, where averaging densities
+ * scale's normal quantile, all anchored at the same median: Q(z) = Σ share · apart(forward(median), z · deviation),
+ * z being a standard normal quantile and `apart` the way back from a scale. Averaging quantiles keeps the shape of its parts, where averaging densities
  * would widen and split.
  */
 export interface PredictiveSpread {
@@ -31,7 +31,7 @@ export function spreadQuantile(spread: PredictiveSpread, h: number, z: number): 
     sum +=
       share *
       (Number.isFinite(anchored)
-        ? scale.back(anchored + z * deviations[h])
+        ? scale.apart(anchored, z * deviations[h])
         : median + z * spread.scales[0].deviations[h]);
   }
   return sum;

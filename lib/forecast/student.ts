@@ -10,16 +10,3 @@ export function studentFromNormal(z: number, freedom: number): number {
   const third = (z * (3 * z2 ** 3 + 19 * z2 * z2 + 17 * z2 - 15)) / 384;
   return z + first / freedom + second / freedom ** 2 + third / freedom ** 3;
 }
-
-/** The inverse of `studentFromNormal`, by halving. */
-export function normalFromStudent(t: number, freedom: number): number {
-  let low = 0;
-  let high = Math.min(Math.abs(t), 40);
-  // The series is increasing and lies above its argument, so the root is between zero and t.
-  for (let i = 0; i < 60; i++) {
-    const middle = (low + high) / 2;
-    if (studentFromNormal(middle, freedom) < Math.abs(t)) low = middle;
-    else high = middle;
-  }
-  return t < 0 ? -high : high;
-}

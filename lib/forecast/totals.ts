@@ -16,16 +16,13 @@ export function totalQuantile(average: AverageForecast, from: number): (z: numbe
   const parts = scales
     .map(({ share, scale }, index) => {
       const deviation = totalDeviation(average, index, from);
-      return { share, deviation, relative: scale.name === "log" && sum > 0 ? deviation / sum : 0 };
+      // On the logarithm the sum is lognormal with the same relative deviation; on other scales it is normal.
+      const relative = scale.name === "log" && sum > 0;
+      return (z: number): number =>
+        share * (relative ? scale.apart(Math.log(sum), (z * deviation) / sum) : sum + z * deviation);
     })
-    .filter(({ share }) => share > 0);
-  return (z) => {
-    let value = 0;
-    for (const { share, deviation, relative } of parts) {
-      value += share * (relative > 0 ? sum * Math.exp(Math.min(z * relative, 690)) : sum + z * deviation);
-    }
-    return value;
-  };
+    .filter((_, index) => scales[index].share > 0);
+  return (z) => parts.reduce((value, part) => value + part(z), 0);
 }
 
 /** Standard deviation of the sum as one working scale sees it, in units of the series. */

@@ -3,6 +3,11 @@ export interface WorkingScale {
   readonly name: "raw" | "log" | "square-root";
   forward(value: number): number;
   back(value: number): number;
+  /**
+   * Value that lies `distance` from `anchor` on the working scale, for quantiles. As `back(anchor + distance)`, except
+   * that a logarithm grows straight on past a doubling: a percentage error is not believed to compound without end.
+   */
+  apart(anchor: number, distance: number): number;
   /** Derivative of `back`: how a small error on the working scale shows in units of the series. */
   slope(value: number): number;
 }
@@ -10,12 +15,21 @@ export interface WorkingScale {
 /** exp overflows past 709; no forecast needs more than this. */
 const LARGEST_EXPONENT = 690;
 
-const RAW: WorkingScale = { name: "raw", forward: (value) => value, back: (value) => value, slope: () => 1 };
+const RAW: WorkingScale = {
+  name: "raw",
+  forward: (value) => value,
+  back: (value) => value,
+  apart: (anchor, distance) => anchor + distance,
+  slope: () => 1,
+};
 
 const LOG: WorkingScale = {
   name: "log",
   forward: Math.log,
   back: (value) => Math.exp(Math.min(value, LARGEST_EXPONENT)),
+  apart: (anchor, distance) =>
+    Math.exp(Math.min(anchor, LARGEST_EXPONENT)) *
+    (distance > Math.LN2 ? 2 * (1 + distance - Math.LN2) : Math.exp(distance)),
   slope: (value) => Math.exp(Math.min(value, LARGEST_EXPONENT)),
 };
 
@@ -24,6 +38,7 @@ const SQUARE_ROOT: WorkingScale = {
   forward: Math.sqrt,
   // A root below zero would turn back up when squared: zero is the floor of the scale.
   back: (value) => (value > 0 ? value * value : 0),
+  apart: (anchor, distance) => Math.max(0, anchor + distance) ** 2,
   slope: (value) => (value > 0 ? 2 * value : 0),
 };
 
