@@ -38,10 +38,3 @@ export function centred(values: ArrayLike<number>, centre: number): Float64Array
   for (let i = 0; i < values.length; i++) out[i] = values[i] - centre;
   return out;
 }
-
-/** Σ a_i b_i over the first `count` entries. */
-export function dot(a: ArrayLike<number>, b: ArrayLike<number>, count: number): number {
-  let sum = 0;
-  for (let i = 0; i < count; i++) sum += a[i] * b[i];
-  return sum;
-}
