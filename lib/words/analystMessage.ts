@@ -3,7 +3,7 @@ import type { RunFacts, Voice } from "./facts.ts";
 import { headline } from "./headline.ts";
 import { reportPlace } from "./instants.ts";
 import { messageData } from "./messageData.ts";
-import { caution, type Note } from "./note.ts";
+import { footerOf, type Note } from "./note.ts";
 import { numberWriter } from "./numbers.ts";
 import { plainName } from "./plainText.ts";
 import { seriesAccount } from "./seriesAccount.ts";
@@ -38,9 +38,8 @@ export function analystMessage(run: RunFacts, voice: Voice): Note {
         : []),
       ...troubleLines(run),
       falseNotices(run, voice),
-      `Report: ${reportPlace(run.asOf, voice)}`,
     ],
-    footer: caution,
+    footer: footerOf(reportPlace(run.asOf, voice)),
     data: messageData(run, "analyst", all),
   };
 }

@@ -7,7 +7,7 @@ import { headline } from "./headline.ts";
 import { dateWriter, reportPlace } from "./instants.ts";
 import { wrapLine } from "./lineWidth.ts";
 import { messageData } from "./messageData.ts";
-import { caution, type Note } from "./note.ts";
+import { footerOf, type Note } from "./note.ts";
 import { plainName } from "./plainText.ts";
 import { seriesLines } from "./seriesLines.ts";
 import { speechFor, spokenInterval } from "./speech.ts";
@@ -33,19 +33,18 @@ export function businessMessage(run: RunFacts, voice: Voice): Note {
   const after = [...closingLines(all, candidates.length > 0, voice), ...troubleLines(run)].flatMap((line) =>
     wrapLine(line),
   );
-  const link = all.length > 0 ? [`Why, with pictures: ${reportPlace(run.asOf, voice)}`] : [];
   const { lines, told } = fillRoom(
     candidates.map((one) => {
       const speech = speechFor(one.facts, voice, run.asOf);
       const label = several ? `${plainName(one.table.table, 30)}, ${speech.series}` : speech.series;
       return { label, news: one.attention >= newsFrom, lines: seriesLines(speech, label) };
     }),
-    Math.max(least, wholeNote - before.length - after.length - link.length - (all.length > 4 ? 1 : 0)),
+    Math.max(least, wholeNote - before.length - after.length - (all.length > 4 ? 1 : 0)),
   );
   return {
     title: headline(run),
-    lines: [...before, ...lines, ...restLines(all.slice(told), told), ...after, ...link],
-    footer: caution,
+    lines: [...before, ...lines, ...restLines(all.slice(told), told), ...after],
+    footer: footerOf(reportPlace(run.asOf, voice)),
     data: messageData(run, "business", all),
   };
 }

@@ -6,6 +6,14 @@ export interface Note {
   readonly data: unknown;
 }
 
-/** Stands under every note. */
+/** Under everything that is said in words. */
 export const caution =
   "Statistical estimates: they can be wrong. Decisions where safety or much money hangs on them need a qualified person's judgement.";
+
+/**
+ * Stands under every note, once: the caution, and where the report is. Ours alone, without any name from outside, so
+ * that receivers may leave its link whole where they break links in lines.
+ */
+export function footerOf(reportPlace: string): string {
+  return `${caution} Why, with pictures: ${reportPlace}`;
+}

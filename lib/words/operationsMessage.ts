@@ -3,7 +3,7 @@ import type { RunFacts, Voice } from "./facts.ts";
 import { headline, newsCounts } from "./headline.ts";
 import { reportPlace, timeWriter } from "./instants.ts";
 import { messageData } from "./messageData.ts";
-import { caution, type Note } from "./note.ts";
+import { footerOf, type Note } from "./note.ts";
 import { numberWriter } from "./numbers.ts";
 import { plainName } from "./plainText.ts";
 import { countOf } from "./spans.ts";
@@ -52,9 +52,8 @@ export function operationsMessage(
         .slice(0, 5)
         .map((one) => `Undelivered: the note of ${time(one.asOf)} to ${plainName(one.webhook)}.`),
       ...(run.undelivered.length > 5 ? [`… and ${run.undelivered.length - 5} more undelivered.`] : []),
-      `Report: ${reportPlace(run.asOf, voice)}`,
     ],
-    footer: caution,
+    footer: footerOf(reportPlace(run.asOf, voice)),
     data: messageData(run, "operations", ranked(run)),
   };
 }
