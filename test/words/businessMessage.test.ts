@@ -30,6 +30,7 @@ describe("the business note", () => {
       "Quay: about 185 loans in the week of 7 December (155 to 210), about 1,400 over all 8 weeks (1,000 to 1,800). ▃▆▆▄▁▃▃▁▅▆▅█|███▇▇▇▇▇",
       "Quay: shocks now lose half their effect in about 6 weeks; it was 2 (an early sign).",
       "Quay: a busy week now stays with you longer; last week's surplus of 38 loans still adds about 19 in the week of 11 January.",
+      "Quay: since about the week of 21 September (between the week of 31 August and the week of 12 October).",
       "Quay: about 30% chance of a week above 260 loans by the week of 25 January.",
       "Station: about 114 loans in the week of 7 December (100 to 128), about 780 over all 8 weeks (710 to 840). ▄▄▃▁▄▄▂▁▃▃▂█|▆▄▄▃▃▃▃▃",
       "Station: 148 loans in the week of 30 November, about 56 more than expected: a one-off so far, not a lasting change.",
@@ -38,7 +39,7 @@ describe("the business note", () => {
       "Park: about 113 loans in the week of 7 December (95 to 131), about 950 over all 8 weeks (870 to 1,030). ▃██▅▂▇▇▄▁▆▆▃|▅▅▆▆▆▆▆▆",
       "In brackets the range that holds 80% of outcomes; bars: last 12 weeks | those to come.",
       "So far 311 of 384 figures (81%) fell inside the range, where 80% should; misses are 25% smaller than by repeating the last figure.",
-      "Why, with pictures: runs/2026-12-07T06-00-00Z/report.html | Statistical estimates: they can be wrong. Decisions where safety or much money hangs on them need a qualified person's judgement.",
+      "Statistical estimates: they can be wrong. Decisions where safety or much money hangs on them need a qualified person's judgement. Why, with pictures: runs/2026-12-07T06-00-00Z/report.html",
     ]);
   });
 
@@ -130,13 +131,11 @@ describe("the business note", () => {
   });
 
   it("puts the report under the owner's base address when there is one", () => {
-    const { lines } = businessMessage(loansRun, {
+    const { footer } = businessMessage(loansRun, {
       ...britishVoice,
       reportBase: "https://reports.example/tools/",
     });
-    expect(lines.at(-1)).toBe(
-      "Why, with pictures: https://reports.example/tools/runs/2026-12-07T06-00-00Z/report.html",
-    );
+    expect(footer).toMatch(/ https:\/\/reports\.example\/tools\/runs\/2026-12-07T06-00-00Z\/report\.html$/);
   });
 
   it("carries data that stay within a receiver's budget however many series there are", () => {
