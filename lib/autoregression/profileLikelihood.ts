@@ -7,6 +7,7 @@ import {
 } from "./endCorrectedProducts.ts";
 import { GapSystem } from "./gapSystem.ts";
 import type { LikelihoodDesign } from "./likelihoodDesign.ts";
+import { StationaryRegion } from "./stationaryRegion.ts";
 
 /**
  * −2 log-likelihood of an AR(p), up to constants, with regression and variance profiled out:
@@ -35,8 +36,7 @@ export class ProfileLikelihood {
   readonly #gram: Float64Array;
   readonly #filled: Float64Array;
   readonly #filledProducts: Float64Array;
-  readonly #partials: Float64Array;
-  readonly #orders: Float64Array;
+  readonly #region: StationaryRegion;
   readonly #slope: Float64Array;
 
   constructor(design: LikelihoodDesign, order: number) {
@@ -46,7 +46,8 @@ export class ProfileLikelihood {
     const gaps = design.missing.length;
     this.#design = design;
     this.order = order;
-    this.u = new Float64Array(order + 1);
+    this.#region = new StationaryRegion(order);
+    this.u = this.#region.u;
     this.beta = new Float64Array(columns);
     this.information = new Float64Array(columns * columns);
     this.#products = new Float64Array(((width * (width + 1)) / 2) * count);
@@ -55,8 +56,6 @@ export class ProfileLikelihood {
     this.#gram = new Float64Array(width * width);
     this.#filled = new Float64Array(gaps > 0 ? design.length : 0);
     this.#filledProducts = new Float64Array(count);
-    this.#partials = new Float64Array(order);
-    this.#orders = new Float64Array(order * order);
     this.#slope = new Float64Array(order + 1);
     let offset = 0;
     for (let a = 0; a < width; a++) {
@@ -70,32 +69,19 @@ export class ProfileLikelihood {
   /** f at x, with its gradient written out; infinite where rounding leaves no likelihood. */
   evaluate(x: Float64Array, gradient: Float64Array): number {
     const value = this.valueAt(x);
-    if (Number.isFinite(value)) this.#differentiate(x, gradient);
+    if (Number.isFinite(value)) this.#differentiate(gradient);
     return value;
   }
 
   /** f at x; `u`, `beta`, `information` and `sumOfSquares` are left behind. */
   valueAt(x: Float64Array): number {
-    let penalty = 0;
-    for (let k = 0; k < this.order; k++) {
-      this.#partials[k] = Math.tanh(x[k]);
-      // −log(1 − tanh²x) = 2 log cosh x, without cancellation.
-      const size = Math.abs(x[k]);
-      penalty += 2 * (k + 1) * (size + Math.log1p(Math.exp(-2 * size)) - Math.LN2);
-    }
-    this.#stepUp();
+    const penalty = this.#region.moveTo(x);
     return this.#profile() + penalty;
   }
 
-  /** f at given coefficients of a stationary process with the given partial autocorrelations. */
+  /** f at the stationary process with the given partial autocorrelations. */
   valueAtPartials(partials: Float64Array): number {
-    let penalty = 0;
-    this.#partials.set(partials);
-    for (let k = 0; k < this.order; k++) {
-      penalty -= (k + 1) * Math.log((1 - partials[k]) * (1 + partials[k]));
-    }
-    this.#stepUp();
-    return this.#profile() + penalty;
+    return this.valueAt(partials.map(Math.atanh));
   }
 
   /** Row j of ∂φ/∂x at the last evaluation, for all j, by row. */
@@ -105,24 +91,9 @@ export class ProfileLikelihood {
     for (let j = 0; j < p; j++) {
       const row = out.subarray(j * p, (j + 1) * p);
       row[j] = 1;
-      this.#reverse(row);
+      this.#region.pullBack(row);
     }
     return out;
-  }
-
-  #stepUp(): void {
-    const p = this.order;
-    const orders = this.#orders;
-    for (let k = 1; k <= p; k++) {
-      const partial = this.#partials[k - 1];
-      const row = (k - 1) * p;
-      for (let j = 0; j < k - 1; j++) {
-        orders[row + j] = orders[row - p + j] - partial * orders[row - p + k - 2 - j];
-      }
-      orders[row + k - 1] = partial;
-    }
-    this.u[0] = 1;
-    for (let j = 0; j < p; j++) this.u[j + 1] = -orders[(p - 1) * p + j];
   }
 
   /** n log S + log det Q_mm at u. */
@@ -176,7 +147,7 @@ export class ProfileLikelihood {
     return sum > gram[0] * 1e-15;
   }
 
-  #differentiate(x: Float64Array, gradient: Float64Array): void {
+  #differentiate(gradient: Float64Array): void {
     const p = this.order;
     const slope = this.#slope;
     slope.fill(0);
@@ -184,8 +155,8 @@ export class ProfileLikelihood {
     if (this.#gapSystem === undefined) this.#addRegressionSlope(perSquare);
     else this.#addGapSlope(this.#gapSystem, perSquare);
     for (let j = 0; j < p; j++) gradient[j] = -slope[j + 1];
-    this.#reverse(gradient);
-    for (let k = 0; k < p; k++) gradient[k] += 2 * (k + 1) * Math.tanh(x[k]);
+    this.#region.pullBack(gradient);
+    this.#region.addPenaltySlope(gradient);
   }
 
   /** n/S ∂S/∂u without gaps: the quadratic forms combined with (1, −β). */
@@ -221,24 +192,5 @@ export class ProfileLikelihood {
     endCorrectedProducts(filled, filled, this.order, this.#filledProducts, 0);
     addQuadraticGradient(this.#filledProducts, 0, this.u, this.order, perSquare, this.#slope);
     system.addLogDeterminantGradient(this.u, this.#slope);
-  }
-
-  /** Turns a derivative with respect to φ into one with respect to x, in place. */
-  #reverse(derivative: Float64Array): void {
-    const p = this.order;
-    const orders = this.#orders;
-    for (let k = p; k >= 1; k--) {
-      const partial = this.#partials[k - 1];
-      const before = (k - 2) * p;
-      let sum = derivative[k - 1];
-      for (let j = 0; j < k - 1; j++) sum -= derivative[j] * orders[before + k - 2 - j];
-      for (let i = 0, j = k - 2; i <= j; i++, j--) {
-        const low = derivative[i];
-        const high = derivative[j];
-        derivative[i] = low - partial * high;
-        if (i !== j) derivative[j] = high - partial * low;
-      }
-      derivative[k - 1] = sum * (1 - partial) * (1 + partial);
-    }
   }
 }
