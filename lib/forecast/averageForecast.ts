@@ -7,6 +7,7 @@ import type { SeriesDescription } from "./describingModel.ts";
 import { fillGaps } from "./fillGaps.ts";
 import type { BackTest } from "./forecast.ts";
 import type { MemberFit } from "./memberFit.ts";
+import { naiveDoesBetter, naiveInstead } from "./naiveFallback.ts";
 import type { PredictiveSpread } from "./predictiveSpread.ts";
 import { horizonsCovered, rollingOrigins } from "./rollingOrigins.ts";
 import { workingScales } from "./workingScale.ts";
@@ -21,7 +22,10 @@ export interface AverageForecast {
   readonly shares: Float64Array;
   readonly spread: PredictiveSpread;
   readonly calibration: Calibration;
+  /** Record of the average, whether or not it was used. */
   readonly backTest: BackTest;
+  /** Whether the naive forecast stands in for the average, which did no better in the past. */
+  readonly naive: boolean;
   readonly outliers: readonly number[];
   readonly steps: readonly number[];
 }
@@ -73,7 +77,8 @@ export function averageForecast(
   const terms = meanTerms(bank.fits, combined.shares);
   const prior = Math.sqrt((observed.length + terms) / Math.max(1, observed.length - terms));
   const calibration = calibrate(evidence, prior, horizonsCovered(origins, count), observed.length);
-  return {
+  const { backTest, naiveSeason } = backTestOf(values, past, origins, season, horizon, calibration);
+  const average: AverageForecast = {
     candidates,
     scales,
     fits: bank.fits,
@@ -81,10 +86,14 @@ export function averageForecast(
     shares: combined.shares,
     spread: combined.spread,
     calibration,
-    backTest: backTestOf(values, past, origins, season, horizon, calibration),
+    backTest,
+    naive: false,
     outliers: [...outliers].sort((a, b) => a - b),
     steps: [...steps].sort((a, b) => a - b),
   };
+  return naiveDoesBetter(backTest.relativeError, horizonsCovered(origins, count))
+    ? naiveInstead(average, values, naiveSeason, origins)
+    : average;
 }
 
 /** Number of terms estimated, averaged over the candidates that carry the forecast. */

@@ -11,7 +11,8 @@ const NORMAL_80 = 1.2815515655446004;
 /**
  * Rolling-origin record of the average: each past forecast was combined with weights that did not see its outcome.
  * The naive rival repeats the last value or, where that did better over all, the last season. `calibration`
- * is that of the forecast, for the coverage of the 80 % range.
+ * is that of the forecast, for the coverage of the 80 % range. `naiveSeason` tells which rival it was, 0 for the last
+ * value.
  */
 export function backTestOf(
   values: Float64Array,
@@ -20,11 +21,12 @@ export function backTestOf(
   season: number,
   horizon: number,
   calibration: Calibration,
-): BackTest {
+): { readonly backTest: BackTest; readonly naiveSeason: number } {
   const model = new Float64Array(horizon);
   const plain = new Float64Array(horizon);
   const seasonal = new Float64Array(horizon);
   const seen = new Float64Array(horizon);
+  const reach = calibratedReach(calibration, NORMAL_80);
   let inside = 0;
   let total = 0;
   for (let o = 0; o < origins.length; o++) {
@@ -40,7 +42,6 @@ export function backTestOf(
       seasonal[h] += Math.abs(actual - same[h]);
       seen[h]++;
       total++;
-      const reach = calibratedReach(calibration, NORMAL_80);
       if (actual >= spreadQuantile(spread, h, -reach) && actual <= spreadQuantile(spread, h, reach)) inside++;
     }
   }
@@ -48,11 +49,12 @@ export function backTestOf(
   const naive = sum(seasonal) < sum(plain) ? seasonal : plain;
   const mean = (errors: Float64Array): Float64Array =>
     errors.map((error, h) => (seen[h] > 0 ? error / seen[h] : Number.NaN));
-  return {
+  const backTest = {
     origins: origins.length,
     meanAbsoluteError: mean(model),
     naiveMeanAbsoluteError: mean(naive),
     relativeError: total > 0 && sum(naive) > 0 ? sum(model) / sum(naive) : Number.NaN,
     coverage80: total > 0 ? inside / total : Number.NaN,
   };
+  return { backTest, naiveSeason: naive === seasonal ? season : 0 };
 }

@@ -1,26 +1,16 @@
 import { requireValues, requireWhole } from "../autoregression/checks.ts";
-import { type AverageForecast, averageForecast } from "./averageForecast.ts";
-import { calibratedReach } from "./calibration.ts";
-import { candidateName } from "./candidates.ts";
+import { afterChange } from "./afterChange.ts";
+import { assembleForecast } from "./assembleForecast.ts";
+import { averageForecast } from "./averageForecast.ts";
 import { describeSeries, type SeriesDescription } from "./describingModel.ts";
-import type {
-  DescribingModel,
-  Forecast,
-  ForecastInterval,
-  ForecastNote,
-  ForecastOptions,
-} from "./forecast.ts";
-import { limitChances } from "./limitChances.ts";
-import { normalQuantile } from "./normal.ts";
-import { spreadQuantile } from "./predictiveSpread.ts";
+import type { Forecast, ForecastOptions } from "./forecast.ts";
 import { seasonLengths } from "./seasonLengths.ts";
-import { intermittentLevel, lastLevel, simpleForecast, steadyLevel, within } from "./simpleForecast.ts";
-import { spreadMean } from "./spreadMean.ts";
-import { totalQuantile } from "./totals.ts";
-import { trivialDescription } from "./trivialDescription.ts";
+import { intermittentLevel, lastLevel, simpleForecast, steadyLevel } from "./simpleForecast.ts";
 
 /** Fewest observed values that a model is fitted to. */
 const LEAST_OBSERVED = 8;
+/** Fewest values since a lasting change that are forecast from alone. */
+const LEAST_SINCE_CHANGE = 24;
 /** Share of zeros from which a series that is never negative counts as intermittent. */
 const INTERMITTENT = 0.4;
 
@@ -49,7 +39,11 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   const series = Float64Array.from({ length: values.length - first }, (_, t) => values[first + t]);
   let end = series.length;
   while (Number.isNaN(series[end - 1])) end--;
-  const known = series.subarray(0, end);
+  const whole = series.subarray(0, end);
+  const season = seasonLengths(whole.length, options)[0] ?? 0;
+  const changedAt = options.changedAt === undefined ? undefined : options.changedAt - first;
+  const known = afterChange(whole, changedAt, Math.max(LEAST_SINCE_CHANGE, 4 * season));
+  const start = first + whole.length - known.length;
   const observed = known.filter((value) => !Number.isNaN(value));
   const simple = simpleTreatment(series, observed, options);
   if (simple !== undefined) return simple;
@@ -58,7 +52,7 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   const seasons = seasonLengths(known.length, options);
   const description = tryDescribe(known, options);
   const average = averageForecast(known, seasons, options.horizon + late, description);
-  return assemble(average, description, known, options, late, first);
+  return assembleForecast(average, description, known, options, late, start);
 }
 
 function checkOptions(values: ArrayLike<number>, { horizon, levels }: ForecastOptions): void {
@@ -106,105 +100,4 @@ function tryDescribe(known: Float64Array, options: ForecastOptions): SeriesDescr
     if (error instanceof RangeError) return undefined;
     throw error;
   }
-}
-
-function assemble(
-  average: AverageForecast,
-  description: SeriesDescription | undefined,
-  known: Float64Array,
-  options: ForecastOptions,
-  late: number,
-  first: number,
-): Forecast {
-  const { horizon, levels, bounds } = options;
-  const steps = Array.from({ length: horizon }, (_, h) => h);
-  const reach = (level: number): number =>
-    calibratedReach(average.calibration, normalQuantile(0.5 + level / 200));
-  const median = Float64Array.from(steps, (h) => within(average.spread.medians[late + h], bounds));
-  const intervals = orderedIntervals(levels, median, (level, h, side) =>
-    within(spreadQuantile(average.spread, late + h, side * reach(level)), bounds),
-  );
-  const point = Float64Array.from(steps, (h) => {
-    let mean = within(spreadMean(average.spread, late + h, average.calibration.narrow), bounds);
-    // A skewed mean may leave a narrow central range; what is shown must stay inside it.
-    for (const { low, high } of intervals) mean = Math.min(high[h], Math.max(low[h], mean));
-    return mean;
-  });
-  const quantile = totalQuantile(average, late);
-  const sumBounds = {
-    low: bounds?.low === undefined ? undefined : bounds.low * horizon,
-    high: bounds?.high === undefined ? undefined : bounds.high * horizon,
-  };
-  const sum = point.reduce((all, one) => all + one, 0);
-  const total = {
-    point: sum,
-    intervals: levels.map((level) => ({
-      level,
-      low: Math.min(sum, within(quantile(-reach(level)), sumBounds)),
-      high: Math.max(sum, within(quantile(reach(level)), sumBounds)),
-    })),
-  };
-  const notes: ForecastNote[] = [];
-  for (const step of average.steps) notes.push({ code: "level-step", index: first + step });
-  if (average.outliers.length > 0) {
-    notes.push({ code: "outliers-damped", indexes: average.outliers.map((index) => first + index) });
-  }
-  return {
-    point,
-    median,
-    intervals,
-    total,
-    model: modelOf(average, description, known),
-    candidates: namedShares(average),
-    notes,
-    chances:
-      options.limits === undefined ? [] : limitChances(average, options.limits, options.seed ?? 0, late),
-    backTest: average.backTest,
-  };
-}
-
-/**
- * Ranges of all levels around the medians, in the order asked for. Built from the narrowest outward, so that rounding
- * can never put a wider range inside a narrower one or leave the median out.
- */
-function orderedIntervals(
-  levels: readonly number[],
-  median: Float64Array,
-  quantile: (level: number, h: number, side: -1 | 1) => number,
-): ForecastInterval[] {
-  const intervals = new Map<number, ForecastInterval>();
-  let inner: Pick<ForecastInterval, "low" | "high"> = { low: median, high: median };
-  for (const level of [...levels].sort((a, b) => a - b)) {
-    const { low, high } = inner;
-    inner = {
-      low: low.map((bound, h) => Math.min(bound, quantile(level, h, -1))),
-      high: high.map((bound, h) => Math.max(bound, quantile(level, h, 1))),
-    };
-    intervals.set(level, { level, ...inner });
-  }
-  return levels.flatMap((level) => intervals.get(level) ?? []);
-}
-
-function modelOf(
-  average: AverageForecast,
-  description: SeriesDescription | undefined,
-  known: Float64Array,
-): DescribingModel {
-  if (description === undefined) return trivialDescription(known);
-  const { scale, trend, season, fit } = description;
-  const place = average.candidates.findIndex((candidate) => candidate.description !== undefined);
-  return { scale, trend, season, fit, relation: "member", weight: place < 0 ? 0 : average.shares[place] };
-}
-
-function namedShares(average: AverageForecast): { name: string; weight: number }[] {
-  return average.candidates
-    .map(({ scale, preparation, drift, description }, i) => ({
-      name:
-        description === undefined
-          ? candidateName(average.scales[scale].scale.name, preparation, drift)
-          : `${description.scale}, describing model`,
-      weight: average.shares[i],
-    }))
-    .filter(({ weight }) => weight > 0)
-    .sort((a, b) => b.weight - a.weight);
 }

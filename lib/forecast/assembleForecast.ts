@@ -1,0 +1,137 @@
+import type { AverageForecast } from "./averageForecast.ts";
+import { calibratedReach } from "./calibration.ts";
+import { candidateName } from "./candidates.ts";
+import type { SeriesDescription } from "./describingModel.ts";
+import type {
+  BackTest,
+  DescribingModel,
+  Forecast,
+  ForecastInterval,
+  ForecastNote,
+  ForecastOptions,
+} from "./forecast.ts";
+import { limitChances } from "./limitChances.ts";
+import { normalQuantile } from "./normal.ts";
+import { spreadQuantile } from "./predictiveSpread.ts";
+import { within } from "./simpleForecast.ts";
+import { spreadMean } from "./spreadMean.ts";
+import { totalQuantile } from "./totals.ts";
+import { trivialDescription } from "./trivialDescription.ts";
+
+/**
+ * Makes the forecast that users see from the average: points, ranges, total, chances, notes and record, in bounds and
+ * in order. `late` steps are past and unobserved, and dropped; `start` is the index in the user's series of the first
+ * value of `known`.
+ */
+export function assembleForecast(
+  average: AverageForecast,
+  description: SeriesDescription | undefined,
+  known: Float64Array,
+  options: ForecastOptions,
+  late: number,
+  start: number,
+): Forecast {
+  const { horizon, levels, bounds } = options;
+  const steps = Array.from({ length: horizon }, (_, h) => h);
+  const reach = (level: number): number =>
+    calibratedReach(average.calibration, normalQuantile(0.5 + level / 200));
+  const median = Float64Array.from(steps, (h) => within(average.spread.medians[late + h], bounds));
+  const intervals = orderedIntervals(levels, median, (level, h, side) =>
+    within(spreadQuantile(average.spread, late + h, side * reach(level)), bounds),
+  );
+  const point = Float64Array.from(steps, (h) => {
+    let mean = within(spreadMean(average.spread, late + h, average.calibration.narrow), bounds);
+    // A skewed mean may leave a narrow central range; what is shown must stay inside it.
+    for (const { low, high } of intervals) mean = Math.min(high[h], Math.max(low[h], mean));
+    return mean;
+  });
+  const quantile = totalQuantile(average, late);
+  const sumBounds = {
+    low: bounds?.low === undefined ? undefined : bounds.low * horizon,
+    high: bounds?.high === undefined ? undefined : bounds.high * horizon,
+  };
+  const sum = point.reduce((all, one) => all + one, 0);
+  const total = {
+    point: sum,
+    intervals: levels.map((level) => ({
+      level,
+      low: Math.min(sum, within(quantile(-reach(level)), sumBounds)),
+      high: Math.max(sum, within(quantile(reach(level)), sumBounds)),
+    })),
+  };
+  const notes: ForecastNote[] = [];
+  if (average.naive) notes.push({ code: "naive-used", relativeError: average.backTest.relativeError });
+  for (const step of average.steps) notes.push({ code: "level-step", index: start + step });
+  if (average.outliers.length > 0) {
+    notes.push({ code: "outliers-damped", indexes: average.outliers.map((index) => start + index) });
+  }
+  return {
+    point,
+    median,
+    intervals,
+    total,
+    model: modelOf(average, description, known),
+    candidates: namedShares(average),
+    notes,
+    chances:
+      options.limits === undefined ? [] : limitChances(average, options.limits, options.seed ?? 0, late),
+    backTest: shortened(average.backTest, horizon),
+  };
+}
+
+/**
+ * Ranges of all levels around the medians, in the order asked for. Built from the narrowest outward, so that rounding
+ * can never put a wider range inside a narrower one or leave the median out.
+ */
+function orderedIntervals(
+  levels: readonly number[],
+  median: Float64Array,
+  quantile: (level: number, h: number, side: -1 | 1) => number,
+): ForecastInterval[] {
+  const intervals = new Map<number, ForecastInterval>();
+  let inner: Pick<ForecastInterval, "low" | "high"> = { low: median, high: median };
+  for (const level of [...levels].sort((a, b) => a - b)) {
+    const { low, high } = inner;
+    inner = {
+      low: low.map((bound, h) => Math.min(bound, quantile(level, h, -1))),
+      high: high.map((bound, h) => Math.max(bound, quantile(level, h, 1))),
+    };
+    intervals.set(level, { level, ...inner });
+  }
+  return levels.flatMap((level) => intervals.get(level) ?? []);
+}
+
+/** The record of the steps that are shown. */
+function shortened(backTest: BackTest, horizon: number): BackTest {
+  return {
+    ...backTest,
+    meanAbsoluteError: backTest.meanAbsoluteError.slice(0, horizon),
+    naiveMeanAbsoluteError: backTest.naiveMeanAbsoluteError.slice(0, horizon),
+  };
+}
+
+function modelOf(
+  average: AverageForecast,
+  description: SeriesDescription | undefined,
+  known: Float64Array,
+): DescribingModel {
+  if (description === undefined) return trivialDescription(known);
+  const { scale, trend, season, fit } = description;
+  const place = average.candidates.findIndex((candidate) => candidate.description !== undefined);
+  return { scale, trend, season, fit, relation: "member", weight: place < 0 ? 0 : average.shares[place] };
+}
+
+function namedShares(average: AverageForecast): { name: string; weight: number }[] {
+  return average.candidates
+    .map(({ scale, preparation, drift, description }, i) => ({
+      name:
+        description === undefined
+          ? average.naive
+            ? "naive forecast"
+            : candidateName(average.scales[scale].scale.name, preparation, drift)
+          : `${description.scale}, describing model`,
+      weight: average.shares[i],
+    }))
+    .filter(({ weight }) => weight > 0)
+    .sort((a, b) => b.weight - a.weight);
+}

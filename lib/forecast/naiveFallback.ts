@@ -1,0 +1,89 @@
+import type { AverageForecast } from "./averageForecast.ts";
+import { addOutcomes, type CalibrationEvidence, calibrate } from "./calibration.ts";
+import type { Candidate } from "./candidateBank.ts";
+import type { MemberFit } from "./memberFit.ts";
+import { naiveForecast } from "./naiveForecast.ts";
+import type { PredictiveSpread } from "./predictiveSpread.ts";
+import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
+import { workingScales } from "./workingScale.ts";
+
+/** Independent horizons from which a record counts as it stands. */
+const ENOUGH_HORIZONS = 4;
+
+/**
+ * Whether the record says that the naive forecast does better: a relative error of one or more over at least four
+ * independent horizons. With fewer the record is mostly luck, and only an error of 1 + 1/√horizons or more counts.
+ */
+export function naiveDoesBetter(relativeError: number, horizons: number): boolean {
+  if (horizons >= ENOUGH_HORIZONS) return relativeError >= 1;
+  return horizons > 0 && relativeError >= 1 + 1 / Math.sqrt(horizons);
+}
+
+/**
+ * The naive forecast in place of an average: the last value, or the last season where `season` is above 1, repeated.
+ * Its errors add up like a random walk's (of seasons), with the size they had in the past, calibrated in the same way.
+ */
+export function naiveInstead(
+  average: AverageForecast,
+  values: Float64Array,
+  season: number,
+  origins: readonly Origin[],
+): AverageForecast {
+  const count = values.length;
+  const horizon = average.spread.medians.length;
+  const lag = Math.max(1, season);
+  const stepOf = (h: number): number => Math.floor(h / lag) + 1;
+  let power = 0;
+  let seen = 0;
+  for (let t = lag; t < count; t++) {
+    const step = values[t] - values[t - lag];
+    if (Number.isNaN(step)) continue;
+    power += step * step;
+    seen++;
+  }
+  const innovationVariance = seen > 0 ? power / seen : 0;
+  const [scale] = workingScales([-1]);
+  const spreadAt = (from: number, steps: number): PredictiveSpread => ({
+    medians: naiveForecast(values, from, season, steps),
+    scales: [
+      {
+        scale,
+        share: 1,
+        deviations: Float64Array.from({ length: steps }, (_, h) => Math.sqrt(innovationVariance * stepOf(h))),
+      },
+    ],
+  });
+  const evidence: CalibrationEvidence = { scores: [], weights: [] };
+  for (const { count: from, steps } of origins) addOutcomes(evidence, spreadAt(from, steps), values, from);
+  const preparation = {
+    differences: [lag],
+    season: 0,
+    profile: "none",
+    line: false,
+    drifts: ["none"],
+  } as const;
+  const candidate: Candidate = { scale: 0, preparation, drift: "none" };
+  const fit: MemberFit = {
+    preparation,
+    count,
+    stages: [],
+    levelProfile: undefined,
+    meanProfile: undefined,
+    model: { coefficients: new Float64Array(0), innovationVariance, meanOrder: 0 },
+    wholeMean: 0,
+    localMean: 0,
+    slope: 0,
+  };
+  const spread = spreadAt(count, horizon);
+  return {
+    ...average,
+    naive: true,
+    candidates: [candidate],
+    scales: [{ scale, values }],
+    fits: [fit],
+    paths: spread.medians,
+    shares: Float64Array.of(1),
+    spread,
+    calibration: calibrate(evidence, 1, horizonsCovered(origins, count), count),
+  };
+}
