@@ -1,9 +1,8 @@
 import { halfLife } from "../dynamics/halfLife.ts";
-import { type ColumnChoice, fillMatrix, planColumns, selectMatrix } from "./jointEvidence.ts";
+import { explain, openExplainer, setChange } from "./explain.ts";
 import type { LookState } from "./lookState.ts";
 import type { NamedChange } from "./nameChange.ts";
 import type { Behaviour, ChangeKind } from "./notice.ts";
-import { backwardSolve, factorInPlace } from "./smallMatrix.ts";
 
 /** The reference in the units of the series; its level is that of the centreline at `time`, season apart. */
 export function behaviourBefore(state: LookState, time: number): Behaviour {
@@ -27,16 +26,11 @@ export function behaviourAfter(state: LookState, named: NamedChange): Behaviour 
   const { best } = named;
   const { columns, terms, reference, start, count } = state;
   const before = behaviourBefore(state, named.time);
-  const plan = planColumns(state);
-  const chosen: ColumnChoice[] = plan.columnsOf(best.kinds);
-  const full = new Float64Array(plan.size * plan.size);
-  fillMatrix(state, plan, named.time, best.logRatio, full);
-  const size = columns + chosen.length + 1;
-  const matrix = selectMatrix(plan, columns, full, chosen);
-  factorInPlace(matrix, size);
-  // The last row of the factor is L⁻¹X'Wy, so one backward solve gives the coefficients.
-  const solution = matrix.slice((size - 1) * size, size * size - 1);
-  backwardSolve(matrix, size - 1, solution, 0, size);
+  const explainer = openExplainer(state);
+  const { plan, solution } = explainer;
+  const chosen = plan.columnsOf(best.kinds);
+  setChange(explainer, named.time);
+  explain(explainer, chosen, best.logRatio);
   const moved = (kind: ChangeKind): number[] => {
     const index = state.kinds.indexOf(kind);
     if (index < 0 || !(best.kinds & (1 << index))) return [];

@@ -1,4 +1,5 @@
 import { evenBoundaries, stableMaxima } from "./bootstrapBoundaries.ts";
+import { tabulatedBoundaries } from "./boundaryTable.ts";
 import type { Reference } from "./reference.ts";
 
 export interface BoundaryRequest {
@@ -15,8 +16,10 @@ const paths = 999;
 /** One boundary a watched kind, and where they come from. */
 export function boundariesFor(
   reference: Reference,
-  { looks, falseAlarmRate, seed }: BoundaryRequest,
+  { looks, falseAlarmRate, seed, bootstrap }: BoundaryRequest,
 ): { readonly boundaries: Float64Array; readonly source: "table" | "bootstrap" } {
+  const tabulated = bootstrap ? undefined : tabulatedBoundaries(reference, looks, falseAlarmRate);
+  if (tabulated !== undefined) return { boundaries: tabulated, source: "table" };
   const maxima = stableMaxima(reference, looks, paths, seed);
   return { boundaries: evenBoundaries(maxima, falseAlarmRate), source: "bootstrap" };
 }

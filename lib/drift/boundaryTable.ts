@@ -1,50 +1,69 @@
+import { coefficients, lookShifts, tabulatedLooks, tabulatedRates } from "./boundaryCoefficients.ts";
+import { boundaryFeatures } from "./boundaryFeatures.ts";
+import { watchedKinds } from "./lookState.ts";
 import type { Reference } from "./reference.ts";
 
-export function boundaryFeatures(reference: Reference): number[] {
-  const phi = reference.coefficients.slice(reference.coefficients.length - reference.order);
+const plainFeatures = 11;
+
+/**
+ * Boundaries from the fitted table, or `undefined` outside it. Every boundary is a quantile of a kind's largest
+ * statistic on stable series, regressed on what the reference shows (see boundaryFeatures): some 40,000
+ * simulated series of many orders, persistences, tails and lengths, watched as the monitor watches, stand behind
+ * each, so a boundary has less noise than a bootstrap of a thousand paths and costs a few multiplications. Since
+ * the regression knows only the estimates, it carries their uncertainty, which a bootstrap from them does not.
+ * Tabulated for 40 to 400 values, 8 to 104 looks and false-alarm rates of 1 to 20 %; linear in ln of both between.
+ */
+export function tabulatedBoundaries(
+  reference: Reference,
+  looks: number,
+  falseAlarmRate: number,
+): Float64Array | undefined {
+  const length = reference.values.length;
+  const outside =
+    length < 40 ||
+    length > 400 ||
+    looks < tabulatedLooks[0] ||
+    looks > tabulatedLooks[tabulatedLooks.length - 1] ||
+    falseAlarmRate < tabulatedRates[0] ||
+    falseAlarmRate > tabulatedRates[tabulatedRates.length - 1];
+  if (outside) return undefined;
+  const features = boundaryFeatures(reference);
+  const kinds = watchedKinds(reference);
+  const terms = kinds.length > 3;
+  const at52 = (kind: string, rate: number): number => {
+    const plain = coefficients.plain[rate];
+    if (!terms) return dot(plain[kind], features, plainFeatures);
+    // With terms one rate is tabulated; others move as they do without terms.
+    const like = plain[kind] ?? plain.level;
+    const base = coefficients.plain[middleRate][kind] ?? coefficients.plain[middleRate].level;
+    const own = coefficients.terms[kind];
+    return (
+      dot(own, features, own.length) + dot(like, features, plainFeatures) - dot(base, features, plainFeatures)
+    );
+  };
+  const share = between(tabulatedRates, falseAlarmRate);
+  const step = between(tabulatedLooks, looks);
+  return Float64Array.from(kinds, (kind) => {
+    const low = at52(kind, share.index);
+    const high = at52(kind, share.index + 1);
+    const shifts = lookShifts[kind] ?? lookShifts.level;
+    const shift = shifts[step.index] + step.part * (shifts[step.index + 1] - shifts[step.index]);
+    return low + share.part * (high - low) + shift;
+  });
+}
+
+/** Place of 5 % among the tabulated rates. */
+const middleRate = tabulatedRates.indexOf(0.05);
+
+function dot(weights: readonly number[], features: readonly number[], count: number): number {
   let sum = 0;
-  for (const x of phi) sum += x;
-  // largest root by power of companion
-  let r = 0;
-  {
-    let lo = 0.01,
-      hi = 1.2;
-    const stable = (m: number) => {
-      let cur = phi.map((v, l) => v / m ** (l + 1));
-      for (let s = cur.length; s > 0; s--) {
-        const k = cur[s - 1];
-        if (Math.abs(k) >= 1) return false;
-        const nx = new Float64Array(s - 1);
-        for (let l = 0; l < s - 1; l++) nx[l] = (cur[l] + k * cur[s - 2 - l]) / (1 - k * k);
-        cur = nx;
-      }
-      return true;
-    };
-    for (let i = 0; i < 30; i++) {
-      const m = (lo + hi) / 2;
-      if (stable(m)) hi = m;
-      else lo = m;
-    }
-    r = hi;
-  }
-  let k4 = 0,
-    k2 = 0,
-    n = 0;
-  for (let t = reference.order; t < reference.residuals.length; t++) {
-    const e = reference.residuals[t];
-    k2 += e * e;
-    k4 += e ** 4;
-    n++;
-  }
-  return [
-    reference.values.length,
-    reference.order,
-    sum,
-    r,
-    reference.deviation,
-    1 / reference.degreesOfFreedom,
-    reference.studentScale,
-    k4 / n / (k2 / n) ** 2,
-    phi[0],
-  ];
+  for (let i = 0; i < count; i++) sum += weights[i] * features[i];
+  return sum;
+}
+
+/** Place of `value` in the increasing `points`, on the log scale. */
+function between(points: readonly number[], value: number): { index: number; part: number } {
+  let index = 0;
+  while (index < points.length - 2 && points[index + 1] <= value) index++;
+  return { index, part: Math.log(value / points[index]) / Math.log(points[index + 1] / points[index]) };
 }

@@ -57,7 +57,8 @@ export function fitReference(
   let unit = 0;
   for (const value of work) unit += (value - centre) ** 2 / count;
   unit = Math.sqrt(unit);
-  if (!(unit > 0)) throw new RangeError("startMonitor needs values that are not all the same");
+  if (!(unit > 1e-10 * Math.abs(centre)))
+    throw new RangeError("startMonitor needs values that are not all the same");
   for (let at = 0; at < count; at++) work[at] = (work[at] - centre) / unit;
 
   let chosen = order ?? chooseOrder(work, isGap, plan, maxOrder);

@@ -32,7 +32,7 @@ export function stableCoefficients(reference: Reference, largest: number): Float
 }
 
 /** Whether all roots lie within `largest`: the Schur–Cohn recursion on φ_j / largest^j. */
-function isStable(coefficients: Float64Array, largest: number): boolean {
+export function isStable(coefficients: Float64Array, largest: number): boolean {
   let current = coefficients.map((value, lag) => value / largest ** (lag + 1));
   for (let size = current.length; size > 0; size--) {
     const partial = current[size - 1];
