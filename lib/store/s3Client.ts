@@ -1,6 +1,6 @@
 import type { S3Client } from "@aws-sdk/client-s3";
 
-type S3Module = typeof import("./s3Sdk.ts");
+type S3Module = Omit<typeof import("./s3Sdk.ts"), "S3Client">;
 
 /** How to reach the server. */
 export interface S3Settings {
@@ -25,10 +25,12 @@ export interface S3Access {
  * refuse the newer ones (aws-sdk-js-v3 issue 6810).
  */
 export async function connectS3(settings: S3Settings): Promise<S3Access> {
-  const sdk = await import("./s3Sdk.ts");
+  const { GetObjectCommand, HeadObjectCommand, ListObjectsV2Command, PutObjectCommand, S3Client } =
+    await import("./s3Sdk.ts");
+  const sdk = { GetObjectCommand, HeadObjectCommand, ListObjectsV2Command, PutObjectCommand };
   const { endpoint } = settings;
   const region = settings.region ?? (endpoint === undefined ? undefined : "us-east-1");
-  const client = new sdk.S3Client({
+  const client = new S3Client({
     ...(region === undefined ? {} : { region }),
     ...(endpoint === undefined
       ? { followRegionRedirects: true }

@@ -150,7 +150,8 @@ describe("a folder store", () => {
     }
     const store = new FolderStore(folder);
     const found = await store.list("");
-    expect(found.length).toBeGreaterThan(10);
+    // Each process was killed after it had gone round once at least.
+    expect(found.length).toBeGreaterThan(30);
     for (const { key } of found) {
       const { bytes } = (await store.read(key))!;
       expect(bytes.length, key).toBe(key === "latest.csv" ? 2_000_000 : 300_000);

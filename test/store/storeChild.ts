@@ -11,10 +11,10 @@ if (what === "create-race") {
   }
   console.log(JSON.stringify(won));
 } else {
-  console.log("started");
   for (let i = 0; ; i++) {
     const letter = String.fromCharCode(97 + (i % 26));
     await store.write("latest.csv", Buffer.alloc(2_000_000, letter));
     await store.create(`history/${name}-${i}.csv`, Buffer.alloc(300_000, letter));
+    console.log("round");
   }
 }

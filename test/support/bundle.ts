@@ -10,16 +10,17 @@ import { onTestFinished } from "vitest";
 export async function bundle(entry: string, folder?: string): Promise<string> {
   const into = folder ?? (await mkdtemp(resolve("node_modules", ".bundle-")));
   if (folder === undefined) onTestFinished(() => rm(into, { recursive: true, force: true }));
-  const outfile = join(into, "bundle.mjs");
   await build({
-    entryPoints: [entry],
+    entryPoints: { bundle: entry },
     bundle: true,
     platform: "node",
     format: "esm",
     target: "node20",
     packages: "external",
-    outfile,
+    splitting: true,
+    outdir: into,
+    outExtension: { ".js": ".mjs" },
     logLevel: "warning",
   });
-  return outfile;
+  return join(into, "bundle.mjs");
 }
