@@ -7,6 +7,7 @@ export {
 } from "./autoregression/dickeyFullerDistribution.ts";
 export type { AutoregressiveFit, AutoregressiveProcess, EstimationMethod } from "./autoregression/fit.ts";
 export { fitAutoregression } from "./autoregression/fitAutoregression.ts";
+export { fullerCriticalValues, fullerPValue } from "./autoregression/fullerTables.ts";
 export { generalisedLeastSquares } from "./autoregression/generalisedLeastSquares.ts";
 export { archTest, breuschGodfrey } from "./autoregression/lagrangeTests.ts";
 export { ljungBox, mcLeodLi } from "./autoregression/ljungBox.ts";

@@ -31,7 +31,8 @@ export interface FitOptions {
  * The parameter count of the criteria includes σ² and the mean; AICc and BIC count observed values.
  *
  * Throws `TypeError`/`RangeError` naming the argument: infinite values, gaps where the method takes none, fewer
- * than order + 2 observed values, constant values, regressors that are not independent.
+ * than order + 2 observed values (least squares: too few complete rows), constant values, regressors that are not
+ * independent.
  *
  * @example fitAutoregression(lh, { order: 1, method: "maximum-likelihood" }).coefficients // [0.5739]
  */

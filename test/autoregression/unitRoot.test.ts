@@ -6,6 +6,7 @@ import {
   dickeyFullerGlsPValue,
   dickeyFullerPValue,
 } from "../../lib/autoregression/dickeyFullerDistribution.ts";
+import { fullerCriticalValues, fullerPValue } from "../../lib/autoregression/fullerTables.ts";
 import { unitRootTest } from "../../lib/autoregression/unitRootTest.ts";
 import { shockFading } from "../../lib/dynamics/shockFading.ts";
 import { simulate } from "../support/arbitraryProcess.ts";
@@ -50,6 +51,26 @@ describe("dickeyFullerTest", () => {
     expect(dickeyFullerCriticalValues("trend", Number.POSITIVE_INFINITY).map(({ value }) => value)).toEqual([
       -3.95877, -3.41049, -3.12705,
     ]);
+  });
+});
+
+describe("Fuller's printed table", () => {
+  it("gives the p-value of R's tseries::adf.test on lh, clipped at its ends", async () => {
+    // R 4.2.2, tseries 0.10.53: adf.test(lh), statistic −3.557993615142599, lag order 3, p-value 0.0462424.
+    const test = dickeyFullerTest(await r.evaluate("lh"), { terms: "trend", lags: 3 });
+    expect(test.statistic).toBeCloseTo(-3.557993615142599, 8);
+    expect(fullerPValue("trend", test.statistic, 47)).toBeCloseTo(0.046242351704036046, 8);
+    expect(fullerPValue("constant", -9, 47)).toBe(0.01);
+    expect(fullerPValue("constant", 9, 47)).toBe(0.99);
+  });
+
+  it("lies within 0.03 of MacKinnon's surfaces, which replaced it", () => {
+    for (const n of [25, 50, 100, 250]) {
+      const printed = fullerCriticalValues("constant", n);
+      dickeyFullerCriticalValues("constant", n).forEach(({ value }, i) => {
+        expect(Math.abs(value - printed[i].value)).toBeLessThan(0.03);
+      });
+    }
   });
 });
 
