@@ -3,7 +3,7 @@ import { AddressError, checkAddress, nameAddress } from "./checkAddress.ts";
 import { guardedLookup, type Resolve } from "./guardedLookup.ts";
 import { retryDecision } from "./retryDecision.ts";
 import { sendOnce } from "./sendOnce.ts";
-import { signatureHeaders } from "./signatureHeaders.ts";
+import { isSigningKey, signatureHeaders } from "./signatureHeaders.ts";
 
 /** One message for one webhook. */
 export interface Delivery {
@@ -41,15 +41,15 @@ export type DeliveryOutcome =
 const longestPost = 10_000;
 
 /**
- * Posts a message to a webhook until it is taken, refused for good, or the time is over; never throws for what the
- * receiver or the address does. Every post is signed anew (Standard Webhooks), carries the same id, goes through
+ * Posts a message to a webhook until it is taken, refused for good, or the time is over; never throws for what
+ * receiver, address or key are like. Every post is signed anew (Standard Webhooks), carries the same id, goes through
  * the address guard, follows no redirect, and takes bounded time and memory. See `retryDecision` for which
  * answers are tried again and when.
  *
- * @throws {TypeError} when the id or a key is unsound
+ * @throws {TypeError} when the id is unsound
  */
 export async function deliver(delivery: Delivery): Promise<DeliveryOutcome> {
-  const { address, id, body, keys, clock, allowLocal = false } = delivery;
+  const { address, id, clock, allowLocal = false } = delivery;
   const name = nameAddress(address);
   const failed = (posts: number, reason: string, gone = false): DeliveryOutcome => ({
     delivered: false,
@@ -64,20 +64,17 @@ export async function deliver(delivery: Delivery): Promise<DeliveryOutcome> {
     if (error instanceof AddressError) return failed(0, error.message);
     throw error;
   }
+  if (!delivery.keys.every(isSigningKey)) return failed(0, "is not posted to: its signing key is unsound");
   const lookup = guardedLookup(delivery.lookup ?? resolveAll, allowLocal, url.protocol === "http:");
   for (let posts = 1; ; posts++) {
-    const left = delivery.deadlineMilliseconds - clock();
-    if (left <= 0) return failed(posts - 1, "was not reached in the time there was");
     const now = clock();
+    const left = delivery.deadlineMilliseconds - now;
+    if (left <= 0) return failed(posts - 1, "was not reached in the time there was");
     const result = await sendOnce({
       url,
       lookup,
-      body,
-      headers: {
-        "content-type": delivery.contentType,
-        "user-agent": "ebbwire",
-        ...signatureHeaders({ id, timestamp: Math.floor(now / 1000), body, keys }),
-      },
+      body: delivery.body,
+      headers: headersOf(delivery, now),
       timeoutMilliseconds: Math.min(longestPost, left),
       clock,
       authorities: delivery.authorities,
@@ -89,6 +86,11 @@ export async function deliver(delivery: Delivery): Promise<DeliveryOutcome> {
     }
     await new Promise((resolve) => setTimeout(resolve, decision.milliseconds));
   }
+}
+
+function headersOf({ id, body, keys, contentType }: Delivery, now: number): Record<string, string> {
+  const signed = signatureHeaders({ id, timestamp: Math.floor(now / 1000), body, keys });
+  return { "content-type": contentType, "user-agent": "ebbwire", ...signed };
 }
 
 const resolveAll: Resolve = (host, family) => systemLookup(host, { family, all: true });

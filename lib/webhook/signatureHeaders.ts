@@ -37,11 +37,20 @@ export function signatureHeaders(input: SignatureInput): Record<string, string> 
   return headers;
 }
 
-/** The bytes of a key; the standard asks for 24 to 64. */
+/** Whether a text is a signing key: `whsec_` (or nothing) and, as the standard asks, 24 to 64 bytes in base64. */
+export function isSigningKey(key: string): boolean {
+  const encoded = withoutMark(key);
+  const { length } = Buffer.from(encoded, "base64");
+  return /^[A-Za-z0-9+/]+={0,2}$/.test(encoded) && length >= 24 && length <= 64;
+}
+
 function secretOf(key: string): Buffer {
-  const encoded = key.startsWith("whsec_") ? key.slice("whsec_".length) : key;
-  const bytes = Buffer.from(encoded, "base64");
-  const sound = /^[A-Za-z0-9+/]+={0,2}$/.test(encoded) && bytes.length >= 24 && bytes.length <= 64;
-  if (!sound) throw new TypeError("a signing key needs to be whsec_ and 24 to 64 bytes in base64");
-  return bytes;
+  if (!isSigningKey(key)) {
+    throw new TypeError("a signing key needs to be whsec_ and 24 to 64 bytes in base64");
+  }
+  return Buffer.from(withoutMark(key), "base64");
+}
+
+function withoutMark(key: string): string {
+  return key.startsWith("whsec_") ? key.slice("whsec_".length) : key;
 }

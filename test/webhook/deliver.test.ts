@@ -127,6 +127,32 @@ describe("deliver", () => {
     }
   });
 
+  it("is not held up by a name that never resolves or a server that never shakes hands", async () => {
+    const silent = createServer((socket) => void socket.on("error", () => undefined));
+    await new Promise<void>((resolve) => silent.listen(0, "127.0.0.1", resolve));
+    onTestFinished(() => void silent.close());
+    const { port } = silent.address() as AddressInfo;
+    for (const lookup of [
+      () => new Promise<never>(() => undefined),
+      async () => [{ address: "127.0.0.1", family: 4 }],
+    ]) {
+      const started = Date.now();
+      expect(await post(`https://localhost:${port}/`, 800, { lookup })).toMatchObject({
+        delivered: false,
+        gone: false,
+      });
+      expect(Date.now() - started).toBeLessThan(2_500);
+    }
+  });
+
+  it("does not post with a key that is none, and does not repeat it", async () => {
+    const hook = await receiver();
+    const outcome = await post(hook.address, 5_000, { keys: [key, "whsec_mistyped-secret"] });
+    expect(outcome).toMatchObject({ delivered: false, posts: 0, gone: false });
+    expect(outcome).toHaveProperty("reason", expect.stringMatching(/its signing key is unsound$/));
+    expect(hook.received).toHaveLength(0);
+  });
+
   it("tries again when the connection is closed before an answer", async () => {
     const hook = await receiver((response, count) => (count < 3 ? response.destroy() : response.end()));
     expect(await post(hook.address, 10_000)).toEqual({ delivered: true, posts: 3, status: 200 });

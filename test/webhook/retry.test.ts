@@ -20,6 +20,7 @@ describe("retryAfter", () => {
     ["120", 120_000],
     ["0", 0],
     [" 5 ", 5_000],
+    ["0.35", 350],
     ["Sun, 06 Nov 1994 08:49:37 GMT", 60_000],
     ["Sunday, 06-Nov-94 08:49:37 GMT", 60_000],
     ["Sun Nov  6 08:49:37 1994", 60_000],
@@ -28,7 +29,7 @@ describe("retryAfter", () => {
     expect(retryAfter(header, named - 60_000)).toBe(milliseconds);
   });
 
-  it.each([undefined, "", "-5", "1.5", "soon", "1e9", "12345678901", "Sun, 99 Foo 1994", "5 s"])(
+  it.each([undefined, "", "-5", "1.5.2", ".5", "soon", "1e9", "12345678901", "Sun, 99 Foo 1994", "5 s"])(
     "ignores %j",
     (header) => {
       expect(retryAfter(header, named)).toBeUndefined();
