@@ -11,7 +11,7 @@ import { hardRun } from "../support/hardFacts.ts";
 // The published JSON schema comes in no package; the format's own reference parser (npm `adaptivecards`) does, and
 // reports every unknown element, property of a wrong type or value, and feature newer than the card's version.
 const { AdaptiveCard, SerializationContext } = createRequire(import.meta.url)(
-  "adaptivecards",
+  "adaptivecards/dist/adaptivecards.js",
 ) as typeof AdaptiveCards;
 
 function faults(content: unknown): string[] {
