@@ -19,7 +19,7 @@ export interface PostingContext {
   readonly clock: () => number;
   readonly sleep: (milliseconds: number) => Promise<void>;
   /** The longest one post may take, retries included. */
-  readonly postMilliseconds: number;
+  readonly postMilliseconds: () => number;
 }
 
 /** The same note to the same webhook always carries the same id, so that a receiver can drop a second copy. */
@@ -53,13 +53,14 @@ export async function postMessage(
     };
   const name = postingName(webhook, context.webhooks, part);
   const id = messageId(message.asOf, name, webhook.name);
+  const postMilliseconds = context.postMilliseconds();
   const outcome = await deliverOnce({
     store: context.store,
     prefix: runPrefix(message.asOf),
     name,
     document: { schema: 1, id, ...record },
     owner: context.owner,
-    leaseMilliseconds: context.postMilliseconds + 5_000,
+    leaseMilliseconds: postMilliseconds + 5_000,
     clock: context.clock,
     sleep: context.sleep,
     post: async () => {
@@ -70,7 +71,7 @@ export async function postMessage(
         contentType,
         id,
         keys: key ? key.split(/\s+/) : [],
-        deadlineMilliseconds: context.clock() + context.postMilliseconds,
+        deadlineMilliseconds: context.clock() + postMilliseconds,
         clock: context.clock,
         allowLocal: context.allowLocal,
       });

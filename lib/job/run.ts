@@ -41,7 +41,17 @@ export interface RunOptions {
 }
 
 /** The longest one webhook may keep a run waiting, retries included. */
-const postMilliseconds = 20_000;
+const longestPost = 20_000;
+/** What every webhook gets, however late it is: one that works answers within a second or two. */
+const shortestPost = 2_000;
+/** Time kept back for what follows the posts: proofs, marks and the summary. */
+const afterPosts = 5_000;
+
+/** How long the next post may take: with several silent webhooks and the time running low, ever less. */
+function postMilliseconds({ remainingMilliseconds }: RunOptions): number {
+  if (!remainingMilliseconds) return longestPost;
+  return Math.min(longestPost, Math.max(shortestPost, remainingMilliseconds() - afterPosts));
+}
 
 /** `asOf` lies before the newest run: its forecasts would be older than those that stand. */
 export class OutdatedRunError extends Error {
@@ -115,7 +125,7 @@ async function close(
       owner: options.owner ?? randomUUID(),
       clock,
       sleep: options.sleep ?? sleepFor,
-      postMilliseconds,
+      postMilliseconds: () => postMilliseconds(options),
     },
   });
   const summary = summarise(facts, report, deliveries, clock() - began);
