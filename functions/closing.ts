@@ -20,14 +20,19 @@ export function handler(event: unknown, context: LambdaContext): Promise<RunOutc
 
 /** The handler on a given cloud. */
 export async function runClosing(event: unknown, context: LambdaContext, cloud: Cloud): Promise<RunOutcome> {
-  const { asOf } = closingRequest(event);
+  const { asOf, startedAt, because } = closingRequest(event);
   const log = jsonLog(cloud.write, cloud.clock, { runId: asOfKey(asOf), requestId: context.awsRequestId });
   const summary = await closeRun({
     store: cloud.store,
     asOf,
     secrets: secretsOf(cloud.readSecret, cloud.environment, log),
+    remainingMilliseconds: () => context.getRemainingTimeInMillis(),
     clock: cloud.clock,
     owner: context.awsRequestId,
   });
-  return reportRun(cloud, log, summary, "fleet");
+  const whole =
+    startedAt === undefined
+      ? summary
+      : { ...summary, durationMilliseconds: Math.max(0, cloud.clock() - Date.parse(startedAt)) };
+  return reportRun(cloud, log, whole, "fleet", because);
 }

@@ -46,6 +46,11 @@ const retry = [
  */
 export function fleetDefinition(props: FleetDefinitionProps): Readonly<Record<string, unknown>> {
   const invoke = `arn:${props.partition}:states:::lambda:invoke`;
+  const closing = {
+    "asOf.$": "$.asOf",
+    "because.$": "$.because",
+    "startedAt.$": "$$.Execution.StartTime",
+  };
   return {
     Comment: "ebbwire fleet: every portion of a plan to a worker, then one closing",
     StartAt: "Portions",
@@ -86,7 +91,7 @@ export function fleetDefinition(props: FleetDefinitionProps): Readonly<Record<st
       Close: {
         Type: "Task",
         Resource: invoke,
-        Parameters: { FunctionName: props.closingFunctionArn, Payload: { "asOf.$": "$.asOf" } },
+        Parameters: { FunctionName: props.closingFunctionArn, Payload: closing },
         ResultSelector: { "closed.$": "$.Payload" },
         ResultPath: "$.result",
         Retry: retry,

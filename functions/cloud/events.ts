@@ -51,9 +51,26 @@ export function portionRequest(event: unknown): PortionRequest {
   return { asOf: instant(asOf), tables };
 }
 
-/** Reads the closing function's event: `{ "asOf": "2026-11-30T06:00:00Z" }`. @throws EventError */
-export function closingRequest(event: unknown): { readonly asOf: string } {
-  return { asOf: instant(fields(event, "the closing function").asOf) };
+/** What closing is told of the fleet's run. */
+export interface ClosingRequest {
+  readonly asOf: string;
+  /** When the fleet started, and why it was the fleet's; absent when a person invokes the function. */
+  readonly startedAt: string | undefined;
+  readonly because: string | undefined;
+}
+
+/**
+ * Reads the closing function's event: `{ "asOf": "2026-11-30T06:00:00Z", "startedAt": "…", "because": "…" }`.
+ *
+ * @throws EventError naming what was expected
+ */
+export function closingRequest(event: unknown): ClosingRequest {
+  const { asOf, startedAt, because } = fields(event, "the closing function");
+  return {
+    asOf: instant(asOf),
+    startedAt: startedAt === undefined ? undefined : instant(startedAt),
+    because: typeof because === "string" ? because : undefined,
+  };
 }
 
 function fields(value: unknown, name: string): Readonly<Record<string, unknown>> {

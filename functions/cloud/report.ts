@@ -9,6 +9,8 @@ export interface RunOutcome {
   readonly asOf: string;
   /** Who did the work: this function alone, or a fleet. */
   readonly by: "one function" | "fleet";
+  /** Why it was the fleet. */
+  readonly because?: string | undefined;
   readonly tables: number;
   readonly series: number;
   readonly notices: number;
@@ -27,7 +29,13 @@ export class UnfinishedError extends Error {
 }
 
 /** Writes a finished run's log lines and metrics and returns the short answer. */
-export function reportRun(cloud: Cloud, log: Log, summary: RunSummary, by: RunOutcome["by"]): RunOutcome {
+export function reportRun(
+  cloud: Cloud,
+  log: Log,
+  summary: RunSummary,
+  by: RunOutcome["by"],
+  because?: string,
+): RunOutcome {
   for (const { table, problems } of summary.failed.slice(0, mostNames))
     log.warn("a table could not be refitted", { table, codes: problems.map(({ code }) => code) });
   for (const { webhook, audience, status, asOf } of summary.deliveries) {
@@ -43,11 +51,20 @@ export function reportRun(cloud: Cloud, log: Log, summary: RunSummary, by: RunOu
   const failed = summary.failed.slice(0, mostNames).map(({ table }) => table);
   const deliveries = summary.deliveries.map(({ webhook, status }) => `${webhook}: ${status}`);
   const left = summary.left.length;
-  log.info("the run is closed", { by, tables, series, notices, failed: summary.failed.length, left });
+  log.info("the run is closed", {
+    by,
+    because,
+    tables,
+    series,
+    notices,
+    failed: summary.failed.length,
+    left,
+  });
   return {
     outcome: "closed",
     asOf,
     by,
+    ...(because === undefined ? {} : { because }),
     tables,
     series,
     notices,

@@ -52,8 +52,12 @@ describe("an event", () => {
     expect(portionRequest(two).tables).toEqual(["a", "b", "c"]);
   });
 
-  it("for closing names the run", () => {
-    expect(closingRequest(sampleEvent("closing"))).toEqual({ asOf: "2026-11-30T06:00:00Z" });
+  it("for closing names the run, when its fleet started and why it was the fleet's", () => {
+    expect(closingRequest(sampleEvent("closing"))).toEqual({
+      asOf: "2026-11-30T06:00:00Z",
+      startedAt: "2026-11-30T06:00:04Z",
+      because: "chosen for this deployment",
+    });
   });
 
   it.each([

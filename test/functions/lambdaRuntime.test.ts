@@ -192,7 +192,13 @@ describe.skipIf(!hasLambdaRuntime || !hasGateway)(
       expect(end.failedPortions.map(({ Items }) => Items[0].tables[0])).toEqual(denied);
       const { Retry } = definition.States.Portions.ItemProcessor.States.Refit;
       expect(end.retries).toBe(1 + 2 * Retry[0].MaxAttempts);
-      expect(end.output).toMatchObject({ outcome: "closed", by: "fleet", tables: 38, left: 2 });
+      expect(end.output).toMatchObject({
+        outcome: "closed",
+        by: "fleet",
+        because: "chosen for this deployment",
+        tables: 38,
+        left: 2,
+      });
       expect(closing.lines().find(({ _aws }) => _aws)).toMatchObject({ Tables: 38, Left: 2 });
 
       const texts = await storeTexts(store);

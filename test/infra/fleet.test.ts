@@ -83,6 +83,14 @@ describe("the fleet's state machine", () => {
     expect(definition.States["Too much failed"].Type).toBe("Fail");
   });
 
+  it("tells closing when the fleet started and why, for the metrics and the log", () => {
+    expect(definition.States.Close.Parameters.Payload).toEqual({
+      "asOf.$": "$.asOf",
+      "because.$": "$.because",
+      "startedAt.$": "$$.Execution.StartTime",
+    });
+  });
+
   it("logs what happened without what was passed, and is traced", () => {
     expect(machine.Properties.LoggingConfiguration).toMatchObject({ Level: "ALL" });
     expect(machine.Properties.LoggingConfiguration.IncludeExecutionData).not.toBe(true);

@@ -69,7 +69,8 @@ export async function driveFleet(definition: Json, input: Json, services: FleetS
   return { status: "SUCCEEDED", output: closed.answer, ...common };
 }
 
-const at = (input: Json, path: string) => input[path.slice("$.".length)];
+const at = (input: Json, path: string) =>
+  path === "$$.Execution.StartTime" ? new Date().toISOString() : input[path.slice("$.".length)];
 
 function filled(template: Json, input: Json): Json {
   return Object.fromEntries(
