@@ -1,5 +1,6 @@
+import { periodStart } from "../series/periods.ts";
 import type { SeriesFacts } from "../words/facts.ts";
-import { addPeriods, instantOf, type PeriodNames } from "../words/periods.ts";
+import { instantOf, type PeriodNames } from "../words/periods.ts";
 import type { AxisLabel } from "./plot.ts";
 
 /** The periods a picture of past and future shows, oldest first. */
@@ -16,7 +17,7 @@ export interface Timeline {
  */
 export function timelineOf(facts: SeriesFacts): Timeline {
   const { history, forecast, period } = facts;
-  const all = history.values.map((_, index) => addPeriods(history.start, period, index));
+  const all = history.values.map((_, index) => periodStart(history.start, period, index));
   const [firstChange] = facts.findings
     .flatMap((one) => (one.code === "change" ? [one.change.low] : []))
     .sort();

@@ -1,6 +1,6 @@
+import { periodStart } from "../series/periods.ts";
 import type { Finding } from "./facts.ts";
 import { significantStep } from "./numbers.ts";
-import { addPeriods } from "./periods.ts";
 import { countOf } from "./spans.ts";
 import type { Speech } from "./speech.ts";
 
@@ -109,5 +109,5 @@ const figures = (count: number, speech: Speech) => countOf(count, "figure", spee
 /** The period of the value at `index` of the whole series, whose last value is at `lastPeriod`. */
 function periodAt(index: number, speech: Speech): string {
   const { observed, gaps, lastPeriod, period } = speech.facts;
-  return addPeriods(lastPeriod, period, index - (observed + gaps - 1));
+  return periodStart(lastPeriod, period, index - (observed + gaps - 1));
 }

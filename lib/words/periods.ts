@@ -11,26 +11,6 @@ export function instantOf(period: string): number {
   return instant;
 }
 
-/**
- * The start of the period `count` steps after the one named.
- *
- * @example addPeriods("2026-11-30", "week", 1) // "2026-12-07"
- */
-export function addPeriods(start: string, period: Period, count: number): string {
-  const date = new Date(instantOf(start));
-  if (period === "hour") return `${new Date(date.getTime() + count * hour).toISOString().slice(0, 19)}Z`;
-  if (period === "day") date.setUTCDate(date.getUTCDate() + count);
-  else if (period === "week") date.setUTCDate(date.getUTCDate() + 7 * count);
-  else {
-    const months = { month: 1, quarter: 3, year: 12 }[period] * count;
-    const first = new Date(Date.UTC(date.getUTCFullYear(), date.getUTCMonth() + months, 1));
-    const last = new Date(Date.UTC(first.getUTCFullYear(), first.getUTCMonth() + 1, 0)).getUTCDate();
-    first.setUTCDate(Math.min(date.getUTCDate(), last));
-    return first.toISOString().slice(0, 10);
-  }
-  return date.toISOString().slice(0, 10);
-}
-
 /** How a period is named, and how it stands in a sentence after "since" or "for". */
 export interface PeriodNames {
   /** "week of 7 December", "Monday 7 December", "December 2026", "Q4 2026", "2026". */
@@ -71,7 +51,7 @@ export function periodNames(period: Period, locale: string, timeZone: string, no
   const shortDay = format({ day: "numeric", month: "short" });
   const quarter = (start: string) => {
     const month = new Date(instantOf(start)).getUTCMonth();
-    return month % 3 === 0 ? `Q${month / 3 + 1} ${year(start)}` : `the quarter from ${monthAndYear(start)}`;
+    return `Q${Math.floor(month / 3) + 1} ${year(start)}`;
   };
   const shortMonth = format({ month: "short", year: "numeric" });
   const bare = (name: (start: string) => string, short = name): PeriodNames => ({

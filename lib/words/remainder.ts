@@ -1,6 +1,7 @@
+import { periodIndex, periodStart } from "../series/periods.ts";
 import type { Finding, SeriesFacts } from "./facts.ts";
 import { fadingWeights } from "./fadingWeights.ts";
-import { addPeriods, instantOf } from "./periods.ts";
+import { instantOf } from "./periods.ts";
 import type { Speech } from "./speech.ts";
 
 type ChangeFinding = Extract<Finding, { code: "change" }>;
@@ -34,7 +35,12 @@ export function remainderOf(facts: SeriesFacts, coefficients?: readonly number[]
   if (value === null) return null;
   const shock = shares ? value * -Math.expm1(-told.shock) : told.shock;
   const effects = coefficients
-    ? laterEffects(shock, coefficients, periodsSince(facts, told.period), forecast.periods.length)
+    ? laterEffects(
+        shock,
+        coefficients,
+        periodIndex(told.period, facts.period, facts.lastPeriod),
+        forecast.periods.length,
+      )
     : told.effects.map((effect, step) => (shares ? forecast.point[step] * -Math.expm1(-effect) : effect));
   const found = effects.findIndex((effect) => Math.abs(effect) <= Math.abs(shock) / 2);
   const index = found === -1 ? effects.length - 1 : found;
@@ -53,15 +59,8 @@ function laterEffects(
     .map((weight) => shock * weight);
 }
 
-function periodsSince({ lastPeriod, period }: SeriesFacts, start: string): number {
-  let age = 0;
-  while (addPeriods(lastPeriod, period, -age) > start) age++;
-  return age;
-}
-
 function valueAt({ history, period }: SeriesFacts, start: string): number | null {
-  const index = history.values.findIndex((_, at) => addPeriods(history.start, period, at) === start);
-  return index === -1 ? null : history.values[index];
+  return history.values[periodIndex(history.start, period, start)] ?? null;
 }
 
 /** "last week's" when it is just over, else "the" with the period named by `of`. */
@@ -69,7 +68,7 @@ function whose(speech: Speech, start: string): { before: string; after: string }
   const { period } = speech.facts;
   const now = instantOf(speech.now);
   const justOver =
-    now >= instantOf(addPeriods(start, period, 1)) && now < instantOf(addPeriods(start, period, 2));
+    now >= instantOf(periodStart(start, period, 1)) && now < instantOf(periodStart(start, period, 2));
   if (!justOver || period === "hour") return { before: "the", after: ` ${speech.periods.when(start)}` };
   return { before: period === "day" ? "yesterday's" : `last ${period}'s`, after: "" };
 }

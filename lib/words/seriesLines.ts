@@ -1,3 +1,4 @@
+import { periodStart } from "../series/periods.ts";
 import { changeDate, changeHeadline, changeMeaning } from "./changeWords.ts";
 import type { Finding } from "./facts.ts";
 import { bars, barsPast, chanceSentences, nextSentence, totalSentence } from "./forecastSentences.ts";
@@ -10,7 +11,6 @@ import {
   surpriseRemainder,
   surpriseSentence,
 } from "./otherFindings.ts";
-import { addPeriods } from "./periods.ts";
 import { remainderSentence } from "./remainder.ts";
 import type { Speech } from "./speech.ts";
 
@@ -95,5 +95,5 @@ const forAnalysts = new Set(["outliers-damped", "level-step", "naive-used"]);
 
 /** Within the periods that the small bars show. */
 function isRecent(start: string, { facts }: Speech): boolean {
-  return start > addPeriods(facts.lastPeriod, facts.period, -barsPast);
+  return start > periodStart(facts.lastPeriod, facts.period, -barsPast);
 }

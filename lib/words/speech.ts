@@ -1,3 +1,4 @@
+import { periodStart } from "../series/periods.ts";
 import { chanceWriter, percentWriter } from "./chances.ts";
 import type { SeriesFacts, Voice } from "./facts.ts";
 import {
@@ -8,7 +9,7 @@ import {
   significantStep,
   type WriteNumber,
 } from "./numbers.ts";
-import { addPeriods, type PeriodNames, periodNames } from "./periods.ts";
+import { type PeriodNames, periodNames } from "./periods.ts";
 import { plainName } from "./plainText.ts";
 import { span } from "./spans.ts";
 import { unitAfter } from "./units.ts";
@@ -42,7 +43,7 @@ export function spokenInterval<T extends { readonly level: number }>(intervals: 
 
 /** Settles how to speak of a series; `now` is the run's instant, by default the period after the last value. */
 export function speechFor(facts: SeriesFacts, voice: Voice, asOf?: string): Speech {
-  const now = asOf ?? addPeriods(facts.lastPeriod, facts.period, 1);
+  const now = asOf ?? periodStart(facts.lastPeriod, facts.period, 1);
   const write = numberWriter(voice.locale);
   const whole = allWhole(facts.history.values);
   const unit = facts.unit === null ? null : plainName(facts.unit, 24);

@@ -1,8 +1,8 @@
 import fc from "fast-check";
 import type { ChangeKind } from "../../lib/drift/notice.ts";
+import { periodStart } from "../../lib/series/periods.ts";
 import type { Period } from "../../lib/series/series.ts";
 import type { Finding, SeriesFacts } from "../../lib/words/facts.ts";
-import { addPeriods } from "../../lib/words/periods.ts";
 import { quay } from "./factsFixture.ts";
 
 // Random facts, wild but possible: sizes over ten powers of ten, gaps, infinite half-lives, near ties.
@@ -56,9 +56,9 @@ export const changeOf = (period: Period): fc.Arbitrary<Extract<Finding, { code: 
     fresh: fc.constant(true),
     noticed: fc.constant(lastPeriodOf[period]),
     change: fc.tuple(fc.nat(30), fc.nat(10), fc.nat(10)).map(([back, before, after]) => ({
-      period: addPeriods(lastPeriodOf[period], period, -back),
-      low: addPeriods(lastPeriodOf[period], period, -back - before),
-      high: addPeriods(lastPeriodOf[period], period, Math.min(0, after - back)),
+      period: periodStart(lastPeriodOf[period], period, -back),
+      low: periodStart(lastPeriodOf[period], period, -back - before),
+      high: periodStart(lastPeriodOf[period], period, Math.min(0, after - back)),
     })),
     before: behaviour,
     after: behaviour,
@@ -80,7 +80,7 @@ export const surpriseOf = (period: Period): fc.Arbitrary<Extract<Finding, { code
     size: value > expected ? 5 : -5,
     remaining: left.map((amount, index) => ({
       after: index + 1,
-      period: addPeriods(lastPeriodOf[period], period, index + 1),
+      period: periodStart(lastPeriodOf[period], period, index + 1),
       amount,
     })),
   }));
@@ -108,12 +108,12 @@ export const seriesOf = (
         { length: horizon },
         (_, step) => (history.at(-1) ?? 10) + shock * fading ** (step + 1),
       );
-      const periods = point.map((_, step) => addPeriods(last, period, step + 1));
+      const periods = point.map((_, step) => periodStart(last, period, step + 1));
       const total = point.reduce((sum, one) => sum + one, 0);
       return {
         ...quay,
         period,
-        history: { start: addPeriods(last, period, 1 - history.length), values: history },
+        history: { start: periodStart(last, period, 1 - history.length), values: history },
         lastPeriod: last,
         observed: history.filter((value) => value !== null).length,
         gaps: history.filter((value) => value === null).length,

@@ -1,5 +1,5 @@
+import { periodStart } from "../../lib/series/periods.ts";
 import type { RunFacts, SeriesFacts } from "../../lib/words/facts.ts";
-import { addPeriods } from "../../lib/words/periods.ts";
 import { branchFacts, loansRun, mondays, quay, quayChange, stationSurprise } from "./factsFixture.ts";
 
 // What is hard to draw: long and hostile names, huge and tiny numbers, gaps, hours, many marks, many lags, no data.
@@ -43,7 +43,7 @@ const hourly: SeriesFacts = {
   lastPeriod: "2026-12-07T06:00:00Z",
   forecast: {
     ...base("x", 4).forecast,
-    periods: Array.from({ length: 8 }, (_, step) => addPeriods("2026-12-07T07:00:00Z", "hour", step)),
+    periods: Array.from({ length: 8 }, (_, step) => periodStart("2026-12-07T07:00:00Z", "hour", step)),
   },
   attribution: null,
   comparison: null,
