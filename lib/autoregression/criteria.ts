@@ -4,7 +4,8 @@ export type Criterion = "aic" | "aicc" | "bic";
 /**
  * Information criteria from a maximised log-likelihood (Akaike 1974; Hurvich & Tsai 1989; Schwarz 1978).
  * `parameters` counts everything estimated, the innovation variance and the mean included; `observations`
- * counts observed values. AICc is infinite when too few values are left to correct with (n ≤ k + 1).
+ * counts observed values. AICc, whose penalty is
+ * 2kn/(n − k − 1), is infinite when too few values are left to correct with (n ≤ k + 1).
  *
  * @example informationCriteria(-29.3792, 3, 48).aic // 64.7584
  */
@@ -13,13 +14,19 @@ export function informationCriteria(
   parameters: number,
   observations: number,
 ): Record<Criterion, number> {
-  const aic = -2 * logLikelihood + 2 * parameters;
-  const spare = observations - parameters - 1;
   return {
-    aic,
-    aicc: spare > 0 ? aic + (2 * parameters * (parameters + 1)) / spare : Number.POSITIVE_INFINITY,
-    bic: -2 * logLikelihood + parameters * Math.log(observations),
+    aic: -2 * logLikelihood + criterionPenalty("aic", parameters, observations),
+    aicc: -2 * logLikelihood + criterionPenalty("aicc", parameters, observations),
+    bic: -2 * logLikelihood + criterionPenalty("bic", parameters, observations),
   };
+}
+
+/** What a criterion adds to −2 log-likelihood. */
+export function criterionPenalty(criterion: Criterion, parameters: number, observations: number): number {
+  if (criterion === "bic") return parameters * Math.log(observations);
+  if (criterion === "aic") return 2 * parameters;
+  const spare = observations - parameters - 1;
+  return spare > 0 ? (2 * parameters * observations) / spare : Number.POSITIVE_INFINITY;
 }
 
 /**

@@ -1,7 +1,7 @@
 import { observedMean } from "../numeric/sums.ts";
 import { requireObserved, requireValues, requireWhole } from "./checks.ts";
 import { conditionalLeastSquares } from "./conditionalLeastSquares.ts";
-import { type Criterion, criterionWeights, informationCriteria } from "./criteria.ts";
+import { type Criterion, criterionPenalty, criterionWeights } from "./criteria.ts";
 import type { AutoregressiveFit, EstimationMethod } from "./fit.ts";
 import { fitAutoregression, requireVariation } from "./fitAutoregression.ts";
 import { fitByMoments, momentLogLikelihood, momentOrders } from "./momentFits.ts";
@@ -73,7 +73,7 @@ function candidates(
     const orders = momentOrders(values, maxOrder, method, meanKnown);
     for (let p = 0; p <= maxOrder; p++) {
       const likelihood = momentLogLikelihood(orders.innovationVariances[p], n);
-      scores[p] = informationCriteria(likelihood, p + extra, n)[criterion];
+      scores[p] = -2 * likelihood + criterionPenalty(criterion, p + extra, n);
     }
     return { scores, fitOf: (order) => fitByMoments(values, order, method, meanKnown, orders) };
   }
@@ -84,7 +84,7 @@ function candidates(
       const rows = result?.rows.length ?? 0;
       const residual = result?.regression.residualSumOfSquares ?? Number.NaN;
       const likelihood = -0.5 * rows * (Math.log((2 * Math.PI * residual) / rows) + 1);
-      const score = informationCriteria(likelihood, p + extra, rows)[criterion];
+      const score = -2 * likelihood + criterionPenalty(criterion, p + extra, rows);
       scores[p] = Number.isNaN(score) ? Number.POSITIVE_INFINITY : score;
     }
     return { scores, fitOf: (order) => fitAutoregression(values, { order, method, mean }) };
