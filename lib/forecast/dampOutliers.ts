@@ -14,6 +14,8 @@ export interface DampedSeries {
 const FAR = 5;
 /** With more far errors than this share the shocks are heavy-tailed or of changing size, and none is an outlier. */
 const MOST_FAR = 0.02;
+/** Always allowed: a one-off makes two far errors, coming and going. */
+const FEW_FAR = 4;
 
 /**
  * Damps one-off values before fitting. One-step errors of a robustly fitted autoregression of differences (steps
@@ -23,7 +25,7 @@ const MOST_FAR = 0.02;
  * mean of both readings, weighted by how often this series' far errors stayed before (one of each added, so half
  * without any).
  *
- * `values` without gaps. At most 2 % may be far, else nothing is touched.
+ * `values` without gaps. At most 2 %, or four, may be far, else nothing is touched.
  */
 export function dampOutliers(values: Float64Array, season: number, workspace: BurgWorkspace): DampedSeries {
   const count = values.length;
@@ -56,7 +58,7 @@ export function dampOutliers(values: Float64Array, season: number, workspace: Bu
   const limit = FAR * errorSize;
   let far = 0;
   for (let t = 1; t < count; t++) if (errors[t] > limit) far++;
-  if (far === 0 || far > Math.max(2, MOST_FAR * count)) return untouched;
+  if (far === 0 || far > Math.max(FEW_FAR, MOST_FAR * count)) return untouched;
 
   const outliers: number[] = [];
   const stays: number[] = [];

@@ -1,0 +1,168 @@
+import { describe, expect, it } from "vitest";
+import { burgWorkspace } from "../../lib/autoregression/burg.ts";
+import { smoothGaps } from "../../lib/autoregression/smoothGaps.ts";
+import { afterChange } from "../../lib/forecast/afterChange.ts";
+import { candidateWeights, weightPower } from "../../lib/forecast/candidateWeights.ts";
+import { dampOutliers } from "../../lib/forecast/dampOutliers.ts";
+import { fillGaps } from "../../lib/forecast/fillGaps.ts";
+import { localDrift } from "../../lib/forecast/localDrift.ts";
+import { naiveForecast } from "../../lib/forecast/naiveForecast.ts";
+import { normalDraws } from "../../lib/forecast/normalDraws.ts";
+import { rollingOrigins } from "../../lib/forecast/rollingOrigins.ts";
+import { levelProfile } from "../../lib/forecast/seasonalProfile.ts";
+import { weightedMiddle } from "../../lib/forecast/weightedMiddle.ts";
+import { withR } from "../support/r.ts";
+
+const r = withR();
+
+/** A random walk with unit shocks. */
+function walk(count: number, seed: number): Float64Array {
+  const draw = normalDraws(seed);
+  let level = 100;
+  return Float64Array.from({ length: count }, () => {
+    level += draw();
+    return level;
+  });
+}
+
+describe("weightedMiddle", () => {
+  it("is R's quarter-trimmed mean when the weights are equal", async () => {
+    const values = [3, -7, 12, 5.5, 0.25, 41, 8, 8.5];
+    const [expected] = await r.evaluate(`mean(c(${values.join(",")}), trim=0.25)`);
+    const got = weightedMiddle(Float64Array.from(values), new Float64Array(8).fill(2), new Int32Array(8));
+    expect(got).toBeCloseTo(expected, 12);
+  });
+
+  it("counts each value for its weight between the quartiles, as worked by hand", () => {
+    // Weights 1, 2, 1 of 4: the middle half is all of the second value.
+    const shares = new Float64Array(3);
+    const got = weightedMiddle(
+      Float64Array.of(0, 5, 90),
+      Float64Array.of(1, 2, 1),
+      new Int32Array(3),
+      shares,
+    );
+    expect(got).toBe(5);
+    expect([...shares]).toEqual([0, 1, 0]);
+  });
+});
+
+describe("levelProfile", () => {
+  it("is the additive figure of R's decompose when the season is beyond doubt", async () => {
+    const figure = [4, -3, 1, -2];
+    const values = Float64Array.from({ length: 24 }, (_, t) => 10 + 0.3 * t + figure[t % 4]);
+    await r.assign("v", values);
+    const expected = await r.evaluate("decompose(ts(v, frequency=4))$figure");
+    levelProfile(values, 4, 24).forEach((value, s) => {
+      expect(value).toBeCloseTo(expected[s], 9);
+    });
+  });
+
+  it("shrinks a season that is only noise to a small part of what it looks like", () => {
+    const draw = normalDraws(11);
+    const values = Float64Array.from({ length: 480 }, () => draw());
+    const profile = levelProfile(values, 12, 480);
+    // Season means of 40 values of unit noise have variance 1/40; shrinking must leave less than that.
+    const power = profile.reduce((sum, value) => sum + value * value, 0) / 12;
+    expect(power).toBeLessThan(1 / 40);
+  });
+});
+
+describe("fillGaps", () => {
+  it("goes on along a straight line through its gaps, and along a season of its own shape", () => {
+    const line = Float64Array.from({ length: 30 }, (_, t) => 4 + 2 * t);
+    for (const gap of [7, 8, 20]) line[gap] = Number.NaN;
+    fillGaps(line, 0, burgWorkspace(30, 5)).forEach((value, t) => {
+      expect(value).toBeCloseTo(4 + 2 * t, 9);
+    });
+    const season = Float64Array.from({ length: 48 }, (_, t) => [3, 9, 1, 7][t % 4] + t);
+    season[21] = Number.NaN;
+    expect(fillGaps(season, 4, burgWorkspace(48, 5))[21]).toBeCloseTo(9 + 21, 2);
+  });
+
+  it("comes within half a shock of what the core's smoother expects of a walk", () => {
+    // The smoother of a stationary AR(1) close to one knows the same values; both expect the same in between.
+    const values = walk(200, 5);
+    for (const gap of [60, 61, 62, 130]) values[gap] = Number.NaN;
+    const mean = values.filter((value) => !Number.isNaN(value)).reduce((sum, value) => sum + value, 0) / 196;
+    const smooth = smoothGaps({ coefficients: [0.9999], mean, innovationVariance: 1 }, values).values;
+    const filled = fillGaps(values, 0, burgWorkspace(200, 20));
+    for (const gap of [60, 61, 62, 130]) expect(Math.abs(filled[gap] - smooth[gap])).toBeLessThan(0.5);
+  });
+});
+
+describe("dampOutliers", () => {
+  it("replaces a one-off, keeps a step, and halves a far last value", () => {
+    const values = walk(120, 2);
+    values[50] += 40;
+    for (let t = 80; t < 120; t++) values[t] -= 30;
+    values[119] += 60;
+    const { outliers, steps, values: damped } = dampOutliers(values, 0, burgWorkspace(120, 20));
+    expect(outliers).toEqual([50, 119]);
+    expect(steps).toEqual([80]);
+    expect(Math.abs(damped[50] - (values[49] + values[51]) / 2)).toBeLessThan(3);
+    // One step stayed, one outlier went: (1 + 1)/(2 + 1 + 1) = half of the jump is believed.
+    expect(damped[119] - damped[118]).toBeGreaterThan(25);
+    expect(damped[119] - damped[118]).toBeLessThan(35);
+  });
+
+  it("leaves ordinary noise alone", () => {
+    const values = walk(300, 3);
+    expect(dampOutliers(values, 0, burgWorkspace(300, 20)).values).toBe(values);
+  });
+});
+
+describe("candidateWeights", () => {
+  it("is inverse to the squared error at four horizons and leaves the judged origin out", () => {
+    const losses = [Float64Array.of(1, 4), Float64Array.of(100, 1)];
+    expect(weightPower(2)).toBe(1);
+    expect([...candidateWeights(losses, 1, () => true, 2, 1)].map((one) => one.toFixed(6))).toEqual([
+      "1.000000",
+      "0.250000",
+    ]);
+  });
+
+  it("weighs all alike without evidence", () => {
+    expect([...candidateWeights([], -1, (i) => i !== 1, 3, 0)]).toEqual([1, 0, 1]);
+  });
+});
+
+describe("rollingOrigins", () => {
+  it("leaves enough to fit and shares no fit with an origin that lies before it", () => {
+    for (const [count, horizon] of [
+      [9, 6],
+      [40, 8],
+      [260, 13],
+      [2000, 48],
+    ]) {
+      const origins = rollingOrigins(count, horizon, 8);
+      for (const { count: at, steps, fitted } of origins) {
+        expect(fitted).toBeGreaterThanOrEqual(8);
+        expect(fitted).toBeLessThanOrEqual(at);
+        expect(at + steps).toBeLessThanOrEqual(count);
+      }
+      expect(new Set(origins.map(({ fitted }) => fitted)).size).toBeLessThanOrEqual(8);
+    }
+    expect(rollingOrigins(8, 4, 8)).toEqual([]);
+  });
+});
+
+describe("naiveForecast, localDrift and afterChange", () => {
+  it("repeat the last season, and across a gap the season before it", () => {
+    expect([...naiveForecast([1, 2, 3, 4, Number.NaN, 6], 6, 3, 4)]).toEqual([4, 2, 6, 4]);
+    expect([...naiveForecast([1, 2, Number.NaN], 3, 0, 2)]).toEqual([2, 2]);
+  });
+
+  it("take the drift of the last stretch when the old one is over", () => {
+    const steps = Float64Array.from({ length: 60 }, (_, t) => (t < 40 ? 0 : 3) + ((t * 7) % 3) * 0.01);
+    expect(localDrift(steps)).toBeGreaterThan(2.5);
+    expect(localDrift(Float64Array.from({ length: 60 }, (_, t) => (t % 2 ? 1 : -1)))).toBeCloseTo(0, 1);
+  });
+
+  it("keep only what came after the change, or move the past to the new level", () => {
+    const values = Float64Array.from([1, 1, 1, 1, 5, 5]);
+    expect([...afterChange(values, 4, 2)]).toEqual([5, 5]);
+    expect([...afterChange(values, 4, 10)]).toEqual([5, 5, 5, 5, 5, 5]);
+    expect(afterChange(values, undefined, 2)).toBe(values);
+  });
+});
