@@ -95,8 +95,8 @@ function members(seed: number): string {
 /** The demo's tables by file name, the same text on every machine. */
 export function demoTables(): Record<string, string> {
   return {
-    "loans.csv": loans({ Quay: 8, Mill: 22, Park: 33, Station: 44 }),
-    "desk-calls.csv": deskCalls(55),
-    "members.csv": members(66),
+    "loans.csv": loans({ Quay: 8, Mill: 4, Park: 4, Station: 7 }),
+    "desk-calls.csv": deskCalls(8),
+    "members.csv": members(8),
   };
 }

@@ -4,6 +4,7 @@ import { readDocument, type Versioned } from "./documents.ts";
 import { problemsKey } from "./keys.ts";
 import { readModel } from "./modelDocument.ts";
 import type { FailedTable, Plan } from "./summary.ts";
+import { valuesInYear } from "./watchFacts.ts";
 
 /** `runs/<asOf>/problems/<table>.json`: why a table could not be refitted in this run. */
 export interface ProblemsDocument extends Versioned, FailedTable {}
@@ -39,12 +40,14 @@ export async function gatherTables(
 }
 
 /**
- * The facts of a whole run. `expectedFalseNotices` is the yearly false-alarm rate summed over all watched series: what
- * chance alone would bring in a year of looks.
+ * The facts of a whole run. `expectedFalseNotices` sums over all watched series what chance alone would bring in a year:
+ * the false-alarm rate of a reference, as often as a year uses up its looks.
  */
 export function runFacts(plan: Plan, gathered: Gathered, undelivered: RunFacts["undelivered"]): RunFacts {
   const watched = gathered.tables.flatMap((table) =>
-    table.series.map((series) => series.monitor?.falseAlarmRate ?? 0),
+    table.series.map(({ monitor, period }) =>
+      monitor ? (monitor.falseAlarmRate * valuesInYear[period]) / monitor.looks : 0,
+    ),
   );
   return {
     asOf: plan.asOf,

@@ -5,8 +5,23 @@ import { describeSeries } from "../forecast/describingModel.ts";
 import type { Period } from "../series/series.ts";
 import type { MonitorFacts } from "../words/facts.ts";
 
-/** Looks over which the false-alarm rate holds: a year of weeks, and as many periods of any other step. */
-const looks = 52;
+/** Values a year brings, by period. */
+export const valuesInYear = { hour: 8766, day: 365.25, week: 52, month: 12, quarter: 4, year: 1 } as const;
+
+/** The longest stretch of looks boundaries are tabulated for, and the smallest rate. */
+const mostLooks = 104;
+const smallestRate = 0.01;
+
+/**
+ * Looks of one reference, and the false-alarm rate over them that comes to `yearly` in a year. Days take their share of
+ * the year; hours would need a smaller rate than can be told from simulations, and take the smallest there is; weeks
+ * and longer steps have the rate itself over 52 looks, however many years those last.
+ */
+function lookBudget(period: Period, yearly: number): { looks: number; falseAlarmRate: number } {
+  if (valuesInYear[period] <= 52) return { looks: 52, falseAlarmRate: yearly };
+  const share = (yearly * mostLooks) / valuesInYear[period];
+  return { looks: mostLooks, falseAlarmRate: Math.min(yearly, Math.max(smallestRate, share)) };
+}
 
 /** Values before the first run that are looked at as if they had arrived one by one. */
 const lookedBackOn = 26;
@@ -40,8 +55,7 @@ export function advanceWatch(stored: unknown, task: WatchTask): WatchResult {
   // A reference keeps the terms it was made with; the describing model may choose others from run to run.
   const { trend, season } = previous?.settings ?? referenceTerms(task);
   const options: WatchOptions = {
-    looks,
-    falseAlarmRate: task.falseAlarmRate,
+    ...lookBudget(task.period, task.falseAlarmRate),
     seed: task.seed,
     trend,
     season,
