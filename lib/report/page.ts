@@ -1,4 +1,5 @@
 import type { RunFacts, Voice } from "../words/facts.ts";
+import { falseNotices } from "../words/falseNotices.ts";
 import { timeWriter } from "../words/instants.ts";
 import { caution } from "../words/note.ts";
 import { html, type Markup } from "./markup.ts";
@@ -12,7 +13,7 @@ export function page(title: string, main: Markup, run: RunFacts, voice: Voice): 
     html`<html lang="en"><head><meta charset="utf-8"><meta http-equiv="Content-Security-Policy" content="${{ markup: policy }}"><meta name="viewport" content="width=device-width, initial-scale=1"><meta name="color-scheme" content="light dark"><meta name="referrer" content="no-referrer"><title>${title}</title><style>${{ markup: style }}</style></head>
 <body><header><p class="mark">ebbwire</p>${tide}<h1>${title}</h1><p class="when">${timeWriter(voice)(run.asOf)} (${voice.timeZone})</p></header>
 <main>${main}</main>
-<footer><p>${caution}</p></footer></body></html>`.markup
+<footer><p>${falseNotices(run, voice)}</p><p>${caution}</p></footer></body></html>`.markup
   }\n`;
 }
 

@@ -1,10 +1,10 @@
 import { newsFrom, ranked } from "./attention.ts";
 import type { RunFacts, Voice } from "./facts.ts";
+import { falseNotices } from "./falseNotices.ts";
 import { headline } from "./headline.ts";
 import { reportPlace } from "./instants.ts";
 import { messageData } from "./messageData.ts";
 import { footerOf, type Note } from "./note.ts";
-import { numberWriter } from "./numbers.ts";
 import { plainName } from "./plainText.ts";
 import { seriesAccount } from "./seriesAccount.ts";
 import { speechFor } from "./speech.ts";
@@ -49,16 +49,4 @@ function restWords(news: number, rest: number): string {
   return untold === 0
     ? "nothing to report."
     : `${untold} with news that stand in the report, ${rest - untold} steady.`;
-}
-
-/** How many notices would come from chance alone. */
-function falseNotices(run: RunFacts, voice: Voice): string {
-  const watched = run.tables.reduce(
-    (sum, table) => sum + table.series.filter((one) => one.monitor).length,
-    0,
-  );
-  if (watched === 0) return "No series is watched yet, so no notices can come.";
-  const write = numberWriter(voice.locale);
-  const expected = write(run.expectedFalseNotices, run.expectedFalseNotices < 10 ? 0.1 : 1);
-  return `If all ${write(watched, 1)} watched series stayed steady, chance alone would bring about ${expected} notices in a year of looks.`;
 }

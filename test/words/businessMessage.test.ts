@@ -72,6 +72,29 @@ describe("the business note", () => {
     );
   });
 
+  it("keeps its width with the longest names, and names the series on every line", () => {
+    const longest = "a very long name of a branch that nobody can shorten ".repeat(3);
+    const tables = [1, 2].map((table) => ({
+      table: `${longest}${table}`,
+      series: [{ ...quay, series: `${longest}Quay`, unit: longest }],
+      problems: [],
+    }));
+    const { lines } = businessMessage({ ...loansRun, tables }, britishVoice);
+    for (const line of lines) {
+      expect([...line].length).toBeLessThanOrEqual(160);
+      expect(line).toMatch(/^(a very long name .*Quay: |… and |In brackets |So far )/);
+    }
+    expect(lines.length).toBeLessThanOrEqual(13);
+  });
+
+  it("writes numbers and dates as the locale does, in any script", () => {
+    const first = (locale: string) => businessMessage(oneTable([quay]), { ...britishVoice, locale }).lines[0];
+    expect(first("en-US")).toContain("in the week of December 7 (155 to 210), about 1,400 over all 8 weeks");
+    expect(first("de-DE")).toContain("in the week of 7. Dezember (155 to 210), about 1.400 over all 8 weeks");
+    expect(first("fr-FR")).toContain("about 1\u202F400 over all 8 weeks");
+    expect(first("ar-EG")).toContain("١٨٥");
+  });
+
   it("for many tables tells the most changed first and counts the steady", () => {
     const tables = Array.from({ length: 12 }, (_, table) => ({
       table: `town-${table + 1}`,
