@@ -5,6 +5,7 @@ import type { BenchRow } from "./benchRow.ts";
 import { bundleBench } from "./bundleBench.ts";
 import { coreBench } from "./coreBench.ts";
 import { costBench } from "./costBench.ts";
+import { jobBench } from "./jobBench.ts";
 
 /** Each part of the bench by the name it is asked for. */
 const PARTS: Record<string, (data: string | undefined) => Promise<BenchRow[]>> = {
@@ -12,6 +13,7 @@ const PARTS: Record<string, (data: string | undefined) => Promise<BenchRow[]>> =
   bundles: bundleBench,
   core: coreBench,
   cost: costBench,
+  job: jobBench,
 };
 
 /**
