@@ -2,15 +2,20 @@ import type prices from "./prices.json";
 
 export type Prices = typeof prices;
 
+export interface Requests {
+  readonly puts: number;
+  readonly gets: number;
+  readonly lists: number;
+}
+
 /** What was measured, and the few things that could not be. */
 export interface Measured {
   /** Of one core, for one series of a packed table, in a later run. */
   readonly millisecondsPerSeries: number;
-  /** Requests for one table and run, closing included. */
-  readonly putsPerTable: number;
-  readonly getsPerTable: number;
-  readonly listsPerTable: number;
-  /** Bytes that one run leaves for one series. */
+  /** Requests for one table and run, closing included, and those of a run as such. */
+  readonly requestsPerTable: Requests;
+  readonly requestsPerRun: Requests;
+  /** Bytes that one run leaves for one series: model, forecast, its share of message and report. */
   readonly bytesPerSeries: number;
   /** Taken, not measured: time of one request from Lambda to S3, of which four are under way at once. */
   readonly millisecondsPerRequest: number;
@@ -52,8 +57,8 @@ const logBytesPerRun = 20_000;
 export function monthlyCost(scenario: Scenario, measured: Measured, prices: Prices): Cost {
   const { series, seriesPerTable, runsPerMonth, fleet } = scenario;
   const tables = Math.ceil(series / seriesPerTable);
-  const requestsPerTable = measured.putsPerTable + measured.getsPerTable + measured.listsPerTable;
-  const waiting = (tables * requestsPerTable * measured.millisecondsPerRequest) / underWay;
+  const { puts, gets, lists } = measured.requestsPerTable;
+  const waiting = (tables * (puts + gets + lists) * measured.millisecondsPerRequest) / underWay;
   const secondsPerRun = (series * measured.millisecondsPerSeries + waiting) / 1000 + runSeconds;
   const seconds = runsPerMonth * secondsPerRun + watchesPerMonth * watchSeconds;
   const compute = seconds * memoryGigabytes * prices.lambdaArmGigabyteSecond;
@@ -62,12 +67,10 @@ export function monthlyCost(scenario: Scenario, measured: Measured, prices: Pric
   const invocations = runsPerMonth * (1 + (fleet ? portions + 1 : 0)) + watchesPerMonth;
   // A portion is a child execution of one state: start, task, end. The parent has four states.
   const transitions = fleet ? runsPerMonth * (3 * portions + 6) : 0;
-  const objects =
-    measured.putsPerTable * prices.s3Put +
-    measured.getsPerTable * prices.s3Get +
-    measured.listsPerTable * prices.s3List;
+  const priceOf = (count: Requests) =>
+    count.puts * prices.s3Put + count.gets * prices.s3Get + count.lists * prices.s3List;
   const requests =
-    runsPerMonth * (tables * objects + 30 * prices.s3Put) +
+    runsPerMonth * (tables * priceOf(measured.requestsPerTable) + priceOf(measured.requestsPerRun)) +
     watchesPerMonth * 3 * prices.s3List +
     invocations * prices.lambdaRequest +
     transitions * prices.stepFunctionsTransition +

@@ -4,9 +4,8 @@ import prices from "../bench/prices.json" with { type: "json" };
 
 const measured: Measured = {
   millisecondsPerSeries: 20,
-  putsPerTable: 3,
-  getsPerTable: 4,
-  listsPerTable: 1,
+  requestsPerTable: { puts: 3, gets: 4, lists: 1 },
+  requestsPerRun: { puts: 20, gets: 20, lists: 6 },
   bytesPerSeries: 2000,
   millisecondsPerRequest: 0,
 };
