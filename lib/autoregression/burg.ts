@@ -74,6 +74,9 @@ export function burgAllOrders(
   }
 }
 
+/** Reflection coefficients stop short of one, so that a perfectly predictable series still has a stationary fit. */
+const LARGEST = 1 - 1e-10;
+
 /**
  * Burg's reflection coefficients π_k = 2 Σ f_t b_{t−1} / Σ (f_t² + b_{t−1}²), which never pass ±1, so every fit is
  * stationary, and innovation variances v_0 = Σ z²/n, v_k = v_{k−1}(1 − π_k²). `centre` is taken off the values. Once a
@@ -99,7 +102,8 @@ export function burgReflections(
   for (let t = 1; t < n; t++) cross += forward[t] * forward[t - 1];
   let energy = 2 * power - forward[0] ** 2 - forward[n - 1] ** 2;
   for (let k = 1; k <= maxOrder; k++) {
-    const partial = energy > 0 ? Math.max(-1, Math.min(1, (2 * cross) / energy)) : 0;
+    // What is left of a series that was predicted perfectly is rounding.
+    const partial = energy > power * 1e-18 ? Math.max(-LARGEST, Math.min(LARGEST, (2 * cross) / energy)) : 0;
     partials[k - 1] = partial;
     innovationVariances[k] = innovationVariances[k - 1] * (1 - partial) * (1 + partial);
     if (k === maxOrder) break;

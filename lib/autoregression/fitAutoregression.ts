@@ -63,14 +63,24 @@ export function fitAutoregression(values: ArrayLike<number>, options: FitOptions
   }
 }
 
-/** Refuses values that are all the same (all zero, when the mean is known): their variance is zero. */
+/** Differences outside this range have squares that are not numbers any more. */
+const LEAST_SPREAD = 1e-150;
+const GREATEST_SPREAD = 1e150;
+
+/** Refuses values that are all the same (all zero, when the mean is known), or differ by too little or too much. */
 export function requireVariation(values: ArrayLike<number>, meanKnown: boolean): void {
   let first = meanKnown ? 0 : Number.NaN;
+  let spread = 0;
   for (let t = 0; t < values.length; t++) {
     const value = values[t];
     if (Number.isNaN(value)) continue;
     if (Number.isNaN(first)) first = value;
-    else if (value !== first) return;
+    spread = Math.max(spread, Math.abs(value - first));
   }
-  throw new RangeError(`fitAutoregression needs values that vary, got ${first} throughout`);
+  if (spread > LEAST_SPREAD && spread < GREATEST_SPREAD) return;
+  throw new RangeError(
+    spread === 0
+      ? `fitAutoregression needs values that vary, got ${first} throughout`
+      : `fitAutoregression needs values that vary by 1e-150 to 1e150, got a spread of ${spread}`,
+  );
 }

@@ -1,4 +1,4 @@
-import { coefficientsToPartials, stepUp } from "./partials.ts";
+import { stepUp } from "./partials.ts";
 import { processAutocovariances } from "./processAutocovariances.ts";
 
 /**
@@ -20,12 +20,15 @@ export function knownState(deviations: ArrayLike<number>, newest: number, order:
   return { means, covariance: new Float64Array(order * order), run: order };
 }
 
-/** State before any value: the stationary distribution. Throws `RangeError` for a process that is not stationary. */
-export function stationaryState(coefficients: ArrayLike<number>, innovationVariance: number): FilterState {
+/** State before any value: the stationary distribution of the process with these coefficients and partials. */
+export function stationaryState(
+  coefficients: ArrayLike<number>,
+  partials: Float64Array,
+  innovationVariance: number,
+): FilterState {
   const p = coefficients.length;
   const covariance = new Float64Array(p * p);
   if (p > 0) {
-    const partials = coefficientsToPartials(coefficients);
     const gamma = processAutocovariances(coefficients, partials, innovationVariance, p - 1);
     for (let i = 0; i < p; i++) for (let j = 0; j < p; j++) covariance[i * p + j] = gamma[Math.abs(i - j)];
   }

@@ -25,23 +25,30 @@ export function logLikelihood(values: ArrayLike<number>, process: Autoregressive
   requireValues("logLikelihood", "values", values, "gaps-allowed");
   requirePositive("logLikelihood", "innovationVariance", process.innovationVariance);
   requireValues("logLikelihood", "mean", [process.mean], "no-gaps");
-  const { coefficients, innovationVariance } = process;
-  const partials = coefficientsToPartials(coefficients);
+  const partials = coefficientsToPartials(process.coefficients);
   const deviations = centred(values, process.mean);
+  return exactInnovations(deviations, process.coefficients, partials, process.innovationVariance);
+}
+
+/** The same for deviations from the mean, with the partial autocorrelations known, unchecked. */
+export function exactInnovations(
+  deviations: Float64Array,
+  coefficients: ArrayLike<number>,
+  partials: Float64Array,
+  innovationVariance: number,
+): Innovations {
   const n = deviations.length;
   const p = partials.length;
   const innovations = new Float64Array(n);
   const innovationVariances = new Float64Array(n);
   let startsComplete = n >= p;
   for (let t = 0; t < p && startsComplete; t++) startsComplete = !Number.isNaN(deviations[t]);
-  if (startsComplete) {
-    exactStart(partials, innovationVariance, deviations, innovations, innovationVariances);
-    const state = knownState(deviations, p - 1, p);
-    runFilter(coefficients, innovationVariance, deviations, p, state, innovations, innovationVariances);
-  } else {
-    const state = stationaryState(coefficients, innovationVariance);
-    runFilter(coefficients, innovationVariance, deviations, 0, state, innovations, innovationVariances);
-  }
+  if (startsComplete) exactStart(partials, innovationVariance, deviations, innovations, innovationVariances);
+  const state = startsComplete
+    ? knownState(deviations, p - 1, p)
+    : stationaryState(coefficients, partials, innovationVariance);
+  const from = startsComplete ? p : 0;
+  runFilter(coefficients, innovationVariance, deviations, from, state, innovations, innovationVariances);
   let sum = 0;
   let observed = 0;
   for (let t = 0; t < n; t++) {

@@ -18,6 +18,10 @@ export function maximise(likelihood: ProfileLikelihood, design: LikelihoodDesign
   burgReflections(design.series[0], 0, order, workspace);
   const burg = workspace.partials.slice(0, order).map((partial) => Math.atanh(0.999 * partial));
   const evaluate = (point: Float64Array, gradient: Float64Array) => likelihood.evaluate(point, gradient);
+  // A series that is predicted perfectly has no likelihood at Burg's estimate: go in from the edge until it has one.
+  for (let tries = 0; tries < 60 && !Number.isFinite(likelihood.valueAt(burg)); tries++) {
+    for (let k = 0; k < order; k++) burg[k] *= 0.8;
+  }
   let best = minimise(evaluate, burg, { bound: EDGE });
   for (let i = 0; i < extraStarts(design, order); i++) {
     const next = minimise(evaluate, spreadPoint(i, order), { bound: EDGE });
@@ -28,7 +32,8 @@ export function maximise(likelihood: ProfileLikelihood, design: LikelihoodDesign
 
 function extraStarts(design: LikelihoodDesign, order: number): number {
   const gaps = design.missing.length;
-  if (design.observations < 3 * order + 8 || 10 * gaps > design.length) return 8;
+  const many = design.observations > 500;
+  if (design.observations < 3 * order + 8 || (10 * gaps > design.length && !many)) return 8;
   return gaps > 0 ? 1 : 0;
 }
 

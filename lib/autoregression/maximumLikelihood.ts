@@ -2,10 +2,9 @@ import { invertPositive } from "../numeric/cholesky.ts";
 import { requireValues } from "./checks.ts";
 import type { AutoregressiveFit } from "./fit.ts";
 import { isConstant, type LikelihoodDesign, likelihoodDesign } from "./likelihoodDesign.ts";
-import { logLikelihood } from "./logLikelihood.ts";
+import { exactInnovations } from "./logLikelihood.ts";
 import { maximise } from "./maximise.ts";
 import { observedInformation, regressionCovariance, sandwich } from "./observedInformation.ts";
-import { coefficientsToPartials } from "./partials.ts";
 import { processAutocovariances } from "./processAutocovariances.ts";
 import { ProfileLikelihood } from "./profileLikelihood.ts";
 import { summarise } from "./summarise.ts";
@@ -36,15 +35,16 @@ export function fitByMaximumLikelihood(
   const maximum = maximise(likelihood, design);
   likelihood.valueAt(maximum);
   const coefficients = likelihood.u.slice(1).map((value) => -value);
+  const partials = maximum.map(Math.tanh);
   const innovationVariance = (likelihood.sumOfSquares / observations) * scale * scale;
   const beta = originalCoefficients(design, likelihood.beta);
-  const errors = standardErrors(likelihood, maximum, design, coefficients);
+  const errors = standardErrors(likelihood, maximum, design, partials);
   const deviations = new Float64Array(values.length);
   for (let t = 0; t < values.length; t++) {
     deviations[t] = values[t];
     for (let j = 0; j < k; j++) deviations[t] -= beta[j] * columns[j][t];
   }
-  const exact = logLikelihood(deviations, { coefficients, mean: 0, innovationVariance });
+  const exact = exactInnovations(deviations, coefficients, partials, innovationVariance);
   const given = regressors.length;
   return summarise({
     method: "maximum-likelihood",
@@ -103,21 +103,22 @@ function standardErrors(
   likelihood: ProfileLikelihood,
   maximum: Float64Array,
   design: LikelihoodDesign,
-  coefficients: Float64Array,
+  partials: Float64Array,
 ): { coefficients: Float64Array; regression: Float64Array } {
-  const p = coefficients.length;
+  const p = partials.length;
   const covariance = observedInformation(likelihood, maximum, design.observations);
   const regression = covariance?.regression ?? regressionCovariance(likelihood, design.observations);
-  const ofCoefficients = covariance?.coefficients ?? largeSampleCovariance(coefficients, design.observations);
+  const ofCoefficients =
+    covariance?.coefficients ?? largeSampleCovariance(likelihood.u, partials, design.observations);
   return {
     coefficients: Float64Array.from({ length: p }, (_, j) => Math.sqrt(ofCoefficients[j * p + j])),
     regression: originalErrors(design, regression),
   };
 }
 
-function largeSampleCovariance(coefficients: Float64Array, observations: number): Float64Array {
-  const p = coefficients.length;
-  const partials = coefficientsToPartials(coefficients);
+function largeSampleCovariance(u: Float64Array, partials: Float64Array, observations: number): Float64Array {
+  const p = partials.length;
+  const coefficients = u.slice(1).map((value) => -value);
   const gamma = processAutocovariances(coefficients, partials, 1, Math.max(0, p - 1));
   const matrix = new Float64Array(p * p);
   for (let i = 0; i < p; i++) for (let j = 0; j < p; j++) matrix[i * p + j] = gamma[Math.abs(i - j)];

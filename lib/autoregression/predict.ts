@@ -2,6 +2,7 @@ import { centred } from "../numeric/sums.ts";
 import { requirePositive, requireValues, requireWhole } from "./checks.ts";
 import type { AutoregressiveProcess } from "./fit.ts";
 import { type FilterState, knownState, runFilter, stationaryState } from "./innovationsFilter.ts";
+import { coefficientsToPartials } from "./partials.ts";
 
 export interface Prediction {
   /** E[x_{n+h}] for h = 1..horizon. */
@@ -65,16 +66,16 @@ function stateAtEnd(process: AutoregressiveProcess, values: ArrayLike<number>): 
   const deviations = centred(values, process.mean);
   const n = deviations.length;
   // Values before the last complete run of p cannot matter any more.
-  let newest = n - 1;
-  for (let run = 0; newest >= 0; newest--) {
-    run = Number.isNaN(deviations[newest]) ? 0 : run + 1;
+  let oldest = n - 1; // of that run
+  for (let run = 0; oldest >= 0; oldest--) {
+    run = Number.isNaN(deviations[oldest]) ? 0 : run + 1;
     if (run >= p) break;
   }
-  const known = p === 0 || newest >= 0;
-  const last = newest + p - 1;
+  const known = p === 0 || oldest >= 0;
+  const last = oldest + p - 1;
   const state = known
     ? knownState(deviations, p === 0 ? n - 1 : last, p)
-    : stationaryState(coefficients, innovationVariance);
+    : stationaryState(coefficients, coefficientsToPartials(coefficients), innovationVariance);
   const from = p === 0 ? n : known ? last + 1 : 0;
   runFilter(
     coefficients,

@@ -1,8 +1,9 @@
 import { requireValues } from "../autoregression/checks.ts";
 import { stepDown } from "../autoregression/partials.ts";
+import { characteristicRoots } from "./characteristicRoots.ts";
 
-/** Past this many periods the weights are followed by their dominant decay only. */
-const LONGEST_WALK = 2_000_000;
+/** Past this many periods the weights are followed by the decay of their slowest root only. */
+const LONGEST_WALK = 20_000;
 
 /**
  * Half-life of a shock: the first lag, linearly interpolated, from which |ψ_j| stays at or below one half.
@@ -11,7 +12,8 @@ const LONGEST_WALK = 2_000_000;
  *
  * Weights that cross one half more than once are followed to the last crossing: the walk stops only where
  * γ_0 · sᵀΓ⁻¹s ≤ 1/4 for the last p weights s, a bound on every later squared weight, because sᵀΓ⁻¹s never grows
- * along ψ when Γ is the autocovariance matrix (the Lyapunov equation Γ = AΓAᵀ + σ²ee ᵀ).
+ * along ψ when Γ is the autocovariance matrix (the Lyapunov equation Γ = AΓAᵀ + σ²eeᵀ). After 20,000 periods the rest
+ * follows from the slowest root, to within one of its cycles.
  *
  * @example halfLife([0.5]) // 1
  */
@@ -39,7 +41,13 @@ export function halfLife(coefficients: ArrayLike<number>): number {
       nextCheck = lag + Math.max(1, lag >> 3);
     }
   }
-  return slowDecay(Math.max(...recent.map(Math.abs)), coefficients, recent);
+  // Only the slowest root is left; the bound is the envelope of its swings, and shrinks by its modulus a period.
+  const envelope = Math.sqrt(bound.of(recent));
+  const [slowest] = characteristicRoots(coefficients);
+  if (envelope <= 0.5) return answer;
+  // On the very edge rounding may put the root outside.
+  if (!(slowest.modulus < 1 && Number.isFinite(envelope))) return Number.POSITIVE_INFINITY;
+  return LONGEST_WALK + Math.log(0.5 / envelope) / Math.log(slowest.modulus);
 }
 
 /** Largest squared value any later weight can take, from the last p weights. */
@@ -72,13 +80,4 @@ class FutureBound {
     }
     return sum;
   }
-}
-
-/** Beyond the walk only the slowest root is left, and the weights shrink by one factor a period. */
-function slowDecay(size: number, coefficients: ArrayLike<number>, recent: Float64Array): number {
-  let next = 0;
-  for (let i = 0; i < recent.length; i++) next += coefficients[i] * recent[i];
-  const ratio = Math.abs(next / recent[0]);
-  if (!(ratio < 1)) return Number.POSITIVE_INFINITY;
-  return LONGEST_WALK + Math.max(0, Math.log(0.5 / size) / Math.log(ratio));
 }

@@ -87,6 +87,52 @@ describe("every fit", () => {
   });
 });
 
+describe("series that follow an exact rule", () => {
+  const length = 60;
+  const series: [string, (t: number) => number][] = [
+    ["alternating", (t) => (t % 2 === 0 ? 1 : -1)],
+    ["a straight line", (t) => t],
+    ["a parabola", (t) => t * t],
+    ["growing by a fifth", (t) => 1.2 ** t],
+    ["one sine", (t) => Math.sin(0.7 * t)],
+    ["two sines", (t) => Math.sin(0.7 * t) + Math.cos(1.9 * t)],
+    ["a single spike", (t) => (t === 30 ? 1 : 0)],
+    ["a step", (t) => (t < 30 ? 0 : 1)],
+  ];
+  it.each(series)("%s: every method gives numbers, or says why not", (_, rule) => {
+    const values = Float64Array.from({ length }, (__, t) => rule(t));
+    for (const method of METHODS) {
+      for (const order of [0, 1, 2, 5]) {
+        try {
+          const fit = fitAutoregression(values, { order, method });
+          const numbers = [fit.mean, fit.innovationVariance, fit.logLikelihood, ...fit.coefficients];
+          expect(numbers.some(Number.isNaN)).toBe(false);
+        } catch (error) {
+          expect(error).toBeInstanceOf(RangeError);
+          expect(String(error)).toMatch(/fitAutoregression needs/);
+        }
+      }
+    }
+  });
+
+  it("keep Burg's fit inside the stationary region: two alternating values", () => {
+    const values = Float64Array.from({ length }, (_, t) => (t % 2 === 0 ? 1 : -1));
+    const fit = fitAutoregression(values, { order: 2, method: "burg" });
+    expect(isStationary(fit.coefficients)).toBe(true);
+    expect(fit.coefficients[0]).toBeCloseTo(-1, 8);
+  });
+
+  it("refuses values whose squares are no numbers", () => {
+    const scaled = (size: number) => () =>
+      fitAutoregression(
+        [1, 3, 2, 4, 1].map((value) => value * size),
+        { order: 1, method: "burg" },
+      );
+    expect(scaled(1e-200)).toThrow(/1e-150/);
+    expect(scaled(1e200)).toThrow(/1e150/);
+  });
+});
+
 describe("maximum likelihood", () => {
   it("takes a value deleted at the end for the same as a gap there", () => {
     const values = simulate([0.5, 0.2], 60, 9);

@@ -37,6 +37,14 @@ describe("halfLife", () => {
     expect(halfLife([0, -0.81])).toBeCloseTo(6 + (0.81 ** 3 - 0.5) / 0.81 ** 3, 10);
   });
 
+  it("follows the slowest root where walking would take too long", () => {
+    expect(halfLife([0.9999999]) / (Math.log(0.5) / Math.log(0.9999999))).toBeCloseTo(1, 9);
+    // A complex pair of modulus r: to within one cycle of ln ½/ln r, the swings starting near size one.
+    const modulus = 0.999999;
+    const life = halfLife([2 * modulus * Math.cos(1.2), -(modulus ** 2)]);
+    expect(life / (Math.log(0.5 * Math.sin(1.2)) / Math.log(modulus))).toBeCloseTo(1, 4);
+  });
+
   it("is infinite when shocks are permanent or grow", () => {
     expect(halfLife([1])).toBe(Number.POSITIVE_INFINITY);
     expect(halfLife([0.5, 0.5])).toBe(Number.POSITIVE_INFINITY);
