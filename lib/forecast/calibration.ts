@@ -29,11 +29,13 @@ export function addOutcomes(
   for (let h = 0; h < steps; h++) {
     const outcome = outcomes[from + h];
     if (Number.isNaN(outcome)) continue;
-    evidence.scores.push(Math.abs(spreadScore(spread, h, outcome)));
+    evidence.scores.push(Math.min(FARTHEST, Math.abs(spreadScore(spread, h, outcome))));
     evidence.weights.push(1 / steps);
   }
 }
 
+/** A past outcome counts for no more deviations than this: beyond it was a one-off, as in `dampOutliers`. */
+const FARTHEST = 5;
 /** Normal quantiles of the central 80 and 95 % ranges, at which the past is matched. */
 const NARROW = 1.2815515655446004;
 const WIDE = 1.959963984540054;
