@@ -44,6 +44,18 @@ describe("delivering once", () => {
     expect(outcomes.filter((one) => one.status === "already-delivered")).toHaveLength(7);
   });
 
+  it("posts once among senders that share a name and start in the same moment", async () => {
+    const store = new MemoryStore();
+    const time = { now: 0 };
+    let posts = 0;
+    const post = async () => {
+      posts++;
+      return undefined;
+    };
+    await Promise.all(Array.from({ length: 8 }, () => deliverOnce(posting(store, "same", time, post))));
+    expect(posts).toBe(1);
+  });
+
   it("takes over from a sender that died before it posted", async () => {
     const store = new MemoryStore();
     const time = { now: 0 };
