@@ -17,6 +17,8 @@ export interface JobFunctionProps {
   readonly environment: Readonly<Record<string, string>>;
   readonly statements: readonly PolicyStatement[];
   readonly reservedConcurrency?: number | undefined;
+  /** In MB, where it is not the same as for the others. */
+  readonly memory?: number;
 }
 
 // esbuild writes ESM; packages written as CommonJS inside it ask for `require` at run time.
@@ -57,7 +59,7 @@ export class JobFunction extends Construct {
       depsLockFilePath: join(props.root, "package-lock.json"),
       runtime: Runtime.NODEJS_24_X,
       architecture: Architecture.ARM_64,
-      memorySize: options.memory,
+      memorySize: props.memory ?? options.memory,
       timeout: Duration.minutes(options.timeoutMinutes),
       role,
       ...(props.reservedConcurrency === undefined

@@ -111,6 +111,7 @@ export function jobFunctions(scope: Construct, props: JobFunctionsProps): JobFun
       description: "ebbwire: closes a fleet's run and delivers its messages",
       root,
       options,
+      memory: Math.max(options.memory, options.closingMemory),
       environment: withSecret,
       statements: [...storeStatements(store, closing), readSecret],
     });

@@ -40,6 +40,8 @@ export const optionsSchema = z
       .default("cron(0 6 ? * MON *)"),
     timeZone: z.string().refine(isTimeZone, "must be an IANA time zone such as Europe/Lisbon").default("UTC"),
     memory: whole(256, 10_240).default(1769),
+    // Closing holds the facts of all series at once; more than 3,008 MB is refused to new accounts.
+    closingMemory: whole(256, 10_240).default(3008),
     timeoutMinutes: whole(2, 15).default(15),
     fleet: z.enum(["auto", "always", "never"], 'must be "auto", "always" or "never"').default("auto"),
     fleetConcurrency: whole(1, 1000).default(40),

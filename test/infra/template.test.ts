@@ -69,17 +69,24 @@ describe("the bucket", () => {
 describe("each function", () => {
   const functions = resourcesOf(template, "AWS::Lambda::Function");
 
-  it("runs on Node 24, arm64, with one vCPU, a quarter of an hour, traces and JSON logs", () => {
+  it("runs on Node 24, arm64, with one vCPU at least, a quarter of an hour, traces and JSON logs", () => {
     expect(functions).toHaveLength(3);
     for (const [, { Properties }] of functions)
       expect(Properties).toMatchObject({
         Runtime: "nodejs24.x",
         Architectures: ["arm64"],
-        MemorySize: 1769,
         Timeout: 900,
         TracingConfig: { Mode: "Active" },
         LoggingConfig: { LogFormat: "JSON" },
       });
+    const memory = Object.fromEntries(
+      functions.map(([id, { Properties }]) => [
+        /^Ebbwire(\w+?)Function/.exec(id)?.[1],
+        Properties.MemorySize,
+      ]),
+    );
+    // 1,769 MB is one vCPU (Lambda developer guide, "Configure function memory").
+    expect(memory).toEqual({ Scheduled: 1769, Portion: 1769, Closing: 3008 });
   });
 
   it("has a log group of its own that forgets after 90 days", () => {
