@@ -1,5 +1,5 @@
 import { lastPersistenceChange } from "../words/changeWords.ts";
-import { limitStep } from "../words/forecastSentences.ts";
+import { hasTotal, limitStep } from "../words/forecastSentences.ts";
 import { allWhole, roundingStep } from "../words/numbers.ts";
 import { anOrA, countOf } from "../words/spans.ts";
 import { type Speech, spokenInterval } from "../words/speech.ts";
@@ -20,7 +20,7 @@ export function tiles(speech: Speech): Markup {
   const horizon = countOf(forecast.periods.length, period, speech.write);
   return html`<dl class="tiles">
 <div><dt>${capital(speech.periods.name(forecast.periods[0]))}</dt><dd><b>${speech.write(forecast.point[0], speech.forecastStep)}</b> ${unit}<small>${range(next.low[0], next.high[0], speech.forecastStep)}</small></dd></div>
-${forecast.periods.length > 1 ? html`<div><dt>All ${horizon}</dt><dd><b>${speech.write(forecast.total.point, totalStep)}</b> ${unit}<small>${range(total.low, total.high, totalStep)}</small></dd></div>` : html``}
+${hasTotal(speech.facts) ? html`<div><dt>All ${horizon}</dt><dd><b>${speech.write(forecast.total.point, totalStep)}</b> ${unit}<small>${range(total.low, total.high, totalStep)}</small></dd></div>` : html``}
 <div><dt>A shock loses half in</dt><dd><b>${life(change ? change.after.halfLife : model.halfLife)}</b><small>${change ? `since ${speech.periods.inText(change.change.period)}; before, ${life(change.before.halfLife)}` : fading(model.fading)}</small></dd></div>
 ${forecast.chances.map((one) => html`<div><dt>Chance of ${anOrA(period)} ${period} ${one.direction} ${speech.write(one.limit, limitStep(one.limit))}</dt><dd><b>${speech.chance(one.any).replace(/^about /, "")}</b><small>within ${horizon}</small></dd></div>`)}
 </dl>`;

@@ -49,9 +49,11 @@ export function attentionTo(facts: SeriesFacts): number {
 /** From this attention on a series has news; below it, it is steady. */
 export const newsFrom = 25;
 
-/** All series of a run, the most needing attention first, then in the order of the tables. */
+/** All series of a run: those with news first, the most needing attention leading; the steady in the tables' order. */
 export function ranked(run: Pick<RunFacts, "tables">): Ranked[] {
   return run.tables
     .flatMap((table) => table.series.map((facts) => ({ table, facts, attention: attentionTo(facts) })))
-    .sort((one, other) => other.attention - one.attention);
+    .sort((one, other) => newsOf(other) - newsOf(one));
 }
+
+const newsOf = ({ attention }: Ranked) => (attention >= newsFrom ? attention : 0);

@@ -88,7 +88,7 @@ function ratioWords(ratio: number, speech: Speech): string {
 export function changeHeadline(finding: ChangeFinding, speech: Speech): string {
   const again = finding.noticed < speech.facts.lastPeriod;
   const doubts = [
-    ...(again ? [`first told for ${speech.periods.inText(finding.noticed)}`] : []),
+    ...(again ? [`first seen ${speech.periods.when(finding.noticed)}`] : []),
     ...(finding.status === "provisional" ? ["an early sign"] : again ? ["now confirmed"] : []),
     ...(finding.alternative ? [`it may instead be ${kindNames[finding.alternative]}`] : []),
   ];

@@ -191,6 +191,11 @@ export type Finding =
 export interface SeriesFacts {
   readonly series: string;
   readonly unit: string | null;
+  /**
+   * False when adding periods up means nothing, as for members at the end of each month: rows of one period are then
+   * averaged, or the last or the largest is kept. No total is told of such a series.
+   */
+  readonly adds?: boolean;
   readonly period: Period;
   /** The tail that pictures and sentences need, oldest first. */
   readonly history: { readonly start: string; readonly values: readonly (number | null)[] };

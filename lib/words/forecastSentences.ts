@@ -1,3 +1,4 @@
+import type { SeriesFacts } from "./facts.ts";
 import { allWhole, roundingStep } from "./numbers.ts";
 import { anOrA, countOf } from "./spans.ts";
 import { sparkline } from "./sparkline.ts";
@@ -11,10 +12,13 @@ export function nextSentence(speech: Speech): string {
   return `about ${speech.amount(forecast.point[0], step)} ${speech.periods.when(forecast.periods[0])} ${range(speech, interval.low[0], interval.high[0], step)}`;
 }
 
-/** "about 1,400 over all 8 weeks (1,000 to 1,800)"; empty when the forecast is of one period only. */
+/** Whether the forecast's periods may be added up: there are several, and they are amounts rather than levels. */
+export const hasTotal = ({ forecast, adds }: SeriesFacts) => forecast.periods.length > 1 && adds !== false;
+
+/** "about 1,400 over all 8 weeks (1,000 to 1,800)"; empty where a total means nothing. */
 export function totalSentence(speech: Speech): string {
   const { forecast, period, history } = speech.facts;
-  if (forecast.periods.length < 2) return "";
+  if (!hasTotal(speech.facts)) return "";
   const interval = spokenInterval(forecast.total.intervals);
   const step = roundingStep(interval.high - interval.low, allWhole(history.values));
   const periods = countOf(forecast.periods.length, period, speech.write);

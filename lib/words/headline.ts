@@ -1,5 +1,5 @@
 import { newsFrom, ranked } from "./attention.ts";
-import type { Finding, RunFacts } from "./facts.ts";
+import type { Finding, RunFacts, SeriesFacts } from "./facts.ts";
 import { plainName } from "./plainText.ts";
 
 /** How many of each sort of news a run holds. */
@@ -10,20 +10,28 @@ export function newsCounts(run: Pick<RunFacts, "tables" | "failed">) {
   return {
     series: series.length,
     steady: series.filter((one) => one.attention < newsFrom).length,
-    changes: count((finding) => finding.code === "change" && finding.fresh),
+    changes: run.tables.reduce((sum, table) => sum + table.series.filter(isNew).length, 0),
+    recent: run.tables.reduce((sum, table) => sum + table.series.filter(isRecent).length, 0),
     surprises: count((finding) => finding.code === "surprise"),
     late: count((finding) => finding.code === "stale"),
     failed: run.failed.length,
   };
 }
 
-/** "loans: 1 change, 1 surprise" or "12 tables: all steady". */
+const freshChanges = ({ findings }: SeriesFacts) =>
+  findings.flatMap((one) => (one.code === "change" && one.fresh ? [one.noticed] : []));
+/** Series whose newest change is told for the first time, and those whose change was seen in an earlier period. */
+const isNew = (facts: SeriesFacts) => freshChanges(facts).some((noticed) => noticed >= facts.lastPeriod);
+const isRecent = (facts: SeriesFacts) => freshChanges(facts).length > 0 && !isNew(facts);
+
+/** "loans: 1 new lasting change, 1 one-off surprise" or "12 tables: all steady". */
 export function headline(run: RunFacts): string {
   const counts = newsCounts(run);
   const some = (count: number, one: string, many = `${one}s`) =>
     count === 0 ? [] : [`${count} ${count === 1 ? one : many}`];
   const news = [
-    ...some(counts.changes, "lasting change"),
+    ...some(counts.changes, "new lasting change"),
+    ...some(counts.recent, "recent lasting change"),
     ...some(counts.surprises, "one-off surprise"),
     ...some(counts.late, "series late", "series late"),
     ...some(counts.failed, "table not read", "tables not read"),

@@ -1,5 +1,6 @@
 import type { Ranked } from "./attention.ts";
 import type { RunFacts } from "./facts.ts";
+import { hasTotal } from "./forecastSentences.ts";
 import { plainName } from "./plainText.ts";
 import { spokenInterval } from "./speech.ts";
 
@@ -51,13 +52,15 @@ function seriesData({ table, facts }: Ranked) {
       low: next.low[0],
       high: next.high[0],
     },
-    total: {
-      periods: forecast.periods.length,
-      forecast: forecast.total.point,
-      level: total.level,
-      low: total.low,
-      high: total.high,
-    },
+    total: hasTotal(facts)
+      ? {
+          periods: forecast.periods.length,
+          forecast: forecast.total.point,
+          level: total.level,
+          low: total.low,
+          high: total.high,
+        }
+      : null,
     halfLife: facts.model.halfLife,
     persistence: facts.model.persistence,
     changes: findings.flatMap((one) =>

@@ -26,7 +26,7 @@ describe("the business note", () => {
     // Read and agreed to, line by line: a change here is a change of what people are told.
     const { title, lines, footer } = businessMessage(loansRun, britishVoice);
     expect([title, ...lines, footer]).toEqual([
-      "loans: 1 lasting change, 1 one-off surprise",
+      "loans: 1 new lasting change, 1 one-off surprise",
       "Quay: about 185 loans in the week of 7 December (155 to 210), about 1,400 over all 8 weeks (1,000 to 1,800). ▃▆▆▄▁▃▃▁▅▆▅█|███▇▇▇▇▇",
       "Quay: shocks now lose half their effect in about 6 weeks; it was 2 (an early sign).",
       "Quay: a busy week now stays with you longer; last week's surplus of 38 loans still adds about 19 in the week of 11 January.",
@@ -103,7 +103,7 @@ describe("the business note", () => {
     }));
     tables[7] = { ...tables[7], series: [tables[7].series[0], { ...quay, series: "Harbour" }] };
     const { title, lines } = businessMessage({ ...loansRun, tables }, britishVoice);
-    expect(title).toBe("12 tables: 1 lasting change");
+    expect(title).toBe("12 tables: 1 new lasting change");
     expect(lines[0]).toMatch(/^town-8, Harbour: about 185 loans/);
     expect(lines[1]).toMatch(/^town-8, Harbour: shocks now lose half/);
     expect(lines.some((line) => /^… and \d+ steady\.$/.test(line))).toBe(true);
@@ -115,6 +115,16 @@ describe("the business note", () => {
     const { lines } = businessMessage(oneTable([...steady, ...news]), britishVoice);
     for (const { series } of news)
       expect(lines.filter((line) => line.startsWith(`${series}: shocks now`))).toHaveLength(1);
+  });
+
+  it("tells no total of a series whose periods do not add up, such as members at the end of each month", () => {
+    const { lines } = businessMessage(oneTable([{ ...quay, adds: false }]), britishVoice);
+    expect(lines[0]).toMatch(/^Quay: about 185 loans in the week of 7 December \(155 to 210\)\. [▁-█|]+$/);
+  });
+
+  it("calls a change new only in the run that saw it first", () => {
+    const earlier = { ...quay, findings: [{ ...quayChange, noticed: "2026-11-09" }] };
+    expect(businessMessage(oneTable([earlier]), britishVoice).title).toBe("loans: 1 recent lasting change");
   });
 
   it("with the quiet setting tells only what changed, and counts the rest", () => {
@@ -140,7 +150,7 @@ describe("the business note", () => {
       { ...loansRun, failed: [{ table: "calls", problems: [problem] }], left: ["members"] },
       britishVoice,
     );
-    expect(title).toBe("2 tables: 1 lasting change, 1 one-off surprise, 1 table not read");
+    expect(title).toBe("2 tables: 1 new lasting change, 1 one-off surprise, 1 table not read");
     expect(lines).toContain(
       "calls was not refitted; its earlier forecast stands. line 14, column date: 31/02/2026 is no date. Correct the day.",
     );
