@@ -8,6 +8,7 @@ import type { RunSummary } from "../../lib/job/summary.ts";
 import { FolderStore } from "../../lib/store/folderStore.ts";
 import { keyFault } from "../../lib/store/key.ts";
 import type { BodyShape } from "../../lib/webhook/message.ts";
+import { leaks } from "../support/canary.ts";
 import { hostileNames } from "../support/hostileNames.ts";
 import { fillStore, storeTexts } from "../support/jobStores.ts";
 import { type Receiver, receiver } from "../support/receiver.ts";
@@ -134,6 +135,12 @@ describe("a run of tables and series with hostile names", () => {
         expect(said).not.toMatch(/[\u202a-\u202e\u2066-\u2069]|\\u0000|\\u001b/);
       }
     }
+  });
+
+  it("lets no webhook's address into a document or a body", () => {
+    expect(leaks(JSON.stringify(texts))).toEqual([]);
+    expect(leaks(JSON.stringify(summary))).toEqual([]);
+    for (const { received } of hooks) for (const { body } of received) expect(leaks(body)).toEqual([]);
   });
 
   it("keeps every document inside its place in the store", async () => {

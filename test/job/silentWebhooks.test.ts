@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { runJob } from "../../lib/job/run.ts";
+import { leaks } from "../support/canary.ts";
 import { fillStore } from "../support/jobStores.ts";
 import { MemoryStore } from "../support/memoryStore.ts";
 import { receiver } from "../support/receiver.ts";
@@ -34,6 +35,7 @@ describe("a run whose webhooks keep silent", () => {
       "delivered",
     ]);
     expect(Object.keys(store.texts()).filter((key) => key.includes("/undelivered-"))).toHaveLength(2);
+    expect(leaks(JSON.stringify([summary, store.texts()]))).toEqual([]);
     expect(store.texts()).toHaveProperty([`runs/${tinyAsOf.replaceAll(":", "-")}/summary.json`]);
   }, 60_000);
 });

@@ -2,6 +2,7 @@ import { createServer, type IncomingMessage, type Server, type ServerResponse } 
 import { createServer as createSecureServer } from "node:https";
 import type { AddressInfo } from "node:net";
 import { onTestFinished } from "vitest";
+import { canary } from "./canary.ts";
 
 /** One post as it arrived. */
 export interface Received {
@@ -25,8 +26,6 @@ export interface Identity {
   readonly key: string;
   readonly cert: string;
 }
-
-const path = "/hooks/T00/B00/pathsecret";
 
 /**
  * Starts a real HTTP (or, with an identity, HTTPS) server that ends with the test, or when `atEnd` says. Answers 200
@@ -59,5 +58,5 @@ export async function receiver(
     server.closeAllConnections();
   });
   const { port } = server.address() as AddressInfo;
-  return { address: `${identity ? "https" : "http"}://localhost:${port}${path}`, port, received };
+  return { address: `${identity ? "https" : "http"}://localhost:${port}${canary.path}`, port, received };
 }

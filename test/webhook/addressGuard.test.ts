@@ -178,6 +178,9 @@ describe("the address guard", () => {
       "http://8.8.8.8/x",
       "http://hooks.example.com/x",
       "http://user@127.0.0.1/x",
+      "ftp://127.0.0.1/x",
+      "ftp://localhost/x",
+      "file:///etc/passwd",
     ];
     for (const address of stillRefused) {
       expect(await post(address, { allowLocal: true }), address).toMatchObject({
