@@ -1,8 +1,10 @@
 import { burgAllOrders, burgWorkspace } from "../autoregression/burg.ts";
+import { requireValues, requireWhole } from "../autoregression/checks.ts";
 import { isStationary } from "../autoregression/partials.ts";
 import { randomNormal } from "../numeric/randomNormal.ts";
 import { biasCorrector, type EstimatedLevel } from "./firstOrderBias.ts";
 import { halfLife } from "./halfLife.ts";
+import { simulator } from "./simulator.ts";
 
 export interface HalfLifeInterval {
   readonly low: number;
@@ -23,9 +25,6 @@ export interface HalfLifeIntervalOptions {
   readonly seed?: number;
 }
 
-/** Values simulated and thrown away before each replication. */
-const WARM_UP = 100;
-
 /**
  * Range of the half-life by the bias-corrected bootstrap (Kilian 1998): estimates of persistence are too low in short
  * series, so the fit is first corrected for its bias (`biasCorrected`; where that leaves the stationary region, only as
@@ -33,8 +32,8 @@ const WARM_UP = 100;
  * the same way, and the half-lives' quantiles taken. A replication whose corrected fit is not stationary has an infinite
  * half-life, so near one the upper end becomes infinite instead of misleadingly exact.
  *
- * In simulations the 90 % range held the true half-life in 85 to 95 % of series of 50 to 260 values, for φ from 0.3 to
- * 0.98 and for orders 2 and 3 with real and complex roots.
+ * In 300 simulations each, the 90 % range held the true half-life in 88 to 97 % of series of 50 to 260 values, φ from 0.3 to
+ * 0.98 and orders 2 and 3 with real and complex roots.
  *
  * With fewer than 2p + 8 observations nothing is known: 0 to infinity. Order 0 has the half-life 0.5 itself.
  *
@@ -45,30 +44,31 @@ export function halfLifeInterval(
   options: HalfLifeIntervalOptions = {},
 ): HalfLifeInterval {
   const { level = 90, estimated = "estimate", replications = 199, seed = 1 } = options;
+  requireValues("halfLifeInterval", "coefficients", fit.coefficients, "no-gaps");
+  requireWhole("halfLifeInterval", "observations", fit.observations, 1);
+  requireWhole("halfLifeInterval", "replications", replications, 1);
+  if (!(level > 0 && level < 100)) {
+    throw new RangeError(`halfLifeInterval needs a level between 0 and 100 percent, got ${level}`);
+  }
   const coefficients = Float64Array.from(fit.coefficients);
   const n = fit.observations;
   const p = coefficients.length;
   if (p === 0) return { low: 0.5, high: 0.5, corrected: 0.5, level };
-  if (n < 2 * p + 8)
+  if (n < 2 * p + 8) {
     return { low: 0, high: Number.POSITIVE_INFINITY, corrected: halfLife(coefficients), level };
+  }
   const correct = biasCorrector(p, n, estimated);
   const target = new Float64Array(p);
   correct(coefficients, target);
-  const source = towards(inside(coefficients), target);
+  const simulate = simulator(towards(inside(coefficients), target), randomNormal(seed));
   const workspace = burgWorkspace(n, p);
-  const normal = randomNormal(seed);
   const series = new Float64Array(n);
-  const warm = new Float64Array(n + WARM_UP);
   const replicate = new Float64Array(p);
   const lives = new Float64Array(replications);
   for (let r = 0; r < replications; r++) {
-    simulate(source, normal, warm);
-    let sum = 0;
-    for (let t = 0; t < n; t++) {
-      series[t] = warm[t + WARM_UP];
-      sum += series[t];
-    }
-    burgAllOrders(series, estimated === "zero" ? 0 : sum / n, p, workspace);
+    simulate(series);
+    takeOff(series, estimated);
+    burgAllOrders(series, 0, p, workspace);
     correct(workspace.coefficients.subarray((p - 1) * p), replicate);
     lives[r] = halfLife(replicate);
   }
@@ -82,13 +82,19 @@ export function halfLifeInterval(
   };
 }
 
-function simulate(coefficients: Float64Array, normal: () => number, out: Float64Array): void {
-  const p = coefficients.length;
-  for (let t = 0; t < out.length; t++) {
-    let value = normal();
-    for (let j = 1; j <= p && j <= t; j++) value += coefficients[j - 1] * out[t - j];
-    out[t] = value;
+/** Takes the least-squares mean, or trend line, off a series in place, as it was taken off the data. */
+function takeOff(series: Float64Array, estimated: EstimatedLevel): void {
+  if (estimated === "zero") return;
+  const n = series.length;
+  const middle = (n - 1) / 2;
+  let mean = 0;
+  let slope = 0;
+  for (let t = 0; t < n; t++) {
+    mean += series[t] / n;
+    slope += series[t] * (t - middle);
   }
+  slope = estimated === "trend" ? slope / ((n * (n * n - 1)) / 12) : 0;
+  for (let t = 0; t < n; t++) series[t] -= mean + slope * (t - middle);
 }
 
 /** Roots drawn towards zero, by one factor, until the process is stationary. */

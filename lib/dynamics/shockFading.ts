@@ -15,17 +15,19 @@ export interface ShockFading {
   readonly dickeyFullerGls: UnitRootTest;
   /** Null hypothesis: shocks fade. */
   readonly kpss: UnitRootTest;
-  /** 90 % range of the half-life of the autoregression that Burg's method and AICc choose. */
+  /** 95 % range of the half-life of the autoregression that Burg's method and AICc choose. */
   readonly halfLife: HalfLifeInterval;
 }
 
 const SIGNIFICANCE = 0.05;
+/** Each of the two looks for evidence against permanence, so that both together keep the 5 %. */
+const EACH = SIGNIFICANCE / 2;
 
 /**
  * Whether shocks to a series fade or stay for ever. A test that does not reject proves nothing by itself
  * (Kwiatkowski et al. 1992, section 5), so both hypotheses are put to the test:
  *
- * - against permanence: DF-GLS at 5 %, or a half-life range with a finite end;
+ * - against permanence, at 5 % in all: DF-GLS at 2.5 %, or a 95 % half-life range with a finite upper end;
  * - against fading: KPSS at 5 %.
  *
  * `fades` needs evidence against permanence and none against fading, `permanent` the reverse; with both or neither the
@@ -46,8 +48,8 @@ export function shockFading(
   const maxOrder = Math.min(Math.floor(10 * Math.log10(n)), Math.floor(n / 4));
   const departures = withoutTerms(values, trend);
   const { fit } = selectOrder(departures, { maxOrder, criterion: "aicc", method: "burg" });
-  const halfLife = halfLifeInterval(fit, { estimated: trend ? "trend" : "estimate", seed });
-  const againstPermanence = dickeyFullerGls.pValue < SIGNIFICANCE || Number.isFinite(halfLife.high);
+  const halfLife = halfLifeInterval(fit, { estimated: trend ? "trend" : "estimate", level: 95, seed });
+  const againstPermanence = dickeyFullerGls.pValue < EACH || Number.isFinite(halfLife.high);
   const againstFading = kpss.pValue < SIGNIFICANCE;
   return { ...judge(againstPermanence, againstFading), dickeyFullerGls, kpss, halfLife };
 }
