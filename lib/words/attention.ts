@@ -1,4 +1,5 @@
 import type { Finding, RunFacts, SeriesFacts, TableFacts } from "./facts.ts";
+import { isToldFirst } from "./freshness.ts";
 
 /** One series with the table it stands in and how much it asks for attention. */
 export interface Ranked {
@@ -33,17 +34,15 @@ function excess(finding: Extract<Finding, { code: "change" }>): number {
 }
 
 /** A change told for the first time asks for more than one that was told before. */
-function firstTold(facts: SeriesFacts): number {
-  return facts.findings.some((one) => one.code === "change" && one.fresh && one.noticed >= facts.lastPeriod)
-    ? 30
-    : 0;
+function toldFirst(facts: SeriesFacts): number {
+  return facts.findings.some((one) => one.code === "change" && isToldFirst(one, facts)) ? 30 : 0;
 }
 
 /** How much a series asks for attention: fresh changes, late data, a likely limit, surprises, then small matters. */
 export function attentionTo(facts: SeriesFacts): number {
   const findings = facts.findings.reduce((sum, finding) => sum + weights[finding.code](finding), 0);
   const limit = Math.max(0, ...facts.forecast.chances.map((one) => one.any));
-  return findings + firstTold(facts) + (limit >= likely ? 50 * limit : 0);
+  return findings + toldFirst(facts) + (limit >= likely ? 50 * limit : 0);
 }
 
 /** From this attention on a series has news; below it, it is steady. */

@@ -1,5 +1,6 @@
 import type { ChangeKind } from "../drift/notice.ts";
 import type { Finding, SeriesFacts } from "./facts.ts";
+import { isToldFirst } from "./freshness.ts";
 import { roundTo, significantStep } from "./numbers.ts";
 import { remainderOf } from "./remainder.ts";
 import { anOrA } from "./spans.ts";
@@ -86,7 +87,7 @@ function ratioWords(ratio: number, speech: Speech): string {
 
 /** The headline of a lasting change, in words a counter or a shop uses; without the name of the series. */
 export function changeHeadline(finding: ChangeFinding, speech: Speech): string {
-  const again = finding.noticed < speech.facts.lastPeriod;
+  const again = !isToldFirst(finding, speech.facts);
   const doubts = [
     ...(again ? [`first seen ${speech.periods.when(finding.noticed)}`] : []),
     ...(finding.status === "provisional" ? ["an early sign"] : again ? ["now confirmed"] : []),

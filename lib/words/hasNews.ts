@@ -1,8 +1,10 @@
 import { attentionTo, newsFrom } from "./attention.ts";
-import type { RunFacts } from "./facts.ts";
+import type { RunFacts, SeriesFacts } from "./facts.ts";
+import { isNewOrConfirmed } from "./freshness.ts";
 
 /**
- * Whether a run has anything to tell someone who wants to hear only of change: a fresh change, a surprise, late
+ * Whether a run has anything to tell someone who wants to hear only of change: a change that is new or newly
+ * confirmed, a surprise, late
  * data, a limit more likely passed than not, a table that failed or was not reached, or an earlier note still owed.
  */
 export function hasNews(run: RunFacts): boolean {
@@ -11,9 +13,16 @@ export function hasNews(run: RunFacts): boolean {
     run.left.length > 0 ||
     run.undelivered.length > 0 ||
     run.tables.some(
-      (table) =>
-        table.problems.some((problem) => problem.fatal) ||
-        table.series.some((facts) => attentionTo(facts) >= newsFrom),
+      (table) => table.problems.some((problem) => problem.fatal) || table.series.some(seriesHasNews),
     )
+  );
+}
+
+/** Changes told before are no news, however fresh; everything else is judged by the attention it asks for. */
+function seriesHasNews(facts: SeriesFacts): boolean {
+  const others = facts.findings.filter((one) => one.code !== "change");
+  return (
+    attentionTo({ ...facts, findings: others }) >= newsFrom ||
+    facts.findings.some((one) => one.code === "change" && isNewOrConfirmed(one, facts))
   );
 }

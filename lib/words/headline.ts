@@ -1,5 +1,6 @@
 import { newsFrom, ranked } from "./attention.ts";
 import type { Finding, RunFacts, SeriesFacts } from "./facts.ts";
+import { isToldFirst } from "./freshness.ts";
 import { plainName } from "./plainText.ts";
 
 /** How many of each sort of news a run holds. */
@@ -18,11 +19,11 @@ export function newsCounts(run: Pick<RunFacts, "tables" | "failed">) {
   };
 }
 
-const freshChanges = ({ findings }: SeriesFacts) =>
-  findings.flatMap((one) => (one.code === "change" && one.fresh ? [one.noticed] : []));
-/** Series whose newest change is told for the first time, and those whose change was seen in an earlier period. */
-const isNew = (facts: SeriesFacts) => freshChanges(facts).some((noticed) => noticed >= facts.lastPeriod);
-const isRecent = (facts: SeriesFacts) => freshChanges(facts).length > 0 && !isNew(facts);
+/** Series with a change that is told for the first time, and those whose fresh changes were all told before. */
+const isNew = (facts: SeriesFacts) =>
+  facts.findings.some((one) => one.code === "change" && isToldFirst(one, facts));
+const isRecent = (facts: SeriesFacts) =>
+  facts.findings.some((one) => one.code === "change" && one.fresh) && !isNew(facts);
 
 /** "loans: 1 new lasting change, 1 one-off surprise" or "12 tables: all steady". */
 export function headline(run: RunFacts): string {

@@ -196,6 +196,34 @@ describe("news", () => {
     expect(newsOf([{ code: "gaps", count: 2, latest: "2026-08-10" }])).toBe(false);
   });
 
+  it("is a change when it is seen first and when it is confirmed, not in the weeks between and after", () => {
+    const at = (noticed: string, status: "provisional" | "confirmed", looksUsed: number) => {
+      const finding = { ...quayChange, noticed, status, evidence: { ...quayChange.evidence, looksUsed } };
+      return hasNews(oneTable([{ ...steadyBranch("Mill", 1), findings: [finding] }]));
+    };
+    // The monitor has used 30 looks; the run before was on 23 November, when the week of 23 November was not over.
+    expect(at("2026-11-30", "provisional", 30)).toBe(true);
+    expect(at("2026-11-23", "provisional", 29)).toBe(true);
+    expect(at("2026-11-16", "provisional", 28)).toBe(false);
+    expect(at("2026-10-05", "confirmed", 30)).toBe(true);
+    expect(at("2026-10-05", "confirmed", 27)).toBe(false);
+  });
+
+  it("of a first run is any change it finds in the past", () => {
+    const first = {
+      ...steadyBranch("Mill", 1),
+      comparison: null,
+      findings: [{ ...quayChange, noticed: "2026-10-05" }],
+    };
+    expect(hasNews(oneTable([first]))).toBe(true);
+    expect(businessMessage(oneTable([first]), britishVoice).title).toBe("loans: 1 new lasting change");
+  });
+
+  it("is not the same change again when no new figures have come", () => {
+    const again: readonly Finding[] = [quayChange, { code: "no-new-values", since: "2026-11-30" }];
+    expect(newsOf(again)).toBe(false);
+  });
+
   it("is a limit that is more likely passed than not", () => {
     const limited = (any: number) => {
       const facts = branchFacts({
