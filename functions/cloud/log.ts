@@ -1,5 +1,3 @@
-import { writeSync } from "node:fs";
-
 type Fields = Readonly<Record<string, string | number | boolean | null | undefined | readonly string[]>>;
 
 /** A line of JSON a happening. Messages are constant sentences; what varies stands in fields beside them. */
@@ -18,7 +16,7 @@ export type WriteLine = (line: string) => void;
  * CloudWatch does not look for them. `timestamp` and `level` are the names Lambda's own level filter reads.
  */
 export const writeStandardOutput: WriteLine = (line) => {
-  writeSync(process.stdout.fd, `${line}\n`);
+  process.stdout.write(`${line}\n`);
 };
 
 /**
