@@ -1,4 +1,4 @@
-export { criterionWeights } from "./autoregression/criteria.ts";
+export { type Criterion, criterionWeights } from "./autoregression/criteria.ts";
 export { dickeyFullerTest } from "./autoregression/dickeyFuller.ts";
 export {
   dickeyFullerCriticalValues,
@@ -6,7 +6,7 @@ export {
   dickeyFullerPValue,
 } from "./autoregression/dickeyFullerDistribution.ts";
 export type { AutoregressiveFit, AutoregressiveProcess, EstimationMethod } from "./autoregression/fit.ts";
-export { fitAutoregression } from "./autoregression/fitAutoregression.ts";
+export { type FitOptions, fitAutoregression } from "./autoregression/fitAutoregression.ts";
 export { fullerCriticalValues, fullerPValue } from "./autoregression/fullerTables.ts";
 export { generalisedLeastSquares } from "./autoregression/generalisedLeastSquares.ts";
 export { archTest, breuschGodfrey } from "./autoregression/lagrangeTests.ts";
@@ -17,7 +17,7 @@ export {
   isStationary,
   partialsToCoefficients,
 } from "./autoregression/partials.ts";
-export { predict } from "./autoregression/predict.ts";
+export { type Prediction, predict } from "./autoregression/predict.ts";
 export {
   constantColumn,
   eventColumn,
@@ -28,9 +28,9 @@ export {
 } from "./autoregression/regressionTerms.ts";
 export { durbinWatson, jarqueBera } from "./autoregression/residualShape.ts";
 export { partialAutocorrelations, sampleAutocovariances } from "./autoregression/sampleMoments.ts";
-export { selectOrder } from "./autoregression/selectOrder.ts";
+export { type OrderSelection, selectOrder } from "./autoregression/selectOrder.ts";
 export { smoothGaps } from "./autoregression/smoothGaps.ts";
-export { unitRootTest } from "./autoregression/unitRootTest.ts";
+export { type UnitRootTest, unitRootTest } from "./autoregression/unitRootTest.ts";
 export { advanceMonitor } from "./drift/advanceMonitor.ts";
 export { compareFits, type FitComparison } from "./drift/compareFits.ts";
 export { type BreakOptions, type Breaks, findBreaks } from "./drift/findBreaks.ts";
@@ -58,7 +58,7 @@ export { autocovariances } from "./dynamics/autocovariances.ts";
 export { characteristicRoots, rhythm } from "./dynamics/characteristicRoots.ts";
 export { biasCorrected, firstOrderBias } from "./dynamics/firstOrderBias.ts";
 export { halfLife } from "./dynamics/halfLife.ts";
-export { halfLifeInterval } from "./dynamics/halfLifeInterval.ts";
+export { type HalfLifeInterval, halfLifeInterval } from "./dynamics/halfLifeInterval.ts";
 export {
   leastSquaresMean,
   leastSquaresQuantile,
@@ -67,8 +67,8 @@ export {
 export { longRun, spectralDensity } from "./dynamics/longRun.ts";
 export { movingAverageWeights } from "./dynamics/movingAverageWeights.ts";
 export { cumulativeResponse, persistence } from "./dynamics/persistence.ts";
-export { shockContributions } from "./dynamics/shockContributions.ts";
-export { shockFading } from "./dynamics/shockFading.ts";
+export { type ShockContributions, shockContributions } from "./dynamics/shockContributions.ts";
+export { type ShockFading, shockFading } from "./dynamics/shockFading.ts";
 export { accuracy } from "./forecast/accuracy.ts";
 export { describeSeries } from "./forecast/describingModel.ts";
 export type { Forecast, ForecastOptions } from "./forecast/forecast.ts";
@@ -87,6 +87,7 @@ export { currentPeriod } from "./series/currentPeriod.ts";
 export { type EventColumn, type EventColumnOptions, eventColumns } from "./series/eventColumns.ts";
 export { periodIndex, periodStart } from "./series/periods.ts";
 export { periodsLate } from "./series/periodsLate.ts";
+export { publicHolidays } from "./series/publicHolidays.ts";
 export { type KnownEvent, readEvents } from "./series/readEvents.ts";
 export type { Reading } from "./series/reading.ts";
 export { readTable } from "./series/readTable.ts";

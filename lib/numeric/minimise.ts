@@ -35,7 +35,7 @@ export function minimise(
   const inverse = initialInverse(f, point, gradient, trial, trialGradient);
   evaluations += size;
   for (let iteration = 0; iteration < iterations; iteration++) {
-    let slope = descent(inverse, gradient, point, bound, direction);
+    const slope = descent(inverse, gradient, point, bound, direction);
     if (-slope < tolerance) return { point, value, evaluations, converged: true };
     // A first guess of the Hessian may be far off: no coordinate moves by more than 2 at once.
     let longest = 0;
@@ -57,7 +57,6 @@ export function minimise(
     [point, trial] = [trial, point];
     [gradient, trialGradient] = [trialGradient, gradient];
     value = trialValue;
-    slope = 0;
   }
   return { point, value, evaluations, converged: false };
 }
