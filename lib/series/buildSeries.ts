@@ -75,7 +75,7 @@ export function buildSeries(
   timeZone: string,
   complain: Complain,
 ): Built {
-  const problems: Problem[] = dropLonelyDates(at, collected.keys, facts, complain);
+  const problems: Problem[] = dropLonelyDates(at, collected.dates, facts, complain);
   const distinct = [...new Set(at)].filter((one) => !Number.isNaN(one)).sort((a, b) => a - b);
   const calendar = findCalendar(distinct, facts, settings, timeZone, complain);
   const grid = layGrid(at, calendar, asOf, timeZone);
@@ -103,7 +103,7 @@ export function buildSeries(
   for (const [ordinal, name] of [...conflicts].slice(0, 1)) {
     const lines = [...grid.order]
       .filter((_, place) => grid.ordinals[place] === ordinal)
-      .map((index) => collected.keys[index].line);
+      .map((index) => collected.dates.lines[index]);
     const where =
       lines.length > 1
         ? ` (lines ${lines
@@ -124,7 +124,7 @@ export function buildSeries(
   }
   let later = 0;
   for (let place = grid.complete; place < grid.order.length; place++)
-    later += collected.keys[grid.order[place]].rows;
+    later += collected.dates.rows[grid.order[place]];
   const reaches = grid.ordinals.includes(grid.current);
   return {
     series,

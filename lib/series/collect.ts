@@ -11,21 +11,24 @@ import type { TablePlan } from "./tablePlan.ts";
 /** Observations by series and key, in the order the keys were met. */
 export interface Collected {
   readonly series: readonly SeriesCells[];
-  readonly keys: readonly DateKey[];
+  readonly dates: DateKeys;
   /** Rows below the header that are not blank. */
   readonly read: number;
+  /** Some series of a column has a value. */
+  readonly hasValues: (column: number) => boolean;
 }
 
-/** One distinct date of the table. */
-export interface DateKey {
-  /** As the key reader gave it. */
-  readonly key: number;
-  readonly kind: KeyKind;
+/** The distinct dates of a table, as lists by key index: a table may have hundreds of thousands. */
+export interface DateKeys {
+  /** As the key reader gave them. */
+  readonly keys: number[];
+  readonly kinds: KeyKind[];
   /** The local hour came a second time: clocks had gone back. */
-  readonly isSecondPass: boolean;
-  /** Line where it was first met. */
-  readonly line: number;
-  rows: number;
+  readonly secondPasses: ReadonlySet<number>;
+  /** Line where each was first met. */
+  readonly lines: number[];
+  /** Rows of each. */
+  readonly rows: number[];
 }
 
 export interface Collector {
@@ -68,7 +71,8 @@ export function createCollector(
     valueColumns.length > 0 ? columns.map((at) => names[at]) : [options.table.split("/").at(-1) ?? "rows"];
   const series: SeriesCells[] = [];
   const byName = new Map<string, SeriesCells[]>();
-  const keys: DateKey[] = [];
+  const secondPasses = new Set<number>();
+  const dates: DateKeys = { keys: [], kinds: [], secondPasses, lines: [], rows: [] };
   const indexOf = new Map<number, number>();
   const isSecondPass = createPassTest(options.newestFirst);
   let read = 0;
@@ -106,12 +110,18 @@ export function createCollector(
     return into;
   };
   const indexOfKey = (key: number, again: boolean, line: number): number => {
-    const mark = again ? key + 0.5 : key;
+    const kind = keyReader.kind();
+    // Kinds count differently, and a second pass is another hour: each has its own numbers in the map.
+    const mark = key + (kind === "instant" ? 0.25 : 0) + (again ? 0.5 : 0);
     let index = indexOf.get(mark);
     if (index === undefined) {
-      index = keys.length;
+      index = dates.keys.length;
       indexOf.set(mark, index);
-      keys.push({ key, kind: keyReader.kind(), isSecondPass: again, line, rows: 0 });
+      dates.keys.push(key);
+      dates.kinds.push(kind);
+      dates.lines.push(line);
+      dates.rows.push(0);
+      if (again) secondPasses.add(index);
     }
     return index;
   };
@@ -145,7 +155,7 @@ export function createCollector(
         lastIndex = indexOfKey(key, again, line);
         lastKey = key;
       }
-      keys[lastIndex].rows++;
+      dates.rows[lastIndex]++;
       const moment = keyReader.moment();
       for (let at = 0; at < columns.length; at++) {
         const text = cells[columns[at]];
@@ -159,6 +169,12 @@ export function createCollector(
         if (!Number.isNaN(value)) addValue(into[at], lastIndex, value, rule, moment);
       }
     },
-    collected: () => ({ series, keys, read }),
+    collected: () => ({
+      series,
+      dates,
+      read,
+      hasValues: (column) =>
+        series.some(({ used }, at) => used > 0 && columns[at % columns.length] === column),
+    }),
   };
 }

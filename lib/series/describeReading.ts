@@ -27,7 +27,7 @@ export function describeReading(
     if (at === plan.seriesColumn) return "series";
     return plan.valueColumns.includes(at) ? "value" : "ignored";
   };
-  const dated = collected.keys.reduce((rows, key) => rows + key.rows, 0);
+  const dated = collected.dates.rows.reduce((sum, rows) => sum + rows, 0);
   const { every, weekStart, how } = built.calendar;
   const isText = source.format === "text";
   return {

@@ -17,8 +17,8 @@ export interface Doubts {
   tooWide(line: number, row: readonly string[]): void;
   nameless(line: number, row: readonly string[]): void;
   badNumber(column: number, line: number, text: string): void;
-  /** The problems, after `read` rows. */
-  problems(read: number): Problem[];
+  /** The problems. Of a column that no one named and that never held a number, words are no trouble. */
+  problems(collected: { readonly read: number; readonly isSilent: (column: number) => boolean }): Problem[];
 }
 
 const summaryWords =
@@ -70,7 +70,7 @@ export function createDoubts(plan: TablePlan, complain: Complain): Doubts {
     badNumber(column, line, text) {
       badNumbers.set(column, again(badNumbers.get(column), line, text));
     },
-    problems(read) {
+    problems({ read, isSilent }) {
       const problems: Problem[] = [];
       if (badDate)
         problems.push(
@@ -103,15 +103,16 @@ export function createDoubts(plan: TablePlan, complain: Complain): Doubts {
           ),
         );
       for (const [column, doubt] of badNumbers)
-        problems.push(
-          complain(
-            "bad-number",
-            false,
-            `${quoted(doubt.text)} is no number with a decimal ${decimalName}; it counts as a gap${others(doubt, "cell like it", "cells like it")}`,
-            "correct it, or leave the cell empty when the value is not known",
-            { line: doubt.line, column: names[column] },
-          ),
-        );
+        if (!isSilent(column))
+          problems.push(
+            complain(
+              "bad-number",
+              false,
+              `${quoted(doubt.text)} is no number with a decimal ${decimalName}; it counts as a gap${others(doubt, "cell like it", "cells like it")}`,
+              "correct it, or leave the cell empty when the value is not known",
+              { line: doubt.line, column: names[column] },
+            ),
+          );
       return problems;
     },
   };

@@ -1,6 +1,6 @@
 import type { DateFacts } from "./calendar.ts";
 import { isoDate } from "./civil.ts";
-import type { DateKey } from "./collect.ts";
+import type { DateKeys } from "./collect.ts";
 import type { Complain } from "./problems.ts";
 import type { Problem } from "./series.ts";
 
@@ -12,7 +12,7 @@ const dayLength = 86_400_000;
  */
 export function dropLonelyDates(
   at: Float64Array,
-  keys: readonly DateKey[],
+  dates: DateKeys,
   facts: DateFacts,
   complain: Complain,
 ): Problem[] {
@@ -31,7 +31,7 @@ export function dropLonelyDates(
         false,
         `${isoDate(Math.floor(at[index] / perDay))} lies far from all other dates; the row is left out`,
         "correct the year",
-        { line: keys[index].line, column: facts.column },
+        { line: dates.lines[index], column: facts.column },
       ),
     );
     at[index] = Number.NaN;

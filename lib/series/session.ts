@@ -86,9 +86,12 @@ export function openSession(
     row: collector.row,
     finish(source) {
       const collected = collector.collected();
-      const rowProblems = doubts.problems(collected.read);
-      if (collected.keys.length === 0) return nothingDated(rowProblems, complain);
-      const parts = collected.keys.filter(({ kind }) => kind === "parts").map(({ key }) => key);
+      const isSilent = (column: number) =>
+        settings.values === undefined && !collected.hasValues(column) && plan.valueColumns.length > 1;
+      const rowProblems = doubts.problems({ read: collected.read, isSilent });
+      if (collected.dates.keys.length === 0) return nothingDated(rowProblems, complain);
+      const { dates } = collected;
+      const parts = dates.keys.filter((_, index) => dates.kinds[index] === "parts");
       const example = dateCells[0] ?? { line: plan.headerLine + 1, text: "" };
       const order =
         parts.length === 0
@@ -96,14 +99,7 @@ export function openSession(
           : settings.dateOrder
             ? { order: settings.dateOrder, how: "set" }
             : findOrder(parts, keyReader, resolution, example, column, complain);
-      const settled = settleKeys(
-        collected.keys,
-        resolution,
-        order?.order ?? null,
-        timeZone,
-        column,
-        complain,
-      );
+      const settled = settleKeys(dates, resolution, order?.order ?? null, timeZone, column, complain);
       const built = buildSeries(collected, settled.at, facts, settings, context.asOf, timeZone, complain);
       const problems = [...rowProblems, ...settled.problems, ...built.problems];
       if (built.series.length === 0) problems.push(nothingRead(built.later > 0, complain));

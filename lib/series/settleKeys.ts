@@ -1,4 +1,4 @@
-import type { DateKey } from "./collect.ts";
+import type { DateKeys } from "./collect.ts";
 import { type DateOrder, instantsOfHour, type Resolution, settleParts } from "./dateKeys.ts";
 import type { Complain } from "./problems.ts";
 import type { Problem } from "./series.ts";
@@ -16,7 +16,7 @@ const hourLength = 3_600_000;
  * skip in spring has no instant: then the table's clock is not that of the zone.
  */
 export function settleKeys(
-  keys: readonly DateKey[],
+  { keys, kinds, secondPasses, lines }: DateKeys,
   resolution: Resolution,
   order: DateOrder | null,
   timeZone: string,
@@ -24,21 +24,27 @@ export function settleKeys(
   complain: Complain,
 ): SettledKeys {
   const at = new Float64Array(keys.length);
-  const skipped: DateKey[] = [];
-  const firstPass = new Set(keys.filter(({ isSecondPass }) => !isSecondPass).map(({ key }) => key));
-  for (const [index, { key, kind, isSecondPass }] of keys.entries()) {
+  const skipped: number[] = [];
+  const twice = new Set([...secondPasses].map((index) => keys[index]));
+  const firstPasses = new Set(keys.filter((key, index) => twice.has(key) && !secondPasses.has(index)));
+  for (let index = 0; index < keys.length; index++) {
+    const key = keys[index];
+    const kind = kinds[index];
     const local = kind === "parts" ? settleParts(key, resolution, order ?? "day-first") : key;
     if (resolution === "day") at[index] = local;
     else if (kind === "instant") at[index] = local * hourLength;
     else {
       const instants = Number.isNaN(local) ? [] : instantsOfHour(local, timeZone);
-      at[index] = (isSecondPass && firstPass.has(key) ? instants[1] : undefined) ?? instants[0] ?? Number.NaN;
-      if (instants.length === 0) skipped.push(keys[index]);
+      at[index] =
+        (secondPasses.has(index) && firstPasses.has(key) ? instants[1] : undefined) ??
+        instants[0] ??
+        Number.NaN;
+      if (instants.length === 0) skipped.push(lines[index]);
     }
   }
   const problems = skipped
     .slice(0, 1)
-    .map(({ line }) =>
+    .map((line) =>
       complain(
         "skipped-hour",
         false,

@@ -11,7 +11,10 @@ import type { ReadContext, TableResult } from "./tableResult.ts";
 import type { TableSettings } from "./tableSettings.ts";
 
 /** Characters looked at before reading begins; a table shorter than this is looked at whole. */
-const headLength = 2_000_000;
+const headLength = 400_000;
+/** More is looked at, up to this, where the head leaves a doubt that later rows may settle. */
+const longestHead = 8_000_000;
+const settledByMore = new Set(["decimal-unclear", "no-values", "empty", "no-rows", "no-dates"]);
 /** Of these, how many are enough to find the delimiter. */
 const delimiterHead = 60_000;
 /** Text goes to the splitter in pieces of this size, so that cells stay near in memory. */
@@ -64,22 +67,27 @@ export function createTextReader(
   context: ReadContext,
   complain: Complain,
 ): TextReader {
-  let head = "";
-  let ended = false;
+  const locale = context.locale ?? "en-GB";
+  /** What came before reading began. */
+  let held = "";
+  let enough = headLength;
   let session: Session | undefined;
   let splitter: RowSplitter | undefined;
   /** Old text files end their lines with a return alone. */
   let returnsOnly = false;
 
-  const start = () => {
+  const lines = (text: string) => (returnsOnly ? text.replaceAll("\r", "\n") : text);
+  const feed = (into: RowSplitter, text: string) => {
+    for (let at = 0; at < text.length; at += pieceLength) into.push(text.slice(at, at + pieceLength));
+  };
+  const begin = (head: string, whole: boolean) => {
     refuseOtherTexts(head, complain);
     returnsOnly = !head.includes("\n") && head.includes("\r");
-    if (returnsOnly) head = head.replaceAll("\r", "\n");
-    const locale = context.locale ?? "en-GB";
-    const delimiter = settings.delimiter ?? findDelimiter(head.slice(0, delimiterHead), dateFormats(locale));
-    const sample = sampleRows(head, delimiter, ended);
+    const text = lines(head);
+    const delimiter = settings.delimiter ?? findDelimiter(text.slice(0, delimiterHead), dateFormats(locale));
+    const sample = sampleRows(text, delimiter, whole);
     if (sample.unclosedQuote !== undefined) throw unclosed(sample.unclosedQuote, complain);
-    const plan = planTable(sample, ended, delimiter, settings, locale, complain);
+    const plan = planTable(sample, whole, delimiter, settings, locale, complain);
     const opened = openSession(plan, settings, context, complain);
     session = opened;
     splitter = createRowSplitter(delimiter, {
@@ -88,24 +96,33 @@ export function createTextReader(
       },
       comment: () => undefined,
     });
-    feed(splitter, head);
-    head = "";
   };
-  const feed = (into: RowSplitter, text: string) => {
-    if (text.length <= pieceLength) into.push(text);
-    else for (let at = 0; at < text.length; at += pieceLength) into.push(text.slice(at, at + pieceLength));
+  /** Begins as soon as the head tells enough. */
+  const tryToBegin = (ended: boolean) => {
+    while (!splitter && (ended || held.length >= enough)) {
+      try {
+        begin(held.slice(0, enough), ended && held.length <= enough);
+      } catch (error) {
+        const isOpen = error instanceof TableFault && settledByMore.has(error.problem.code);
+        if (!isOpen || enough >= longestHead || (ended && held.length <= enough)) throw error;
+        enough *= 5;
+      }
+    }
+    if (splitter && held !== "") {
+      feed(splitter, lines(held));
+      held = "";
+    }
   };
   return {
     push(text) {
-      if (splitter) feed(splitter, returnsOnly ? text.replaceAll("\r", "\n") : text);
+      if (splitter) feed(splitter, lines(text));
       else {
-        head += text;
-        if (head.length >= headLength) start();
+        held += text;
+        tryToBegin(false);
       }
     },
     finish(source) {
-      ended = true;
-      if (!session) start();
+      tryToBegin(true);
       const end = splitter?.end();
       if (end?.unclosedQuote !== undefined) throw unclosed(end.unclosedQuote, complain);
       return (session as Session).finish(source);

@@ -1,0 +1,178 @@
+import { parse } from "csv-parse/sync";
+import { readTable } from "../../lib/series/readTable.ts";
+import { readTableStream } from "../../lib/series/readTableStream.ts";
+import type { BenchRow } from "./benchRow.ts";
+
+const context = { asOf: "2500-01-01T00:00:00Z" };
+const encoder = new TextEncoder();
+
+/** A small repeatable generator (Park and Miller 1988); benches need no better one. */
+function randomNumbers(seed: number): () => number {
+  let state = seed;
+  return () => {
+    state = (state * 48_271) % 2_147_483_647;
+    return state / 2_147_483_647;
+  };
+}
+
+const isoDate = (day: number) => new Date(Date.UTC(1900, 0, 1) + day * 86_400_000).toISOString().slice(0, 10);
+
+/** Two columns, one row a day: dates and amounts with two decimals. */
+function plainTable(rows: number): string {
+  const random = randomNumbers(1);
+  const lines = ["date,amount"];
+  for (let row = 0; row < rows; row++) lines.push(`${isoDate(row)},${(random() * 1000).toFixed(2)}`);
+  return `${lines.join("\n")}\n`;
+}
+
+/** Seconds of the fastest of several runs: the least disturbed one. */
+function fastest(times: number, work: () => unknown): number {
+  let best = Number.POSITIVE_INFINITY;
+  for (let time = 0; time < times; time++) {
+    const began = performance.now();
+    work();
+    best = Math.min(best, performance.now() - began);
+  }
+  return best / 1000;
+}
+
+function rate(name: string, rows: number, seconds: number, peerSeconds: number, goal: string): BenchRow {
+  return {
+    name,
+    value: rows / seconds,
+    unit: "rows/s",
+    against: `csv-parse and Number: ${(rows / peerSeconds).toFixed(0)} rows/s`,
+    ratio: peerSeconds / seconds,
+    goal,
+  };
+}
+
+/** The same cells by csv-parse, dates by Date.parse and amounts by Number: no more than a loop of one's own would do. */
+function peer(text: string): number {
+  let sum = 0;
+  for (const [date, amount] of parse(text, { from_line: 2 }) as string[][])
+    sum += Date.parse(date) + Number(amount);
+  return sum;
+}
+
+/** One row a sale in random order, as pieces of 64 KB; nothing but the current piece is held. */
+async function* saleRows(rows: number): AsyncGenerator<Uint8Array> {
+  const random = randomNumbers(2);
+  let piece = "time,branch,amount\n";
+  for (let row = 0; row < rows; row++) {
+    const day = isoDate(45_000 + Math.floor(random() * 700));
+    const hour = String(Math.floor(random() * 24)).padStart(2, "0");
+    piece += `${day} ${hour}:${row % 60 < 10 ? "0" : ""}${row % 60},branch ${Math.floor(random() * 500)},${(random() * 90).toFixed(2)}\n`;
+    if (piece.length > 65_536) {
+      yield encoder.encode(piece);
+      piece = "";
+    }
+  }
+  yield encoder.encode(piece);
+}
+
+/** A wide table: one row a day, a column a series. */
+async function* wideRows(days: number, columns: number): AsyncGenerator<Uint8Array> {
+  const random = randomNumbers(3);
+  yield encoder.encode(`date,${Array.from({ length: columns }, (_, at) => `series ${at}`).join(",")}\n`);
+  for (let day = 0; day < days; day++) {
+    const cells = Array.from({ length: columns }, () => Math.floor(random() * 10_000));
+    yield encoder.encode(`${isoDate(day)},${cells.join(",")}\n`);
+  }
+}
+
+/** Largest resident memory of the whole process while the work runs, in MB. */
+async function peakMemory(work: () => Promise<unknown>): Promise<{ seconds: number; megabytes: number }> {
+  let peak = 0;
+  const look = () => {
+    peak = Math.max(peak, process.memoryUsage.rss());
+  };
+  const timer = setInterval(look, 20);
+  const began = performance.now();
+  await work();
+  look();
+  clearInterval(timer);
+  return { seconds: (performance.now() - began) / 1000, megabytes: peak / 1e6 };
+}
+
+/** Random bytes, and random table-like text, of one million characters: never long, never crashing. */
+function slowestOfJunk(): number {
+  const random = randomNumbers(4);
+  const letters = '0123456789-/.,;:|\t\n" #aWQTZ€()';
+  const inputs: (Uint8Array | string)[] = [
+    Uint8Array.from({ length: 1_000_000 }, () => Math.floor(random() * 256)),
+  ];
+  for (const alphabet of [
+    letters,
+    '",\n',
+    "0123456789,\n",
+    "1/2/3,\n",
+    "Jan 12,;\n",
+    "\t|;,",
+    "2026-01-01,1\n",
+  ]) {
+    let text = "date,v\n2026-01-01,1\n";
+    while (text.length < 1_000_000) text += alphabet[Math.floor(random() * alphabet.length)];
+    inputs.push(text);
+  }
+  return Math.max(...inputs.map((input) => fastest(1, () => readTable(input, {}, context))));
+}
+
+/** `npm run bench -- reading`: rows a second against csv-parse in the same run, memory on large tables, junk. */
+export async function readingBench(): Promise<BenchRow[]> {
+  const rows = 200_000;
+  const text = plainTable(rows);
+  const bytes = encoder.encode(text);
+  const ours = () => readTable(bytes, {}, context);
+  ours();
+  const seconds = fastest(5, ours);
+  const peerSeconds = fastest(3, () => peer(text));
+  const results = [rate("plain table of two columns", rows, seconds, peerSeconds, ">= 200,000 rows/s")];
+
+  const sales = 16_000_000;
+  const large = await peakMemory(() =>
+    readTableStream(saleRows(sales), { every: "day", combine: "sum", seriesName: "branch" }, context),
+  );
+  const none = { against: "", ratio: Number.NaN };
+  results.push(
+    {
+      name: "600 MB of sales as a stream, 500 series: rows a second, making them included",
+      value: sales / large.seconds,
+      unit: "rows/s",
+      ...none,
+      goal: "",
+    },
+    {
+      name: "600 MB of sales as a stream: peak memory of the process",
+      value: large.megabytes,
+      unit: "MB",
+      ...none,
+      goal: "< 512 MB",
+    },
+  );
+  const wide = await peakMemory(() => readTableStream(wideRows(1500, 10_000), {}, context));
+  results.push(
+    {
+      name: "10,000 series of 1,500 days in one wide table: time",
+      value: wide.seconds,
+      unit: "s",
+      ...none,
+      goal: "",
+    },
+    {
+      name: "10,000 series of 1,500 days in one wide table: peak memory",
+      value: wide.megabytes,
+      unit: "MB",
+      ...none,
+      goal: "< 512 MB",
+    },
+  );
+  results.push({
+    name: "1 MB of junk, the slowest kind",
+    value: slowestOfJunk(),
+    unit: "s",
+    ...none,
+    goal: "< 2 s",
+  });
+  return results;
+}
