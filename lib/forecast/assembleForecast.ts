@@ -18,6 +18,9 @@ import { spreadMean } from "./spreadMean.ts";
 import { totalQuantile } from "./totals.ts";
 import { trivialDescription } from "./trivialDescription.ts";
 
+/** A series that often steps or strays is not helped by a list: the newest few are told. */
+const NEWEST_TOLD = 5;
+
 /**
  * Makes the forecast that users see from the average: points, ranges, total, chances, notes and record, in bounds and
  * in order. `late` steps are past and unobserved, and dropped; `start` is the index in the user's series of the first
@@ -61,9 +64,13 @@ export function assembleForecast(
   };
   const notes: ForecastNote[] = [];
   if (average.naive) notes.push({ code: "naive-used", relativeError: average.backTest.relativeError });
-  for (const step of average.steps) notes.push({ code: "level-step", index: start + step });
+  for (const step of average.steps.slice(-NEWEST_TOLD))
+    notes.push({ code: "level-step", index: start + step });
   if (average.outliers.length > 0) {
-    notes.push({ code: "outliers-damped", indexes: average.outliers.map((index) => start + index) });
+    notes.push({
+      code: "outliers-damped",
+      indexes: average.outliers.slice(-NEWEST_TOLD).map((index) => start + index),
+    });
   }
   return {
     point,

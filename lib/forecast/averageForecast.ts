@@ -52,7 +52,8 @@ export function averageForecast(
   const observed = values.filter((value) => !Number.isNaN(value));
   const outliers = new Set<number>();
   const steps = new Set<number>();
-  const scales: ScaledSeries[] = workingScales(observed).map((scale) => {
+  // Without a season the bank is small and growth is most of what there is to get right.
+  const scales: ScaledSeries[] = workingScales(observed, seasons.length === 0).map((scale) => {
     const filled = fillGaps(values.map(scale.forward), season, workspace);
     const damped = dampOutliers(filled, season, workspace);
     for (const t of damped.outliers) outliers.add(t);

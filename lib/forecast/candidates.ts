@@ -20,7 +20,8 @@ const ALL_DRIFTS: readonly DriftKind[] = ["none", "local", "whole"];
  * The bank of preparations: levels about a mean, levels about a line, first differences with three kinds of drift,
  * second differences. With a season: these after a profile is taken off, first differences also about a profile of
  * their own, seasonal differences, levels about a profile, and plain levels, whose long lags carry the season. A
- * further, longer season adds its levels about a profile, with and without a line, and its differences. Simple and
+ * further, longer season adds its levels about a profile, with and without a line, and its differences; a series with
+ * several seasons moves in steps too short for a drift a step to matter, and goes without. Simple and
  * unlike each other, for it is what candidates do not share that makes an average better than its parts.
  */
 export function preparations(seasons: readonly number[]): Preparation[] {
@@ -39,12 +40,13 @@ export function preparations(seasons: readonly number[]): Preparation[] {
     const level = { season, profile: "level", line: false } as const;
     const mean = { season, profile: "mean", line: false } as const;
     const first = place === 0;
-    bank.push({ ...level, differences: [1], drifts: first ? ALL_DRIFTS : ["none"] });
-    bank.push({ ...plain, differences: [season], drifts: first ? ["none", "whole"] : ["none"] });
+    const single = seasons.length === 1;
+    bank.push({ ...level, differences: [1], drifts: single ? ALL_DRIFTS : ["none"] });
+    bank.push({ ...plain, differences: [season], drifts: single ? ["none", "whole"] : ["none"] });
     bank.push({ ...mean, differences: [], drifts: ["whole"] });
     bank.push({ ...level, differences: [], line: true, drifts: ["whole"] });
     if (!first) return;
-    bank.push({ ...mean, differences: [1], drifts: ["none", "whole"] });
+    bank.push({ ...mean, differences: [1], drifts: single ? ["none", "whole"] : ["none"] });
     bank.push({ ...level, differences: [1, 1], drifts: ["none"] });
   });
   return bank;
@@ -54,7 +56,7 @@ export function preparations(seasons: readonly number[]): Preparation[] {
 export function candidateName(scale: string, preparation: Preparation, drift: DriftKind): string {
   const differences =
     preparation.differences.length === 0
-      ? "levels"
+      ? `levels${preparation.line ? " about a line" : ""}`
       : `differences of ${preparation.differences.join(" and ")}`;
   const profile =
     preparation.profile === "none"

@@ -44,9 +44,10 @@ const SQUARE_ROOT: WorkingScale = {
 
 /**
  * Scales worth fitting on: always the raw one; the logarithm when every value is positive (steady percentages);
- * the square root when values touch zero but never pass it (counts), where a logarithm does not exist.
+ * the square root when values touch zero but never pass it (counts), where a logarithm does not exist, and with
+ * `between` beside the logarithm too, for growth that lies between straight and exponential.
  */
-export function workingScales(values: ArrayLike<number>): readonly WorkingScale[] {
+export function workingScales(values: ArrayLike<number>, between = false): readonly WorkingScale[] {
   let least = Number.POSITIVE_INFINITY;
   let most = 0;
   for (let t = 0; t < values.length; t++) {
@@ -54,6 +55,6 @@ export function workingScales(values: ArrayLike<number>): readonly WorkingScale[
     if (values[t] > most) most = values[t];
   }
   // A value that is nothing beside the others (a till that was shut, an underflow) makes a meaningless logarithm.
-  if (least > most * 1e-9) return [RAW, LOG];
+  if (least > most * 1e-9) return between ? [RAW, LOG, SQUARE_ROOT] : [RAW, LOG];
   return least >= 0 ? [RAW, SQUARE_ROOT] : [RAW];
 }
