@@ -7,8 +7,11 @@ export interface CharacteristicRoot {
   readonly period: number;
 }
 
-/** Imaginary parts smaller than this share of the modulus are rounding of a repeated real root. */
-const REAL = 1e-7;
+/**
+ * Imaginary parts smaller than this share of the modulus are taken for rounding of a repeated real root (three equal
+ * roots come out about 1e-5 apart); a true cycle that slow would be longer than 60,000 periods.
+ */
+const REAL = 1e-4;
 
 /**
  * Eigenvalues of the companion matrix, that is the roots of z^p − φ_1 z^{p−1} − … − φ_p, largest modulus first;

@@ -14,6 +14,8 @@ export interface HalfLifeInterval {
   readonly corrected: number;
   /** Percent. */
   readonly level: number;
+  /** Share of the replications in which shocks never fade: what speaks for permanence. */
+  readonly permanentShare: number;
 }
 
 export interface HalfLifeIntervalOptions {
@@ -53,9 +55,15 @@ export function halfLifeInterval(
   const coefficients = Float64Array.from(fit.coefficients);
   const n = fit.observations;
   const p = coefficients.length;
-  if (p === 0) return { low: 0.5, high: 0.5, corrected: 0.5, level };
+  if (p === 0) return { low: 0.5, high: 0.5, corrected: 0.5, level, permanentShare: 0 };
   if (n < 2 * p + 8) {
-    return { low: 0, high: Number.POSITIVE_INFINITY, corrected: halfLife(coefficients), level };
+    return {
+      low: 0,
+      high: Number.POSITIVE_INFINITY,
+      corrected: halfLife(coefficients),
+      level,
+      permanentShare: 1,
+    };
   }
   const correct = biasCorrector(p, n, estimated);
   const target = new Float64Array(p);
@@ -79,6 +87,7 @@ export function halfLifeInterval(
     high: lives[Math.min(replications - 1, replications - tail)],
     corrected: halfLife(target),
     level,
+    permanentShare: lives.filter((life) => life === Number.POSITIVE_INFINITY).length / replications,
   };
 }
 

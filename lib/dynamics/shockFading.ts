@@ -15,7 +15,7 @@ export interface ShockFading {
   readonly dickeyFullerGls: UnitRootTest;
   /** Null hypothesis: shocks fade. */
   readonly kpss: UnitRootTest;
-  /** 95 % range of the half-life of the autoregression that Burg's method and AICc choose. */
+  /** Range of the half-life: the one given, else that of the autoregression that Burg's method and AICc choose. */
   readonly halfLife: HalfLifeInterval;
 }
 
@@ -27,7 +27,7 @@ const EACH = SIGNIFICANCE / 2;
  * Whether shocks to a series fade or stay for ever. A test that does not reject proves nothing by itself
  * (Kwiatkowski et al. 1992, section 5), so both hypotheses are put to the test:
  *
- * - against permanence, at 5 % in all: DF-GLS at 2.5 %, or a 95 % half-life range with a finite upper end;
+ * - against permanence, at 5 % in all: DF-GLS at 2.5 %, or fewer than 2.5 % of the half-life's replications without an end;
  * - against fading: KPSS at 5 %.
  *
  * `fades` needs evidence against permanence and none against fading, `permanent` the reverse; with both or neither the
@@ -39,19 +39,29 @@ const EACH = SIGNIFICANCE / 2;
  */
 export function shockFading(
   values: ArrayLike<number>,
-  options: { readonly trend: boolean; readonly seed?: number },
+  options: {
+    readonly trend: boolean;
+    readonly seed?: number;
+    /** Range of the half-life, where a fit has given it already. */
+    readonly halfLife?: HalfLifeInterval;
+  },
 ): ShockFading {
   const { trend, seed } = options;
   const dickeyFullerGls = unitRootTest(values, { kind: "dickey-fuller-gls", trend });
   const kpss = unitRootTest(values, { kind: "kpss", trend });
+  const halfLife = options.halfLife ?? halfLifeOf(values, trend, seed);
+  const againstPermanence = dickeyFullerGls.pValue < EACH || halfLife.permanentShare < EACH;
+  const againstFading = kpss.pValue < SIGNIFICANCE;
+  return { ...judge(againstPermanence, againstFading), dickeyFullerGls, kpss, halfLife };
+}
+
+/** Of the autoregression that Burg's method and AICc choose. */
+function halfLifeOf(values: ArrayLike<number>, trend: boolean, seed: number | undefined): HalfLifeInterval {
   const n = values.length;
   const maxOrder = Math.min(Math.floor(10 * Math.log10(n)), Math.floor(n / 4));
   const departures = withoutTerms(values, trend);
   const { fit } = selectOrder(departures, { maxOrder, criterion: "aicc", method: "burg" });
-  const halfLife = halfLifeInterval(fit, { estimated: trend ? "trend" : "estimate", level: 95, seed });
-  const againstPermanence = dickeyFullerGls.pValue < EACH || Number.isFinite(halfLife.high);
-  const againstFading = kpss.pValue < SIGNIFICANCE;
-  return { ...judge(againstPermanence, againstFading), dickeyFullerGls, kpss, halfLife };
+  return halfLifeInterval(fit, { estimated: trend ? "trend" : "estimate", level: 95, seed });
 }
 
 function judge(

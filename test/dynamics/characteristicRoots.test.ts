@@ -60,7 +60,8 @@ describe("rhythm", () => {
     expect(rhythm([1.34254, -0.65504])?.damping).toBeCloseTo(Math.sqrt(0.65504), 12);
   });
 
-  it("is absent where all roots are real", () => {
+  it("is absent where all roots are real, also where three are equal", () => {
+    expect(rhythm([1.5, -0.75, 0.125])).toBeUndefined();
     expect(rhythm([0.5, 0.3])).toBeUndefined();
     expect(rhythm([1.2, -0.36])).toBeUndefined();
   });
