@@ -3,7 +3,7 @@ import { sampleAutocovariances } from "../autoregression/sampleMoments.ts";
 import { autocovariances } from "../dynamics/autocovariances.ts";
 import { characteristicRoots } from "../dynamics/characteristicRoots.ts";
 import { halfLife } from "../dynamics/halfLife.ts";
-import { halfLifeInterval } from "../dynamics/halfLifeInterval.ts";
+import { type HalfLifeInterval, halfLifeInterval } from "../dynamics/halfLifeInterval.ts";
 import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
 import { persistence } from "../dynamics/persistence.ts";
 import { shockFading } from "../dynamics/shockFading.ts";
@@ -53,12 +53,12 @@ function rhythmOf(coefficients: ArrayLike<number>): ModelFacts["rhythm"] {
  * Whether shocks fade, by tests of both hypotheses; with gaps, which the tests do not take, by whether the range of the
  * half-life has an end.
  */
-function fadingOf(values: Float64Array, trend: boolean, rangeEnd: number | null): ModelFacts["fading"] {
+function fadingOf(values: Float64Array, trend: boolean, halfLife: HalfLifeInterval): ModelFacts["fading"] {
   const varies = values.some((value) => value !== values[0]);
   if (!varies) return "fades";
   if (values.length < shortestTested || values.some(Number.isNaN))
-    return rangeEnd === null ? "cannot-tell" : "fades";
-  return shockFading(values, { trend }).verdict;
+    return Number.isFinite(halfLife.high) ? "fades" : "cannot-tell";
+  return shockFading(values, { trend, halfLife }).verdict;
 }
 
 /** The describing model in numbers that survive JSON; `values` are those it describes, on its own scale less its season. */
@@ -89,7 +89,7 @@ export function modelFacts(model: DescribingModel, level: DescribedLevel, values
     residualAutocorrelations: residualAutocorrelations(fit.residuals),
     ljungBox:
       fit.observations > 2 * lags ? ljungBox(fit.residuals, { lags, fittedParameters: fit.order }) : null,
-    fading: fadingOf(values, model.trend, range.high),
+    fading: fadingOf(values, model.trend, interval),
     observations: fit.observations,
   };
 }
