@@ -1,17 +1,15 @@
 import { invertPositive } from "../numeric/cholesky.ts";
-import { centred, countObserved, observedMean } from "../numeric/sums.ts";
+import { countObserved, observedMean } from "../numeric/sums.ts";
 import { burgReflections, sharedReflections } from "./burg.ts";
 import type { AutoregressiveFit } from "./fit.ts";
 import { partialsToCoefficients } from "./partials.ts";
-import { autocovariancesOf } from "./sampleMoments.ts";
+import { autocovariancesAbout } from "./sampleMoments.ts";
 import { summarise } from "./summarise.ts";
 import { yuleWalkerAllOrders } from "./yuleWalker.ts";
 
 /** Coefficients and innovation variance of every order 0..maxOrder by Yule–Walker or Burg. */
 export interface MomentOrders {
   readonly centre: number;
-  /** Values minus the centre. */
-  readonly deviations: Float64Array;
   coefficients(order: number): Float64Array;
   readonly innovationVariances: Float64Array;
 }
@@ -24,21 +22,18 @@ export function momentOrders(
   meanKnown: boolean,
 ): MomentOrders {
   const centre = meanKnown ? 0 : observedMean(values);
-  const deviations = centred(values, centre);
   if (method === "yule-walker") {
-    const orders = yuleWalkerAllOrders(deviations, maxOrder);
+    const orders = yuleWalkerAllOrders(values, centre, maxOrder);
     return {
       centre,
-      deviations,
       coefficients: (order) => (order === 0 ? new Float64Array(0) : orders.coefficients[order - 1]),
       innovationVariances: orders.innovationVariances,
     };
   }
   const reflections = sharedReflections(values.length, maxOrder);
-  burgReflections(deviations, 0, maxOrder, reflections);
+  burgReflections(values, centre, maxOrder, reflections);
   return {
     centre,
-    deviations,
     coefficients: (order) => partialsToCoefficients(reflections.partials.subarray(0, order)),
     innovationVariances: reflections.innovationVariances,
   };
@@ -64,17 +59,17 @@ export function fitByMoments(
   meanKnown: boolean,
   orders: MomentOrders = momentOrders(values, order, method, meanKnown),
 ): AutoregressiveFit {
-  const { centre, deviations } = orders;
+  const { centre } = orders;
   const coefficients = orders.coefficients(order);
   const innovationVariance = orders.innovationVariances[order];
-  const observations = countObserved(deviations);
+  const observations = countObserved(values);
   let slack = 1;
   for (let j = 0; j < order; j++) slack -= coefficients[j];
   const scale = innovationVariance / observations;
   return summarise({
     method,
     coefficients,
-    standardErrors: momentErrors(deviations, order, scale),
+    standardErrors: momentErrors(values, centre, order, scale),
     mean: centre,
     meanStandardError: meanKnown ? 0 : Math.sqrt(scale) / Math.abs(slack),
     innovationVariance,
@@ -82,15 +77,15 @@ export function fitByMoments(
     parameters: order + (meanKnown ? 1 : 2),
     effectiveObservations: observations,
     observations,
-    residuals: laggedResiduals(deviations, coefficients),
+    residuals: laggedResiduals(values, centre, coefficients),
   });
 }
 
 /** sqrt(diag(scale · Γ̂⁻¹)). */
-function momentErrors(deviations: Float64Array, order: number, scale: number): Float64Array {
+function momentErrors(values: ArrayLike<number>, centre: number, order: number, scale: number): Float64Array {
   const errors = new Float64Array(order);
   if (order === 0) return errors;
-  const gamma = autocovariancesOf(deviations, order - 1);
+  const gamma = autocovariancesAbout(values, centre, order - 1);
   const matrix = new Float64Array(order * order);
   for (let i = 0; i < order; i++) {
     for (let j = 0; j < order; j++) matrix[i * order + j] = gamma[Math.abs(i - j)];
@@ -102,13 +97,17 @@ function momentErrors(deviations: Float64Array, order: number, scale: number): F
   return errors;
 }
 
-/** z_t − Σ φ_j z_{t−j}; `NaN` where the value or one of its lags is missing. */
-function laggedResiduals(deviations: Float64Array, coefficients: Float64Array): Float64Array {
+/** z_t − Σ φ_j z_{t−j} of z = x − centre; `NaN` where the value or one of its lags is missing. */
+function laggedResiduals(
+  values: ArrayLike<number>,
+  centre: number,
+  coefficients: Float64Array,
+): Float64Array {
   const p = coefficients.length;
-  const residuals = new Float64Array(deviations.length);
-  for (let t = 0; t < deviations.length; t++) {
-    let error = t < p ? Number.NaN : deviations[t];
-    for (let j = 1; j <= p && t >= p; j++) error -= coefficients[j - 1] * deviations[t - j];
+  const residuals = new Float64Array(values.length);
+  for (let t = 0; t < values.length; t++) {
+    let error = t < p ? Number.NaN : values[t] - centre;
+    for (let j = 1; j <= p && t >= p; j++) error -= coefficients[j - 1] * (values[t - j] - centre);
     residuals[t] = error;
   }
   return residuals;

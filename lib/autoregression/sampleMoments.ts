@@ -1,5 +1,5 @@
 import { levinson } from "../numeric/levinson.ts";
-import { centred, countObserved, observedMean } from "../numeric/sums.ts";
+import { observedMean } from "../numeric/sums.ts";
 import { requireObserved, requireValues, requireWhole } from "./checks.ts";
 
 /**
@@ -20,27 +20,24 @@ export function sampleAutocovariances(values: ArrayLike<number>, maxLag: number)
       `sampleAutocovariances needs maxLag below the number of values (${values.length}), got ${maxLag}`,
     );
   }
-  return autocovariancesOf(centred(values, observedMean(values)), maxLag);
+  return autocovariancesAbout(values, observedMean(values), maxLag);
 }
 
-/** The same of values whose mean is already taken off, unchecked. */
-export function autocovariancesOf(deviations: Float64Array, maxLag: number): Float64Array {
-  const n = deviations.length;
-  const complete = countObserved(deviations) === n;
+/** The same about a given centre, unchecked. */
+export function autocovariancesAbout(
+  values: ArrayLike<number>,
+  centre: number,
+  maxLag: number,
+): Float64Array {
+  const n = values.length;
   const out = new Float64Array(maxLag + 1);
   for (let lag = 0; lag <= maxLag; lag++) {
     let sum = 0;
     let pairs = n - lag;
-    if (complete) {
-      for (let t = lag; t < n; t++) sum += deviations[t] * deviations[t - lag];
-    } else {
-      pairs = 0;
-      for (let t = lag; t < n; t++) {
-        const product = deviations[t] * deviations[t - lag];
-        if (Number.isNaN(product)) continue;
-        sum += product;
-        pairs++;
-      }
+    for (let t = lag; t < n; t++) {
+      const product = (values[t] - centre) * (values[t - lag] - centre);
+      if (Number.isNaN(product)) pairs--;
+      else sum += product;
     }
     out[lag] = pairs + lag > 0 ? sum / (pairs + lag) : 0;
   }

@@ -7,6 +7,7 @@ import {
   dickeyFullerGlsCriticalValues,
   dickeyFullerGlsPValue,
 } from "./dickeyFullerDistribution.ts";
+import { modifiedLags } from "./modifiedLags.ts";
 import { constantColumn, trendColumn } from "./regressionTerms.ts";
 import { withoutTerms } from "./withoutTerms.ts";
 
@@ -57,7 +58,8 @@ export function unitRootTest(values: ArrayLike<number>, options: UnitRootOptions
 
 function dickeyFullerGls(values: ArrayLike<number>, trend: boolean, given: number | undefined): UnitRootTest {
   const detrended = quasiDetrend(values, trend);
-  const lags = given ?? modifiedLags(withoutTerms(values, trend));
+  const most = Math.min(schwertLags(values.length), Math.floor((values.length - 5) / 3));
+  const lags = given ?? modifiedLags(withoutTerms(values, trend), Math.max(0, most));
   const { statistic, change } = changeRegression(detrended, "none", lags, lags + 1);
   return {
     kind: "dickey-fuller-gls",
@@ -83,28 +85,6 @@ function quasiDetrend(values: ArrayLike<number>, trend: boolean): Float64Array {
   return centredValues.map((value, t) =>
     terms.reduce((rest, column, j) => rest - coefficients[j] * column[t], value),
   );
-}
-
-/** Modified AIC of Ng & Perron (2001): log σ̂² + 2(τ + k)/rows, τ = (ρ̂ − 1)² Σ x_{t−1}²/σ̂², on one sample. */
-function modifiedLags(detrended: Float64Array): number {
-  const longest = Math.max(
-    0,
-    Math.min(schwertLags(detrended.length), Math.floor((detrended.length - 5) / 3)),
-  );
-  let best = 0;
-  let least = Number.POSITIVE_INFINITY;
-  for (let lags = 0; lags <= longest; lags++) {
-    const { fit, columns, change } = changeRegression(detrended, "none", lags, longest + 1);
-    const rows = change.length;
-    const variance = fit.residualSumOfSquares / rows;
-    const power = compensatedSum(columns[0].map((value) => value * value));
-    const score = Math.log(variance) + (2 * ((fit.coefficients[0] ** 2 * power) / variance + lags)) / rows;
-    if (score < least) {
-      least = score;
-      best = lags;
-    }
-  }
-  return best;
 }
 
 // Kwiatkowski, Phillips, Schmidt & Shin (1992), table 1.
