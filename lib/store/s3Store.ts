@@ -1,30 +1,22 @@
-import { randomUUID } from "node:crypto";
-import { contentType } from "./contentType.ts";
 import { keyFault, prefixFault } from "./key.ts";
 import type { ObjectEntry, ObjectStore, StoredObject } from "./objectStore.ts";
 import { StoreError } from "./objectStore.ts";
 import type { S3Access, S3Settings } from "./s3Client.ts";
 import { connectS3 } from "./s3Client.ts";
-import { attempts, plainS3Error, s3Failure } from "./s3Failure.ts";
+import { plainS3Error, s3Failure } from "./s3Failure.ts";
 import { listS3 } from "./s3Listing.ts";
 import { readS3 } from "./s3Reading.ts";
+import { createS3, honoursConditions, putS3, type S3Target } from "./s3Writing.ts";
 
-/** How often a create that met another one under way (409) is sent, the first time included. */
-const createTries = 6;
-
-/**
- * A store in an S3 bucket, below a prefix. `create` is a put with `If-None-Match: *`.
- *
- * Each create carries a mark of its own as metadata. The SDK repeats a put whose answer was lost, and then
- * finds its own object in the way (412); the mark tells that from another writer's object, even when the
- * bytes are the same.
- */
+/** A store in an S3 bucket, below a prefix; see `createS3` for how an object is created once. */
 export class S3Store implements ObjectStore {
   readonly address: string;
   readonly #bucket: string;
   readonly #base: string;
   readonly #settings: S3Settings;
   #access: Promise<S3Access> | undefined;
+  /** Whether the server is known to honour conditions. */
+  #trusted: boolean;
 
   /** @throws {TypeError} when `prefix` could not begin a key */
   constructor(bucket: string, prefix: string, settings: S3Settings) {
@@ -35,6 +27,7 @@ export class S3Store implements ObjectStore {
     this.#bucket = bucket;
     this.#base = bare === "" ? "" : `${bare}/`;
     this.#settings = settings;
+    this.#trusted = settings.endpoint === undefined;
   }
 
   async read(key: string): Promise<StoredObject | undefined> {
@@ -56,50 +49,34 @@ export class S3Store implements ObjectStore {
 
   async create(key: string, bytes: Uint8Array): Promise<"created" | "exists"> {
     return this.#guard("create", key, async (access) => {
-      const mark = randomUUID();
-      // Whether an earlier sending may have been carried out without our hearing of it.
-      let mayHaveWon = false;
-      for (let attempt = 1; ; attempt++) {
-        try {
-          await this.#put(access, key, bytes, { IfNoneMatch: "*", Metadata: { writer: mark } });
-          return "created";
-        } catch (error) {
-          const failure = s3Failure(error);
-          mayHaveWon ||= attempts(error) > 1;
-          if (failure === "exists") {
-            return mayHaveWon && (await this.#writer(access, key)) === mark ? "created" : "exists";
-          }
-          if (failure !== "conflict" || attempt === createTries) throw error;
-          await new Promise((resolve) => setTimeout(resolve, 50 * 2 ** attempt));
-        }
-      }
+      const target = this.#target(key, bytes);
+      const outcome = await createS3(access, target);
+      if (outcome === "created" && !this.#trusted) await this.#tryConditions(access, target);
+      return outcome;
     });
   }
 
   async write(key: string, bytes: Uint8Array): Promise<void> {
-    await this.#guard("write", key, (access) => this.#put(access, key, bytes, {}));
+    await this.#guard("write", key, (access) => putS3(access, this.#target(key, bytes)));
   }
 
   async list(prefix: string): Promise<ObjectEntry[]> {
     return this.#guard("list", prefix, (access) => listS3(access, this.#bucket, this.#base, prefix));
   }
 
-  async #put(
-    { sdk, client }: S3Access,
-    key: string,
-    bytes: Uint8Array,
-    more: { IfNoneMatch?: string; Metadata?: Record<string, string> },
-  ): Promise<void> {
-    const target = { Bucket: this.#bucket, Key: this.#base + key, ContentType: contentType(key) };
-    await client.send(new sdk.PutObjectCommand({ ...target, Body: bytes, ...more }));
+  #target(key: string, bytes: Uint8Array): S3Target {
+    return { bucket: this.#bucket, key: this.#base + key, bytes };
   }
 
-  /** The mark of whoever created the object that stands there. */
-  async #writer({ sdk, client }: S3Access, key: string): Promise<string | undefined> {
-    const head = await client.send(
-      new sdk.HeadObjectCommand({ Bucket: this.#bucket, Key: this.#base + key }),
-    );
-    return head.Metadata?.writer;
+  /** Once a process, and only with a server other than AWS's. */
+  async #tryConditions(access: S3Access, created: S3Target): Promise<void> {
+    const honours = await honoursConditions(access, created);
+    if (honours === false) {
+      throw new Error(
+        "this server takes no notice of If-None-Match, so that two runs could overwrite each other; use one that honours it",
+      );
+    }
+    this.#trusted ||= honours === true;
   }
 
   /**

@@ -1,4 +1,5 @@
 import { execFile, spawn } from "node:child_process";
+import { existsSync } from "node:fs";
 import { mkdir, readdir, readFile, rename, rm, stat, symlink, utimes, writeFile } from "node:fs/promises";
 import { hostname } from "node:os";
 import { join } from "node:path";
@@ -58,6 +59,24 @@ describe("a folder store", () => {
     );
     expect(await keys(store)).toEqual(["series/a.csv"]);
     expect(await readdir(join(store.address, ".unfinished"))).toEqual([]);
+  });
+
+  it.skipIf(!existsSync("/proc/self/fd"))("leaves no file open, whatever it was asked", async () => {
+    const store = new FolderStore(await temporaryFolder());
+    await store.write("series/a.csv", Buffer.alloc(500_000));
+    const openFiles = async () => (await readdir("/proc/self/fd")).length;
+    const before = await openFiles();
+    for (let i = 0; i < 30; i++) {
+      await store.read("series/a.csv");
+      await store.read("series");
+      await store.stream("series");
+      await store.read("series/absent.csv");
+      await store.create("series/a.csv", Buffer.from("x"));
+      await store.write(`series/${i}.csv`, Buffer.from("x"));
+      for await (const _ of (await store.stream("series/a.csv"))!) break;
+    }
+    // A stream that was left closes its file a moment later.
+    await expect.poll(openFiles).toBeLessThanOrEqual(before + 3);
   });
 
   it("the version changes when an editor changes a file in place or replaces it", async () => {

@@ -44,12 +44,12 @@ describe("answers of S3", () => {
 
   it("a create that meets another under way (409) is sent again until it is decided", async () => {
     const conflict = { status: 409, code: "ConditionalRequestConflict" };
-    const won = await scripted((_, count) => (count <= 2 ? conflict : { status: 200 }));
+    const taken = { status: 412, code: "PreconditionFailed" };
+    const won = await scripted((_, count) => (count <= 2 ? conflict : count === 3 ? { status: 200 } : taken));
     expect(await won.store.create("a.json", Buffer.from("a"))).toBe("created");
-    expect(won.requests).toHaveLength(3);
-    const lost = await scripted((_, count) =>
-      count <= 2 ? conflict : { status: 412, code: "PreconditionFailed" },
-    );
+    // The fourth tries whether the server honours conditions.
+    expect(won.requests).toHaveLength(4);
+    const lost = await scripted((_, count) => (count <= 2 ? conflict : taken));
     expect(await lost.store.create("a.json", Buffer.from("a"))).toBe("exists");
     const never = await scripted(() => conflict);
     await expect(never.store.create("a.json", Buffer.from("a"))).rejects.toThrow(
@@ -58,16 +58,33 @@ describe("answers of S3", () => {
   });
 
   it("a create asks for nothing but that the key be free, and carries its mark and media type", async () => {
-    const { store, requests } = await scripted(() => ({ status: 200 }));
+    const { store, requests } = await scripted((_, count) =>
+      count === 2 ? { status: 412, code: "PreconditionFailed" } : { status: 200 },
+    );
     await store.create("forecasts/a/latest.csv", Buffer.from("a"));
     await store.create("report.html", Buffer.from("a"));
-    expect(requests[0]!.headers).toMatchObject({
-      "if-none-match": "*",
-      "content-type": "text/csv; charset=utf-8",
-    });
-    expect(requests[1]!.headers["content-type"]).toBe("text/html; charset=utf-8");
-    const marks = requests.map(({ headers }) => headers["x-amz-meta-writer"]);
-    expect(new Set(marks).size).toBe(2);
+    // The second tries whether the server honours conditions.
+    expect(requests).toHaveLength(3);
+    const [first, , last] = requests.map(({ headers }) => headers);
+    expect(first).toMatchObject({ "if-none-match": "*", "content-type": "text/csv; charset=utf-8" });
+    expect(last).toMatchObject({ "if-none-match": "*", "content-type": "text/html; charset=utf-8" });
+    expect(new Set(requests.map(({ headers }) => headers["x-amz-meta-writer"])).size).toBe(3);
+  });
+
+  it("a server that takes no notice of conditions is found out at the first create, and said so", async () => {
+    const { store } = await scripted(() => ({ status: 200 }));
+    await expect(store.create("a.json", Buffer.from("a"))).rejects.toThrow(
+      'could not create "a.json" in s3://bucket/prefix: this server takes no notice of If-None-Match',
+    );
+  });
+
+  it("a trial of conditions that fails itself is repeated at the next create", async () => {
+    const answers = [200, 400, 200, 412, 200];
+    const { store, requests } = await scripted((_, count) =>
+      answers[count - 1] === 200 ? { status: 200 } : { status: answers[count - 1]!, code: "Other" },
+    );
+    for (const key of ["a", "b", "c"]) expect(await store.create(key, Buffer.from("a"))).toBe("created");
+    expect(requests).toHaveLength(5);
   });
 
   it("without a retry a 412 is another's object and is not asked after", async () => {
@@ -125,6 +142,11 @@ describe("answers of S3", () => {
         : { status: 400, code: "InvalidRequest" },
     );
     await expect(later.store.list("")).rejects.toThrow("InvalidRequest (400)");
+  });
+
+  it("a listing's keys are read as S3 writes them: a space as +, a plus as %2B", async () => {
+    const { store } = await scripted(() => ({ status: 200, body: listing("a+b%2Bc%26%E2%82%AC.csv") }));
+    expect((await store.list("")).map(({ key }) => key)).toEqual(["a b+c&€.csv"]);
   });
 
   it("a missing bucket is a fault that says so, not an absent object", async () => {

@@ -97,6 +97,17 @@ describe("composeBody", () => {
     }
   });
 
+  it("counts lines of text alone when it says how many are missing", () => {
+    const lines = Array.from({ length: 200 }, (_, i) =>
+      i % 2 === 0 ? `Series ${i}: ${"x".repeat(90)}` : "",
+    );
+    for (const shape of ["text", "content"] as const) {
+      const text = shown(shape, { lines }).split("\n");
+      const kept = text.filter((line) => line.startsWith("Series ")).length;
+      expect(text.at(-1)).toBe(`… and ${100 - kept} more`);
+    }
+  });
+
   it("leaves nothing out when everything fits", () => {
     for (const shape of chats) expect(shown(shape, { lines: ["a", "b", "c"] })).not.toContain("more");
   });

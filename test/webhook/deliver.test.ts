@@ -161,12 +161,19 @@ describe("deliver", () => {
 
   it("counts an answer whose body breaks off or hangs by its status", async () => {
     for (const end of ["destroy", "hang"]) {
+      let closed: () => void;
+      const ended = new Promise<void>((resolve) => {
+        closed = resolve;
+      });
       const hook = await receiver((response) => {
+        response.once("close", closed);
         response.writeHead(200, { "content-length": "1000" });
         response.write("half");
         if (end === "destroy") setTimeout(() => response.destroy(), 20);
       });
       expect(await post(hook.address, 5_000)).toEqual({ delivered: true, posts: 1, status: 200 });
+      // The connection is not kept for the rest of the body.
+      await ended;
     }
   });
 
