@@ -29,8 +29,8 @@ export function modifiedLags(detrended: Float64Array, longest: number): number {
   }
   const power = products[0];
   const total = products[size * size - 1];
-  // A regression that leaves nothing over ends the factor early; what was factored before it still stands.
-  factorCholesky(products, size);
+  // Columns that follow from each other, or leave nothing over, mean an exact rule: no lags are needed to see it.
+  if (!factorCholesky(products, size)) return 0;
   const last = (size - 1) * size;
   let explained = 0;
   let best = 0;

@@ -1,5 +1,5 @@
 import { leastSquares } from "../numeric/leastSquares.ts";
-import { compensatedSum, observedMean } from "../numeric/sums.ts";
+import { observedMean } from "../numeric/sums.ts";
 import { requireObserved, requireValues, requireWhole } from "./checks.ts";
 import { changeRegression, schwertLags } from "./dickeyFuller.ts";
 import {
