@@ -1,12 +1,12 @@
 import { area, line } from "d3-shape";
-import { changeHeadline } from "../words/changeWords.ts";
 import type { SeriesFacts } from "../words/facts.ts";
 import { limitStep } from "../words/forecastSentences.ts";
 import { roundingStep } from "../words/numbers.ts";
 import { valueStep } from "../words/otherFindings.ts";
 import type { Speech } from "../words/speech.ts";
+import { eventsOf } from "./historyEvents.ts";
 import { html, type Markup } from "./markup.ts";
-import { heights, type LegendEntry, type Mark, plot, round, side } from "./plot.ts";
+import { heights, type LegendEntry, plot, round, side } from "./plot.ts";
 import { type Timeline, timelineLabels, timelineOf } from "./timeline.ts";
 import { verticalScale } from "./verticalScale.ts";
 
@@ -105,52 +105,6 @@ function legend(
     })),
     ...limits,
   ];
-}
-
-interface ChartEvent {
-  readonly index: number;
-  readonly value: number | null;
-  readonly mark: Mark;
-  readonly shape: (x: (index: number) => number) => Markup;
-}
-
-/** Changes (a band over the interval of the date) and surprises (a ring), in the order of time. */
-function eventsOf(speech: Speech, { starts, past }: Timeline): ChartEvent[] {
-  const last = starts.length - 1;
-  const place = (period: string) => {
-    const found = starts.findIndex((start) => start >= period);
-    return found === -1 ? last : found;
-  };
-  const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
-  return speech.facts.findings
-    .flatMap((finding): ChartEvent[] => {
-      if (finding.code === "change" || finding.code === "past-break") {
-        if (finding.change.high < starts[0]) return [];
-        const at = place(finding.change.period);
-        const [low, high] = [place(finding.change.low), place(finding.change.high)];
-        const text =
-          finding.code === "change"
-            ? `${capital(speech.periods.name(finding.change.period))}: ${changeHeadline(finding, speech)}.`
-            : `${capital(speech.periods.name(finding.change.period))}: a past step of the usual level.`;
-        return [
-          {
-            index: at,
-            value: null,
-            mark: { at: at / last, text },
-            shape: (x) =>
-              html`<path class="between" d="M${x(low)},0H${Math.max(x(high), x(low) + 2)}V${side}H${x(low)}Z"/><path class="change" d="M${x(at)},0V${side}"/>`,
-          },
-        ];
-      }
-      if (finding.code !== "surprise") return [];
-      const index = starts.indexOf(finding.period);
-      if (index === -1 || index >= past.length) return [];
-      const than = `expected about ${speech.roughNumber(finding.expected)}`;
-      const text = `${capital(speech.periods.name(finding.period))}: a one-off surprise of ${speech.amount(finding.value, valueStep(finding.value))}, ${than}.`;
-      return [{ index, value: past[index], mark: { at: index / last, text }, shape: () => html`` }];
-    })
-    .sort((one, other) => one.index - other.index)
-    .slice(-8);
 }
 
 function description(speech: Speech, { starts, past, now }: Timeline): string {

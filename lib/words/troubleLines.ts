@@ -9,6 +9,7 @@ export function problemText(problem: Problem): string {
     problem.column === undefined ? "" : `column ${plainName(problem.column, 30)}`,
   ].filter((one) => one !== "");
   const said = [plainText(problem.message, 200), plainText(problem.remedy, 200)]
+    .map((one) => one.charAt(0).toUpperCase() + one.slice(1))
     .map((one) => (/[.!?…]$/.test(one) ? one : `${one}.`))
     .join(" ");
   return place.length > 0 ? `${place.join(", ")}: ${said}` : said;

@@ -1,6 +1,7 @@
 import { periodStart } from "../../lib/series/periods.ts";
 import type { RunFacts, SeriesFacts } from "../../lib/words/facts.ts";
-import { branchFacts, loansRun, mondays, quay, quayChange, stationSurprise } from "./factsFixture.ts";
+import { branchFacts, loansRun, mondays, quay } from "./factsFixture.ts";
+import { quayChange, stationSurprise } from "./findingsFixture.ts";
 
 // What is hard to draw: long and hostile names, huge and tiny numbers, gaps, hours, many marks, many lags, no data.
 

@@ -6,7 +6,8 @@ import { explainSeries } from "../../lib/words/explainSeries.ts";
 import type { RunFacts, SeriesFacts } from "../../lib/words/facts.ts";
 import { operationsMessage } from "../../lib/words/operationsMessage.ts";
 import { changeOf, seriesOf } from "../support/factsArbitrary.ts";
-import { britishVoice, loansRun, quay, quayChange } from "../support/factsFixture.ts";
+import { britishVoice, loansRun, quay } from "../support/factsFixture.ts";
+import { quayChange } from "../support/findingsFixture.ts";
 
 const runOf = (facts: SeriesFacts): RunFacts => ({
   ...loansRun,

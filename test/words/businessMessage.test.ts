@@ -4,14 +4,8 @@ import { businessMessage } from "../../lib/words/businessMessage.ts";
 import type { Finding, RunFacts, SeriesFacts } from "../../lib/words/facts.ts";
 import { hasNews } from "../../lib/words/hasNews.ts";
 import { changeOf, periodKind, seriesOf, surpriseOf } from "../support/factsArbitrary.ts";
-import {
-  branchFacts,
-  britishVoice,
-  loansRun,
-  quay,
-  quayChange,
-  stationSurprise,
-} from "../support/factsFixture.ts";
+import { branchFacts, britishVoice, loansRun, quay } from "../support/factsFixture.ts";
+import { quayChange, stationSurprise } from "../support/findingsFixture.ts";
 
 const steadyBranch = (series: string, seed: number) =>
   branchFacts({ series, level: 100, coefficient: 0.5, shockSize: 12, seed });

@@ -4,7 +4,8 @@ import { businessMessage } from "../../lib/words/businessMessage.ts";
 import type { ChangeFinding } from "../../lib/words/changeWords.ts";
 import type { SeriesFacts } from "../../lib/words/facts.ts";
 import { changeOf, periodKind, seriesOf } from "../support/factsArbitrary.ts";
-import { britishVoice, loansRun, quay, quayChange } from "../support/factsFixture.ts";
+import { britishVoice, loansRun, quay } from "../support/factsFixture.ts";
+import { quayChange } from "../support/findingsFixture.ts";
 import { number, readNumber } from "../support/readSentence.ts";
 
 // Each sentence is read back with a pattern of its own and compared with the finding it was made from.

@@ -5,7 +5,8 @@ import { chanceSentences, nextSentence, totalSentence } from "../../lib/words/fo
 import { remainderSentence } from "../../lib/words/remainder.ts";
 import { speechFor } from "../../lib/words/speech.ts";
 import { periodKind, seriesOf } from "../support/factsArbitrary.ts";
-import { branchFacts, britishVoice, quay, quayChange } from "../support/factsFixture.ts";
+import { branchFacts, britishVoice, quay } from "../support/factsFixture.ts";
+import { quayChange } from "../support/findingsFixture.ts";
 import { number, readNumber } from "../support/readSentence.ts";
 
 const steady = periodKind.chain((period) => seriesOf(period, fc.constant([])));
