@@ -1,11 +1,12 @@
 import type { BurgWorkspace } from "../autoregression/burg.ts";
 import { orderAverage } from "./orderAverage.ts";
+import { levelProfile } from "./seasonalProfile.ts";
 
 /**
  * Fills gaps on the working scale so that recursions over every value can run: first straight lines between the
  * neighbours, carrying the season's own shape when there is one (the average of the observed values a whole number
  * of seasons away, corrected to the line), then the conditional expectation under an autoregression of the
- * differences fitted to that (the values that make the sum of squared shocks least, by Gauss–Seidel sweeps).
+ * differences, season taken off, fitted to that (the values that make the sum of squared shocks least, by Gauss–Seidel sweeps).
  *
  * Leading and trailing gaps are not here: callers trim the first and forecast over the second. Filled values are
  * for fitting only; errors are never scored on them. Returns a new array; the input when it has no gap.
@@ -16,7 +17,15 @@ export function fillGaps(values: Float64Array, season: number, workspace: BurgWo
   if (gaps.length === 0) return values;
   const filled = interpolate(values);
   if (season > 1) addSeason(values, filled, gaps, season);
+  // The autoregression bends lines to the neighbours, not to a season, which must therefore stand aside.
+  const profile =
+    season > 1 && values.length >= 3 * season
+      ? levelProfile(filled, season, values.length)
+      : new Float64Array(1);
+  for (let t = 0; t < filled.length; t++) filled[t] -= profile[t % profile.length];
   settle(filled, gaps, workspace);
+  for (let t = 0; t < filled.length; t++) filled[t] += profile[t % profile.length];
+  for (let t = 0; t < filled.length; t++) if (!Number.isNaN(values[t])) filled[t] = values[t];
   return filled;
 }
 
@@ -67,7 +76,10 @@ function addSeason(
   }
 }
 
-/** Gauss–Seidel on the sum of squared shocks of an autoregression of the differences. */
+/** Sweeps over the gaps; neighbouring gaps settle within a few. */
+const SWEEPS = 10;
+
+/** Gauss–Seidel on the sum of squared errors, forward and backward, of an autoregression of the differences. */
 function settle(filled: Float64Array, gaps: readonly number[], workspace: BurgWorkspace): void {
   const count = filled.length;
   const steps = new Float64Array(count - 1);
@@ -87,17 +99,22 @@ function settle(filled: Float64Array, gaps: readonly number[], workspace: BurgWo
   let drift = 1;
   for (let j = 0; j < coefficients.length; j++) drift -= coefficients[j];
   drift *= mean;
-  for (let sweep = 0; sweep < 20; sweep++) {
+  // Both directions of time, as in Burg's method: near the start only the backward errors weigh near values fully.
+  const directions = [1, -1] as const;
+  for (let sweep = 0; sweep < SWEEPS; sweep++) {
     for (const t of gaps) {
       let gradient = 0;
       let curvature = 0;
-      for (let j = 0; j <= reach; j++) {
-        const s = t + j;
-        if (s < reach || s >= count) continue;
-        let shock = -drift;
-        for (let i = 0; i <= reach; i++) shock += filter[i] * filled[s - i];
-        gradient += filter[j] * shock;
-        curvature += filter[j] * filter[j];
+      for (const direction of directions) {
+        for (let j = 0; j <= reach; j++) {
+          const s = t + direction * j;
+          const oldest = s - direction * reach;
+          if (Math.min(s, oldest) < 0 || Math.max(s, oldest) >= count) continue;
+          let shock = -direction * drift;
+          for (let i = 0; i <= reach; i++) shock += filter[i] * filled[s - direction * i];
+          gradient += filter[j] * shock;
+          curvature += filter[j] * filter[j];
+        }
       }
       if (curvature > 0) filled[t] -= gradient / curvature;
     }

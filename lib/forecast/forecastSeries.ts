@@ -9,6 +9,10 @@ import { intermittentLevel, lastLevel, simpleForecast, steadyLevel } from "./sim
 
 /** Fewest observed values that a model is fitted to. */
 const LEAST_OBSERVED = 8;
+/** Values looked at: what lies further back costs time and says little of the coming periods. */
+const LONGEST_HISTORY = 5000;
+/** Squares of larger values, and so their variance, are no numbers any more. */
+const LARGEST = 1e150;
 /** Fewest values since a lasting change that are forecast from alone. */
 const LEAST_SINCE_CHANGE = 24;
 /** Share of zeros from which a series that is never negative counts as intermittent. */
@@ -39,13 +43,14 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   const series = Float64Array.from({ length: values.length - first }, (_, t) => values[first + t]);
   let end = series.length;
   while (Number.isNaN(series[end - 1])) end--;
-  const whole = series.subarray(0, end);
+  const whole = series.subarray(Math.max(0, end - LONGEST_HISTORY), end);
   const season = seasonLengths(whole.length, options)[0] ?? 0;
-  const changedAt = options.changedAt === undefined ? undefined : options.changedAt - first;
+  const dropped = first + end - whole.length;
+  const changedAt = options.changedAt === undefined ? undefined : options.changedAt - dropped;
   const known = afterChange(whole, changedAt, Math.max(LEAST_SINCE_CHANGE, 4 * season));
-  const start = first + whole.length - known.length;
+  const start = dropped + whole.length - known.length;
   const observed = known.filter((value) => !Number.isNaN(value));
-  const simple = simpleTreatment(series, observed, options);
+  const simple = simpleTreatment(series.subarray(end - known.length), observed, options);
   if (simple !== undefined) return simple;
   // Periods that are past but unobserved are forecast over and dropped.
   const late = series.length - end;
@@ -61,6 +66,13 @@ function checkOptions(values: ArrayLike<number>, { horizon, levels }: ForecastOp
   for (const level of levels) {
     if (!(level > 0 && level < 100)) {
       throw new RangeError(`forecastSeries needs levels between 0 and 100 percent, got ${level}`);
+    }
+  }
+  for (let t = 0; t < values.length; t++) {
+    if (Math.abs(values[t]) > LARGEST) {
+      throw new RangeError(
+        `forecastSeries needs values of at most ${LARGEST} in size, got ${values[t]} at index ${t}`,
+      );
     }
   }
   for (let t = 0; t < values.length; t++) if (!Number.isNaN(values[t])) return;

@@ -6,8 +6,11 @@ import { normalProbability } from "./normal.ts";
 import { normalDraws } from "./normalDraws.ts";
 import { spreadScore } from "./predictiveSpread.ts";
 
-/** Simulated paths for the chance that any period passes: its Monte Carlo error is at most 0.8 points. */
-const PATHS = 4000;
+/** Simulated paths for the chance that any period passes: its Monte Carlo error is at most 0.8 points, */
+const MOST_PATHS = 4000;
+/** and for a horizon of hundreds, where a path costs its square, at most 2.3. */
+const FEWEST_PATHS = 500;
+const WORK = 2e7;
 
 /**
  * Chance that each coming period passes a limit, from the same distribution as the intervals, and that any does, by
@@ -69,10 +72,11 @@ function simulateAny(away: Float64Array, response: Float64Array, seed: number, f
     power += response[h] * response[h];
     size[h] = Math.sqrt(power);
   }
+  const paths = Math.max(FEWEST_PATHS, Math.min(MOST_PATHS, Math.floor(WORK / horizon ** 2)));
   const draw = normalDraws(seed);
   const shocks = new Float64Array(horizon);
   let passed = 0;
-  for (let path = 0; path < PATHS; path++) {
+  for (let path = 0; path < paths; path++) {
     let hit = false;
     for (let h = 0; h < horizon; h++) shocks[h] = draw();
     for (let h = 0; h < horizon && !hit; h++) {
@@ -82,5 +86,5 @@ function simulateAny(away: Float64Array, response: Float64Array, seed: number, f
     }
     if (hit) passed++;
   }
-  return passed / PATHS;
+  return passed / paths;
 }
