@@ -91,6 +91,22 @@ describe("unitRootTest", () => {
     expect(kpss(nhtemp, true, 10)).toBeCloseTo(0.08811948498730317, 9);
   });
 
+  it("takes the lags that the modified AIC of Ng & Perron has least, by regressions in R", async () => {
+    for (const dataset of ["Nile", "nhtemp", "lh", "BJsales", "LakeHuron"]) {
+      const [lags] = await r.evaluate(
+        `x <- resid(lm(as.numeric(${dataset}) ~ 1)); n <- length(x); K <- trunc(12 * (n / 100)^0.25)
+         rows <- (K + 2):n; d <- c(NA, diff(x))
+         score <- sapply(0:K, function(k) {
+           X <- cbind(x[rows - 1], if (k > 0) sapply(1:k, function(i) d[rows - i]))
+           f <- lm(d[rows] ~ 0 + X); s <- mean(resid(f)^2)
+           log(s) + 2 * (coef(f)[1]^2 * sum(x[rows - 1]^2) / s + k) / length(rows) })
+         which.min(score) - 1`,
+      );
+      const values = await r.evaluate(dataset);
+      expect(unitRootTest(values, { kind: "dickey-fuller-gls", trend: false }).lags).toBe(lags);
+    }
+  });
+
   it("gives KPSS the table of 1992 and says where its p-value ends", async () => {
     const test = unitRootTest(await r.evaluate("Nile"), { kind: "kpss", trend: false });
     expect(test.criticalValues).toEqual([
