@@ -15,11 +15,11 @@ export function polynomialRoots(coefficients: ArrayLike<number>): ComplexNumber[
   for (let i = 0; i < coefficients.length; i++) {
     radius = Math.max(radius, Math.abs(coefficients[i]) ** (1 / (i + 1)));
   }
-  // In units of the radius no power overflows. A last coefficient below 1e-60 is far below the rounding of the others:
+  // In units of the radius no power overflows; a radius below 1e-40, whose powers would, is taken as zero. A last coefficient below 1e-30 is far below the rounding of the others:
   // its root is taken as zero.
   const scaled = Float64Array.from(coefficients, (value, i) => value / radius ** (i + 1));
-  let degree = radius > 0 ? scaled.length : 0;
-  while (degree > 0 && Math.abs(scaled[degree - 1]) < 1e-60) degree--;
+  let degree = radius > 1e-40 ? scaled.length : 0;
+  while (degree > 0 && Math.abs(scaled[degree - 1]) < 1e-30) degree--;
   const zeros = Array.from({ length: scaled.length - degree }, () => ({ re: 0, im: 0 }));
   if (degree === 0) return zeros;
   if (degree === 1) return [{ re: -coefficients[0], im: 0 }, ...zeros];
@@ -91,9 +91,10 @@ function aberthStep(
     valueIm = valueRe * y + valueIm * x;
     valueRe = nextValueRe;
   }
-  if (valueRe === 0 && valueIm === 0) return { re: 0, im: 0 };
   // 1/step = slope/value − Σ 1/(z_i − z_j)
   const size = valueRe * valueRe + valueIm * valueIm;
+  // At the root, or so near that the square of the value is below what a number can hold.
+  if (!(size > 0)) return { re: 0, im: 0 };
   let inverseRe = (slopeRe * valueRe + slopeIm * valueIm) / size;
   let inverseIm = (slopeIm * valueRe - slopeRe * valueIm) / size;
   for (let j = 0; j < degree; j++) {
