@@ -2,7 +2,7 @@ import { type Calendar, type DateFacts, findCalendar } from "./calendar.ts";
 import type { Collected } from "./collect.ts";
 import { countRepeats, foldSeries } from "./foldSeries.ts";
 import { type Grid, layGrid, startOf } from "./grid.ts";
-import { dropLonelyDates } from "./lonelyDates.ts";
+import { byDate, withoutLonelyDates } from "./lonelyDates.ts";
 import type { Complain } from "./problems.ts";
 import type { Reading } from "./reading.ts";
 import type { Problem, Series } from "./series.ts";
@@ -45,6 +45,13 @@ function refuseWideSpans(
   );
 }
 
+/** Days or instants, each once, ascending. */
+function distinctOf(order: Int32Array, at: Float64Array): number[] {
+  const distinct: number[] = [];
+  for (const index of order) if (distinct.at(-1) !== at[index]) distinct.push(at[index]);
+  return distinct;
+}
+
 /** The rule for several rows of a period: as set; a sum for rows that are clearly parts of a period; else none. */
 function chooseRule(collected: Collected, grid: Grid, facts: DateFacts, settings: TableSettings) {
   let periods = 0;
@@ -75,10 +82,10 @@ export function buildSeries(
   timeZone: string,
   complain: Complain,
 ): Built {
-  const problems: Problem[] = dropLonelyDates(at, collected.dates, facts, complain);
-  const distinct = [...new Set(at)].filter((one) => !Number.isNaN(one)).sort((a, b) => a - b);
+  const { order, problems } = withoutLonelyDates(byDate(at), at, collected.dates, facts, complain);
+  const distinct = distinctOf(order, at);
   const calendar = findCalendar(distinct, facts, settings, timeZone, complain);
-  const grid = layGrid(at, calendar, asOf, timeZone);
+  const grid = layGrid(order, at, calendar, asOf, timeZone);
   refuseWideSpans(grid, calendar, collected, facts.column, complain);
   const { rule, several, periods, isAssumed } = chooseRule(collected, grid, facts, settings);
   if (isAssumed)

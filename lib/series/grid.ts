@@ -28,10 +28,14 @@ export function startOf({ every, weekStart, phase }: Calendar, ordinal: number):
   return isoInstant(ordinal * hourLength + phase);
 }
 
-export function layGrid(at: Float64Array, calendar: Calendar, asOf: Date | string, timeZone: string): Grid {
-  const order = Int32Array.from([...at.keys()].filter((index) => !Number.isNaN(at[index]))).sort(
-    (a, b) => at[a] - at[b] || a - b,
-  );
+/** @param order indexes of `at` by date */
+export function layGrid(
+  order: Int32Array,
+  at: Float64Array,
+  calendar: Calendar,
+  asOf: Date | string,
+  timeZone: string,
+): Grid {
   const ordinals = order.map((index) => ordinalAt(calendar, at[index]));
   const { every, weekStart } = calendar;
   const current =

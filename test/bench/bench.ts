@@ -6,6 +6,7 @@ import { bundleBench } from "./bundleBench.ts";
 import { coreBench } from "./coreBench.ts";
 import { costBench } from "./costBench.ts";
 import { jobBench } from "./jobBench.ts";
+import { readingBench } from "./readingBench.ts";
 
 /** Each part of the bench by the name it is asked for. */
 const PARTS: Record<string, (data: string | undefined) => Promise<BenchRow[]>> = {
@@ -14,6 +15,7 @@ const PARTS: Record<string, (data: string | undefined) => Promise<BenchRow[]>> =
   core: coreBench,
   cost: costBench,
   job: jobBench,
+  reading: readingBench,
 };
 
 /**
