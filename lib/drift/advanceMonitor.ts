@@ -115,7 +115,10 @@ function makeNotice(
   noticedAt: number,
 ): ChangeNotice {
   const statistic = state.statistics[lead];
-  const named = nameChange(state);
+  const named = nameChange(
+    state,
+    monitor.boundaries.map(({ boundary }) => boundary),
+  );
   return {
     code: "change",
     kind: named.kind,

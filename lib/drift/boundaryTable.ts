@@ -1,9 +1,7 @@
 import { coefficients, lookShifts, tabulatedLooks, tabulatedRates } from "./boundaryCoefficients.ts";
-import { boundaryFeatures } from "./boundaryFeatures.ts";
+import { boundaryFeatures, plainFeatures } from "./boundaryFeatures.ts";
 import { watchedKinds } from "./lookState.ts";
 import type { Reference } from "./reference.ts";
-
-const plainFeatures = 11;
 
 /**
  * Boundaries from the fitted table, or `undefined` outside it. Every boundary is a quantile of a kind's largest
@@ -11,7 +9,8 @@ const plainFeatures = 11;
  * simulated series of many orders, persistences, tails and lengths, watched as the monitor watches, stand behind
  * each, so a boundary has less noise than a bootstrap of a thousand paths and costs a few multiplications. Since
  * the regression knows only the estimates, it carries their uncertainty, which a bootstrap from them does not.
- * Tabulated for 40 to 400 values, 8 to 104 looks and false-alarm rates of 1 to 20 %; linear in ln of both between.
+ * Fitted apart for one lag and for more;
+ * tabulated for 40 to 400 values, 8 to 104 looks and false-alarm rates of 1 to 20 %; linear in ln of both between.
  */
 export function tabulatedBoundaries(
   reference: Reference,
@@ -27,15 +26,17 @@ export function tabulatedBoundaries(
     falseAlarmRate < tabulatedRates[0] ||
     falseAlarmRate > tabulatedRates[tabulatedRates.length - 1];
   if (outside) return undefined;
+  const { season } = reference;
   const features = boundaryFeatures(reference);
   const kinds = watchedKinds(reference);
   const terms = kinds.length > 3;
   const at52 = (kind: string, rate: number): number => {
-    const plain = coefficients.plain[rate];
+    const single = reference.order === 1 ? coefficients.oneLag : coefficients.moreLags;
+    const plain = single[rate];
     if (!terms) return dot(plain[kind], features, plainFeatures);
     // With terms one rate is tabulated; others move as they do without terms.
     const like = plain[kind] ?? plain.level;
-    const base = coefficients.plain[middleRate][kind] ?? coefficients.plain[middleRate].level;
+    const base = single[middleRate][kind] ?? single[middleRate].level;
     const own = coefficients.terms[kind];
     return (
       dot(own, features, own.length) + dot(like, features, plainFeatures) - dot(base, features, plainFeatures)
@@ -48,9 +49,12 @@ export function tabulatedBoundaries(
     const high = at52(kind, share.index + 1);
     const shifts = lookShifts[kind] ?? lookShifts.level;
     const shift = shifts[step.index] + step.part * (shifts[step.index + 1] - shifts[step.index]);
-    return low + share.part * (high - low) + shift;
+    return low + share.part * (high - low) + shift + (season > 12 ? longSeasonShift : 0);
   });
 }
+
+/** A pattern of which a reference holds few rounds (24 and more periods) needs higher boundaries: 7.5 % without. */
+const longSeasonShift = 0.4;
 
 /** Place of 5 % among the tabulated rates. */
 const middleRate = tabulatedRates.indexOf(0.05);

@@ -3,6 +3,7 @@ import { type Explanation, weighExplanations } from "./jointEvidence.ts";
 import type { LookState } from "./lookState.ts";
 import type { ChangeKind } from "./notice.ts";
 import { fitNull } from "./nullFit.ts";
+import { weighKinds } from "./weighKinds.ts";
 
 /** What a change most likely was, and when. Times count from the first reference value. */
 export interface NamedChange {
@@ -13,46 +14,38 @@ export interface NamedChange {
   readonly high: number;
   /** The single best set of kinds that holds `kind`, at `time`. */
   readonly best: Explanation;
-  /** Log odds that each watched kind takes part. */
-  readonly logOdds: readonly number[];
 }
 
-/**
- * Added to the log odds of persistence: a rise of persistence makes long excursions that a level or a shock
- * size explains almost as well, so that without it persistence is named too seldom (by simulation).
- */
-const persistenceLead = 1.5;
-/** Two kinds whose log odds lie closer than this are both named. */
+/** Two kinds whose scores lie closer than this (a probability within a third) are both named. */
 const nearTie = 1.1;
 
 /**
- * Names and dates a change: the kind with the largest log odds of taking part, over all sets of kinds and all
- * change times; the date is the posterior mode, its range the 5 % and 95 % points of the posterior.
+ * Names and dates a change: the log odds of each kind's taking part, over all sets of kinds and all change times,
+ * are weighed into scores (see weighKinds); the date is the posterior mode, its range the 5 % and 95 % points of
+ * the posterior. To be called right after a look.
  */
-export function nameChange(state: LookState): NamedChange {
+export function nameChange(state: LookState, boundaries: ArrayLike<number>): NamedChange {
   cleanOutliers(state, naming);
   fitNull(state);
   const explanations = weighExplanations(state);
-  const logOdds = state.kinds.map((kind, index) => {
+  const logOdds = state.kinds.map((_, index) => {
     const bit = 1 << index;
-    const odds =
-      logSum(explanations.filter(({ kinds }) => kinds & bit)) -
-      logSum(explanations.filter(({ kinds }) => !(kinds & bit)));
-    return kind === "persistence" ? odds + persistenceLead : odds;
+    const taking = logSum(explanations.filter(({ kinds }) => kinds & bit));
+    return taking - logSum(explanations.filter(({ kinds }) => !(kinds & bit)));
   });
-  const ranked = [...logOdds.keys()].sort((a, b) => logOdds[b] - logOdds[a]);
-  const [first, second] = ranked;
   const { time, low, high } = dateChange(state, explanations);
+  const scores = weighKinds(state, logOdds, boundaries, state.count - time);
+  const ranked = [...scores.keys()].sort((a, b) => scores[b] - scores[a]);
+  const [first, second] = ranked;
   const holding = explanations.filter((one) => one.time === time && one.kinds & (1 << first));
   const best = holding.reduce((a, b) => (b.logWeight > a.logWeight ? b : a));
   return {
     kind: state.kinds[first],
-    alternative: logOdds[first] - logOdds[second] < nearTie ? state.kinds[second] : null,
+    alternative: scores[first] - scores[second] < nearTie ? state.kinds[second] : null,
     time,
     low,
     high,
     best,
-    logOdds,
   };
 }
 

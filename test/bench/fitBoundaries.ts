@@ -18,6 +18,7 @@ export function fitBoundaries(
   looks: number,
   rate: number,
   features: number,
+  weights?: readonly number[],
 ): FittedBoundaries {
   const rows = paths.map((path) => path.features.slice(0, features));
   const maxima = paths.map((path) => path.maxima.find((one) => one.looks === looks)!.values);
@@ -30,12 +31,17 @@ export function fitBoundaries(
         rows,
         maxima.map((values) => values[kind]),
         1 - share,
+        weights,
       ),
     );
-    const passing = rows.filter((row, path) =>
-      kinds.some((kind) => maxima[path][kind] >= dot(coefficients[kind], row)),
-    );
-    share *= (rate * rows.length) / passing.length;
+    let passing = 0;
+    let all = 0;
+    rows.forEach((row, path) => {
+      const weight = weights?.[path] ?? 1;
+      all += weight;
+      if (kinds.some((kind) => maxima[path][kind] >= dot(coefficients[kind], row))) passing += weight;
+    });
+    share *= (rate * all) / passing;
   }
   return { coefficients, share };
 }
