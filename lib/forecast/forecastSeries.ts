@@ -97,11 +97,27 @@ function simpleTreatment(
     return simpleForecast(series, options, steadyLevel(observed), [note]);
   }
   const zeros = observed.filter((value) => value === 0).length / count;
-  if (zeros >= INTERMITTENT && observed.every((value) => value >= 0)) {
+  const season = seasonLengths(series.length, options)[0] ?? 0;
+  const mostlyZero = zeros >= INTERMITTENT && observed.every((value) => value >= 0);
+  if (mostlyZero && !zerosFollowSeason(series, season)) {
     const note = { code: "intermittent", shareOfZeros: zeros } as const;
     return simpleForecast(series, options, intermittentLevel(observed), [note]);
   }
   return undefined;
+}
+
+/** Whether zeros come at fixed places of the season (a closed summer): nine in ten periods as their place foretells. */
+function zerosFollowSeason(series: Float64Array, season: number): boolean {
+  if (season < 2) return false;
+  const zeros = new Float64Array(season);
+  const seen = new Float64Array(season);
+  series.forEach((value, t) => {
+    if (Number.isNaN(value)) return;
+    seen[t % season]++;
+    if (value === 0) zeros[t % season]++;
+  });
+  const foretold = zeros.reduce((sum, zero, place) => sum + Math.max(zero, seen[place] - zero), 0);
+  return foretold >= 0.9 * seen.reduce((sum, one) => sum + one, 0);
 }
 
 /** A series may be forecast that no likelihood describes (a perfect line): then it has no describing model. */

@@ -4,7 +4,8 @@ import { requireValues, requireWhole } from "../autoregression/checks.ts";
  * Naive2, the yardstick of the M competitions: the last value of the seasonally adjusted series repeated, then
  * seasoned again (Makridakis, Spiliotis and Assimakopoulos 2020). The season is taken off by multiplicative classical
  * decomposition, and only when it passes the 90 % test |r_m| > 1.645 √((1 + 2 Σ_{i<m} r_i²)/n) with three seasons of
- * data. `season` 1 is the plain naive forecast.
+ * data; values that are not all positive have no multiplicative season and pass for unseasonal. `season` 1 is the plain
+ * naive forecast.
  *
  * Throws for gaps, a season or horizon below 1.
  *
@@ -27,6 +28,7 @@ export function naive2(values: ArrayLike<number>, season: number, horizon: numbe
 function isSeasonal(values: ArrayLike<number>, season: number): boolean {
   const count = values.length;
   if (season < 2 || count < 3 * season) return false;
+  for (let t = 0; t < count; t++) if (values[t] <= 0) return false;
   let mean = 0;
   for (let t = 0; t < count; t++) mean += values[t] / count;
   const products = (lag: number): number => {

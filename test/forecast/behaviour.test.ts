@@ -113,6 +113,13 @@ describe("forecastSeries", () => {
     expect(intervals[1].high[0]).toBe(4);
   });
 
+  it("does not take a season of zeros for intermittence", () => {
+    const open = Array.from({ length: 72 }, (_, t) => (t % 12 < 6 ? 0 : 20 + (t % 12) + ((t * 5) % 3)));
+    const { notes, median } = forecastSeries(open, { horizon: 12, levels: [80], period: "month" });
+    expect(notes.map(({ code }) => code)).not.toContain("intermittent");
+    for (let h = 0; h < 12; h++) expect(median[h] > 13).toBe(h >= 6);
+  });
+
   it("uses the naive forecast where the record says that it does better", () => {
     // A level that jumps every 24 periods and is still in between: nothing beats the last value.
     const draw = normalDraws(12);
