@@ -1,4 +1,5 @@
 import { ljungBox } from "../autoregression/ljungBox.ts";
+import { isStationary } from "../autoregression/partials.ts";
 import { sampleAutocovariances } from "../autoregression/sampleMoments.ts";
 import { autocovariances } from "../dynamics/autocovariances.ts";
 import { characteristicRoots } from "../dynamics/characteristicRoots.ts";
@@ -28,9 +29,11 @@ function residualAutocorrelations(residuals: Float64Array): number[] {
   );
 }
 
-/** Standard deviation around the long-run level, on the scale of the data; infinite without a return to it. */
+/** Standard deviation around the long-run level, on the scale of the data; none without shocks, infinite without a return. */
 function longRunStandardDeviation(model: DescribingModel, level: number): number {
   const { coefficients, innovationVariance } = model.fit;
+  if (!(innovationVariance > 0)) return 0;
+  if (!isStationary(coefficients)) return Number.POSITIVE_INFINITY;
   const variance = autocovariances(coefficients, innovationVariance, 0)[0];
   // Log-normal (exact): the level is the median, whose mean is level·exp(v/2).
   if (model.scale === "log") return level * Math.exp(variance / 2) * Math.sqrt(Math.expm1(variance));
@@ -49,13 +52,18 @@ function rhythmOf(coefficients: ArrayLike<number>): ModelFacts["rhythm"] {
   return dominant.modulus > 0 ? { length: dominant.period, damping: dominant.modulus } : null;
 }
 
+/** Whether there are two values that differ; gaps apart. */
+function vary(values: Float64Array): boolean {
+  const seen = values.filter((value) => !Number.isNaN(value));
+  return seen.some((value) => value !== seen[0]);
+}
+
 /**
  * Whether shocks fade, by tests of both hypotheses; with gaps, which the tests do not take, by whether the range of the
  * half-life has an end.
  */
 function fadingOf(values: Float64Array, trend: boolean, halfLife: HalfLifeInterval): ModelFacts["fading"] {
-  const varies = values.some((value) => value !== values[0]);
-  if (!varies) return "fades";
+  if (!vary(values)) return "fades";
   if (values.length < shortestTested || values.some(Number.isNaN))
     return Number.isFinite(halfLife.high) ? "fades" : "cannot-tell";
   return shockFading(values, { trend, halfLife }).verdict;
@@ -88,7 +96,9 @@ export function modelFacts(model: DescribingModel, level: DescribedLevel, values
     weights: Array.from(movingAverageWeights(fit.coefficients, weightsKept)),
     residualAutocorrelations: residualAutocorrelations(fit.residuals),
     ljungBox:
-      fit.observations > 2 * lags ? ljungBox(fit.residuals, { lags, fittedParameters: fit.order }) : null,
+      fit.observations > 2 * lags && vary(fit.residuals)
+        ? ljungBox(fit.residuals, { lags, fittedParameters: fit.order })
+        : null,
     fading: fadingOf(values, model.trend, interval),
     observations: fit.observations,
   };
