@@ -154,6 +154,7 @@ const score = {
 const facts = z.object({
   series: z.string(),
   unit: z.nullable(z.string()),
+  adds: z.optional(z.boolean()).check(say("False when adding periods up means nothing.")),
   period: z.enum(["hour", "day", "week", "month", "quarter", "year"]),
   history: z.object({ start: period, values: z.array(orNull) }),
   lastPeriod: period,

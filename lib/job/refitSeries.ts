@@ -110,6 +110,9 @@ interface Results {
 
 const orNull = (value: number) => (Number.isFinite(value) ? value : null);
 
+/** Rows of one period are combined by these when a value is a level rather than an amount: no total is told of it. */
+const levelRules = new Set<SeriesTask["tableSettings"]["combine"]>(["mean", "last", "max"]);
+
 function seriesFacts(series: Series, task: SeriesTask, results: Results): SeriesFacts {
   const { previous } = task;
   const { values } = series;
@@ -123,6 +126,7 @@ function seriesFacts(series: Series, task: SeriesTask, results: Results): Series
   return {
     series: series.name,
     unit: task.tableSettings.unit ?? null,
+    ...(levelRules.has(task.tableSettings.combine) ? { adds: false } : {}),
     period: series.period,
     history: {
       start: periodOf(values.length - kept),

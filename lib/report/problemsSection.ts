@@ -5,7 +5,7 @@ import { list, problemText } from "../words/troubleLines.ts";
 import { html, type Markup, nothing } from "./markup.ts";
 
 /** Problems of one table that are written out; a broken file may have thousands of the same. */
-const most = 50;
+const most = 20;
 
 /** What is wrong in the data, table by table, with line, column and remedy; tables that failed come first. */
 export function problemsSection(run: RunFacts): Markup {

@@ -43,7 +43,7 @@ function seriesData({ table, facts }: Ranked) {
   return {
     table: plainName(table.table, 120),
     series: plainName(facts.series, 120),
-    unit: facts.unit,
+    unit: facts.unit === null ? null : plainName(facts.unit, 40),
     every: facts.period,
     next: {
       period: forecast.periods[0],

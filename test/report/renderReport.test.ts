@@ -122,7 +122,7 @@ describe("the report", () => {
     expect(page).toContain(
       "line 2, column &lt;b&gt;date&lt;/b&gt;: &quot;30/02/2026&quot; is no date. Correct the day &amp; month.",
     );
-    expect(page).toContain("… and 10 more.");
+    expect(page).toContain("… and 40 more.");
     expect(page).toContain("Not reached before time ran out: one, two, three and 2 more.");
   });
 
