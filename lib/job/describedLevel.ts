@@ -21,7 +21,10 @@ export function departures(model: DescribingModel, values: Float64Array): Float6
     terms.length > 0
       ? columns.reduce((sum, column, index) => sum + terms[index] * column[time], 0)
       : fit.mean;
-  return values.map((value, time) => (model.scale === "log" ? Math.log(value) : value) - levelAt(time));
+  // Before the stretch there may be values that have no logarithm: gaps on that scale.
+  const onScale = (value: number) =>
+    model.scale === "raw" ? value : value > 0 ? Math.log(value) : Number.NaN;
+  return values.map((value, time) => onScale(value) - levelAt(time));
 }
 
 /**
