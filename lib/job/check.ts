@@ -3,12 +3,11 @@ import { periodStart } from "../series/periods.ts";
 import { periodsLate } from "../series/periodsLate.ts";
 import { type KnownEvent, readEvents } from "../series/readEvents.ts";
 import type { Reading } from "../series/reading.ts";
-import { readTable } from "../series/readTable.ts";
+import { readTableStream } from "../series/readTableStream.ts";
 import type { Period, Problem, Series } from "../series/series.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
 import { decodeText } from "./documents.ts";
-import { asOfText, seriesPrefix, settingsKey, tableNameFault, tableOfKey } from "./keys.ts";
-import { readSource } from "./readSource.ts";
+import { asOfText, seriesPrefix, settingsKey, tableEndings, tableNameFault, tableOfKey } from "./keys.ts";
 import { parseSettings, type Settings } from "./settings.ts";
 
 /** One series as it would be forecast. */
@@ -75,22 +74,32 @@ function checkedSeries(series: Series, asOf: string, timeZone: string): CheckedS
   };
 }
 
+/** Reads a table as it comes from the store, so that `check` can look at tables of any size, and at any kind. */
 async function checkTable(
   store: ObjectStore,
-  table: string,
+  keys: readonly string[],
   settings: Settings,
   asOf: string,
 ): Promise<CheckedTable> {
-  const { timeZone, locale } = settings;
-  const source = await readSource(store, table);
-  if (!source) return { table, readable: false, series: [], reading: null, problems: [] };
+  const key = tableEndings.flatMap((ending) => keys.filter((one) => one.endsWith(ending)))[0];
+  const table = tableOfKey(key) ?? key;
   const tableSettings = settings.tables[table] ?? {};
-  const { series, problems, reading } = readTable(source.bytes, tableSettings, {
-    asOf,
-    timeZone,
-    locale,
-    table,
-  });
+  const { timeZone, locale } = settings;
+  const context = { asOf, timeZone, locale, table };
+  const { series, problems, reading } = await readTableStream(
+    (await store.stream(key)) ?? [],
+    tableSettings,
+    context,
+  );
+  const others = keys.filter((one) => one !== key);
+  if (others.length > 0)
+    problems.push({
+      table,
+      code: "same-name",
+      message: `${others.join(" and ")} would be the same table as ${key}, and is not read`,
+      remedy: "rename one of them",
+      fatal: false,
+    });
   const zone = tableSettings.timeZone ?? timeZone;
   return {
     table,
@@ -110,8 +119,8 @@ function strangers(settings: Settings, tables: readonly string[]): Problem[] {
       return {
         table: settingsKey,
         code: "no-such-table",
-        message: `the settings speak of a table "${name}", but there is no series/${name}.csv`,
-        remedy: near ? `write "${near}", or remove it` : "remove it, or add the table",
+        message: `there is no table "${name}" under series/`,
+        remedy: near ? `did you mean "${near}"?` : "take it out of the settings, or add the table",
         fatal: false,
       };
     });
@@ -143,7 +152,10 @@ export async function checkStore(options: CheckOptions): Promise<CheckReport> {
         fatal: true,
       };
       tables.push({ table, readable: false, series: [], reading: null, problems: [problem] });
-    } else tables.push(await checkTable(store, table, settings, asOf));
+    } else {
+      const own = keys.filter((key) => tableOfKey(key) === table);
+      tables.push(await checkTable(store, own, settings, asOf));
+    }
   }
   const events = [];
   for (const { key } of await store.list("events/")) {

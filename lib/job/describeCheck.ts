@@ -1,5 +1,5 @@
 import type { Reading } from "../series/reading.ts";
-import type { Problem } from "../series/series.ts";
+import type { Period, Problem } from "../series/series.ts";
 import { periodNames } from "../words/periods.ts";
 import type { CheckedSeries, CheckedTable, CheckReport } from "./check.ts";
 
@@ -18,10 +18,10 @@ function problemLine({ line, column, message, remedy }: Problem): string {
   const place = [line === undefined ? "" : `line ${line}`, column === undefined ? "" : `column "${column}"`]
     .filter((part) => part !== "")
     .join(", ");
-  return `${place === "" ? "" : `${place}: `}${message}. → ${remedy}`;
+  return `${place === "" ? "" : `${place}: `}${message.replace(/^settings\.json: /, "")} → ${remedy}`;
 }
 
-const calendarWords: Record<string, string> = {
+const adjectives: Record<Period, string> = {
   hour: "hourly",
   day: "daily",
   week: "weekly",
@@ -30,54 +30,62 @@ const calendarWords: Record<string, string> = {
   year: "yearly",
 };
 
-/** How the table was read, in one line. */
-function readingLine(reading: Reading): string {
+const capital = (word: string) => `${word[0].toUpperCase()}${word.slice(1)}`;
+
+/** How the table was read, in one line: what a person would correct in the settings if it is wrong. */
+function readingLine({
+  format,
+  delimiter,
+  headerLine,
+  date,
+  decimal,
+  period,
+  combine,
+  columns,
+}: Reading): string {
+  const ignored = columns.filter(({ role }) => role === "ignored").map(({ name }) => `"${name}"`);
   const parts = [
-    reading.format === "parquet" ? "a Parquet file" : `${reading.delimiter ?? "text"} separated`,
-    reading.headerLine !== null && reading.headerLine > 1
-      ? `columns named in line ${reading.headerLine}`
+    format === "parquet" ? "a Parquet file" : `${delimiter}s between cells`,
+    headerLine !== null && headerLine > 1 ? `columns named in line ${headerLine}` : "",
+    `dates in "${date.column}" written ${date.format}${date.order && date.how !== "set" ? ` (told by ${date.how})` : ""}`,
+    format === "parquet" ? "" : `decimal ${decimal.mark === "." ? "point" : "comma"}`,
+    period.weekStartsOn ? `weeks begin on ${capital(period.weekStartsOn)}` : "",
+    combine
+      ? `several rows of a ${period.every} make one value: ${combine.rule}${combine.how === "assumed" ? ", as nothing was said" : ""}`
       : "",
-    `dates in "${reading.date.column}" written ${reading.date.format}`,
-    reading.date.order ? `${reading.date.order} (${reading.date.how})` : "",
-    `decimal ${reading.decimal.mark === "." ? "point" : "comma"}`,
-    reading.period.weekStartsOn
-      ? `weeks begin on ${reading.period.weekStartsOn[0].toUpperCase()}${reading.period.weekStartsOn.slice(1)}`
-      : "",
-    reading.combine
-      ? `several rows of a period: ${reading.combine.rule}${reading.combine.how === "assumed" ? " (assumed)" : ""}`
-      : "",
+    ignored.length > 0 ? `left out: ${listed(ignored)}` : "",
   ];
-  const ignored = reading.columns.filter(({ role }) => role === "ignored").map(({ name }) => `"${name}"`);
-  if (ignored.length > 0) parts.push(`left out: ${listed(ignored)}`);
   return `read as: ${parts.filter((part) => part !== "").join("; ")}`;
 }
 
-function seriesLines(table: CheckedTable, report: CheckReport): string[] {
-  const { series } = table;
-  const names = periodNames(series[0].period, report.locale, report.timeZone, report.asOf);
+function seriesLines({ series, reading }: CheckedTable, report: CheckReport): string[] {
+  const { period } = series[0];
+  const names = periodNames(period, report.locale, report.timeZone, report.asOf);
   const first = series.map((one) => one.start).sort()[0];
-  const last =
-    series
-      .map((one) => one.lastPeriod)
-      .sort()
-      .at(-1) ?? first;
+  const last = series.map((one) => one.lastPeriod).sort()[series.length - 1];
   const lines = [
-    `${count(series.length, `${calendarWords[series[0].period]} series`, `${calendarWords[series[0].period]} series`)} (${listed(series.map((one) => one.name))}), from ${names.inText(first)} to ${names.inText(last)}`,
+    `${series.length} ${adjectives[period]} series (${listed(series.map((one) => one.name))}), from ${names.inText(first)} to ${names.inText(last)}`,
   ];
-  const gappy = series.filter((one) => one.gaps > 0);
   const gapWords = ({ name, gaps, latestGap }: CheckedSeries) =>
-    `${name} ${count(gaps, "gap")}${latestGap ? `, the latest ${names.when(latestGap)}` : ""}`;
-  if (gappy.length > 0) lines.push(`gaps: ${listed(gappy.map(gapWords))}`);
+    `${name} has ${gaps}${latestGap ? `, the latest ${names.when(latestGap)}` : ""}`;
+  const gappy = series.filter((one) => one.gaps > 0);
+  if (gappy.length > 0) lines.push(`gaps: ${listed(gappy.map(gapWords), 4)}`);
   const late = series.filter((one) => one.periodsLate > 0);
   if (late.length > 0) {
     const most = Math.max(...late.map((one) => one.periodsLate));
+    const who = late.length === series.length ? "the table" : listed(late.map((one) => one.name));
     lines.push(
-      `${late.length === series.length ? "the table" : listed(late.map((one) => one.name))} is behind: ${count(most, "complete period")} without a value by now`,
+      `${who} is behind: ${most === 1 ? `one ${period} that is over has` : `${late.length > 1 ? "up to " : ""}${most} ${period}s that are over have`} no value yet`,
     );
   }
-  const running = table.reading?.incompletePeriod;
-  if (running) lines.push(`${names.inText(running)} is not over yet and is left out`);
+  const running = reading?.incompletePeriod;
+  if (running) lines.push(`${capital(names.inText(running))} is not over yet and is left out`);
   return lines;
+}
+
+function howMany(readable: number, all: number): string {
+  if (readable < all) return `${readable} of ${count(all, "table")}`;
+  return all === 1 ? "The one table" : `All ${all} tables`;
 }
 
 /** The report of `check` in sentences, a line each. */
@@ -88,10 +96,7 @@ export function describeCheck(report: CheckReport): string[] {
     lines.push(
       `There are no tables in ${report.address} yet: put CSV files under series/, such as series/loans.csv.`,
     );
-  else
-    lines.push(
-      `${readable === report.tables.length ? `All ${count(readable, "table")}` : `${readable} of ${count(report.tables.length, "table")}`} in ${report.address} can be read.`,
-    );
+  else lines.push(`${howMany(readable, report.tables.length)} in ${report.address} can be read.`);
   if (report.settings.problems.length > 0)
     lines.push(
       "",
@@ -110,6 +115,7 @@ export function describeCheck(report: CheckReport): string[] {
       `${file}: ${count(events, "event")}`,
       ...problems.map((problem) => `  ${problemLine(problem)}`),
     );
-  if (report.otherFiles.length > 0) lines.push("", `not read, being no tables: ${listed(report.otherFiles)}`);
+  if (report.otherFiles.length > 0)
+    lines.push("", `not read, as the ending is not known: ${listed(report.otherFiles)}`);
   return lines;
 }

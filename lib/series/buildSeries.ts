@@ -63,8 +63,9 @@ function chooseRule(collected: Collected, grid: Grid, facts: DateFacts, settings
   }
   const partsOfPeriods =
     several >= 0.5 * periods || (several > 0.2 * periods && (facts.hasTimes || settings.every !== undefined));
+  const hasSeveral = several > 0 || collected.series.some((cells) => cells.hasSeveral);
   const rule = settings.combine ?? (several > 0 && partsOfPeriods ? ("sum" as const) : undefined);
-  return { rule, several, periods, isAssumed: settings.combine === undefined && rule !== undefined };
+  return { rule, hasSeveral, periods, isAssumed: settings.combine === undefined && rule !== undefined };
 }
 
 /**
@@ -87,7 +88,7 @@ export function buildSeries(
   const calendar = findCalendar(distinct, facts, settings, timeZone, complain);
   const grid = layGrid(order, at, calendar, asOf, timeZone);
   refuseWideSpans(grid, calendar, collected, facts.column, complain);
-  const { rule, several, periods, isAssumed } = chooseRule(collected, grid, facts, settings);
+  const { rule, hasSeveral, periods, isAssumed } = chooseRule(collected, grid, facts, settings);
   if (isAssumed)
     problems.push(
       complain(
@@ -137,7 +138,7 @@ export function buildSeries(
     series,
     problems,
     calendar,
-    combine: several > 0 && rule ? { rule, how: isAssumed ? "assumed" : "set" } : null,
+    combine: hasSeveral && rule ? { rule, how: isAssumed ? "assumed" : "set" } : null,
     incompletePeriod: reaches ? startOf(calendar, grid.current) : null,
     later,
   };

@@ -10,6 +10,8 @@ export interface SeriesCells {
   moments: Float64Array | undefined;
   /** Keys with several rows, where no rule was given. */
   repeats: Map<number, Repeat> | undefined;
+  /** Some key had several rows. */
+  hasSeveral: boolean;
   /** Highest key index in use plus one. */
   used: number;
 }
@@ -26,6 +28,7 @@ export const emptyCells = (name: string): SeriesCells => ({
   counts: undefined,
   moments: undefined,
   repeats: undefined,
+  hasSeveral: false,
   used: 0,
 });
 
@@ -61,6 +64,7 @@ export function addValue(
   const { values } = cells;
   const before = values[index];
   const isFirst = Number.isNaN(before);
+  if (!isFirst) cells.hasSeveral = true;
   switch (rule) {
     case undefined:
       if (isFirst) values[index] = value;

@@ -21,6 +21,7 @@ export function describeReading(
   order: FoundOrder | null,
   collected: Collected,
   built: Built,
+  hasTimes: boolean,
 ): Reading {
   const roleOf = (at: number): Reading["columns"][number]["role"] => {
     if (at === plan.dateColumn) return plan.dateFormat.name === "period-label" ? "period" : "date";
@@ -29,6 +30,9 @@ export function describeReading(
   };
   const dated = collected.dates.rows.reduce((sum, rows) => sum + rows, 0);
   const { every, weekStart, how } = built.calendar;
+  const patterns = plan.dateFormat.pattern.split(" or ");
+  const pattern =
+    order?.order === "month-first" ? patterns[1] : order ? patterns[0] : plan.dateFormat.pattern;
   const isText = source.format === "text";
   return {
     ...source,
@@ -37,9 +41,7 @@ export function describeReading(
     columns: plan.names.map((name, at) => ({ name, role: roleOf(at) })),
     date: {
       column: plan.names[plan.dateColumn],
-      format: order
-        ? plan.dateFormat.pattern.split(" or ")[order.order === "day-first" ? 0 : 1]
-        : plan.dateFormat.pattern,
+      format: `${pattern}${hasTimes && !plan.dateFormat.digitsOnly ? " hh:mm" : ""}`,
       order: order?.order ?? null,
       how: order?.how ?? null,
     },

@@ -106,7 +106,7 @@ export function openSession(
       return {
         series: built.series,
         problems,
-        reading: describeReading(plan, source, order, collected, built),
+        reading: describeReading(plan, source, order, collected, built, clock.hasTimes),
       };
     },
   };

@@ -13,6 +13,7 @@ import {
   type Sample,
 } from "./layout.ts";
 import type { NumberStyle } from "./numbers.ts";
+import { spellsPartOfDate } from "./partsOfDate.ts";
 import { periodLabels } from "./periodLabels.ts";
 import { type Complain, quoted } from "./problems.ts";
 import type { Reading } from "./reading.ts";
@@ -33,10 +34,6 @@ export interface TablePlan {
   /** Rows of data in the head, for what must be decided before all is read. */
   readonly sample: readonly Row[];
 }
-
-/** A column beside the dates that spells out a part of them. */
-const partOfDate =
-  /^(?:year|quarter|month|week|day|hour|weekday|day of week|jahr|quartal|monat|woche|kw|tag|wochentag|stunde|a[nñ]o|mes|semana|d[ií]a|hora|ann[eé]e|mois|semaine|jour|heure)$/i;
 
 /** A column that only counts its rows, as data frames write one beside their data. */
 function countsRows(data: readonly Row[], column: number, name: string): boolean {
@@ -146,7 +143,7 @@ export function planTable(
   const numeric = others.filter(
     (at) => at !== seriesColumn && holdsNumbers(at) && !countsRows(data, at, names[at]),
   );
-  const measured = numeric.filter((at) => !partOfDate.test(names[at].replaceAll("_", " ")));
+  const measured = numeric.filter((at) => !spellsPartOfDate(data, at, names[at], dates));
   const valueColumns = named ?? (measured.length > 0 ? measured : numeric);
   if (valueColumns.length === 0 && settings.combine !== "count") {
     const text = others.find((at) => at !== seriesColumn && (counts.get(at)?.texts ?? 0) > 0);

@@ -137,6 +137,11 @@ export const shapes: readonly CorpusCase[] = [
     series: { v: "day 2026-03-01: 1 9 3" },
   },
   {
+    claim: "does not take kW for a week because Germans call weeks KW",
+    input: "date,kW\n2026-03-01,5\n2026-03-02,6\n",
+    series: { kW: "day 2026-03-01: 5 6" },
+  },
+  {
     claim: "leaves out columns that spell the date out again",
     input: "date,year,month,v\n2026-03-01,2026,3,5\n2026-03-02,2026,3,6\n",
     series: { v: "day 2026-03-01: 5 6" },
