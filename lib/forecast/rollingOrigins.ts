@@ -10,7 +10,7 @@ export interface Origin {
 
 /** Origins at most, and fits among them: forecasting again is cheap, fitting again is not. */
 const MOST_ORIGINS = 16;
-const MOST_FITS = 8;
+const MOST_FITS = 4;
 
 /**
  * Evenly spread origins over the later half of a series, newest first. The newest leaves as much of the horizon to
