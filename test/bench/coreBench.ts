@@ -51,7 +51,7 @@ export async function coreBench(): Promise<BenchRow[]> {
         ORDER_GOAL,
       ),
       row(
-        "order 0..26 by Burg, order and coefficients alone",
+        "order 0..26 by Burg, the choice alone",
         lean,
         `ar(method = "burg"), ${r.name}`,
         r.burg,
