@@ -1,5 +1,6 @@
 import { Duration, Stack, Tags, Validations } from "aws-cdk-lib";
 import type { Alarm } from "aws-cdk-lib/aws-cloudwatch";
+import { PolicyStatement, ServicePrincipal } from "aws-cdk-lib/aws-iam";
 import type { NodejsFunction } from "aws-cdk-lib/aws-lambda-nodejs";
 import type { IBucket } from "aws-cdk-lib/aws-s3";
 import { ContextAttribute } from "aws-cdk-lib/aws-scheduler";
@@ -142,6 +143,15 @@ export class Ebbwire extends Construct {
       enforceSSL: true,
     });
     topic.addSubscription(new EmailSubscription(options.alarmEmail));
+    // A topic with a policy of its own has lost the default one, which lets alarms of the account publish.
+    topic.addToResourcePolicy(
+      new PolicyStatement({
+        principals: [new ServicePrincipal("cloudwatch.amazonaws.com")],
+        actions: ["sns:Publish"],
+        resources: [topic.topicArn],
+        conditions: { StringEquals: { "aws:SourceAccount": Stack.of(this).account } },
+      }),
+    );
     return topic;
   }
 }

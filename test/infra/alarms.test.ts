@@ -1,3 +1,4 @@
+import { Match } from "aws-cdk-lib/assertions";
 import { describe, expect, it } from "vitest";
 import { metricNamespace } from "../../functions/cloud/metrics.ts";
 import { resourcesOf, templateOf } from "./synthesise.ts";
@@ -83,6 +84,19 @@ describe("the alarms", () => {
     mailed.hasResourceProperties("AWS::SNS::Subscription", {
       Protocol: "email",
       Endpoint: "ops@example.org",
+    });
+    mailed.hasResourceProperties("AWS::SNS::TopicPolicy", {
+      PolicyDocument: {
+        Statement: Match.arrayWith([
+          Match.objectLike({ Effect: "Deny", Condition: { Bool: { "aws:SecureTransport": "false" } } }),
+          Match.objectLike({
+            Effect: "Allow",
+            Action: "sns:Publish",
+            Principal: { Service: "cloudwatch.amazonaws.com" },
+            Condition: { StringEquals: { "aws:SourceAccount": { Ref: "AWS::AccountId" } } },
+          }),
+        ]),
+      },
     });
     for (const alarm of Object.values(alarmsOf(templateOf())))
       expect(alarm).not.toHaveProperty("AlarmActions");
