@@ -60,6 +60,7 @@ export { biasCorrected, firstOrderBias } from "./dynamics/firstOrderBias.ts";
 export { halfLife } from "./dynamics/halfLife.ts";
 export { type HalfLifeInterval, halfLifeInterval } from "./dynamics/halfLifeInterval.ts";
 export {
+  coefficientInterval,
   leastSquaresMean,
   leastSquaresQuantile,
   medianUnbiased,

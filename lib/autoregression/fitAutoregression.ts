@@ -28,7 +28,9 @@ export interface FitOptions {
  * - `maximum-likelihood`: the exact Gaussian likelihood from a stationary start, gaps left out exactly, jointly
  *   with the mean or regression; σ² divides by the observed count; standard errors from the observed information.
  *
- * The parameter count of the criteria includes σ² and the mean; AICc and BIC count observed values.
+ * The log-likelihood is exact for maximum likelihood, conditional on the first p values for least squares, and
+ * −n/2 (log 2πσ² + 1) for the other two. The parameter count of the criteria includes σ² and the mean; AICc and BIC
+ * count observed values (rows, for least squares).
  *
  * Throws `TypeError`/`RangeError` naming the argument: infinite values, gaps where the method takes none, fewer
  * than order + 2 observed values (least squares: too few complete rows), constant values, regressors that are not

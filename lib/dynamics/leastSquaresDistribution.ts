@@ -82,10 +82,26 @@ export function medianUnbiased(estimate: number, n: number): number {
 }
 
 /**
- * The φ under which an estimate this low or lower has the given probability; with 0.95 and 0.05 the ends of an exact
- * 90 % interval, low end first (Andrews 1993). Kept within −1..1.
+ * Exact confidence interval of φ (Andrews 1993): under its low end an estimate this high or higher, under its high end
+ * one this low or lower, has half of the remaining probability. `level` in percent. An end at 1 says that a unit root
+ * is not ruled out.
+ *
+ * @example coefficientInterval(0.8, 50, 90) // { low: 0.69993, high: 1 }
  */
-export function coefficientAt(estimate: number, n: number, probability: number): number {
+export function coefficientInterval(
+  estimate: number,
+  n: number,
+  level: number,
+): { readonly low: number; readonly high: number } {
+  if (!(level > 0 && level < 100)) {
+    throw new RangeError(`coefficientInterval needs a level between 0 and 100 percent, got ${level}`);
+  }
+  const tail = (100 - level) / 200;
+  return { low: coefficientAt(estimate, n, 1 - tail), high: coefficientAt(estimate, n, tail) };
+}
+
+/** The φ under which an estimate this low or lower has the given probability, kept within −1..1. */
+function coefficientAt(estimate: number, n: number, probability: number): number {
   const excess = (phi: number) => leastSquaresProbability(phi, n, estimate, "estimate") - probability;
   if (excess(NEAREST_ONE) >= 0) return 1;
   if (excess(-NEAREST_ONE) <= 0) return -1;

@@ -2,6 +2,7 @@ import { describe, expect, it } from "vitest";
 import { fitAutoregression } from "../../lib/autoregression/fitAutoregression.ts";
 import { biasCorrected, firstOrderBias } from "../../lib/dynamics/firstOrderBias.ts";
 import {
+  coefficientInterval,
   leastSquaresMean,
   leastSquaresProbability,
   leastSquaresQuantile,
@@ -90,6 +91,15 @@ describe("the exact distribution of the least-squares AR(1) estimate", () => {
     expect(medianUnbiased(0.9, 100)).toBeCloseTo(0.9328978458394227, 5);
     expect(leastSquaresQuantile(medianUnbiased(0.7, 40), 40, 0.5)).toBeCloseTo(0.7, 7);
     expect(medianUnbiased(0.99, 50)).toBe(1);
+  });
+
+  it("has an interval whose ends make the estimate as rare as the level says", () => {
+    const { low, high } = coefficientInterval(0.6, 60, 90);
+    expect(leastSquaresQuantile(low, 60, 0.95)).toBeCloseTo(0.6, 7);
+    expect(leastSquaresQuantile(high, 60, 0.05)).toBeCloseTo(0.6, 7);
+    expect(low).toBeLessThan(medianUnbiased(0.6, 60));
+    expect(coefficientInterval(0.95, 60, 90).high).toBe(1);
+    expect(() => coefficientInterval(0.6, 60, 100)).toThrow(/level/);
   });
 
   it("refuses a coefficient outside (−1, 1)", () => {
