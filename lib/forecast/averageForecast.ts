@@ -63,8 +63,8 @@ export function averageForecast(
   const candidates = listCandidates(scales, seasons, description);
   const least = Math.max(8, seasons.length > 0 ? 3 * season : 0);
   const origins = rollingOrigins(count, horizon, least);
-  const rolled = rollBank(values, scales, candidates, origins, maxOrder, workspace);
-  const fitted = fitBank(scales, candidates, count, maxOrder, workspace);
+  const rolled = rollBank(values, scales, candidates, origins, horizon, maxOrder, workspace);
+  const fitted = fitBank(scales, candidates, count, horizon, maxOrder, workspace);
   const bank = forecastBank(scales, candidates, fitted, count, horizon);
   const combined = combineBank(bank, candidates, scales, rolled, -1, horizon);
   const evidence: CalibrationEvidence = { scores: [], weights: [] };

@@ -1,7 +1,7 @@
 import type { BurgWorkspace } from "../autoregression/burg.ts";
 import { type DriftKind, type Preparation, preparations } from "./candidates.ts";
 import { describedPath, type SeriesDescription } from "./describingModel.ts";
-import { fitMember, forecastMember, type MemberFit } from "./memberFit.ts";
+import { errorVariances, fitMember, forecastMember, type MemberFit } from "./memberFit.ts";
 import type { WorkingScale } from "./workingScale.ts";
 
 /** A series on one working scale, gaps filled and outliers damped. */
@@ -32,6 +32,8 @@ const DESCRIBED: Preparation = {
 /** Every candidate fitted to the first values of the series; `undefined` where one could not be. */
 export interface FittedBank {
   readonly fits: readonly (MemberFit | undefined)[];
+  /** Error variance of each candidate on its scale, by step up to the horizon; empty where there is no fit. */
+  readonly variances: readonly Float64Array[];
 }
 
 /** Forecasts of every candidate at one origin. */
@@ -59,11 +61,12 @@ export function listCandidates(
   return bank;
 }
 
-/** Fits all candidates on the first `count` values. */
+/** Fits all candidates on the first `count` values, for forecasts of up to `horizon` steps. */
 export function fitBank(
   scales: readonly ScaledSeries[],
   candidates: readonly Candidate[],
   count: number,
+  horizon: number,
   maxOrder: number,
   workspace: BurgWorkspace,
 ): FittedBank {
@@ -76,14 +79,17 @@ export function fitBank(
     else if (before?.scale === scale && before.preparation === preparation) fits.push(fits[i - 1]);
     else fits.push(fitMember(scales[scale].values, count, preparation, maxOrder, workspace));
   }
-  return { fits };
+  const variances = fits.map((fit, i) =>
+    fit === undefined ? new Float64Array(0) : errorVariances(fit, candidates[i].drift, horizon),
+  );
+  return { fits, variances };
 }
 
 /** Forecasts `horizon` steps after the first `count` values, which may be more than the bank was fitted to. */
 export function forecastBank(
   scales: readonly ScaledSeries[],
   candidates: readonly Candidate[],
-  { fits }: FittedBank,
+  { fits, variances }: FittedBank,
   count: number,
   horizon: number,
 ): BankForecast {
@@ -98,7 +104,7 @@ export function forecastBank(
     else continue;
     for (let h = 0; h < horizon; h++) paths[i * horizon + h] = back(paths[i * horizon + h]);
   }
-  return { paths, fits };
+  return { paths, fits, variances };
 }
 
 /** The exact fit in the form that the spread of the average reads. */

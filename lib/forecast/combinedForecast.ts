@@ -8,7 +8,7 @@ import {
   type ScaledSeries,
 } from "./candidateBank.ts";
 import { candidateWeights, weightPower } from "./candidateWeights.ts";
-import { errorVariances, type MemberFit } from "./memberFit.ts";
+import type { MemberFit } from "./memberFit.ts";
 import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
 import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
 import { weightedMiddle } from "./weightedMiddle.ts";
@@ -34,15 +34,16 @@ export function rollBank(
   scales: readonly ScaledSeries[],
   candidates: readonly Candidate[],
   origins: readonly Origin[],
+  horizon: number,
   maxOrder: number,
   workspace: BurgWorkspace,
 ): RolledBank {
   const banks: BankForecast[] = [];
   const losses: Float64Array[] = [];
-  let fitted: FittedBank = { fits: [] };
+  let fitted: FittedBank = { fits: [], variances: [] };
   origins.forEach(({ count, steps, fitted: known }, o) => {
     if (o === 0 || origins[o - 1].fitted !== known) {
-      fitted = fitBank(scales, candidates, known, maxOrder, workspace);
+      fitted = fitBank(scales, candidates, known, horizon, maxOrder, workspace);
     }
     const bank = forecastBank(scales, candidates, fitted, count, steps);
     const loss = new Float64Array(candidates.length).fill(Number.NaN);
@@ -121,15 +122,10 @@ function scaleSpreads(
     for (let i = 0; i < candidates.length; i++) {
       if (candidates[i].scale === index && weights[i] > 0) members.push(i);
     }
-    const own = members.map((i) => {
-      const fit = bank.fits[i];
-      return fit === undefined
-        ? new Float64Array(horizon)
-        : errorVariances(fit, candidates[i].drift, horizon);
-    });
     const ownWeights = Float64Array.from(members, (i) => weights[i]);
     const share = members.reduce((sum, i) => sum + shares[i], 0);
     const order = new Int32Array(members.length);
+    const column = new Float64Array(members.length);
     const deviations = new Float64Array(horizon);
     for (let h = 0; h < horizon && members.length > 0; h++) {
       const anchor = scale.forward(medians[h]);
@@ -138,7 +134,7 @@ function scaleSpreads(
         const distance = scale.forward(bank.paths[i * horizon + h]) - anchor;
         if (Number.isFinite(distance)) apart += shares[i] * distance * distance;
       }
-      const column = Float64Array.from(own, (variances) => variances[h]);
+      for (let m = 0; m < members.length; m++) column[m] = bank.variances[members[m]][h];
       const model = weightedMiddle(column, ownWeights, order);
       deviations[h] = Math.sqrt(model + (share > 0 ? apart / share : 0));
     }
