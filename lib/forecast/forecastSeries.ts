@@ -60,12 +60,21 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   return assembleForecast(average, description, known, options, late, start);
 }
 
-function checkOptions(values: ArrayLike<number>, { horizon, levels }: ForecastOptions): void {
+function checkOptions(values: ArrayLike<number>, options: ForecastOptions): void {
+  const { horizon, levels, bounds, limits } = options;
   requireValues("forecastSeries", "values", values, "gaps-allowed");
   requireWhole("forecastSeries", "horizon", horizon, 1);
   for (const level of levels) {
     if (!(level > 0 && level < 100)) {
       throw new RangeError(`forecastSeries needs levels between 0 and 100 percent, got ${level}`);
+    }
+  }
+  if (bounds?.low !== undefined && bounds.high !== undefined && !(bounds.low <= bounds.high)) {
+    throw new RangeError(`forecastSeries needs bounds in order, got ${bounds.low} to ${bounds.high}`);
+  }
+  for (const limit of [limits?.above, limits?.below]) {
+    if (limit !== undefined && !Number.isFinite(limit)) {
+      throw new RangeError(`forecastSeries needs finite limits, got ${limit}`);
     }
   }
   for (let t = 0; t < values.length; t++) {

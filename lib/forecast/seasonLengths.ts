@@ -12,9 +12,14 @@ const BY_PERIOD: Readonly<Record<NonNullable<ForecastOptions["period"]>, readonl
 /**
  * Season lengths to consider, ascending: those asked for, else those of the calendar step (day and week of hours,
  * week of days, year of weeks, months and quarters). A length counts only when three full seasons are there, the
- * least from which a profile can be told from chance.
+ * least from which a profile can be told from chance. Throws `RangeError` for a length that is no whole number.
  */
 export function seasonLengths(count: number, options: Pick<ForecastOptions, "period" | "seasons">): number[] {
+  for (const length of options.seasons ?? []) {
+    if (!Number.isInteger(length) || length < 1) {
+      throw new RangeError(`seasons need to be whole numbers of periods, got ${length}`);
+    }
+  }
   const wanted = options.seasons ?? (options.period === undefined ? [] : BY_PERIOD[options.period]);
   return [...new Set(wanted)].filter((length) => length > 1 && count >= 3 * length).sort((a, b) => a - b);
 }

@@ -82,6 +82,11 @@ describe("forecastSeries", () => {
   it("refuses a level, a horizon or values that make no sense, by name", () => {
     expect(() => forecastSeries([1, 2], { horizon: 0, levels: [80] })).toThrow(/horizon/);
     expect(() => forecastSeries([1, 2], { horizon: 1, levels: [100] })).toThrow(/level/);
+    expect(() => forecastSeries([1, 2], { horizon: 1, levels: [], seasons: [365.25] })).toThrow(/seasons/);
+    expect(() => forecastSeries([1, 2], { horizon: 1, levels: [], bounds: { low: 2, high: 1 } })).toThrow(
+      /bounds/,
+    );
+    expect(() => forecastSeries([1e200, 2], { horizon: 1, levels: [80] })).toThrow(/size/);
     expect(() => forecastSeries([Number.NaN], { horizon: 1, levels: [80] })).toThrow(/observed/);
     expect(() => forecastSeries([1, Number.POSITIVE_INFINITY], { horizon: 1, levels: [80] })).toThrow(
       /values/,
