@@ -1,16 +1,23 @@
+import { publicHolidays } from "../series/publicHolidays.ts";
 import { type KnownEvent, readEvents } from "../series/readEvents.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
+import { settingsKey } from "./keys.ts";
+import type { Settings } from "./settings.ts";
 import type { FailedTable } from "./summary.ts";
 
 const eventsPrefix = "events/";
 
+/** Public holidays are taken from so many years before a run to so many after it. */
+const yearsAround = { before: 30, after: 5 };
+
 /**
  * The known events of a store, `events/<name>.csv`, and the files that cannot be used. A row with a bad date is left
- * out (`check` names it).
+ * out (`check` names it). With a country set its public holidays are among the events.
  */
 export async function loadEvents(
   store: ObjectStore,
-  locale: string,
+  { locale, country }: Pick<Settings, "locale" | "country">,
+  asOf: string,
 ): Promise<{ events: KnownEvent[]; refused: FailedTable[] }> {
   const events: KnownEvent[] = [];
   const refused: FailedTable[] = [];
@@ -23,6 +30,16 @@ export async function loadEvents(
     events.push(...read.events);
     const fatal = read.problems.filter((problem) => problem.fatal);
     if (fatal.length > 0) refused.push({ table: name, problems: fatal });
+  }
+  if (country === undefined) return { events, refused };
+  const year = Number(asOf.slice(0, 4));
+  try {
+    events.push(...(await publicHolidays(country, year - yearsAround.before, year + yearsAround.after)));
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error;
+    const remedy = "use an ISO 3166 code such as PT or DE-BY, or take country out of the settings";
+    const problem = { table: settingsKey, code: "no-holidays", message: error.message, remedy, fatal: true };
+    refused.push({ table: settingsKey, problems: [problem] });
   }
   return { events, refused };
 }

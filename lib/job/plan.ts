@@ -28,12 +28,12 @@ function refusal(table: string, key: string, fault: string): FailedTable {
 export async function planRun(options: {
   readonly store: ObjectStore;
   readonly asOf: Date | string;
-  readonly settings?: Pick<Settings, "locale">;
+  readonly settings?: Pick<Settings, "locale" | "country">;
 }): Promise<Plan> {
   const { store } = options;
   const asOf = asOfText(options.asOf);
   const tables = new Set<string>();
-  const { refused } = await loadEvents(store, (options.settings ?? defaultSettings).locale);
+  const { refused } = await loadEvents(store, options.settings ?? defaultSettings, asOf);
   for (const { key } of await store.list(seriesPrefix)) {
     const table = tableOfKey(key);
     if (table === undefined) continue;

@@ -35,7 +35,7 @@ export async function refitPortion(options: RefitOptions): Promise<PortionResult
   const { store, tables, remainingMilliseconds, clock, progress } = options;
   const asOf = asOfText(options.asOf);
   const settings = options.settings ?? (await loadSettings(store));
-  const { events } = await loadEvents(store, settings.locale);
+  const { events } = await loadEvents(store, settings, asOf);
   const refitted: string[] = [];
   const already: string[] = [];
   const failed: FailedTable[] = [];

@@ -1,6 +1,6 @@
 import type { KnownEvent } from "../series/readEvents.ts";
 import type { Reading } from "../series/reading.ts";
-import { readTable } from "../series/readTable.ts";
+import { readTableStream } from "../series/readTableStream.ts";
 import type { Problem, Series } from "../series/series.ts";
 import { type ObjectStore, StoreError } from "../store/objectStore.ts";
 import { carryOver } from "./carryOver.ts";
@@ -17,7 +17,7 @@ import {
   readModelShelf,
   type StoredSeries,
 } from "./modelDocument.ts";
-import { readSource } from "./readSource.ts";
+import { openSource } from "./openSource.ts";
 import { refitSeries, type SeriesTask } from "./refitSeries.ts";
 import { seriesDigest } from "./seriesDigest.ts";
 import type { Settings } from "./settings.ts";
@@ -69,14 +69,14 @@ function refitOrCarry(
 
 async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutcome> {
   const { store, asOf, table, settings, events } = task;
-  const source = await readSource(store, table);
+  const source = await openSource(store, table);
   if (!source) {
     const message = "the file was there when the run began and is gone";
     return fail(task, [{ table, code: "gone", message, remedy: "put it back", fatal: true }]);
   }
   const tableSettings = settings.tables[table] ?? {};
   const { timeZone, locale } = settings;
-  const { series, problems, reading } = readTable(source.bytes, tableSettings, {
+  const { series, problems, reading } = await readTableStream(source.pieces, tableSettings, {
     asOf,
     timeZone,
     locale,
@@ -100,7 +100,7 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     schema: 1,
     table,
     asOf,
-    source: source.digest,
+    source: source.digest(),
     reading,
     problems,
     series: falseDiscoveryRate === undefined ? accounts : tellDiscoveries(accounts, falseDiscoveryRate),

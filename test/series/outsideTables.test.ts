@@ -1,5 +1,6 @@
 import { readFileSync } from "node:fs";
-import { join } from "node:path";
+import { createRequire } from "node:module";
+import { dirname, join } from "node:path";
 import { parse } from "csv-parse/sync";
 import { describe, expect, it } from "vitest";
 import { periodIndex } from "../../lib/series/periods.ts";
@@ -9,7 +10,8 @@ import type { Period, Series } from "../../lib/series/series.ts";
 // Tables as others published them, in the npm package vega-datasets. Expected values: the cells of the same file as
 // csv-parse and Number read them; steps, starts and counts as the package's datapackage.json describes the data.
 
-const folder = join("node_modules", "vega-datasets", "data");
+const require = createRequire(import.meta.url);
+const folder = join(dirname(require.resolve("vega-datasets")), "..", "data");
 const bytesOf = (file: string) => new Uint8Array(readFileSync(join(folder, file)));
 const recordsOf = (text: string) => parse(text, { columns: true }) as Record<string, string>[];
 const asOf = "2026-12-01T06:00:00Z";
