@@ -49,12 +49,21 @@ const remedies: Readonly<Record<string, string>> = {
  * sign and host ids as properties, which would end in a log with them.
  */
 export function plainS3Error(error: unknown): Error {
-  const { name = "Error", message = "", code, $metadata } = error as Fault;
+  const { message = "", code, $metadata } = error as Fault;
+  const name = nameOf(error as Fault);
   const status = $metadata?.httpStatusCode;
-  const firstLine = message.split("\n", 1)[0]!.slice(0, 300);
+  const firstLine = message
+    .split("\n", 1)[0]!
+    .replace(/\p{Cc}/gu, " ")
+    .slice(0, 300);
   const said = remedies[name] ?? (/^Region is missing/.test(message) ? "set AWS_REGION" : firstLine);
-  const codeSaid = code && !said.includes(code) ? ` ${code}` : "";
+  const codeSaid = code && /^[A-Z][A-Z0-9_]*$/.test(code) && !said.includes(code) ? ` ${code}` : "";
   const statusSaid = status === undefined || status < 300 ? "" : ` (${status})`;
   const label = `${name === "Error" ? "" : name}${codeSaid}${statusSaid}`.trim();
   return new Error(label && said ? `${label}: ${said}` : label || said);
+}
+
+/** A server may answer with any text for a name. */
+function nameOf({ name }: Fault): string {
+  return name !== undefined && /^[A-Za-z0-9.]{1,80}$/.test(name) ? name : "Error";
 }

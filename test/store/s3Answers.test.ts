@@ -87,6 +87,14 @@ describe("answers of S3", () => {
     expect(requests).toHaveLength(5);
   });
 
+  it("a trial that meets another write under way (409) shows that conditions are honoured", async () => {
+    const { store, requests } = await scripted((_, count) =>
+      count === 2 ? { status: 409, code: "ConditionalRequestConflict" } : { status: 200 },
+    );
+    for (const key of ["a", "b", "c"]) await store.create(key, Buffer.from("a"));
+    expect(requests).toHaveLength(4);
+  });
+
   it("without a retry a 412 is another's object and is not asked after", async () => {
     const { store, requests } = await scripted(() => ({ status: 412, code: "PreconditionFailed" }));
     expect(await store.create("a.json", Buffer.from("a"))).toBe("exists");
@@ -147,6 +155,16 @@ describe("answers of S3", () => {
   it("a listing's keys are read as S3 writes them: a space as +, a plus as %2B", async () => {
     const { store } = await scripted(() => ({ status: 200, body: listing("a+b%2Bc%26%E2%82%AC.csv") }));
     expect((await store.list("")).map(({ key }) => key)).toEqual(["a b+c&€.csv"]);
+  });
+
+  it("of a server's long explanation the first line is told, up to 300 characters", async () => {
+    const { store } = await scripted(() => ({
+      status: 400,
+      code: `Odd\u009b31m${"y".repeat(400)}\nsecond line`,
+    }));
+    const error = await store.read("a.json").catch((found: unknown) => found as Error);
+    expect(String(error)).toContain("Odd 31myyy");
+    expect(String(error)).not.toContain("second line");
   });
 
   it("a missing bucket is a fault that says so, not an absent object", async () => {

@@ -123,6 +123,14 @@ describe("composeBody", () => {
     expect(parsed.series).toEqual(series.slice(0, parsed.series.length));
   });
 
+  it("json shortens the inner list that takes the space, not the list it stands in", () => {
+    const data = { tables: [{ table: "a", values: Array(19_000).fill(1) }, { table: "b" }], notices: [1, 2] };
+    const parsed = JSON.parse(composeBody(message({ data }), "json").body);
+    expect(parsed.tables.map(({ table }: { table: string }) => table)).toEqual(["a", "b"]);
+    expect(parsed.tables[0].values.length + parsed.omitted["tables.0.values"]).toBe(19_000);
+    expect(parsed.notices).toEqual([1, 2]);
+  });
+
   it("json keeps within its budget whatever the data are like", () => {
     const many = Object.fromEntries(Array.from({ length: 3_000 }, (_, i) => [`name ${i}`, i]));
     const nested = {

@@ -212,6 +212,8 @@ describe("deliver", () => {
   it("says that nobody listens, and that a name is unknown", async () => {
     const refused = await post("http://127.0.0.1:1/", 700);
     expect(refused).toHaveProperty("reason", expect.stringContaining("refused the connection"));
+    const nowhere = await post("https://hooks.invalid/x", 700, { lookup: async () => [] });
+    expect(nowhere).toHaveProperty("reason", expect.stringContaining("the name has no address"));
     const unknown = await post("https://hooks.invalid/x", 700, {
       lookup: async () => Promise.reject(Object.assign(new Error("getaddrinfo"), { code: "ENOTFOUND" })),
     });

@@ -60,6 +60,7 @@ describe("signatureHeaders", () => {
       "sk_live_secret",
       "",
     ];
+    for (const size of [23, 65]) refused.push(`whsec_${Buffer.alloc(size, 7).toString("base64")}`);
     for (const key of refused) {
       expect(() => signatureHeaders({ ...check, keys: [key] }), key).toThrow(
         "a signing key needs to be whsec_ and 24 to 64 bytes in base64",
