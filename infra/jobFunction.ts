@@ -75,6 +75,14 @@ export class JobFunction extends Construct {
         target: "node24",
         bundleAwsSDK: true,
         banner: requireBanner,
+        externalModules: ["date-holidays"],
+        commandHooks: {
+          beforeInstall: () => [],
+          beforeBundling: () => [],
+          afterBundling: (inputFolder, outputFolder) => [
+            `node "${join(inputFolder, "infra", "bundleHolidays.mjs")}" "${outputFolder}"`,
+          ],
+        },
         minify: true,
         esbuildArgs: {
           "--legal-comments": "none",
