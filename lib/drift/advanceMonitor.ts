@@ -43,7 +43,8 @@ export function advanceMonitor(
       state.looksUsed++;
       look(state);
       statistics.forEach((path, kind) => {
-        path.push(Math.round(state.statistics[kind] * 1e4) / 1e4);
+        // Adding zero keeps −0 out, which JSON would not bring back.
+        path.push(Math.round(state.statistics[kind] * 1e4) / 1e4 + 0);
       });
       const next = judge(state, monitor, change);
       if (next !== null) {

@@ -42,6 +42,7 @@ export function tabulatedBoundaries(
       dot(own, features, own.length) + dot(like, features, plainFeatures) - dot(base, features, plainFeatures)
     );
   };
+  const lowest = Math.max(0, lowestBoundary - 0.75 * Math.max(0, Math.log(falseAlarmRate / 0.05)));
   const share = between(tabulatedRates, falseAlarmRate);
   const step = between(tabulatedLooks, looks);
   return Float64Array.from(kinds, (kind) => {
@@ -49,10 +50,16 @@ export function tabulatedBoundaries(
     const high = at52(kind, share.index + 1);
     const shifts = lookShifts[kind] ?? lookShifts.level;
     const shift = shifts[step.index] + step.part * (shifts[step.index + 1] - shifts[step.index]);
-    return low + share.part * (high - low) + shift + (season > 12 ? longSeasonShift : 0);
+    const boundary = low + share.part * (high - low) + shift + (season > 12 ? longSeasonShift : 0);
+    return Math.max(boundary, lowest);
   });
 }
 
+/**
+ * Near a unit root a level cannot be judged, its statistic stays low and so would its boundary, until one heavy
+ * shock passes it: no notice without this much evidence (an average likelihood ratio of 3.5), less at rates above 5 %.
+ */
+const lowestBoundary = 1.25;
 /** A pattern of which a reference holds few rounds (24 and more periods) needs higher boundaries: 7.5 % without. */
 const longSeasonShift = 0.4;
 

@@ -16,6 +16,12 @@ export interface ColumnPlan {
   readonly columnsOf: (set: number) => ColumnChoice[];
 }
 
+/**
+ * Once a change is noticed, a level or a slope may have moved far more than the watching priors expect, and would
+ * else be taken for larger shocks or for persistence that drives the series away: prior variances times this.
+ */
+const room: Readonly<Record<string, number>> = { level: 4, trend: 6 };
+
 export function planColumns(state: LookState): ColumnPlan {
   const first: number[] = [];
   const priors: Float64Array[] = [];
@@ -26,7 +32,7 @@ export function planColumns(state: LookState): ColumnPlan {
         ? state.work.lagPriors
         : (state.work.meanKinds.find((one) => one.kind === index)?.priors ?? new Float64Array(0));
     first.push(place);
-    priors.push(own);
+    priors.push(own.map((prior) => prior * (room[kind] ?? 1)));
     place += own.length;
   }
   const columnsOf = (set: number) =>

@@ -34,7 +34,7 @@ export function nameChange(state: LookState, boundaries: ArrayLike<number>): Nam
     return taking - logSum(explanations.filter(({ kinds }) => !(kinds & bit)));
   });
   const { time, low, high } = dateChange(state, explanations);
-  const scores = weighKinds(state, logOdds, boundaries, state.count - time);
+  const scores = weighKinds(state, logOdds, boundaries);
   const ranked = [...scores.keys()].sort((a, b) => scores[b] - scores[a]);
   const [first, second] = ranked;
   const holding = explanations.filter((one) => one.time === time && one.kinds & (1 << first));

@@ -18,7 +18,6 @@ export function fitBoundaries(
   looks: number,
   rate: number,
   features: number,
-  weights?: readonly number[],
 ): FittedBoundaries {
   const rows = paths.map((path) => path.features.slice(0, features));
   const maxima = paths.map((path) => path.maxima.find((one) => one.looks === looks)!.values);
@@ -31,17 +30,12 @@ export function fitBoundaries(
         rows,
         maxima.map((values) => values[kind]),
         1 - share,
-        weights,
       ),
     );
-    let passing = 0;
-    let all = 0;
-    rows.forEach((row, path) => {
-      const weight = weights?.[path] ?? 1;
-      all += weight;
-      if (kinds.some((kind) => maxima[path][kind] >= dot(coefficients[kind], row))) passing += weight;
-    });
-    share *= (rate * all) / passing;
+    const passing = rows.filter((row, path) =>
+      kinds.some((kind) => maxima[path][kind] >= dot(coefficients[kind], row)),
+    );
+    share *= (rate * rows.length) / passing.length;
   }
   return { coefficients, share };
 }

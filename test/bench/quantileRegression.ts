@@ -8,7 +8,6 @@ export function quantileRegression(
   rows: readonly (readonly number[])[],
   response: ArrayLike<number>,
   probability: number,
-  weights?: ArrayLike<number>,
   width = 0.08,
 ): Float64Array {
   const size = rows[0].length;
@@ -23,10 +22,9 @@ export function quantileRegression(
         const row = rows[n];
         let rest = response[n];
         for (let i = 0; i < size; i++) rest -= beta[i] * row[i];
-        const weight = weights?.[n] ?? 1;
         const above = 1 / (1 + Math.exp(-rest / band));
-        const slope = weight * (above - (1 - probability));
-        const bend = (weight * above * (1 - above)) / band;
+        const slope = above - (1 - probability);
+        const bend = (above * (1 - above)) / band;
         for (let i = 0; i < size; i++) {
           gradient[i] += slope * row[i];
           if (bend > 1e-9) for (let j = 0; j <= i; j++) curvature[i * size + j] += bend * row[i] * row[j];

@@ -2,12 +2,14 @@ import { appendValue } from "../../lib/drift/appendValue.ts";
 import { boundaryFeatures } from "../../lib/drift/boundaryFeatures.ts";
 import { look } from "../../lib/drift/look.ts";
 import { openLookState, watchedKinds } from "../../lib/drift/lookState.ts";
+import type { ChangeKind } from "../../lib/drift/notice.ts";
 import { normalNumbers, uniformNumbers } from "../../lib/drift/randomNumbers.ts";
 import { fitReference } from "../../lib/drift/reference.ts";
 import type { TermPlan } from "../../lib/drift/terms.ts";
 
 /** What one stable path showed: the features of its reference, and each kind's largest statistic for each number of looks. */
 export interface StablePath {
+  readonly kinds: readonly ChangeKind[];
   readonly features: readonly number[];
   readonly maxima: readonly { readonly looks: number; readonly values: readonly number[] }[];
 }
@@ -53,7 +55,7 @@ export function watchStablePath(seed: number, plan: TermPlan, looks: number): St
       }
     }
   }
-  return { features: boundaryFeatures(reference), maxima };
+  return { kinds: watchedKinds(plan), features: boundaryFeatures(reference), maxima };
 }
 
 function student(normal: () => number, degreesOfFreedom: number): number {
@@ -62,12 +64,17 @@ function student(normal: () => number, degreesOfFreedom: number): number {
   return normal() * Math.sqrt((degreesOfFreedom - 2) / sum);
 }
 
+/** Mostly one lag: 0, 1, 2, 3, 4 lags in 10, 62, 18, 6 and 4 of 100 paths. */
+function drawOrder(uniform: number): number {
+  return [0.1, 0.72, 0.9, 0.96].filter((edge) => uniform >= edge).length;
+}
+
 /** Coefficients from partial autocorrelations (Durbin–Levinson). */
 function drawCoefficients(uniform: () => number): Float64Array {
-  const order = [0, 1, 1, 1, 1, 2, 2, 3, 4, 1][Math.floor(10 * uniform())];
+  const order = drawOrder(uniform());
   let coefficients = new Float64Array(0);
   for (let size = 1; size <= order; size++) {
-    const near = size === 1 && uniform() < 0.15;
+    const near = size === 1 && uniform() < 0.2;
     const first = near ? 0.9 + 0.095 * uniform() : -0.4 + 1.35 * uniform();
     const partial = size === 1 ? first : (1.3 * uniform() - 0.7) * 0.85 ** (size - 2);
     const next = new Float64Array(size);
