@@ -49,17 +49,22 @@ function refuseOtherTexts(head: string, complain: Complain): void {
   if (/^[{[]\s*["{[\]}]/.test(start)) throw refuse("the file is JSON, not a table", "save the table as CSV");
 }
 
-const unclosed = (line: number, complain: Complain) =>
+/** A row without an end: nearly always a quotation mark that was never closed. */
+const endless = (line: number, text: string, complain: Complain) =>
   new TableFault(
-    complain(
-      "quote-not-closed",
-      true,
-      "a quotation mark opens here and never closes",
-      "close it, or take it away",
-      {
-        line,
-      },
-    ),
+    text.includes('"')
+      ? complain(
+          "quote-not-closed",
+          true,
+          "a quotation mark opens here and never closes",
+          "close it, or take it away",
+          {
+            line,
+          },
+        )
+      : complain("endless-line", true, "the line has no end", "see whether the file is a table at all", {
+          line,
+        }),
   );
 
 export function createTextReader(
@@ -86,7 +91,7 @@ export function createTextReader(
     const text = lines(head);
     const delimiter = settings.delimiter ?? findDelimiter(text.slice(0, delimiterHead), dateFormats(locale));
     const sample = sampleRows(text, delimiter, whole);
-    if (sample.unclosedQuote !== undefined) throw unclosed(sample.unclosedQuote, complain);
+    if (sample.unclosedQuote !== undefined) throw endless(sample.unclosedQuote, text, complain);
     const plan = planTable(sample, whole, delimiter, settings, locale, complain);
     const opened = openSession(plan, settings, context, complain);
     session = opened;
@@ -124,7 +129,7 @@ export function createTextReader(
     finish(source) {
       tryToBegin(true);
       const end = splitter?.end();
-      if (end?.unclosedQuote !== undefined) throw unclosed(end.unclosedQuote, complain);
+      if (end?.unclosedQuote !== undefined) throw endless(end.unclosedQuote, '"', complain);
       return (session as Session).finish(source);
     },
   };
