@@ -1,11 +1,11 @@
 import { nearestName } from "../series/nearestName.ts";
 import { periodStart } from "../series/periods.ts";
 import { periodsLate } from "../series/periodsLate.ts";
-import { type KnownEvent, readEvents } from "../series/readEvents.ts";
 import type { Reading } from "../series/reading.ts";
 import { readTableStream } from "../series/readTableStream.ts";
 import type { Period, Problem, Series } from "../series/series.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
+import { type CheckedEvents, checkEvents } from "./checkEvents.ts";
 import { decodeText } from "./documents.ts";
 import { asOfText, seriesPrefix, settingsKey, tableEndings, tableNameFault, tableOfKey } from "./keys.ts";
 import { parseSettings, type Settings } from "./settings.ts";
@@ -40,11 +40,7 @@ export interface CheckReport {
   readonly timeZone: string;
   readonly tables: readonly CheckedTable[];
   readonly settings: { readonly found: boolean; readonly problems: readonly Problem[] };
-  readonly events: readonly {
-    readonly file: string;
-    readonly events: number;
-    readonly problems: readonly Problem[];
-  }[];
+  readonly events: readonly CheckedEvents[];
   /** Files under `series/` of a kind that is not read. */
   readonly otherFiles: readonly string[];
   /** Tables that cannot be read, plus one if the settings cannot be used. */
@@ -157,13 +153,7 @@ export async function checkStore(options: CheckOptions): Promise<CheckReport> {
       tables.push(await checkTable(store, own, settings, asOf));
     }
   }
-  const events = [];
-  for (const { key } of await store.list("events/")) {
-    const found = await store.read(key);
-    if (!found || !key.endsWith(".csv")) continue;
-    const read: { events: KnownEvent[]; problems: Problem[] } = readEvents(found.bytes, key, settings.locale);
-    events.push({ file: key, events: read.events.length, problems: read.problems });
-  }
+  const events = await checkEvents(store, settings, asOf);
   const settingsProblems = [
     ...parsed.problems,
     ...(parsed.problems.length > 0 ? [] : strangers(settings, names)),

@@ -123,6 +123,14 @@ describe("check", () => {
     expect(lines.join("\n")).toContain('line 3, column "date": "soon" is no date');
   });
 
+  it("counts the public holidays of the country set, and says when it knows none", async () => {
+    const told = (country: string) =>
+      tell({ "series/loans.csv": weeks(30), "settings.json": JSON.stringify({ country }) });
+    // Thirteen mandatory holidays: Código do Trabalho, artigo 234.º.
+    expect(await told("PT")).toContain("public holidays of PT in 2026: 13 events");
+    expect((await told("XX")).join("\n")).toContain('no public holidays are known for "XX" →');
+  });
+
   it("says what to do with an empty store", async () => {
     expect(await tell({})).toEqual([
       "There are no tables in ./my-store yet: put CSV files under series/, such as series/loans.csv.",
