@@ -1,5 +1,7 @@
 import { evenBoundaries, stableMaxima } from "./bootstrapBoundaries.ts";
 import { tabulatedBoundaries } from "./boundaryTable.ts";
+import { clusteringAllowance } from "./clustering.ts";
+import { watchedKinds } from "./lookState.ts";
 import type { Reference } from "./reference.ts";
 
 export interface BoundaryRequest {
@@ -13,13 +15,14 @@ export interface BoundaryRequest {
 /** Paths simulated for boundaries of a reference outside the table. */
 const paths = 999;
 
-/** One boundary a watched kind, and where they come from. */
+/** One boundary a watched kind, and where they come from; the shock size pays for clustered shocks. */
 export function boundariesFor(
   reference: Reference,
-  { looks, falseAlarmRate, seed, bootstrap }: BoundaryRequest,
+  request: BoundaryRequest,
 ): { readonly boundaries: Float64Array; readonly source: "table" | "bootstrap" } {
+  const { looks, falseAlarmRate, seed, bootstrap } = request;
   const tabulated = bootstrap ? undefined : tabulatedBoundaries(reference, looks, falseAlarmRate);
-  if (tabulated !== undefined) return { boundaries: tabulated, source: "table" };
-  const maxima = stableMaxima(reference, looks, paths, seed);
-  return { boundaries: evenBoundaries(maxima, falseAlarmRate), source: "bootstrap" };
+  const boundaries = tabulated ?? evenBoundaries(stableMaxima(reference, looks, paths, seed), falseAlarmRate);
+  boundaries[watchedKinds(reference).indexOf("shock-size")] += clusteringAllowance(reference);
+  return { boundaries, source: tabulated === undefined ? "bootstrap" : "table" };
 }
