@@ -29,6 +29,9 @@ const requireBanner =
 const credentialProviders = "@aws-sdk/credential-provider-node";
 const lambdaCredentials = "functions/cloud/lambdaCredentials.ts";
 
+// Large, and asked for at run time by few: each a file of its own beside the bundle.
+const beside = ["date-holidays"] as const;
+
 /**
  * One function of the job: Node 24 on arm64, one ESM file with everything in it, a log group of its own with
  * a retention, JSON logs, tracing, and a role that may write to that log group, send traces and do what
@@ -75,12 +78,12 @@ export class JobFunction extends Construct {
         target: "node24",
         bundleAwsSDK: true,
         banner: requireBanner,
-        externalModules: ["date-holidays"],
+        externalModules: [...beside],
         commandHooks: {
           beforeInstall: () => [],
           beforeBundling: () => [],
           afterBundling: (inputFolder, outputFolder) => [
-            `node "${join(inputFolder, "infra", "bundleHolidays.mjs")}" "${outputFolder}"`,
+            `node "${join(inputFolder, "infra", "bundleBeside.mjs")}" "${outputFolder}" ${beside.join(" ")}`,
           ],
         },
         minify: true,
