@@ -6,6 +6,7 @@ import { TableFault } from "./tableFault.ts";
 import type { ReadContext, TableResult } from "./tableResult.ts";
 import type { TableSettings } from "./tableSettings.ts";
 import { createTextReader } from "./textReader.ts";
+import { zoneOffset } from "./zone.ts";
 
 /** A bomb of zeros is not unpacked further than this. */
 const mostUnpacked = 1 << 30;
@@ -25,6 +26,13 @@ export const badGzip = (error: unknown, complain: Complain) =>
     `the compressed file cannot be opened (${error instanceof Error ? error.message : String(error)})`,
     "compress it again, or store it as plain CSV",
   );
+
+/** @throws RangeError when `asOf` is no instant or the time zone is unknown: the caller's mistake, not the table's */
+export function requireContext({ asOf, timeZone }: ReadContext): void {
+  if (Number.isNaN(new Date(asOf).getTime()))
+    throw new RangeError(`readTable: asOf must be an ISO instant, received ${JSON.stringify(asOf)}`);
+  zoneOffset(0, timeZone ?? "UTC");
+}
 
 /** A table that cannot be read as a result with its one problem; any other error is a fault of ours and goes on. */
 export function failedResult(error: unknown): TableResult {
@@ -47,6 +55,7 @@ export function readTable(
   settings: TableSettings,
   context: ReadContext,
 ): TableResult {
+  requireContext(context);
   const complain = complainer(context.table ?? "table");
   try {
     const reader = createTextReader(settings, context, complain);

@@ -3,7 +3,7 @@ import { createGunzip } from "node:zlib";
 import { concatenated, createByteDecoder } from "./byteDecoder.ts";
 import { isGzip, isParquet } from "./decode.ts";
 import { type Complain, complainer } from "./problems.ts";
-import { badGzip, failedResult } from "./readTable.ts";
+import { badGzip, failedResult, requireContext } from "./readTable.ts";
 import { TableFault } from "./tableFault.ts";
 import type { ReadContext, TableResult } from "./tableResult.ts";
 import type { TableSettings } from "./tableSettings.ts";
@@ -71,6 +71,7 @@ export async function readTableStream(
   settings: TableSettings,
   context: ReadContext,
 ): Promise<TableResult> {
+  requireContext(context);
   const complain = complainer(context.table ?? "table");
   try {
     const { head, all } = await peek(chunks);

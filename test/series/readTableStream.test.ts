@@ -102,6 +102,17 @@ describe("readTableStream", () => {
   });
 });
 
+describe("readTable and readTableStream", () => {
+  it.each([
+    [{ asOf: "soon" }],
+    [{ asOf: new Date(Number.NaN) }],
+    [{ asOf: "2026-12-01T06:00:00Z", timeZone: "Mars/Base" }],
+  ])("throw a RangeError for a context that is wrong (%j)", async (wrong) => {
+    expect(() => readTable("date,v\n", {}, wrong)).toThrow(RangeError);
+    await expect(readTableStream([], {}, wrong)).rejects.toThrow(RangeError);
+  });
+});
+
 describe("readTableStream, on Parquet files of Apache Arrow", () => {
   const expected = {
     loans: [1, NaN, 3, 4, 5],
