@@ -61,7 +61,8 @@ export function averageForecast(
     return { scale, values: damped.values };
   });
   const candidates = listCandidates(scales, seasons, description);
-  const least = Math.max(8, seasons.length > 0 ? 3 * season : 0);
+  // Two seasons and one value are the least a profile can be fitted to; short series need every origin they can have.
+  const least = Math.max(8, seasons.length > 0 ? 2 * season + 1 : 0);
   const origins = rollingOrigins(count, horizon, least);
   const rolled = rollBank(values, scales, candidates, origins, horizon, maxOrder, workspace);
   const fitted = fitBank(scales, candidates, count, horizon, maxOrder, workspace);

@@ -19,10 +19,10 @@ const ALL_DRIFTS: readonly DriftKind[] = ["none", "local", "whole"];
 /**
  * The bank of preparations: levels about a mean, levels about a line, first differences with three kinds of drift,
  * second differences. With a season: these after a profile is taken off, first differences also about a profile of
- * their own, seasonal differences, levels about a profile, and plain levels, whose long lags carry the season. A
+ * their own, seasonal differences, levels about either profile, and plain levels, whose long lags carry the season. A
  * further, longer season adds its levels about a profile, with and without a line, and its differences; a series with
- * several seasons moves in steps too short for a drift a step to matter, and goes without. Simple and
- * unlike each other, for it is what candidates do not share that makes an average better than its parts.
+ * several seasons moves in steps too short for a drift a step to matter, and goes without. Simple and unlike each
+ * other, for it is what candidates do not share that makes an average better than its parts.
  */
 export function preparations(seasons: readonly number[]): Preparation[] {
   const plain = { season: 0, profile: "none", line: false } as const;
@@ -44,6 +44,7 @@ export function preparations(seasons: readonly number[]): Preparation[] {
     bank.push({ ...level, differences: [1], drifts: single ? ALL_DRIFTS : ["none"] });
     bank.push({ ...plain, differences: [season], drifts: single ? ["none", "whole"] : ["none"] });
     bank.push({ ...mean, differences: [], drifts: ["whole"] });
+    bank.push({ ...level, differences: [], drifts: ["whole"] });
     bank.push({ ...level, differences: [], line: true, drifts: ["whole"] });
     if (!first) return;
     bank.push({ ...mean, differences: [1], drifts: single ? ["none", "whole"] : ["none"] });

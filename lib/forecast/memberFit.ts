@@ -56,7 +56,7 @@ export function fitMember(
   const length = count - lost;
   if (
     length < 4 ||
-    (profile === "level" && count < 3 * season) ||
+    (profile === "level" && count < 2 * season) ||
     (profile === "mean" && length < 2 * season)
   ) {
     return undefined;

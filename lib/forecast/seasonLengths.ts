@@ -11,8 +11,9 @@ const BY_PERIOD: Readonly<Record<NonNullable<ForecastOptions["period"]>, readonl
 
 /**
  * Season lengths to consider, ascending: those asked for, else those of the calendar step (day and week of hours,
- * week of days, year of weeks, months and quarters). A length counts only when three full seasons are there, the
- * least from which a profile can be told from chance. Throws `RangeError` for a length that is no whole number.
+ * week of days, year of weeks, months and quarters). A length counts from two and a half seasons on: two to compare,
+ * and half of one to see whether the comparison foretold anything. Throws `RangeError` for a length that is no whole
+ * number.
  */
 export function seasonLengths(count: number, options: Pick<ForecastOptions, "period" | "seasons">): number[] {
   for (const length of options.seasons ?? []) {
@@ -21,5 +22,5 @@ export function seasonLengths(count: number, options: Pick<ForecastOptions, "per
     }
   }
   const wanted = options.seasons ?? (options.period === undefined ? [] : BY_PERIOD[options.period]);
-  return [...new Set(wanted)].filter((length) => length > 1 && count >= 3 * length).sort((a, b) => a - b);
+  return [...new Set(wanted)].filter((length) => length > 1 && count >= 2.5 * length).sort((a, b) => a - b);
 }
