@@ -124,12 +124,13 @@ describe.each(["folder", "bucket"] as const)("a run of three tables on a %s", (k
       expect(leaks(whole.output)).toEqual([]);
       const usual = Date.now() - began;
       const next = seeded(3);
-      for (let kill = 0; kill < 20; kill++) {
+      const kills = Array.from({ length: 20 }, (_, kill) => ({ kill, after: usual * (0.2 + 0.8 * next()) }));
+      await inTurns(kills, 3, async ({ kill, after }) => {
         const tiny = await fresh();
         const mark = `moment-${kill}`;
-        await childRun(program, tiny, hookOf(hook.port, mark), {}, usual * (0.2 + 0.8 * next()));
+        await childRun(program, tiny, hookOf(hook.port, mark), {}, after);
         expect(await checkRetry(tiny, hook, mark)).toBeLessThanOrEqual(2);
-      }
+      });
     },
     300_000,
   );

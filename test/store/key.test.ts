@@ -32,8 +32,8 @@ describe("keyFault", () => {
       fc.property(key, (text) => {
         if (keyFault(text) !== undefined) return;
         sound++;
-        const path = join("/root/store", text);
-        expect(path).toBe(`/root/store${sep}${text}`);
+        const path = join("/srv/store", text);
+        expect(path).toBe(`/srv/store${sep}${text}`);
         expect(text.split("/").every((name) => name !== "" && !name.startsWith("."))).toBe(true);
       }),
       { numRuns: 3_000, seed: 1 },

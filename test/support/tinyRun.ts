@@ -9,7 +9,7 @@ import { S3Store } from "../../lib/store/s3Store.ts";
 import { canary, leaks } from "./canary.ts";
 import { cephBucket, gateway } from "./cephStore.ts";
 import type { ChildTask } from "./jobChild.ts";
-import { fillStore, storeTexts } from "./jobStores.ts";
+import { fillStore } from "./jobStores.ts";
 import { temporaryFolder } from "./temporaryFolder.ts";
 import { tinyAsOf, tinyTables } from "./tinyTables.ts";
 
@@ -112,7 +112,9 @@ export function childRun(
  * document with a planted secret in it.
  */
 export async function documents(store: ObjectStore): Promise<Record<string, string>> {
-  const texts = Object.entries(await storeTexts(store));
+  const read = async ({ key }: { key: string }) =>
+    [key, new TextDecoder().decode((await store.read(key))?.bytes)] as const;
+  const texts = await Promise.all((await store.list("")).map(read));
   for (const [key, text] of texts) {
     const leaked = leaks(key + text);
     if (leaked.length > 0) throw new Error(`${key} holds ${leaked.length} planted secrets`);
