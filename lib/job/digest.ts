@@ -1,5 +1,6 @@
 import type { ObjectStore } from "../store/objectStore.ts";
-import type { RunFacts, TableFacts } from "../words/facts.ts";
+import { attentionTo, newsFrom } from "../words/attention.ts";
+import type { RunFacts, SeriesFacts, TableFacts } from "../words/facts.ts";
 import { readDocument, type Versioned } from "./documents.ts";
 import { problemsKey } from "./keys.ts";
 import { readModel } from "./modelDocument.ts";
@@ -15,9 +16,46 @@ export interface Gathered {
   readonly failed: readonly FailedTable[];
   /** Neither refitted nor failed yet. */
   readonly left: readonly string[];
+  /** Series that stand in no table here, for want of room. */
+  readonly untold: NonNullable<RunFacts["untold"]>;
+  readonly expectedFalseNotices: number;
 }
 
-/** Reads back what the workers wrote for these tables. */
+/** Series whose facts a run can hold at a time; a digest and a report of more would be read by nobody. */
+const mostWithNews = 2_000;
+const mostSteady = 1_000;
+
+/** Keeps as many series as there is room for, those with news before the steady, and counts the rest. */
+class Gathering {
+  private readonly untold = { steady: 0, news: 0, watched: 0 };
+  private expected = 0;
+  private news = 0;
+  private steady = 0;
+
+  /** The facts of a table that there is room for. */
+  take(series: readonly SeriesFacts[]): SeriesFacts[] {
+    return series.filter((facts) => {
+      const { monitor, period } = facts;
+      if (monitor) this.expected += (monitor.falseAlarmRate * valuesInYear[period]) / monitor.looks;
+      const hasNews = attentionTo(facts) >= newsFrom;
+      const fits = hasNews ? this.news++ < mostWithNews : this.steady++ < mostSteady;
+      if (fits) return true;
+      this.untold[hasNews ? "news" : "steady"]++;
+      if (monitor) this.untold.watched++;
+      return false;
+    });
+  }
+
+  counts(): Pick<Gathered, "untold" | "expectedFalseNotices"> {
+    return { untold: { ...this.untold }, expectedFalseNotices: this.expected };
+  }
+}
+
+/**
+ * Reads back what the workers wrote for these tables, one at a time, so that memory stays within bounds whatever their
+ * number. `expectedFalseNotices` sums over all watched series what chance alone would bring in a year: the false-alarm
+ * rate of a reference, as often as a year uses up its looks.
+ */
 export async function gatherTables(
   store: ObjectStore,
   asOf: string,
@@ -26,35 +64,31 @@ export async function gatherTables(
   const tables: TableFacts[] = [];
   const failed: FailedTable[] = [];
   const left: string[] = [];
+  const gathering = new Gathering();
   for (const table of names) {
     const model = await readModel(store, table, asOf);
     if (model) {
-      tables.push({ table, series: model.series.map((one) => one.facts), problems: model.problems });
+      const series = gathering.take(model.series.map((one) => one.facts));
+      tables.push({ table, series, problems: model.problems });
       continue;
     }
     const problems = await readDocument<ProblemsDocument>(store, problemsKey(asOf, table));
     if (problems) failed.push({ table, problems: problems.problems });
     else left.push(table);
   }
-  return { tables, failed, left };
+  return { tables, failed, left, ...gathering.counts() };
 }
 
-/**
- * The facts of a whole run. `expectedFalseNotices` sums over all watched series what chance alone would bring in a year:
- * the false-alarm rate of a reference, as often as a year uses up its looks.
- */
+/** The facts of a whole run. */
 export function runFacts(plan: Plan, gathered: Gathered, undelivered: RunFacts["undelivered"]): RunFacts {
-  const watched = gathered.tables.flatMap((table) =>
-    table.series.map(({ monitor, period }) =>
-      monitor ? (monitor.falseAlarmRate * valuesInYear[period]) / monitor.looks : 0,
-    ),
-  );
+  const { tables, failed, left, untold, expectedFalseNotices } = gathered;
   return {
     asOf: plan.asOf,
-    tables: gathered.tables,
-    failed: [...plan.refused, ...gathered.failed],
-    left: gathered.left,
-    expectedFalseNotices: watched.reduce((sum, rate) => sum + rate, 0),
+    tables,
+    failed: [...plan.refused, ...failed],
+    left,
+    untold,
+    expectedFalseNotices,
     undelivered,
   };
 }

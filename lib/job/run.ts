@@ -142,13 +142,14 @@ function summarise(
   durationMilliseconds: number,
 ): RunSummary {
   const findings = facts.tables.flatMap((table) => table.series.flatMap((series) => series.findings));
+  const { untold = { steady: 0, news: 0 } } = facts;
   const isStale = (table: RunFacts["tables"][number]) =>
     table.series.some((series) => series.findings.some((finding) => finding.code === "stale"));
   return {
     schema: 1,
     asOf: facts.asOf,
     tables: facts.tables.length,
-    series: facts.tables.reduce((sum, table) => sum + table.series.length, 0),
+    series: facts.tables.reduce((sum, table) => sum + table.series.length, untold.steady + untold.news),
     notices: findings.filter((finding) => finding.code === "change" && finding.fresh).length,
     surprises: findings.filter((finding) => finding.code === "surprise").length,
     stale: facts.tables.filter(isStale).map((table) => table.table),

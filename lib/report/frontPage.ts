@@ -23,7 +23,15 @@ export function frontPage(
   const several = run.tables.length > 1;
   return html`<nav class="front" aria-labelledby="all"><h2 id="all">All series, what needs attention first</h2>
 <p class="hint">Recent past and forecast; under each number the range that is meant to hold it ${percentWriter(voice.locale)(level)} of the time.</p>
-<ol>${all.map((one, index) => row(one, linkOf(index), several, run, voice))}</ol></nav>`;
+<ol>${all.map((one, index) => row(one, linkOf(index), several, run, voice))}</ol>${untoldLine(run)}</nav>`;
+}
+
+/** Where a run has very many series, most of the steady ones are counted and not drawn. */
+function untoldLine({ untold }: RunFacts): Markup {
+  const count = (untold?.steady ?? 0) + (untold?.news ?? 0);
+  return count === 0
+    ? nothing
+    : html`<p class="hint">And ${count} further series, ${untold?.steady ?? 0} of them steady: their numbers stand in the forecast files.</p>`;
 }
 
 function row(one: Ranked, link: string, several: boolean, run: RunFacts, voice: Voice): Markup {

@@ -28,13 +28,16 @@ export function analystMessage(run: RunFacts, voice: Voice): Note {
         : [...account.others, account.model[0]];
     return [`${plainName(table.table)}, ${speech.series}`, ...parts.map((one) => `  ${one}`)];
   });
-  const rest = all.length - Math.min(news.length, inFull);
+  const untold = run.untold ?? { steady: 0, news: 0 };
+  const rest = all.length - Math.min(news.length, inFull) + untold.steady + untold.news;
   return {
     title: `${headline(run)} (analyst's notice)`,
     lines: [
       ...lines,
       ...(rest > 0
-        ? [`${lines.length > 0 ? "… and " : ""}${rest} more series: ${restWords(news.length, rest)}`]
+        ? [
+            `${lines.length > 0 ? "… and " : ""}${rest} more series: ${restWords(news.length + untold.news, rest)}`,
+          ]
         : []),
       ...troubleLines(run),
       falseNotices(run, voice),

@@ -43,20 +43,22 @@ export function businessMessage(run: RunFacts, voice: Voice): Note {
   );
   return {
     title: headline(run),
-    lines: [...before, ...lines, ...restLines(all.slice(told), told), ...after],
+    lines: [...before, ...lines, ...restLines(all.slice(told), told, run.untold), ...after],
     footer: footerOf(reportPlace(run.asOf, voice)),
     data: messageData(run, "business", all),
   };
 }
 
 /** "… and 41 steady." */
-function restLines(hidden: readonly Ranked[], told: number): string[] {
-  if (hidden.length === 0) return [];
-  const steady = hidden.filter((one) => one.attention < newsFrom).length;
+function restLines(hidden: readonly Ranked[], told: number, untold: RunFacts["untold"]): string[] {
+  const { steady: alsoSteady, news: alsoNews } = untold ?? { steady: 0, news: 0 };
+  const rest = hidden.length + alsoSteady + alsoNews;
+  if (rest === 0) return [];
+  const steady = hidden.filter((one) => one.attention < newsFrom).length + alsoSteady;
   const start = told > 0 ? "… and " : "";
-  if (steady === hidden.length) return [`${start}${steady} steady.`];
+  if (steady === rest) return [`${start}${steady} steady.`];
   return [
-    `${start}${hidden.length} more, ${hidden.length - steady} of them with news; all stand in the report.`,
+    `${start}${rest} more, ${rest - steady} of them with news${alsoNews > 0 ? "" : "; all stand in the report"}.`,
   ];
 }
 

@@ -177,6 +177,8 @@ export interface RunFacts {
   readonly failed: readonly { readonly table: string; readonly problems: readonly Problem[] }[];
   /** Tables not reached before time ran out. */
   readonly left: readonly string[];
+  /** Series left out of `tables` where a run has very many: steady ones, ones with news, and how many are watched. */
+  readonly untold?: { readonly steady: number; readonly news: number; readonly watched: number };
   /** Notices that chance alone would bring over a year of looks, on average, over all watched series. */
   readonly expectedFalseNotices: number;
   /** Earlier notes that could not be delivered and are now sent first. */

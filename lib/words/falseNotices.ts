@@ -5,7 +5,7 @@ import { numberWriter } from "./numbers.ts";
 export function falseNotices(run: RunFacts, voice: Voice): string {
   const watched = run.tables.reduce(
     (sum, table) => sum + table.series.filter((one) => one.monitor).length,
-    0,
+    run.untold?.watched ?? 0,
   );
   if (watched === 0) return "No series is watched yet, so no notices can come.";
   const write = numberWriter(voice.locale);

@@ -4,13 +4,14 @@ import { isToldFirst } from "./freshness.ts";
 import { plainName } from "./plainText.ts";
 
 /** How many of each sort of news a run holds. */
-export function newsCounts(run: Pick<RunFacts, "tables" | "failed">) {
+export function newsCounts(run: Pick<RunFacts, "tables" | "failed" | "untold">) {
+  const { untold = { steady: 0, news: 0 } } = run;
   const findings = run.tables.flatMap((table) => table.series.flatMap((facts) => facts.findings));
   const count = (test: (finding: Finding) => boolean) => findings.filter(test).length;
   const series = ranked(run);
   return {
-    series: series.length,
-    steady: series.filter((one) => one.attention < newsFrom).length,
+    series: series.length + untold.steady + untold.news,
+    steady: series.filter((one) => one.attention < newsFrom).length + untold.steady,
     changes: run.tables.reduce((sum, table) => sum + table.series.filter(isNew).length, 0),
     recent: run.tables.reduce((sum, table) => sum + table.series.filter(isRecent).length, 0),
     surprises: count((finding) => finding.code === "surprise"),

@@ -29,7 +29,7 @@ export function messageData(
     audience,
     asOf: run.asOf,
     series,
-    omitted: all.length - series.length,
+    omitted: all.length - series.length + (run.untold?.steady ?? 0) + (run.untold?.news ?? 0),
     failed: run.failed.slice(0, 20).map((one) => plainName(one.table, 120)),
     left: run.left.length,
     expectedFalseNotices: run.expectedFalseNotices,
