@@ -10,7 +10,7 @@ import type { Message } from "../../lib/webhook/message.ts";
 
 // demoMessages.txt was read line by line and agreed to: it holds what the demo's readers are told over 16 weeks, and
 // is here so that a change of wording or numbers is seen and read again, not because our own output proved itself.
-// After such a reading, write it anew with `npx vitest run --config test/vitest.config.ts --root . -u test/words/demoMessages`.
+// After such a reading, write it anew with `npx vitest run --config test/vitest.config.ts --root . test/words/demoMessages -u`.
 
 describe("the messages of the demo's 16 weeks", () => {
   const messages: Message[] = [];
