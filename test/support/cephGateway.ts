@@ -1,4 +1,4 @@
-import { execFile, spawn } from "node:child_process";
+import { type ChildProcess, execFile, spawn } from "node:child_process";
 import { randomUUID } from "node:crypto";
 import { existsSync } from "node:fs";
 import { mkdir, mkdtemp, readdir, readFile, rm, writeFile } from "node:fs/promises";
@@ -38,6 +38,7 @@ export async function startGateway(): Promise<{ gateway: Gateway; stop: () => Pr
   const map = join(folder, "monmap");
   const addresses = `[v2:127.0.0.1:${monitor},v1:127.0.0.1:${monitorOld}]`;
   const id = randomUUID();
+  const watch = watchOver(folder);
   for (const part of ["mon", "osd", "rgw", "log", "run"]) await mkdir(join(folder, part));
   await writeFile(configuration, settings(folder, id, addresses, web));
   const ceph = (program: string, ...rest: string[]) => run(program, ["-c", configuration, ...rest]);
@@ -64,8 +65,10 @@ export async function startGateway(): Promise<{ gateway: Gateway; stop: () => Pr
   await ceph("ceph-osd", "-i", "0");
   await ceph("ceph", "osd", "crush", "add", "osd.0", "1", "root=default", "host=localhost");
   const server = spawn("radosgw", ["-c", configuration, "-n", "client.rgw.a", "-f"], { stdio: "ignore" });
+  await writeFile(join(folder, "run", "gateway.pid"), `${server.pid}\n`);
 
   const stop = async () => {
+    watch.kill("SIGKILL");
     server.kill("SIGKILL");
     for (const name of await readdir(join(folder, "run"))) {
       if (!name.endsWith(".pid")) continue;
@@ -150,6 +153,18 @@ function freePort(): Promise<number> {
       probe.close(() => resolve(typeof address === "object" ? address!.port : 0));
     });
   });
+}
+
+/** A small process of its own that clears everything away should this one be killed before it can. */
+function watchOver(folder: string): ChildProcess {
+  const script =
+    'while kill -0 "$1" 2>/dev/null; do sleep 2; done; cat "$2"/run/*.pid | xargs -r kill -9; sleep 1; rm -rf "$2"';
+  const watch = spawn("sh", ["-c", script, "watch", String(process.pid), folder], {
+    detached: true,
+    stdio: "ignore",
+  });
+  watch.unref();
+  return watch;
 }
 
 function killQuietly(number: number): void {
