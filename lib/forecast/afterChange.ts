@@ -1,3 +1,5 @@
+import { median } from "./median.ts";
+
 /**
  * What is left of a series after its last lasting change. With enough values since (`enough`), only those; with fewer,
  * all of them, the earlier ones moved to the new level: the shape of the past (season, persistence) is kept, its level
@@ -14,14 +16,8 @@ export function afterChange(
   const after = values.length - changedAt;
   if (after >= enough) return values.subarray(changedAt);
   const step =
-    middle(values.subarray(changedAt)) -
-    middle(values.subarray(Math.max(0, changedAt - Math.max(after, 3)), changedAt));
+    median(values.subarray(changedAt)) -
+    median(values.subarray(Math.max(0, changedAt - Math.max(after, 3)), changedAt));
   if (!Number.isFinite(step)) return values;
   return values.map((value, t) => (t < changedAt ? value + step : value));
-}
-
-function middle(values: Float64Array): number {
-  const sorted = values.filter((value) => !Number.isNaN(value)).sort();
-  const half = sorted.length >> 1;
-  return sorted.length % 2 === 1 ? sorted[half] : (sorted[half - 1] + sorted[half]) / 2;
 }

@@ -1,4 +1,5 @@
 import type { BurgWorkspace } from "../autoregression/burg.ts";
+import { median } from "./median.ts";
 import { orderAverage } from "./orderAverage.ts";
 import { levelProfile } from "./seasonalProfile.ts";
 
@@ -84,10 +85,4 @@ export function dampOutliers(values: Float64Array, season: number, workspace: Bu
   }
   if (profile !== undefined) for (let t = 0; t < count; t++) level[t] += profile[t % season];
   return { values: level, outliers, steps: stays };
-}
-
-function median(values: Float64Array): number {
-  const sorted = values.slice().sort();
-  const half = sorted.length >> 1;
-  return sorted.length % 2 === 1 ? sorted[half] : (sorted[half - 1] + sorted[half]) / 2;
 }
