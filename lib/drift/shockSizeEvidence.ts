@@ -1,4 +1,5 @@
-import { type LookState, lastChangeTime, scaleGrid } from "./lookState.ts";
+import { type LookState, lastChangeTime } from "./lookState.ts";
+import { scaleGrid } from "./lookWork.ts";
 import { addStudentRow } from "./studentTable.ts";
 
 /** ln ρ of the changes tried, in steps of 0.1 of the σ grid. */
