@@ -1,5 +1,5 @@
 import * as zlib from "node:zlib";
-import { type Compressors, parquetMetadataAsync, parquetReadObjects, parquetSchema } from "hyparquet";
+import type { Compressors } from "hyparquet";
 import type { Row } from "./layout.ts";
 import type { Complain } from "./problems.ts";
 import { openSession } from "./session.ts";
@@ -47,6 +47,8 @@ export async function readParquet(
   context: ReadContext,
   complain: Complain,
 ): Promise<TableResult> {
+  // Loaded when asked for: few stores hold Parquet, and a function's start need not wait for it.
+  const { parquetMetadataAsync, parquetReadObjects, parquetSchema } = await import("hyparquet");
   const file = bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength) as ArrayBuffer;
   /** What the library throws at a broken file is the file's fault; anything else would be ours. */
   const reading = async <T>(work: () => Promise<T>): Promise<T> => {
