@@ -30,7 +30,12 @@ const credentialProviders = "@aws-sdk/credential-provider-node";
 const lambdaCredentials = "functions/cloud/lambdaCredentials.ts";
 
 // Large, and asked for at run time by few: each a file of its own beside the bundle.
-const beside = ["date-holidays", "hyparquet"] as const;
+const beside = [
+  "@aws-sdk/client-secrets-manager",
+  "@aws-sdk/client-sfn",
+  "date-holidays",
+  "hyparquet",
+] as const;
 
 /**
  * One function of the job: Node 24 on arm64, one ESM file with everything in it, a log group of its own with

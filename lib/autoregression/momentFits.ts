@@ -104,10 +104,12 @@ function laggedResiduals(
   coefficients: Float64Array,
 ): Float64Array {
   const p = coefficients.length;
-  const residuals = new Float64Array(values.length);
-  for (let t = 0; t < values.length; t++) {
-    let error = t < p ? Number.NaN : values[t] - centre;
-    for (let j = 1; j <= p && t >= p; j++) error -= coefficients[j - 1] * (values[t - j] - centre);
+  const departures = new Float64Array(values.length);
+  for (let t = 0; t < departures.length; t++) departures[t] = values[t] - centre;
+  const residuals = new Float64Array(departures.length).fill(Number.NaN, 0, Math.min(p, departures.length));
+  for (let t = p; t < departures.length; t++) {
+    let error = departures[t];
+    for (let j = 0; j < p; j++) error -= coefficients[j] * departures[t - 1 - j];
     residuals[t] = error;
   }
   return residuals;
