@@ -1,5 +1,6 @@
 import { appendValue, expectedNext } from "./appendValue.ts";
 import { behaviourAfter, behaviourBefore } from "./behaviour.ts";
+import { hasClusters } from "./clustering.ts";
 import { look } from "./look.ts";
 import { type LookState, openLookState } from "./lookState.ts";
 import { fromStored, type Monitor, toStored } from "./monitor.ts";
@@ -135,6 +136,7 @@ function makeNotice(
       looksUsed: state.looksUsed,
       looks: monitor.looks,
       falseAlarmRate: monitor.falseAlarmRate,
+      ...(hasClusters(state.reference) ? { caution: "clustered-shocks" } : {}),
     },
   };
 }

@@ -1,5 +1,9 @@
 import type { Reference } from "./reference.ts";
 
+/** Score that steady shocks hardly pass. */
+const tolerated = 1;
+const suspicious = 1.28;
+
 /** Lags summed; squares beyond three shocks are cut so that one wild value does not decide. */
 const lags = 5;
 const largestSquare = 9;
@@ -8,7 +12,7 @@ const largestSquare = 9;
  * How plainly large shocks follow large ones in the reference: the sum of the first five autocorrelations of its
  * squared residuals, standardised to about N(0, 1) for independent shocks (after McLeod and Li 1983, one-sided).
  */
-export function clusteringScore({ residuals, order, isGap }: Reference): number {
+function clusteringScore({ residuals, order, isGap }: Reference): number {
   const squares: number[] = [];
   for (let time = order; time < residuals.length; time++)
     if (!isGap[time]) squares.push(Math.min(residuals[time] ** 2, largestSquare));
@@ -28,5 +32,10 @@ export function clusteringScore({ residuals, order, isGap }: Reference): number 
  * little for it; clustered ones (GARCH .1, .8) score about two.
  */
 export function clusteringAllowance(reference: Reference): number {
-  return Math.max(0, clusteringScore(reference) - 1);
+  return Math.max(0, clusteringScore(reference) - tolerated);
+}
+
+/** Whether the shocks of a reference seem to come in clusters (one-sided, at 10 %): then the rate is a lower bound. */
+export function hasClusters(reference: Reference): boolean {
+  return clusteringScore(reference) > suspicious;
 }

@@ -26,6 +26,8 @@ export interface Evidence {
   readonly looks: number;
   /** Chance of any false notice over all `looks`. */
   readonly falseAlarmRate: number;
+  /** Large shocks came in clusters before, too: false notices are then more frequent than the rate says. */
+  readonly caution?: "clustered-shocks";
 }
 
 /** A lasting change. `index` counts values from the first the monitor was started with. */

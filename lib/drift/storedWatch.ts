@@ -30,6 +30,7 @@ const change = z.object({
     looksUsed: z.number(),
     looks: z.number(),
     falseAlarmRate: z.number(),
+    caution: z.optional(z.literal("clustered-shocks")),
   }),
 });
 

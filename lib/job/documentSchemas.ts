@@ -52,6 +52,7 @@ const finding = z.discriminatedUnion("code", [
       looksUsed: z.number(),
       looks: z.number(),
       falseAlarmRate: z.number(),
+      caution: z.optional(z.literal("clustered-shocks")),
     }),
   }),
   z.object({

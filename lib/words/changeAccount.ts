@@ -26,6 +26,11 @@ export function changeAccount(finding: ChangeFinding, speech: Speech, tell: Stat
       : `Kind: ${technical[finding.kind]} (${kindNames[finding.kind]}); no other kind fits nearly as well.`,
     `Date: ${name(change.period)}; interval ${name(change.low)} to ${name(change.high)}.`,
     `Evidence: statistic ${tell.size(evidence.statistic)} against a boundary of ${tell.size(evidence.boundary)}, at look ${evidence.looksUsed} of ${evidence.looks}; a steady series gives any notice over all ${evidence.looks} looks with probability ${percent}.`,
+    ...(evidence.caution === "clustered-shocks"
+      ? [
+          "Caution: large shocks seem to have come in clusters before, too; false notices are then up to three times as frequent as that.",
+        ]
+      : []),
     ...textTable([
       ["", "before", "after"],
       ["order", `${before.order}`, `${after.order}`],

@@ -1,0 +1,37 @@
+import { describe, expect, it } from "vitest";
+import { monitorSchema } from "../../lib/drift/storedWatch.ts";
+import { analystMessage } from "../../lib/words/analystMessage.ts";
+import type { RunFacts } from "../../lib/words/facts.ts";
+import { britishVoice, loansRun } from "../support/factsFixture.ts";
+
+/** The run with every change's evidence carrying the caution. */
+function cautious(run: RunFacts): RunFacts {
+  return JSON.parse(JSON.stringify(run), (key, value) =>
+    key === "evidence" ? { ...value, caution: "clustered-shocks" } : value,
+  ) as RunFacts;
+}
+
+describe("the analyst's notice", () => {
+  it("warns of false notices where large shocks came in clusters, and only there", () => {
+    const run = loansRun;
+    const says = (one: RunFacts) =>
+      analystMessage(one, britishVoice).lines.some((line) => /Caution: .*clusters/.test(line));
+    expect(says(run)).toBe(false);
+    expect(says(cautious(run))).toBe(true);
+  });
+
+  it("keeps the caution through the store", () => {
+    const evidence = monitorSchema.shape.change.def.innerType.shape.evidence;
+    const stored = {
+      statistic: 3,
+      boundary: 2,
+      looksUsed: 1,
+      looks: 52,
+      falseAlarmRate: 0.05,
+      caution: "clustered-shocks",
+    };
+    expect(evidence.parse(JSON.parse(JSON.stringify(stored)))).toEqual(stored);
+    const { caution: _caution, ...older } = stored;
+    expect(evidence.parse(older)).toEqual(older);
+  });
+});
