@@ -1,4 +1,4 @@
-import type { ComparisonFacts, ModelFacts } from "./facts.ts";
+import type { ComparisonFacts, ModelFacts, SeriesFacts } from "./facts.ts";
 import type { Speech } from "./speech.ts";
 import type { Statistics } from "./statistics.ts";
 import { textTable } from "./textTable.ts";
@@ -14,7 +14,13 @@ export function modelLine(model: ModelFacts, speech: Speech, tell: Statistics): 
     model.relation === "is"
       ? "it makes the forecast"
       : `one of an average, with weight ${tell.coefficient(model.weight)}`;
-  return `Model: autoregression of order ${model.order} on ${terms}; ${speech.write(model.observations, 1)} values; ${relation}.`;
+  return `Model: autoregression of order ${model.order} on ${terms}; ${speech.write(model.observations, 1)} values; ${relation}.${mixture(speech.facts)}`;
+}
+
+/** After a change the model still rests on both sides of it, until enough has come; its numbers lie between the two. */
+function mixture({ findings, model }: SeriesFacts): string {
+  const mixed = findings.some((one) => one.code === "change" && one.after.observations < model.observations);
+  return mixed ? " It rests on values from both sides of the change: what holds since stands above." : "";
 }
 
 /** Persistence, half-life with its 90 % interval, long-run level, shock size and rhythm, a line each. */
