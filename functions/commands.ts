@@ -21,7 +21,7 @@ const usage = `ebbwire: forecasts for every series in a store, and a note when s
   S is a folder or s3://bucket/prefix; T an ISO instant such as 2026-11-30T06:00:00Z (default: now)
   run also takes --workers N (threads; default: all processors but one), --replaying (an older T), and
   --allow-local-webhook (plain http to this machine, for tests)
-  exit codes: 0 done, 1 some table failed, 2 wrong use, 3 a delivery failed
+  exit codes: 0 done, 1 some table or the store failed, 2 wrong use, 3 a note was not delivered
 `;
 
 export interface CommandOptions {

@@ -52,5 +52,9 @@ export function summaryLines(summary: RunSummary, where: string): string[] {
 
 export function exitCodeOf(summary: RunSummary): number {
   if (summary.failed.length > 0 || summary.left.length > 0) return 1;
-  return summary.deliveries.some((delivery) => delivery.status === "undelivered") ? 3 : 0;
+  return summary.deliveries.some(
+    (delivery) => delivery.status === "undelivered" || delivery.status === "not-configured",
+  )
+    ? 3
+    : 0;
 }

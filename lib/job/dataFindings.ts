@@ -1,4 +1,4 @@
-import { compareReadings } from "../series/compareReadings.ts";
+import { compareReadings, type EarlierReading } from "../series/compareReadings.ts";
 import { periodStart } from "../series/periods.ts";
 import { periodsLate } from "../series/periodsLate.ts";
 import type { Reading } from "../series/reading.ts";
@@ -28,14 +28,23 @@ function lateness(series: Series, previous: StoredSeries | undefined, context: D
   return waited && !told ? [{ code: "no-new-values", since: lastPeriod }] : [];
 }
 
+/** The past as it was read, under the present meaning of an empty period: a change of settings is no revision. */
+function earlierReading({ facts }: StoredSeries, { emptyMeans }: TableSettings): EarlierReading {
+  const { start, values } = facts.history;
+  return {
+    period: facts.period,
+    start,
+    values: emptyMeans === "zero" ? values.map((value) => value ?? 0) : values,
+  };
+}
+
 /** What is to be said of the data themselves: lateness, revisions, a period left out because it is not over. */
 export function dataFindings(
   series: Series,
   previous: StoredSeries | undefined,
   context: DataContext,
 ): Finding[] {
-  const revisions =
-    previous && compareReadings({ period: previous.facts.period, ...previous.facts.history }, series);
+  const revisions = previous && compareReadings(earlierReading(previous, context.tableSettings), series);
   const unfinished = context.reading?.incompletePeriod ?? null;
   return [
     ...lateness(series, previous, context),

@@ -4,6 +4,7 @@ import { type EventColumn, eventColumns } from "../series/eventColumns.ts";
 import type { KnownEvent } from "../series/readEvents.ts";
 import type { Series } from "../series/series.ts";
 import type { Finding } from "../words/facts.ts";
+import { distinctEvents } from "./distinctEvents.ts";
 
 type EventFinding = Extract<Finding, { code: "event-effect" }>;
 
@@ -17,6 +18,8 @@ export interface EventAdjustment {
 
 /** An effect within two standard errors of nothing is taken for nothing: common practice. */
 const leastEvidence = 2;
+/** Fewer values leave nothing to learn an effect from. */
+const fewestValues = 20;
 
 /**
  * Effects of known events, estimated jointly with level, trend, season and autoregression by generalised least squares
@@ -30,10 +33,9 @@ export function adjustForEvents(
 ): EventAdjustment {
   const { values, period } = series;
   const unchanged = { values, coming: new Float64Array(context.horizon), findings: [] };
-  const columns = events.length > 0 ? eventColumns(events, series, context) : [];
-  if (columns.length === 0 || series.observed < 20 + 3 * columns.length) return unchanged;
-  const found = columns.filter((_, index) => index < series.observed / 10);
-  const effects = estimate(values, found, period);
+  const columns = events.length > 0 ? inGivenOrder(eventColumns(events, series, context), events) : [];
+  if (columns.length === 0 || series.observed < fewestValues) return unchanged;
+  const effects = estimate(values, columns, period);
   if (!effects) return unchanged;
   const told = effects.filter((one) => Math.abs(one.effect) > leastEvidence * one.standardError);
   const sumAt = (index: number) =>
@@ -50,23 +52,32 @@ export function adjustForEvents(
   };
 }
 
+/** As the events were given: those of the store's own files come before public holidays. */
+function inGivenOrder(columns: readonly EventColumn[], events: readonly KnownEvent[]): EventColumn[] {
+  const place = new Map<string, number>();
+  for (const { name } of events) if (!place.has(name)) place.set(name, place.size);
+  return [...columns].sort((a, b) => (place.get(a.name) ?? 0) - (place.get(b.name) ?? 0));
+}
+
 function estimate(values: Float64Array, columns: readonly EventColumn[], period: Series["period"]) {
   try {
     const { regressors, fit } = describeSeries(values, { period });
     const terms = regressors.length > 0 ? regressors : [new Float64Array(values.length).fill(1)];
-    const all = [...terms, ...columns.map((column) => column.values.subarray(0, values.length))];
+    // A tenth as many events as values at most, the owner's own before public holidays.
+    const distinct = distinctEvents(columns, terms, values).slice(0, Math.floor(values.length / 10));
+    const all = [...terms, ...distinct.map((column) => column.values.subarray(0, values.length))];
     const { regression } = fitAutoregression(values, {
       order: fit.order,
       method: "maximum-likelihood",
       regressors: all,
     });
-    return columns.map((column, index) => ({
+    return distinct.map((column, index) => ({
       column,
       effect: regression?.coefficients[terms.length + index] ?? 0,
       standardError: regression?.standardErrors[terms.length + index] ?? Number.POSITIVE_INFINITY,
     }));
   } catch (error) {
-    // Events that fall together, or on every period, cannot be told apart from the rest of the model.
+    // Too few values for any model, or all the same.
     if (error instanceof RangeError) return undefined;
     throw error;
   }

@@ -63,9 +63,10 @@ function vary(values: Float64Array): boolean {
  * half-life has an end.
  */
 function fadingOf(values: Float64Array, trend: boolean, halfLife: HalfLifeInterval): ModelFacts["fading"] {
-  if (!vary(values)) return "fades";
-  if (values.length < shortestTested || values.some(Number.isNaN))
-    return Number.isFinite(halfLife.high) ? "fades" : "cannot-tell";
+  const observed = values.filter((value) => !Number.isNaN(value));
+  if (observed.length < shortestTested || observed.every((value) => value === observed[0]))
+    return "cannot-tell";
+  if (observed.length < values.length) return Number.isFinite(halfLife.high) ? "fades" : "cannot-tell";
   return shockFading(values, { trend, halfLife }).verdict;
 }
 

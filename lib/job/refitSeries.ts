@@ -1,3 +1,4 @@
+import type { AutoregressiveFit, AutoregressiveProcess } from "../autoregression/fit.ts";
 import type { PastBreak } from "../drift/lastBreak.ts";
 import type { WatchResult } from "../drift/watchSeries.ts";
 import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
@@ -123,6 +124,7 @@ function seriesFacts(series: Series, task: SeriesTask, results: Results): Series
   const departing = departures(model, results.adjusted.values);
   const described = modelFacts(model, level, departing);
   const kept = Math.min(values.length, historyKept[series.period]);
+  const findings = seriesFindings(series, task, results);
   return {
     series: series.name,
     unit: task.tableSettings.unit ?? null,
@@ -138,9 +140,15 @@ function seriesFacts(series: Series, task: SeriesTask, results: Results): Series
     forecast: results.forecasts,
     model: described,
     comparison: previous ? comparisonFacts(previous.asOf, previous.stored.facts.model, described) : null,
-    attribution: attributionFacts(model, departing, forecast.point.length, level.value, periodOf),
+    attribution: attributionFacts(
+      sinceChange(model.fit, findings),
+      departing,
+      forecast.point.length,
+      level.value,
+      periodOf,
+    ),
     monitor: monitorFacts(results.watched.watch, periodOf),
-    findings: seriesFindings(series, task, results),
+    findings,
     trackRecord: trackRecord(results.track),
     backTest: {
       origins: backTest.origins,
@@ -148,6 +156,15 @@ function seriesFacts(series: Series, task: SeriesTask, results: Results): Series
       coverage80: orNull(backTest.coverage80),
     },
   };
+}
+
+/**
+ * The process by whose weights past shocks are followed: that of the describing model, or, while it is still a mixture
+ * of what was before and after a change of persistence, that of the behaviour since.
+ */
+function sinceChange(fit: AutoregressiveFit, findings: readonly Finding[]): AutoregressiveProcess {
+  const change = findings.find((one) => one.code === "change" && one.fresh && one.kind === "persistence");
+  return change?.code === "change" ? { ...fit, coefficients: change.after.coefficients } : fit;
 }
 
 function seriesFindings(series: Series, task: SeriesTask, results: Results): Finding[] {

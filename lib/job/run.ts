@@ -65,7 +65,7 @@ async function prepare(options: RunOptions) {
   const history = await readRunHistory(options.store, asOf, new Date(clock()));
   if (!options.replaying && history.newest !== undefined && history.newest > asOf)
     throw new OutdatedRunError(
-      `a run at ${history.newest} stands in ${options.store.address}, this one would be at ${asOf}; replay the past with --replaying, or leave out --as-of`,
+      `a run at ${history.newest} stands in ${options.store.address}, later than this one at ${asOf}: wait until then, or replay the past with --replaying`,
     );
   const undelivered = history.undelivered.filter((key) => key < runPrefix(asOf));
   return { clock, asOf, settings, undelivered };

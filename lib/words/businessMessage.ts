@@ -56,7 +56,7 @@ function restLines(hidden: readonly Ranked[], told: number, untold: RunFacts["un
   if (rest === 0) return [];
   const steady = hidden.filter((one) => one.attention < newsFrom).length + alsoSteady;
   const start = told > 0 ? "… and " : "";
-  if (steady === rest) return [`${start}${steady} steady.`];
+  if (steady === rest) return [told > 0 ? `${start}${steady} more, steady.` : `${steady} steady.`];
   return [
     `${start}${rest} more, ${rest - steady} of them with news${alsoNews > 0 ? "" : "; all stand in the report"}.`,
   ];

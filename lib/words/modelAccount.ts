@@ -36,7 +36,7 @@ export function meaningLines(model: ModelFacts, speech: Speech, tell: Statistics
   const spread =
     model.longRunStandardDeviation === null
       ? "; no bounded spread around it"
-      : `; standard deviation around it ${tell.size(model.longRunStandardDeviation)}${onScale}`;
+      : `; standard deviation around it ${tell.size(model.longRunStandardDeviation)}${inUnit}`;
   const fading = {
     fades: "the data say that shocks fade",
     permanent: "the data do not contradict permanent shocks",

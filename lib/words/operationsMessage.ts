@@ -41,7 +41,7 @@ export function operationsMessage(
           ]
         : []),
       ...(late.length > 0
-        ? [`Late data: ${list(late.map((one) => `${one.table.table}, ${one.facts.series}`))}.`]
+        ? [`Late: ${list(late.map((one) => `${one.table.table}, ${one.facts.series}`))}.`]
         : []),
       ...(noted.length > 0
         ? [

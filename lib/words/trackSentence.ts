@@ -7,7 +7,7 @@ export interface SharedRecord {
   readonly forecasts: number;
   readonly insideRange: number;
   readonly level: number;
-  /** Error against repeating the last figure, the geometric mean over series; `null` when no series allows it. */
+  /** Error against repeating the last figure, or the last season where there is one, the geometric mean over series; `null` when no series allows it. */
   readonly relativeError: number | null;
 }
 
@@ -35,7 +35,7 @@ export function sharedRecord(all: readonly SeriesFacts[]): SharedRecord | null {
   };
 }
 
-/** "So far 78 of 96 figures fell inside their range (80% is right); misses 25% smaller than by repeating the last figure." */
+/** "So far 78 of 96 figures fell inside their range (80% is right); misses 25% smaller than by repeating the past." */
 export function trackSentence(all: readonly SeriesFacts[], voice: Voice): string | null {
   const record = sharedRecord(all);
   if (!record) return null;
@@ -51,6 +51,6 @@ export function trackSentence(all: readonly SeriesFacts[], voice: Voice): string
 
 function missWords(ratio: number, percent: (percent: number) => string): string {
   const change = Math.round((ratio - 1) * 100);
-  if (Math.abs(change) < 3) return "misses are about as large as by repeating the last figure";
-  return `misses are ${percent(Math.abs(change))} ${change < 0 ? "smaller" : "larger"} than by repeating the last figure`;
+  if (Math.abs(change) < 3) return "misses are about as large as by repeating the past";
+  return `misses are ${percent(Math.abs(change))} ${change < 0 ? "smaller" : "larger"} than by repeating the past`;
 }

@@ -20,7 +20,7 @@ export function troubleLines(run: RunFacts, most = 4): string[] {
   const failed = run.failed.map(({ table, problems }) => {
     const worst = problems.find((one) => one.fatal) ?? problems[0];
     const why = worst ? ` ${problemText(worst)}` : "";
-    return `${plainName(table)} was not refitted; its earlier forecast stands.${why}`;
+    return `${plainName(table)} was not refitted; an earlier forecast stands as it was.${why}`;
   });
   const left =
     run.left.length > 0 ? [`Not reached in time: ${list(run.left)}; the retry goes on with them.`] : [];
@@ -47,8 +47,9 @@ export function list(names: readonly string[]): string {
 export function owedLines(run: RunFacts, written: (instant: string) => string): string[] {
   const times = [...new Set(run.undelivered.map((one) => one.asOf))];
   if (times.length === 0) return [];
-  if (times.length === 1) return [`The note of ${written(times[0])} could not be delivered before this one.`];
+  if (times.length === 1)
+    return [`The note of ${written(times[0])} could not be delivered then, and comes with this one.`];
   return [
-    `${times.length} earlier notes, the first of ${written(times[0])}, could not be delivered before this one.`,
+    `${times.length} earlier notes, the first of ${written(times[0])}, could not be delivered then, and come with this one.`,
   ];
 }

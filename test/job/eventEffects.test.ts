@@ -73,3 +73,29 @@ describe("known events", () => {
     expect(adjustForEvents(fairSeries(60), always, context).findings).toEqual([]);
   });
 });
+
+describe("events that always fall together", () => {
+  const name = (one: KnownEvent, other: string): KnownEvent => ({ ...one, name: other });
+
+  it("become one effect under both names, and leave the others theirs", () => {
+    const together = fairWeeks.flatMap((week) => [
+      name(fair(week), "Good Friday"),
+      name(fair(week), "Easter"),
+    ]);
+    const others = [10, 60, 110, 160].map((week) => name(fair(week), "sale"));
+    const { findings } = adjustForEvents(fairSeries(60), [...together, ...others], context);
+    expect(findings.map((finding) => finding.name)).toEqual(["Good Friday and Easter"]);
+    expect(Math.abs(findings[0].effect - 60)).toBeLessThan(3 * findings[0].standardError);
+  });
+
+  it("or are made up by two others leave those two theirs", () => {
+    const [early, late] = [fairWeeks.slice(0, 4), fairWeeks.slice(4)];
+    const events = [
+      ...early.map((week) => name(fair(week), "spring fair")),
+      ...late.map((week) => name(fair(week), "autumn fair")),
+      ...fairWeeks.map((week) => name(fair(week), "any fair")),
+    ];
+    const { findings } = adjustForEvents(fairSeries(60), events, context);
+    expect(findings.map((finding) => finding.name).sort()).toEqual(["autumn fair", "spring fair"]);
+  });
+});

@@ -194,7 +194,7 @@ describe("the note for operations", () => {
     expect(lines).toContain(
       "Not reached before time ran out: a, b. Running again with the same time goes on with them.",
     );
-    expect(lines).toContain("Late data: loans, Quay.");
+    expect(lines).toContain("Late: loans, Quay.");
     expect(lines).toContain("Undelivered: the note of 30 November 2026 at 06:00 to counter.");
   });
 });

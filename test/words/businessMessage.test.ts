@@ -32,7 +32,7 @@ describe("the business note", () => {
       "Mill: about 85 loans in the week of 7 December (71 to 99), about 700 over all 8 weeks (620 to 780). ▄▁▅▅▃██▆▃▇▇▅|▅▆▆▆▆▆▆▆",
       "Park: about 113 loans in the week of 7 December (95 to 131), about 950 over all 8 weeks (870 to 1,030). ▃██▅▂▇▇▄▁▆▆▃|▅▅▆▆▆▆▆▆",
       "In brackets the range that holds 80% of outcomes; bars: last 12 weeks | those to come.",
-      "So far 311 of 384 figures (81%) fell inside the range, where 80% should; misses are 25% smaller than by repeating the last figure.",
+      "So far 311 of 384 figures (81%) fell inside the range, where 80% should; misses are 25% smaller than by repeating the past.",
       "Statistical estimates: they can be wrong. Decisions where safety or much money hangs on them need a qualified person's judgement. Why, with pictures: runs/2026-12-07T06-00-00Z/report.html",
     ]);
   });
@@ -100,7 +100,7 @@ describe("the business note", () => {
     expect(title).toBe("12 tables: 1 new lasting change");
     expect(lines[0]).toMatch(/^town-8, Harbour: about 185 loans/);
     expect(lines[1]).toMatch(/^town-8, Harbour: shocks now lose half/);
-    expect(lines.some((line) => /^… and \d+ steady\.$/.test(line))).toBe(true);
+    expect(lines.some((line) => /^… and \d+ more, steady\.$/.test(line))).toBe(true);
   });
 
   it("gives news its room before steady series get theirs", () => {
@@ -124,7 +124,7 @@ describe("the business note", () => {
   it("with the quiet setting tells only what changed, and counts the rest", () => {
     const { lines } = businessMessage(loansRun, quietVoice);
     expect(lines.some((line) => line.startsWith("Mill"))).toBe(false);
-    expect(lines).toContain("… and 2 steady.");
+    expect(lines).toContain("… and 2 more, steady.");
     const calm = businessMessage(oneTable([steadyBranch("Mill", 1)]), quietVoice);
     expect(calm.title).toBe("loans: nothing has changed");
     expect(calm.lines[0]).toBe("1 steady.");
@@ -146,7 +146,7 @@ describe("the business note", () => {
     );
     expect(title).toBe("2 tables: 1 new lasting change, 1 one-off surprise, 1 table not read");
     expect(lines).toContain(
-      "calls was not refitted; its earlier forecast stands. line 14, column date: 31/02/2026 is no date. Correct the day.",
+      "calls was not refitted; an earlier forecast stands as it was. line 14, column date: 31/02/2026 is no date. Correct the day.",
     );
     expect(lines).toContain("Not reached in time: members; the retry goes on with them.");
   });
@@ -154,7 +154,9 @@ describe("the business note", () => {
   it("says first that an earlier note never arrived", () => {
     const undelivered = [{ asOf: "2026-11-30T06:00:00Z", webhook: "counter" }];
     const { lines } = businessMessage({ ...loansRun, undelivered }, britishVoice);
-    expect(lines[0]).toBe("The note of 30 November 2026 could not be delivered before this one.");
+    expect(lines[0]).toBe(
+      "The note of 30 November 2026 could not be delivered then, and comes with this one.",
+    );
   });
 
   it("puts the report under the owner's base address when there is one", () => {
