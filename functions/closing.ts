@@ -29,10 +29,7 @@ export async function runClosing(event: unknown, context: LambdaContext, cloud: 
     remainingMilliseconds: () => context.getRemainingTimeInMillis(),
     clock: cloud.clock,
     owner: context.awsRequestId,
+    startedAt: startedAt === undefined ? undefined : Date.parse(startedAt),
   });
-  const whole =
-    startedAt === undefined
-      ? summary
-      : { ...summary, durationMilliseconds: Math.max(0, cloud.clock() - Date.parse(startedAt)) };
-  return reportRun(cloud, log, whole, "fleet", because);
+  return reportRun(cloud, log, summary, "fleet", because);
 }

@@ -1,5 +1,4 @@
 import { readdir, readFile } from "node:fs/promises";
-import { sub } from "date-fns";
 import { demoTruths } from "../events/demo/truths.ts";
 import { readMessage } from "../lib/job/readBack.ts";
 import { replayRuns } from "../lib/job/replay.ts";
@@ -10,6 +9,7 @@ import { exitCodeOf, messageText, progressLine, say } from "./terminal.ts";
 const demoFolder = new URL("../events/demo/", import.meta.url);
 const address = "./demo-store";
 const weeks = 16;
+const week = 7 * 86_400_000;
 
 /** Lays the demo's tables and settings; a file that stands there already is left as it is. */
 async function layDemo(store: ObjectStore): Promise<void> {
@@ -26,7 +26,7 @@ export async function demoCommand(): Promise<number> {
   say(`A tool-lending library with four branches, in ${address}: its last ${weeks} weeks, run by run.`);
   const summaries = await replayRuns({
     store,
-    from: sub(until, { weeks: weeks - 1 }),
+    from: new Date(until.getTime() - (weeks - 1) * week),
     until,
     every: "week",
     progress: progressLine(),

@@ -29,10 +29,13 @@ export async function runOnceCommand(_words: readonly string[], options: Command
 export async function replayCommand(_words: readonly string[], options: CommandOptions): Promise<number> {
   if (!options.from) throw new UsageError("replay needs --from T");
   const store = storeOf(options.store);
+  const from = instantOf("from", options.from);
+  const until = instantOf("until", options.until);
+  if (from > until) throw new UsageError("--from must lie before --until (without it: before now)");
   const summaries = await replayRuns({
     store,
-    from: instantOf("from", options.from),
-    until: instantOf("until", options.until),
+    from,
+    until,
     every: periodOf(options.every ?? "week"),
     progress: progressLine(),
   });

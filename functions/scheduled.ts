@@ -73,8 +73,8 @@ async function runWithFleet(cloud: Cloud, log: Log, context: LambdaContext, asOf
   if (cloud.fleet === "always") return handOver(cloud, log, plan, "chosen for this deployment");
   if (!(await refitAlone(cloud, context, plan, settings)))
     return handOver(cloud, log, plan, "more work than one function has time for");
-  const summary = await closeRun({ ...runOptions(cloud, log, context, asOf), settings });
-  return finish(cloud, log, { ...summary, durationMilliseconds: cloud.clock() - began });
+  const summary = await closeRun({ ...runOptions(cloud, log, context, asOf), settings, startedAt: began });
+  return finish(cloud, log, summary);
 }
 
 /** Refits portion after portion; `false` as soon as the pace shows that the time will not do. */

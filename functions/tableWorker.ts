@@ -1,5 +1,6 @@
 import { parentPort, workerData } from "node:worker_threads";
 import { refitPortion } from "../lib/job/refit.ts";
+import { StoreError } from "../lib/store/objectStore.ts";
 import { openStore } from "../lib/store/openStore.ts";
 import type { WorkerAnswer, WorkerTask } from "./tableWorkers.ts";
 
@@ -11,7 +12,9 @@ parentPort?.on("message", async (task: WorkerTask) => {
   try {
     answer = { result: await refitPortion({ store, ...task }) };
   } catch (error) {
-    answer = { fault: error instanceof Error ? error.message : String(error) };
+    const fault = error instanceof Error ? error.message : String(error);
+    answer =
+      error instanceof StoreError ? { fault, store: { action: error.action, key: error.key } } : { fault };
   }
   parentPort?.postMessage(answer);
 });

@@ -22,7 +22,8 @@ export function storeOf(address: string | undefined): ObjectStore {
 export function instantOf(option: string, text: string | undefined): Date {
   if (text === undefined) return new Date();
   const date = new Date(text);
-  if (Number.isNaN(date.getTime()))
+  // A zone must be named: without one the same words would mean another instant on another machine.
+  if (!/^\d{4}-\d{2}-\d{2}T[\d:.]+(Z|[+-]\d{2}:?\d{2})$/.test(text) || Number.isNaN(date.getTime()))
     throw new UsageError(`--${option} takes an ISO instant such as 2026-11-30T06:00:00Z, not "${text}"`);
   return date;
 }

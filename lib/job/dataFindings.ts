@@ -10,22 +10,22 @@ import type { Settings } from "./settings.ts";
 
 interface DataContext {
   readonly asOf: string;
+  /** The table's own zone, or the store's. */
+  readonly timeZone: string;
   readonly settings: Settings;
   readonly tableSettings: TableSettings;
   readonly reading: Reading | null;
 }
 
 function lateness(series: Series, previous: StoredSeries | undefined, context: DataContext): Finding[] {
-  const { asOf, settings, tableSettings } = context;
+  const { asOf, timeZone, settings, tableSettings } = context;
   const lastPeriod = periodStart(series.start, series.period, series.values.length - 1);
-  const late = periodsLate(lastPeriod, series.period, asOf, settings.timeZone);
+  const late = periodsLate(lastPeriod, series.period, asOf, timeZone);
   if (late === 0) return [];
   if (late >= (tableSettings.staleAfter ?? settings.staleAfter))
     return [{ code: "stale", lastPeriod, periodsLate: late }];
-  // Said once: not again while nothing comes.
-  const told = previous?.facts.findings.some((finding) => finding.code === "no-new-values");
   const waited = previous !== undefined && previous.facts.lastPeriod === lastPeriod;
-  return waited && !told ? [{ code: "no-new-values", since: lastPeriod }] : [];
+  return waited ? [{ code: "no-new-values", since: lastPeriod }] : [];
 }
 
 /** The past as it was read, under the present meaning of an empty period: a change of settings is no revision. */

@@ -10,13 +10,16 @@ interface DeliveredDocument extends Versioned {
   readonly audience: DeliveryRecord["audience"];
 }
 
-/** A mark for the next run: this note is still owed. */
-export interface UndeliveredDocument extends DeliveredDocument {
+/** How a try ended; the next one may begin at once. */
+interface UndeliveredDocument extends DeliveredDocument {
   readonly reason: string;
 }
 
-/** One sender's right to post until an instant; a later one may follow when no proof came of it. */
-interface ClaimDocument extends Versioned {
+/**
+ * One sender's right to post until an instant; a later one may follow when no proof came of it. The first claim without
+ * a proof tells the next run what is owed, whatever became of the sender.
+ */
+export interface ClaimDocument extends DeliveredDocument {
   readonly owner: string;
   readonly untilMilliseconds: number;
 }
@@ -28,7 +31,7 @@ export interface Posting {
   /** Last part of their names: the audience, with the webhook's name where an audience has several. */
   readonly name: string;
   readonly document: DeliveredDocument;
-  /** Distinguishes this process from others at work on the same run. */
+  /** Names this process in its claims, for people who look. */
   readonly owner: string;
   /** The longest a post may take. */
   readonly leaseMilliseconds: number;
@@ -59,7 +62,7 @@ export async function deliverOnce(posting: Posting): Promise<Pick<DeliveryRecord
     if (await readDocument(store, proofKey)) return { status: "already-delivered" };
     if (await readDocument(store, markKey)) continue; // this try is over; the note is still owed
     const own: ClaimDocument = {
-      schema: 1,
+      ...posting.document,
       owner: posting.owner,
       untilMilliseconds: clock() + posting.leaseMilliseconds,
     };

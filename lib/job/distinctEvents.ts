@@ -3,6 +3,13 @@ import type { EventColumn } from "../series/eventColumns.ts";
 /** What is left of a column below this share of it is rounding: it says nothing that the others do not. */
 const leastShare = 1e-6;
 
+/** Two events with one effect; in the coming periods either brings it. */
+const joined = (one: EventColumn, other: EventColumn): EventColumn => ({
+  ...one,
+  name: `${one.name} and ${other.name}`,
+  values: one.values.map((value, time) => Math.max(value, other.values[time])),
+});
+
 /**
  * Events whose effects can be told apart. Those that always fall in the same periods (Good Friday and Easter Sunday, by
  * the week) become one, named after all of them; one that the regression `terms` and the events before it make up between
@@ -18,7 +25,7 @@ export function distinctEvents(
   for (const column of columns) {
     const key = seen.map((time) => column.values[time]).join();
     const same = together.get(key);
-    together.set(key, same ? { ...same, name: `${same.name} and ${column.name}` } : column);
+    together.set(key, same ? joined(same, column) : column);
   }
   const directions: number[][] = [];
   /** Takes the earlier directions off a column; adds what is left as a direction, if anything is. */

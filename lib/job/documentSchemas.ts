@@ -86,6 +86,7 @@ const finding = z.discriminatedUnion("code", [
     name: z.string(),
     effect: z.number(),
     standardError: z.number(),
+    coming: z.array(z.object({ period, amount: z.number() })),
   }),
 ]) satisfies z.ZodMiniType<Finding>;
 
@@ -200,6 +201,7 @@ const problem = z.object({
 const storedSeries = z.object({
   facts,
   digest: z.string(),
+  watchOrigin: z.string(),
   watch: z.unknown(),
   track: z.object({
     level: z.number(),

@@ -29,7 +29,13 @@ const fewestValues = 20;
 export function adjustForEvents(
   series: Series,
   events: readonly KnownEvent[],
-  context: { readonly table: string; readonly horizon: number; readonly timeZone: string },
+  context: {
+    readonly table: string;
+    readonly horizon: number;
+    readonly timeZone: string;
+    /** Names the coming periods, 0 the next. */
+    readonly periodOf: (ahead: number) => string;
+  },
 ): EventAdjustment {
   const { values, period } = series;
   const unchanged = { values, coming: new Float64Array(context.horizon), findings: [] };
@@ -48,8 +54,16 @@ export function adjustForEvents(
       name: column.name,
       effect,
       standardError,
+      coming: comingOf(column.values.subarray(values.length), effect, context.periodOf),
     })),
   };
+}
+
+/** The coming periods an event falls in. */
+function comingOf(shares: Float64Array, effect: number, periodOf: (ahead: number) => string) {
+  return Array.from(shares.keys())
+    .filter((ahead) => shares[ahead] !== 0)
+    .map((ahead) => ({ period: periodOf(ahead), amount: effect * shares[ahead] }));
 }
 
 /** As the events were given: those of the store's own files come before public holidays. */

@@ -10,6 +10,19 @@ const eventsPrefix = "events/";
 /** Public holidays are taken from so many years before a run to so many after it. */
 const yearsAround = { before: 30, after: 5 };
 
+/** The last answer: a worker asks again for every portion of a run. */
+let lastHolidays:
+  | { readonly country: string; readonly year: number; readonly events: KnownEvent[] }
+  | undefined;
+
+async function holidaysAround(country: string, year: number): Promise<KnownEvent[]> {
+  if (lastHolidays?.country !== country || lastHolidays.year !== year) {
+    const events = await publicHolidays(country, year - yearsAround.before, year + yearsAround.after);
+    lastHolidays = { country, year, events };
+  }
+  return lastHolidays.events;
+}
+
 /**
  * The known events of a store, `events/<name>.csv`, and the files that cannot be used. A row with a bad date is left
  * out (`check` names it). With a country set its public holidays are among the events.
@@ -34,7 +47,7 @@ export async function loadEvents(
   if (country === undefined) return { events, refused };
   const year = Number(asOf.slice(0, 4));
   try {
-    events.push(...(await publicHolidays(country, year - yearsAround.before, year + yearsAround.after)));
+    events.push(...(await holidaysAround(country, year)));
   } catch (error) {
     if (!(error instanceof RangeError)) throw error;
     const remedy = "use an ISO 3166 code such as PT or DE-BY, or take country out of the settings";

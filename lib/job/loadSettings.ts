@@ -2,7 +2,7 @@ import type { Problem } from "../series/series.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
 import { decodeText } from "./documents.ts";
 import { settingsKey } from "./keys.ts";
-import { parseSettings, type Settings } from "./settings.ts";
+import { parseSettings, type Settings, type SettingsInput } from "./settings.ts";
 
 /** Settings that cannot be used: every problem at once. */
 export class SettingsError extends Error {
@@ -12,6 +12,16 @@ export class SettingsError extends Error {
     super(problems.map((problem) => `${problem.message}; ${problem.remedy}`).join("\n"));
     this.problems = problems;
   }
+}
+
+/**
+ * Settings given by a program, checked and completed like those of a file.
+ * @throws SettingsError listing every problem
+ */
+export function completeSettings(input: SettingsInput): Settings {
+  const { settings, problems } = parseSettings(JSON.stringify(input));
+  if (problems.some((problem) => problem.fatal)) throw new SettingsError(problems);
+  return settings;
 }
 
 /**

@@ -10,6 +10,8 @@ export interface StoredSeries {
   readonly facts: SeriesFacts;
   /** Names the values it was made from. */
   readonly digest: string;
+  /** Start of the period from which the watch counts, and so the step and the first day of its periods. */
+  readonly watchOrigin: string;
   /** State of the drift room; read back through its own schema. */
   readonly watch: unknown;
   readonly track: TrackState;

@@ -1,5 +1,5 @@
 import type { ObjectStore } from "../store/objectStore.ts";
-import type { UndeliveredDocument } from "./deliverOnce.ts";
+import type { ClaimDocument } from "./deliverOnce.ts";
 import { readDocument } from "./documents.ts";
 import { type MessageDocument, partName, readMessageParts } from "./messages.ts";
 import { postingName, type Webhook } from "./webhooks.ts";
@@ -14,23 +14,23 @@ export interface OwedMessage {
 /** At most this many old notes go out with a new one: a receiver back after months is not flooded. */
 const mostOwed = 5;
 
-/** Reads the messages behind undelivered marks, oldest first; those whose webhook is gone from settings are let be. */
+/** Reads the messages behind claims without proof, oldest first; those whose webhook is gone from settings are let be. */
 export async function readOwedMessages(
   store: ObjectStore,
   marks: readonly string[],
   webhooks: readonly Webhook[],
 ): Promise<OwedMessage[]> {
   const owed: OwedMessage[] = [];
-  for (const key of [...marks].sort().slice(-mostOwed)) {
-    const mark = await readDocument<UndeliveredDocument>(store, key);
+  for (const key of [...marks].sort()) {
+    const mark = await readDocument<ClaimDocument>(store, key);
     const webhook = webhooks.find((one) => one.name === mark?.webhook);
     if (!mark || !webhook) continue;
     const parts = await readMessageParts(store, mark.asOf, mark.audience);
     for (const [index, message] of parts.entries()) {
       const part = partName(mark.audience, index + 1);
-      if (key.endsWith(`/undelivered-${postingName(webhook, webhooks, part)}.json`))
+      if (key.endsWith(`/delivering-${postingName(webhook, webhooks, part)}.json`))
         owed.push({ message, part, webhook });
     }
   }
-  return owed;
+  return owed.slice(-mostOwed);
 }

@@ -47,6 +47,15 @@ interface Calendar {
   readonly indexOf: (period: string) => number;
 }
 
+/** Another step, or weeks that begin on another day: nothing of an earlier account can be gone on from. */
+export function sameCalendar(series: Series, { facts, watchOrigin }: StoredSeries): boolean {
+  if (facts.period !== series.period) return false;
+  return (
+    periodStart(watchOrigin, series.period, periodIndex(watchOrigin, series.period, series.start)) ===
+    series.start
+  );
+}
+
 /** Refits one series and gathers all that is known of it now. Depends on nothing but its arguments. */
 export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
   const { previous, table, settings, tableSettings } = task;
@@ -55,30 +64,40 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     periodOf: (index) => periodStart(series.start, series.period, index),
     indexOf: (period) => periodIndex(series.start, series.period, period),
   };
-  const adjusted = adjustForEvents(series, task.events, { table, horizon, timeZone: settings.timeZone });
+  const adjusted = adjustForEvents(series, task.events, {
+    table,
+    horizon,
+    timeZone: tableSettings.timeZone ?? settings.timeZone,
+    periodOf: (ahead) => calendar.periodOf(series.values.length + ahead),
+  });
+  const watchOrigin = previous?.stored.watchOrigin ?? series.start;
+  const firstIndex = periodIndex(watchOrigin, series.period, series.start);
   const watched = advanceWatch(previous?.stored.watch, {
+    firstIndex,
     values: adjusted.values,
     period: series.period,
     falseAlarmRate: settings.falseAlarmRate,
     seed: seedOf(table, series.name),
   });
+  const bounds = { low: tableSettings.atLeast, high: tableSettings.atMost };
   const forecast = forecastSeries(adjusted.values, {
     horizon,
     levels: [...settings.levels].sort((a, b) => a - b),
     period: series.period,
     seed: seedOf(table, series.name, task.asOf),
-    bounds: { low: tableSettings.atLeast, high: tableSettings.atMost },
+    bounds,
     limits: tableSettings.limits,
     changedAt: watched.changedAt,
   });
   const periods = Array.from({ length: horizon }, (_, step) =>
     calendar.periodOf(series.values.length + step),
   );
-  const forecasts = forecastFacts(forecast, periods, adjusted.coming);
+  const forecasts = forecastFacts(forecast, periods, { coming: adjusted.coming, bounds });
   const track = nextTrack(series, previous?.stored.track, forecasts, forecast.model.season, calendar);
   return {
-    facts: seriesFacts(series, task, { adjusted, watched, forecast, forecasts, track, calendar }),
+    facts: seriesFacts(series, task, { adjusted, watched, firstIndex, forecast, forecasts, track, calendar }),
     digest: seriesDigest(series, task),
+    watchOrigin,
     watch: watched.watch,
     track,
   };
@@ -103,6 +122,7 @@ function nextTrack(
 interface Results {
   readonly adjusted: EventAdjustment;
   readonly watched: WatchResult;
+  readonly firstIndex: number;
   readonly forecast: Forecast;
   readonly forecasts: SeriesFacts["forecast"];
   readonly track: TrackState;
@@ -147,7 +167,7 @@ function seriesFacts(series: Series, task: SeriesTask, results: Results): Series
       level.value,
       periodOf,
     ),
-    monitor: monitorFacts(results.watched.watch, periodOf),
+    monitor: monitorFacts(results.watched.watch, results.firstIndex, periodOf),
     findings,
     trackRecord: trackRecord(results.track),
     backTest: {

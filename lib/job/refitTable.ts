@@ -18,7 +18,7 @@ import {
   type StoredSeries,
 } from "./modelDocument.ts";
 import { openSource } from "./openSource.ts";
-import { refitSeries, type SeriesTask } from "./refitSeries.ts";
+import { refitSeries, type SeriesTask, sameCalendar } from "./refitSeries.ts";
 import { seriesDigest } from "./seriesDigest.ts";
 import type { Settings } from "./settings.ts";
 
@@ -60,11 +60,33 @@ function refitOrCarry(
   task: Omit<SeriesTask, "dataFindings">,
   reading: Reading | null,
 ): StoredSeries {
-  const { previous, settings, tableSettings, asOf } = task;
-  const findings = dataFindings(series, previous?.stored, { asOf, settings, tableSettings, reading });
+  const { settings, tableSettings, asOf } = task;
+  const previous = task.previous && sameCalendar(series, task.previous.stored) ? task.previous : undefined;
+  const findings = dataFindings(series, previous?.stored, {
+    asOf,
+    timeZone: tableSettings.timeZone ?? settings.timeZone,
+    settings,
+    tableSettings,
+    reading,
+  });
   if (previous && previous.stored.digest === seriesDigest(series, task))
     return carryOver(previous.stored, findings);
-  return refitSeries(series, { ...task, dataFindings: findings });
+  return refitSeries(series, { ...task, previous, dataFindings: findings });
+}
+
+/** Series of the last run that the table no longer has: renamed or taken out, their watch and record end. */
+function goneSeries(table: string, earlier: readonly string[], series: readonly Series[]): Problem[] {
+  const present = new Set(series.map((one) => one.name));
+  return earlier
+    .filter((name) => !present.has(name))
+    .map((name) => ({
+      table,
+      column: name,
+      code: "series-gone",
+      message: `the series ${JSON.stringify(name)} of the last run is not in the table any more`,
+      remedy: "nothing, if that is meant; a renamed series begins anew under its new name",
+      fatal: false,
+    }));
 }
 
 async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutcome> {
@@ -74,7 +96,7 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     const message = "the file was there when the run began and is gone";
     return fail(task, [{ table, code: "gone", message, remedy: "put it back", fatal: true }]);
   }
-  const tableSettings = settings.tables[table] ?? {};
+  const tableSettings = Object.hasOwn(settings.tables, table) ? settings.tables[table] : {};
   const { timeZone, locale } = settings;
   const { series, problems, reading } = await readTableStream(source.pieces, tableSettings, {
     asOf,
@@ -102,7 +124,7 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     asOf,
     source: source.digest(),
     reading,
-    problems,
+    problems: [...problems, ...goneSeries(table, [...earlier.keys()], series)],
     series: falseDiscoveryRate === undefined ? accounts : tellDiscoveries(accounts, falseDiscoveryRate),
   };
   const model = await createDocument(store, modelKey(table, asOf), made);

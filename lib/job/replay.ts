@@ -1,17 +1,20 @@
-import { addDays, addHours, addMonths, addQuarters, addWeeks, addYears } from "date-fns";
 import type { Period } from "../series/series.ts";
 import { asOfText } from "./keys.ts";
 import { type RunOptions, runJob } from "./run.ts";
 import type { RunSummary } from "./summary.ts";
 
-const add: Record<Period, (date: Date, amount: number) => Date> = {
-  hour: addHours,
-  day: addDays,
-  week: addWeeks,
-  month: addMonths,
-  quarter: addQuarters,
-  year: addYears,
-};
+const millisecondsIn = { hour: 3_600_000, day: 86_400_000, week: 7 * 86_400_000 } as const;
+const monthsIn = { month: 1, quarter: 3, year: 12 } as const;
+
+/** Steps on the clock of Greenwich, the same on every machine; a day of the month that is missing becomes the last. */
+function stepFrom(first: Date, every: Period, steps: number): Date {
+  if (every === "hour" || every === "day" || every === "week")
+    return new Date(first.getTime() + steps * millisecondsIn[every]);
+  const moved = new Date(first);
+  moved.setUTCMonth(first.getUTCMonth() + steps * monthsIn[every]);
+  if (moved.getUTCDate() !== first.getUTCDate()) moved.setUTCDate(0);
+  return moved;
+}
 
 /**
  * The instants of due runs, `from` first, one `every` step apart, none after `until`. Counted from `from`, so that
@@ -26,7 +29,7 @@ export function dueRuns(from: Date | string, until: Date | string, every: Period
     throw new RangeError(`replay must start before its end: ${asOfText(from)} is after ${asOfText(until)}`);
   const instants: string[] = [];
   for (let step = 0; ; step++) {
-    const instant = add[every](first, step);
+    const instant = stepFrom(first, every, step);
     if (instant > last) return instants;
     instants.push(asOfText(instant));
   }

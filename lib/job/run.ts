@@ -1,27 +1,28 @@
 import { randomUUID } from "node:crypto";
 import { setTimeout as sleepFor } from "node:timers/promises";
 import type { ObjectStore } from "../store/objectStore.ts";
-import type { RunFacts } from "../words/facts.ts";
+import type { Finding, RunFacts, SeriesFacts } from "../words/facts.ts";
+import { isNewOrConfirmed } from "../words/freshness.ts";
 import { closeTables } from "./close.ts";
 import { encodeDocument, readDocument } from "./documents.ts";
 import { asOfText, runPrefix, summaryKey } from "./keys.ts";
-import { loadSettings } from "./loadSettings.ts";
+import { completeSettings, loadSettings } from "./loadSettings.ts";
 import { planRun } from "./plan.ts";
 import type { Progress } from "./progress.ts";
 import { type RefitOptions, refitPortion } from "./refit.ts";
 import { readRunHistory } from "./runHistory.ts";
-import type { Settings } from "./settings.ts";
+import type { Settings, SettingsInput } from "./settings.ts";
 import type { DeliveryRecord, LastingSummary, Plan, PortionResult, RunSummary } from "./summary.ts";
-import type { Secrets, Webhook } from "./webhooks.ts";
+import { completeWebhook, type Secrets, type WebhookInput } from "./webhooks.ts";
 
 export interface RunOptions {
   readonly store: ObjectStore;
   /** The instant the run stands at: only periods that were complete by then count. */
   readonly asOf: Date | string;
-  /** Instead of the store's `settings.json`. */
-  readonly settings?: Settings;
+  /** Instead of the store's `settings.json`; what is left out has its default. */
+  readonly settings?: SettingsInput;
   /** Instead of the settings' webhooks; an address may stand here itself. */
-  readonly webhooks?: readonly Webhook[];
+  readonly webhooks?: readonly WebhookInput[];
   /** Looks up `env:NAME` and `secret:NAME`; without it such webhooks are not configured. */
   readonly secrets?: Secrets;
   /** Lets webhooks be plain http on this machine: for tests and demos. */
@@ -32,6 +33,8 @@ export interface RunOptions {
   readonly remainingMilliseconds?: () => number;
   /** Milliseconds since 1970. */
   readonly clock?: () => number;
+  /** For `closeRun`: when the run began, by the same clock. */
+  readonly startedAt?: number;
   readonly sleep?: (milliseconds: number) => Promise<void>;
   /** Instead of refitting in this thread. */
   readonly refit?: (options: RefitOptions) => Promise<PortionResult>;
@@ -61,7 +64,7 @@ export class OutdatedRunError extends Error {
 async function prepare(options: RunOptions) {
   const clock = options.clock ?? Date.now;
   const asOf = asOfText(options.asOf);
-  const settings = options.settings ?? (await loadSettings(options.store));
+  const settings = options.settings ? completeSettings(options.settings) : await loadSettings(options.store);
   const history = await readRunHistory(options.store, asOf, new Date(clock()));
   if (!options.replaying && history.newest !== undefined && history.newest > asOf)
     throw new OutdatedRunError(
@@ -95,7 +98,7 @@ export async function runJob(options: RunOptions): Promise<RunSummary> {
 export async function closeRun(options: RunOptions): Promise<RunSummary> {
   const { clock, asOf, settings, undelivered } = await prepare({ ...options, replaying: true });
   const plan = await planRun({ store: options.store, asOf, settings });
-  return close({ ...options, settings }, plan, clock, clock(), undelivered);
+  return close({ ...options, settings }, plan, clock, options.startedAt ?? clock(), undelivered);
 }
 
 async function close(
@@ -106,19 +109,17 @@ async function close(
   undelivered: readonly string[],
 ): Promise<RunSummary> {
   const { store, settings } = options;
-  // A whole run is summed up once; after that neither its report nor its summary is touched again.
   const standing = await readDocument<LastingSummary>(store, summaryKey(plan.asOf));
-  const reported = standing !== undefined && standing.left.length === 0;
-  const { facts, report, deliveries } = await closeTables({
+  const { facts, report, deliveries, reported } = await closeTables({
     store,
     plan,
     settings,
     undelivered,
-    reported,
+    standing,
     elapsedMilliseconds: () => clock() - began,
     posting: {
       store,
-      webhooks: options.webhooks ?? settings.webhooks,
+      webhooks: options.webhooks?.map(completeWebhook) ?? settings.webhooks,
       secrets: options.secrets,
       allowLocal: options.allowLocalWebhooks ?? false,
       quietWhenSteady: settings.quietWhenSteady,
@@ -141,7 +142,9 @@ function summarise(
   deliveries: readonly DeliveryRecord[],
   durationMilliseconds: number,
 ): RunSummary {
-  const findings = facts.tables.flatMap((table) => table.series.flatMap((series) => series.findings));
+  const all = facts.tables.flatMap((table) => table.series);
+  const count = (told: (facts: SeriesFacts, finding: Finding) => boolean) =>
+    all.reduce((sum, series) => sum + series.findings.filter((finding) => told(series, finding)).length, 0);
   const { untold = { steady: 0, news: 0 } } = facts;
   const isStale = (table: RunFacts["tables"][number]) =>
     table.series.some((series) => series.findings.some((finding) => finding.code === "stale"));
@@ -150,8 +153,8 @@ function summarise(
     asOf: facts.asOf,
     tables: facts.tables.length,
     series: facts.tables.reduce((sum, table) => sum + table.series.length, untold.steady + untold.news),
-    notices: findings.filter((finding) => finding.code === "change" && finding.fresh).length,
-    surprises: findings.filter((finding) => finding.code === "surprise").length,
+    notices: count((facts, finding) => finding.code === "change" && isNewOrConfirmed(finding, facts)),
+    surprises: count((facts, finding) => finding.code === "surprise" && finding.period === facts.lastPeriod),
     stale: facts.tables.filter(isStale).map((table) => table.table),
     failed: facts.failed,
     left: facts.left,

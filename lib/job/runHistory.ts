@@ -6,7 +6,7 @@ import { asOfFromKey } from "./keys.ts";
 export interface RunHistory {
   /** Instant of the newest run with a plan, if any. */
   readonly newest: string | undefined;
-  /** Notes marked undelivered and not delivered since: the key of the first mark, `undelivered-<name>.json`. */
+  /** Notes that a sender claimed and that have no proof of delivery: the key of the first claim. */
   readonly undelivered: readonly string[];
 }
 
@@ -37,7 +37,7 @@ export async function readRunHistory(store: ObjectStore, asOf: string, now: Date
     .sort()
     .at(-1);
   const undelivered = keys.filter(
-    (key) => /\/undelivered-[^/.]+\.json$/.test(key) && !all.has(key.replace("/undelivered-", "/delivered-")),
+    (key) => /\/delivering-[^/.]+\.json$/.test(key) && !all.has(key.replace("/delivering-", "/delivered-")),
   );
   return { newest, undelivered };
 }

@@ -112,6 +112,9 @@ export const settingsSchema = z.strictObject({
 export type Settings = z.infer<typeof settingsSchema>;
 export type WebhookSettings = Settings["webhooks"][number];
 
+/** Settings as a person or program writes them: every key may be left out. */
+export type SettingsInput = z.input<typeof settingsSchema>;
+
 export const defaultSettings: Settings = settingsSchema.parse({});
 
 /** The keys the schema knows at a path. */

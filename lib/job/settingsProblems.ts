@@ -28,7 +28,8 @@ function valueAt(value: unknown, path: readonly PropertyKey[]): unknown {
 
 /** A value as it may be shown. What may be a secret is not. */
 function shown(value: unknown, path: readonly PropertyKey[]): string {
-  if (path.at(-1) === "address" || path.at(-1) === "signingKey") return "what stands there";
+  const harmless = path.at(-1) === "audience" || path.at(-1) === "body";
+  if (path[0] === "webhooks" && !harmless) return "what stands there";
   const text = JSON.stringify(value) ?? "nothing";
   return text.length > 40 ? `${text.slice(0, 39)}…` : text;
 }
@@ -118,7 +119,8 @@ export function problemOfSyntax(text: string, error: Error): Problem {
   const position = /position (\d+)/.exec(error.message)?.[1];
   const until = position === undefined ? text : text.slice(0, Number(position));
   const line = until.split("\n").length;
-  const reason = error.message.replace(/ in JSON at position.*| \(line.*|, ".*is not valid JSON/, "");
+  // Never the engine's own words in full: they quote the text, and an address may stand in it.
+  const reason = /^(Unexpected end|Unexpected token|Expected|Bad)/.exec(error.message)?.[0] ?? "unreadable";
   const comma = /,\s*[}\]]/.test(text) ? "take away the comma before the closing bracket" : undefined;
   return {
     table,

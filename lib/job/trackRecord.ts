@@ -24,6 +24,9 @@ export interface TrackState {
   readonly pending: readonly PendingForecast[];
 }
 
+/** Steps ahead that are scored: what is open grows with their square. */
+const stepsScored = 26;
+
 const nothing: StepScore = { forecasts: 0, inside: 0, absoluteError: 0, naiveAbsoluteError: 0 };
 
 /** Scores every pending forecast whose value has come. `valueAt` gives `NaN` for a gap, `undefined` for the future. */
@@ -58,7 +61,8 @@ export function rememberForecasts(
   const interval = forecast.intervals[0];
   const kept =
     state && state.level === interval.level ? state : { level: interval.level, steps: [], pending: [] };
-  const made = forecast.periods.map((period, index) => ({
+  const open = new Set(kept.pending.map(({ period, step }) => `${step} ${period}`));
+  const made = forecast.periods.slice(0, stepsScored).map((period, index) => ({
     period,
     step: index + 1,
     point: forecast.point[index],
@@ -66,7 +70,9 @@ export function rememberForecasts(
     high: interval.high[index],
     naive: naive[index],
   }));
-  return { ...kept, pending: [...kept.pending, ...made] };
+  // A refit without new values makes the same forecast again: it counts once.
+  const fresh = made.filter(({ period, step }) => !open.has(`${step} ${period}`));
+  return { ...kept, pending: [...kept.pending, ...fresh] };
 }
 
 /** The record in words' terms, or `null` while nothing has been scored. */

@@ -31,6 +31,8 @@ export interface WatchTask {
   readonly falseAlarmRate: number;
   readonly period: Period;
   readonly seed: number;
+  /** Place of the first value, counted from where the watch began to count: a rolling export moves it on. */
+  readonly firstIndex: number;
 }
 
 /** Trend and season that the describing model finds: they become columns of the reference. */
@@ -59,6 +61,7 @@ export function advanceWatch(stored: unknown, task: WatchTask): WatchResult {
     seed: task.seed,
     trend,
     season,
+    firstIndex: task.firstIndex,
   };
   if (previous) return watchSeries(previous, task.values, options);
   const before = task.values.subarray(0, Math.max(0, task.values.length - lookedBackOn));
@@ -68,11 +71,15 @@ export function advanceWatch(stored: unknown, task: WatchTask): WatchResult {
 }
 
 /** The monitor's paths and state for pictures; `periodOf` names the period of a place in the series. */
-export function monitorFacts(watch: Watch, periodOf: (index: number) => string): MonitorFacts | null {
+export function monitorFacts(
+  watch: Watch,
+  firstIndex: number,
+  periodOf: (index: number) => string,
+): MonitorFacts | null {
   const { monitor } = watch;
   if (!monitor) return null;
   return {
-    since: periodOf(watch.monitorStart + monitor.reference.length),
+    since: periodOf(watch.monitorStart + monitor.reference.length - firstIndex),
     looksUsed: monitor.looksUsed,
     looks: monitor.looks,
     falseAlarmRate: monitor.falseAlarmRate,

@@ -35,6 +35,8 @@ export function compareReadings(earlier: EarlierReading, series: Series): Revisi
   let first = -1;
   let largest = { index: -1, size: -1, before: null as number | null, after: null as number | null };
   for (let index = 0; index < values.length; index++) {
+    // A row that left the front of a rolling export is not a value that went.
+    if (index + offset < 0) continue;
     const before = values[index];
     const now = series.values[index + offset] ?? Number.NaN;
     const after = Number.isNaN(now) ? null : now;

@@ -56,4 +56,6 @@ export type Finding =
       readonly name: string;
       readonly effect: number;
       readonly standardError: number;
+      /** What it adds to coming periods. */
+      readonly coming: readonly { readonly period: string; readonly amount: number }[];
     };

@@ -82,6 +82,18 @@ export function eventSentence(finding: Of<"event-effect">, name: string, speech:
   return `"${name}" ${finding.effect < 0 ? "takes off" : "adds"} about ${size}${unsure}`;
 }
 
+/** "fair adds about 510 loans in the week of 14 December, counted in above"; `null` when none is ahead. */
+export function comingEventSentence(
+  finding: Of<"event-effect">,
+  name: string,
+  speech: Speech,
+): string | null {
+  const next = finding.coming[0];
+  if (!next || next.amount === 0) return null;
+  const what = next.amount < 0 ? "takes off" : "adds";
+  return `"${name}" ${what} about ${speech.roughly(Math.abs(next.amount))} ${speech.periods.when(next.period)}; it is counted in`;
+}
+
 /** What the forecaster decided that a reader should know; `null` for what concerns analysts alone. */
 export function forecastNoteSentence(finding: Of<"forecast-note">, speech: Speech): string | null {
   const { note } = finding;

@@ -4,6 +4,7 @@ import type { Finding } from "./facts.ts";
 import { bars, barsPast, chanceSentences, nextSentence, totalSentence } from "./forecastSentences.ts";
 import { fits, sentence } from "./lineWidth.ts";
 import {
+  comingEventSentence,
   forecastNoteSentence,
   gapsSentence,
   revisedSentence,
@@ -11,6 +12,7 @@ import {
   surpriseRemainder,
   surpriseSentence,
 } from "./otherFindings.ts";
+import { plainName } from "./plainText.ts";
 import { remainderSentence } from "./remainder.ts";
 import type { Speech } from "./speech.ts";
 
@@ -81,6 +83,8 @@ function said(finding: Finding, speech: Speech): [number, string][] {
       return line(rank.small, revisedSentence(finding, speech));
     case "gaps":
       return isRecent(finding.latest, speech) ? line(rank.small, gapsSentence(finding, speech)) : [];
+    case "event-effect":
+      return line(rank.chance, comingEventSentence(finding, plainName(finding.name, 40), speech));
     case "forecast-note":
       return forAnalysts.has(finding.note.code)
         ? []

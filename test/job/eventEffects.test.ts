@@ -28,7 +28,12 @@ const fair = (week: number): KnownEvent => {
   const from = periodStart(start, "week", week);
   return { name: "fair", from, until: periodStart(from, "day", 6), tables: null };
 };
-const context = { table: "loans", horizon: 4, timeZone: "UTC" };
+const context = {
+  table: "loans",
+  horizon: 4,
+  timeZone: "UTC",
+  periodOf: (ahead: number) => periodStart(start, "week", weeks + ahead),
+};
 const r = withR();
 
 describe("known events", () => {
@@ -54,6 +59,9 @@ describe("known events", () => {
     expect(values[20]).toBeCloseTo(series.values[20] - findings[0].effect, 9);
     expect(Array.from(coming, (amount) => amount !== 0)).toEqual([false, true, false, false]);
     expect(coming[1]).toBeCloseTo(findings[0].effect, 9);
+    expect(findings[0].coming).toEqual([
+      { period: periodStart(start, "week", weeks + 1), amount: findings[0].effect },
+    ]);
   });
 
   it("without evidence of an effect change nothing", () => {

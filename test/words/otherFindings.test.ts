@@ -138,7 +138,7 @@ describe("the sentences of small matters", () => {
     fc.assert(
       fc.property(signedSize, fc.double({ min: 0.1, max: 50, noNaN: true }), (effect, standardError) => {
         const text = eventSentence(
-          { code: "event-effect", name: "fair", effect, standardError },
+          { code: "event-effect", name: "fair", effect, standardError, coming: [] },
           "fair",
           speech,
         );
