@@ -47,7 +47,10 @@ describe("the command line", () => {
     [["frob"], /no command "frob"/],
     [["run"], /--store/],
     [["run", "--store", "x", "--as-of", "yesterday"], /--as-of.*yesterday/],
-    [["replay", "--store", "x", "--from", "2026-01-05T06:00:00Z", "--every", "fortnight"], /--every.*fortnight/],
+    [
+      ["replay", "--store", "x", "--from", "2026-01-05T06:00:00Z", "--every", "fortnight"],
+      /--every.*fortnight/,
+    ],
     [["replay", "--store", "x"], /--from/],
     [["explain", "--store", "x"], /name of a table/],
     [["run", "--frob"], /--frob/],
