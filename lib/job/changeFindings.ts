@@ -4,8 +4,10 @@ import type { Finding } from "../words/facts.ts";
 type ChangeFinding = Extract<Finding, { code: "change" }>;
 type SurpriseFinding = Extract<Finding, { code: "surprise" }>;
 
-/** A change is told this long after its notice (eight looks until it is confirmed, and as long again), and kept on record
- * for half a year of weeks. */
+/**
+ * Periods after its notice that a change is told (eight looks until it is confirmed, and as long again), and that it is
+ * kept on record.
+ */
 const toldFor = 16;
 const keptFor = 26;
 /** How long a surprise is spoken of, while what is left of it still matters. */

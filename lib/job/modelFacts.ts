@@ -11,14 +11,13 @@ import { shockFading } from "../dynamics/shockFading.ts";
 import type { DescribingModel } from "../forecast/forecast.ts";
 import type { ModelFacts } from "../words/facts.ts";
 import type { DescribedLevel } from "./describedLevel.ts";
+import { orNull } from "./orNull.ts";
 
 /** Weights and residual autocorrelations kept for pictures. */
 const weightsKept = 27;
 const residualLags = 20;
 /** Fewer values say nothing about permanence. */
 const shortestTested = 30;
-
-const orNull = (value: number) => (Number.isFinite(value) ? value : null);
 
 /** Lag-1.. autocorrelations of the residuals that exist. */
 function residualAutocorrelations(residuals: Float64Array): number[] {
@@ -70,7 +69,7 @@ function fadingOf(values: Float64Array, trend: boolean, halfLife: HalfLifeInterv
   return shockFading(values, { trend, halfLife }).verdict;
 }
 
-/** The describing model in numbers that survive JSON; `values` are those it describes, on its own scale less its season. */
+/** The describing model in numbers that survive JSON; `values` are departures from its terms, on its own scale. */
 export function modelFacts(model: DescribingModel, level: DescribedLevel, values: Float64Array): ModelFacts {
   const { fit } = model;
   const lags = Math.max(fit.order + 3, Math.min(residualLags, Math.floor(fit.observations / 5)));

@@ -4,6 +4,7 @@ import type { WatchResult } from "../drift/watchSeries.ts";
 import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
 import type { Forecast } from "../forecast/forecast.ts";
 import { forecastSeries } from "../forecast/forecastSeries.ts";
+import { naiveForecast } from "../forecast/naiveForecast.ts";
 import { periodIndex, periodStart } from "../series/periods.ts";
 import type { KnownEvent } from "../series/readEvents.ts";
 import type { Series } from "../series/series.ts";
@@ -17,7 +18,7 @@ import { adjustForEvents, type EventAdjustment } from "./eventEffects.ts";
 import { forecastFacts } from "./forecastFacts.ts";
 import type { StoredSeries } from "./modelDocument.ts";
 import { modelFacts } from "./modelFacts.ts";
-import { naiveForecast } from "./naiveForecast.ts";
+import { orNull } from "./orNull.ts";
 import { seedOf } from "./seed.ts";
 import { seriesDigest } from "./seriesDigest.ts";
 import type { Settings } from "./settings.ts";
@@ -116,7 +117,11 @@ function nextTrack(
     return index < 0 ? Number.NaN : (series.values[index] as number | undefined);
   };
   const scored = before && scoreForecasts(before, valueAt);
-  return rememberForecasts(scored, forecasts, naiveForecast(series.values, season, forecasts.periods.length));
+  return rememberForecasts(
+    scored,
+    forecasts,
+    Array.from(naiveForecast(series.values, series.values.length, season, forecasts.periods.length)),
+  );
 }
 
 interface Results {
@@ -128,8 +133,6 @@ interface Results {
   readonly track: TrackState;
   readonly calendar: Calendar;
 }
-
-const orNull = (value: number) => (Number.isFinite(value) ? value : null);
 
 /** Rows of one period are combined by these when a value is a level rather than an amount: no total is told of it. */
 const levelRules = new Set<SeriesTask["tableSettings"]["combine"]>(["mean", "last", "max"]);

@@ -8,7 +8,7 @@ export type Finding =
       readonly kind: ChangeKind;
       readonly alternative: ChangeKind | null;
       readonly status: "provisional" | "confirmed";
-      /** True only in the run that brought it (or that confirmed it). */
+      /** Still told: for some periods after its notice. Whether a run is the first to tell it, `freshness.ts` says. */
       readonly fresh: boolean;
       readonly noticed: string;
       readonly change: { readonly period: string; readonly low: string; readonly high: string };
