@@ -26,10 +26,10 @@ describe("compareReadings", () => {
     });
   });
 
-  it("counts gaps that were filled and values that went", () => {
+  it("counts gaps that were filled and values that went, not rows that left the front of a rolling export", () => {
     expect(compareReadings(earlier, series("2026-03-09", [2, 3, 4]))).toEqual({
-      count: 2,
-      firstPeriod: "2026-03-02",
+      count: 1,
+      firstPeriod: "2026-03-16",
       largest: { period: "2026-03-16", before: null, after: 3 },
     });
     expect(compareReadings(earlier, series("2026-03-02", [1, 2]))).toEqual({
