@@ -237,7 +237,11 @@ export const modelDocumentSchema = z.object({
   series: z.array(storedSeries),
 }) satisfies z.ZodMiniType<ModelDocument>;
 
-const failed = z.object({ table: z.string(), problems: z.array(problem) });
+const failed = z.object({
+  table: z.string(),
+  beside: z.optional(z.boolean()),
+  problems: z.array(problem),
+});
 
 /** `runs/<asOf>/summary.json`. */
 export const summarySchema = z.object({

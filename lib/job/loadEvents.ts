@@ -42,7 +42,7 @@ export async function loadEvents(
     const read = readEvents(found.bytes, name, locale);
     events.push(...read.events);
     const fatal = read.problems.filter((problem) => problem.fatal);
-    if (fatal.length > 0) refused.push({ table: name, problems: fatal });
+    if (fatal.length > 0) refused.push({ table: name, beside: true, problems: fatal });
   }
   if (country === undefined) return { events, refused };
   const year = Number(asOf.slice(0, 4));
@@ -52,7 +52,7 @@ export async function loadEvents(
     if (!(error instanceof RangeError)) throw error;
     const remedy = "use an ISO 3166 code such as PT or DE-BY, or take country out of the settings";
     const problem = { table: settingsKey, code: "no-holidays", message: error.message, remedy, fatal: true };
-    refused.push({ table: settingsKey, problems: [problem] });
+    refused.push({ table: settingsKey, beside: true, problems: [problem] });
   }
   return { events, refused };
 }

@@ -3,6 +3,8 @@ import type { Problem } from "../series/series.ts";
 /** One table that could not be refitted, and why. */
 export interface FailedTable {
   readonly table: string;
+  /** No table at all but a file beside them: known events, or the settings. */
+  readonly beside?: boolean;
   readonly problems: readonly Problem[];
 }
 

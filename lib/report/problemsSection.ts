@@ -10,7 +10,10 @@ const most = 20;
 /** What is wrong in the data, table by table, with line, column and remedy; tables that failed come first. */
 export function problemsSection(run: RunFacts): Markup {
   const tables = [
-    ...run.failed.map((one) => ({ ...one, note: "not refitted; an earlier forecast stands as it was" })),
+    ...run.failed.map((one) => ({
+      ...one,
+      note: one.beside ? "could not be used" : "not refitted; an earlier forecast stands as it was",
+    })),
     ...run.tables.map((one) => ({ ...one, note: "" })),
   ].filter((one) => one.problems.length > 0 || one.note !== "");
   if (tables.length === 0 && run.left.length === 0) return nothing;

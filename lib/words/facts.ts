@@ -174,7 +174,12 @@ export interface RunFacts {
   readonly asOf: string;
   readonly tables: readonly TableFacts[];
   /** Tables that could not be read or refitted this time; their earlier forecasts stand. */
-  readonly failed: readonly { readonly table: string; readonly problems: readonly Problem[] }[];
+  readonly failed: readonly {
+    readonly table: string;
+    /** No table but a file beside them, such as known events. */
+    readonly beside?: boolean;
+    readonly problems: readonly Problem[];
+  }[];
   /** Tables not reached before time ran out. */
   readonly left: readonly string[];
   /** Series left out of `tables` where a run has very many: steady ones, ones with news, and how many are watched. */

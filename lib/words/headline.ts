@@ -16,7 +16,8 @@ export function newsCounts(run: Pick<RunFacts, "tables" | "failed" | "untold">) 
     recent: run.tables.reduce((sum, table) => sum + table.series.filter(isRecent).length, 0),
     surprises: count((finding) => finding.code === "surprise"),
     late: count((finding) => finding.code === "stale"),
-    failed: run.failed.length,
+    failed: run.failed.filter((one) => !one.beside).length,
+    beside: run.failed.filter((one) => one.beside).length,
   };
 }
 
@@ -37,8 +38,9 @@ export function headline(run: RunFacts): string {
     ...some(counts.surprises, "one-off surprise"),
     ...some(counts.late, "series late", "series late"),
     ...some(counts.failed, "table not read", "tables not read"),
+    ...some(counts.beside, "file of events or settings not usable", "files of events or settings not usable"),
   ];
-  const tables = run.tables.length + run.failed.length;
+  const tables = run.tables.length + counts.failed;
   const only = run.tables[0]?.table ?? run.failed[0]?.table;
   const what = tables === 1 && only !== undefined ? plainName(only) : `${tables} tables`;
   return `${what}: ${news.length > 0 ? news.join(", ") : "nothing has changed"}`;

@@ -17,10 +17,11 @@ export function problemText(problem: Problem): string {
 
 /** What went wrong, for the last lines of a note: one line a table, worst first. */
 export function troubleLines(run: RunFacts, most = 4): string[] {
-  const failed = run.failed.map(({ table, problems }) => {
+  const failed = run.failed.map(({ table, beside, problems }) => {
     const worst = problems.find((one) => one.fatal) ?? problems[0];
     const why = worst ? ` ${problemText(worst)}` : "";
-    return `${plainName(table)} was not refitted; an earlier forecast stands as it was.${why}`;
+    const what = beside ? "could not be used." : "was not refitted; an earlier forecast stands as it was.";
+    return `${plainName(table)} ${what}${why}`;
   });
   const left =
     run.left.length > 0 ? [`Not reached in time: ${list(run.left)}; the retry goes on with them.`] : [];
