@@ -33,7 +33,8 @@ export interface ModelDocument extends Versioned {
 export interface ModelShelf {
   readonly current: boolean;
   readonly previousAsOf: string | undefined;
-  readonly hasLater: boolean;
+  /** The newest one of all, if it is later than the instant. */
+  readonly later: string | undefined;
 }
 
 /** Lists the models of one table (never those of tables nested below it). */
@@ -47,7 +48,7 @@ export async function readModelShelf(store: ObjectStore, table: string, asOf: st
   return {
     current: instants.includes(asOf),
     previousAsOf: instants.filter((instant) => instant < asOf).at(-1),
-    hasLater: instants.some((instant) => instant > asOf),
+    later: instants.filter((instant) => instant > asOf).at(-1),
   };
 }
 

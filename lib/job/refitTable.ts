@@ -36,13 +36,22 @@ type TableOutcome =
 
 /**
  * Writes the forecasts of a model document: `latest.csv` first, `<asOf>.csv` last, so that the second standing
- * there proves the first was written. A replayed run of the past leaves `latest.csv` to the newer model.
+ * there proves the first was written. `latest.csv` belongs to the newest model: a replayed run of the past leaves it
+ * alone, and when a later run ended while this one wrote, its forecasts are put back.
  */
 async function writeForecasts(store: ObjectStore, model: ModelDocument, shelf: ModelShelf): Promise<void> {
-  const csv = encodeText(forecastCsv(model.series.map((one) => one.facts)));
-  if (!shelf.hasLater) await store.write(latestForecastKey(model.table), csv);
-  await store.create(forecastKey(model.table, model.asOf), csv);
+  const { table, asOf } = model;
+  const csv = csvOf(model);
+  if (shelf.later === undefined) {
+    await store.write(latestForecastKey(table), csv);
+    const { later } = await readModelShelf(store, table, asOf);
+    const newest = later === undefined ? undefined : await readModel(store, table, later);
+    if (newest) await store.write(latestForecastKey(table), csvOf(newest));
+  }
+  await store.create(forecastKey(table, asOf), csv);
 }
+
+const csvOf = (model: ModelDocument) => encodeText(forecastCsv(model.series.map((one) => one.facts)));
 
 async function fail(task: TableTask, problems: readonly Problem[]): Promise<TableOutcome> {
   const { store, asOf, table } = task;
