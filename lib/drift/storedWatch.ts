@@ -1,37 +1,19 @@
 import * as z from "zod/mini";
+import { behaviourSchema, changeKindSchema, evidenceSchema } from "./noticeSchemas.ts";
 import type { Watch } from "./watchSeries.ts";
 
-const kind = z.enum(["persistence", "level", "trend", "shock-size", "season"]);
 const values = z.array(z.nullable(z.number()));
-
-const behaviour = z.object({
-  order: z.number(),
-  coefficients: z.array(z.number()),
-  persistence: z.number(),
-  halfLife: z.nullable(z.number()),
-  level: z.number(),
-  slope: z.number(),
-  shockSize: z.number(),
-  observations: z.number(),
-});
 
 const change = z.object({
   code: z.literal("change"),
-  kind,
-  alternative: z.nullable(kind),
+  kind: changeKindSchema,
+  alternative: z.nullable(changeKindSchema),
   status: z.enum(["provisional", "confirmed"]),
   noticedAt: z.number(),
   change: z.object({ index: z.number(), low: z.number(), high: z.number() }),
-  before: behaviour,
-  after: behaviour,
-  evidence: z.object({
-    statistic: z.number(),
-    boundary: z.number(),
-    looksUsed: z.number(),
-    looks: z.number(),
-    falseAlarmRate: z.number(),
-    caution: z.optional(z.literal("clustered-shocks")),
-  }),
+  before: behaviourSchema,
+  after: behaviourSchema,
+  evidence: evidenceSchema,
 });
 
 const settings = {
@@ -52,7 +34,7 @@ export const monitorSchema = z.object({
   values,
   looksUsed: z.number(),
   boundarySource: z.enum(["table", "bootstrap"]),
-  boundaries: z.array(z.object({ kind, boundary: z.number() })),
+  boundaries: z.array(z.object({ kind: changeKindSchema, boundary: z.number() })),
   statistics: z.array(values),
   change: z.nullable(change),
   surprises: z.array(z.number()),

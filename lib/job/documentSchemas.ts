@@ -1,4 +1,5 @@
 import * as z from "zod/mini";
+import { behaviourSchema, changeKindSchema, evidenceSchema } from "../drift/noticeSchemas.ts";
 import type { Finding, SeriesFacts } from "../words/facts.ts";
 import type { ModelDocument, StoredSeries } from "./modelDocument.ts";
 import type { LastingSummary } from "./summary.ts";
@@ -12,19 +13,6 @@ const orNull = z.nullable(z.number());
 const instant = z.string().check(say("ISO instant, 2026-11-30T06:00:00Z."));
 const period = z.string().check(say("ISO date, or instant for hours, at which the period starts."));
 const dated = z.object({ period, low: period, high: period });
-const changeKind = z.enum(["persistence", "level", "trend", "shock-size", "season"]);
-
-const behaviour = z.object({
-  order: z.number(),
-  coefficients: numbers,
-  persistence: z.number(),
-  halfLife: orNull,
-  level: z.number(),
-  slope: z.number(),
-  shockSize: z.number(),
-  observations: z.number(),
-});
-
 const note = z.discriminatedUnion("code", [
   z.object({ code: z.literal("too-short"), observed: z.number() }),
   z.object({ code: z.literal("constant"), value: z.number() }),
@@ -38,22 +26,15 @@ const note = z.discriminatedUnion("code", [
 const finding = z.discriminatedUnion("code", [
   z.object({
     code: z.literal("change"),
-    kind: changeKind,
-    alternative: z.nullable(changeKind),
+    kind: changeKindSchema,
+    alternative: z.nullable(changeKindSchema),
     status: z.enum(["provisional", "confirmed"]),
     fresh: z.boolean(),
     noticed: period,
     change: dated,
-    before: behaviour,
-    after: behaviour,
-    evidence: z.object({
-      statistic: z.number(),
-      boundary: z.number(),
-      looksUsed: z.number(),
-      looks: z.number(),
-      falseAlarmRate: z.number(),
-      caution: z.optional(z.literal("clustered-shocks")),
-    }),
+    before: behaviourSchema,
+    after: behaviourSchema,
+    evidence: evidenceSchema,
   }),
   z.object({
     code: z.literal("surprise"),
@@ -177,7 +158,7 @@ const facts = z.object({
       looksUsed: z.number(),
       looks: z.number(),
       falseAlarmRate: z.number(),
-      paths: z.array(z.object({ kind: changeKind, boundary: z.number(), statistics: z.array(orNull) })),
+      paths: z.array(z.object({ kind: changeKindSchema, boundary: z.number(), statistics: z.array(orNull) })),
       state: z.enum(["watching", "relearning", "waiting-for-data"]),
     }),
   ),

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { monitorSchema } from "../../lib/drift/storedWatch.ts";
+import { evidenceSchema } from "../../lib/drift/noticeSchemas.ts";
 import { analystMessage } from "../../lib/words/analystMessage.ts";
 import type { RunFacts } from "../../lib/words/facts.ts";
 import { britishVoice, loansRun } from "../support/factsFixture.ts";
@@ -21,7 +21,6 @@ describe("the analyst's notice", () => {
   });
 
   it("keeps the caution through the store", () => {
-    const evidence = monitorSchema.shape.change.def.innerType.shape.evidence;
     const stored = {
       statistic: 3,
       boundary: 2,
@@ -30,8 +29,8 @@ describe("the analyst's notice", () => {
       falseAlarmRate: 0.05,
       caution: "clustered-shocks",
     };
-    expect(evidence.parse(JSON.parse(JSON.stringify(stored)))).toEqual(stored);
+    expect(evidenceSchema.parse(JSON.parse(JSON.stringify(stored)))).toEqual(stored);
     const { caution: _caution, ...older } = stored;
-    expect(evidence.parse(older)).toEqual(older);
+    expect(evidenceSchema.parse(older)).toEqual(older);
   });
 });
