@@ -1,3 +1,5 @@
+import { polarNormal } from "../numeric/polarNormal.ts";
+
 /** Seeded uniform numbers in (0, 1): a 32-bit counter mixed twice, the same on every machine. */
 export function uniformNumbers(seed: number): () => number {
   let state = seed >>> 0;
@@ -9,30 +11,9 @@ export function uniformNumbers(seed: number): () => number {
   };
 }
 
-/** Standard normal numbers by the polar method (Marsaglia and Bray 1964). */
-export function normalNumbers(uniform: () => number): () => number {
-  let spare = Number.NaN;
-  return () => {
-    if (!Number.isNaN(spare)) {
-      const kept = spare;
-      spare = Number.NaN;
-      return kept;
-    }
-    for (;;) {
-      const u = 2 * uniform() - 1;
-      const v = 2 * uniform() - 1;
-      const radius = u * u + v * v;
-      if (radius >= 1 || radius === 0) continue;
-      const factor = Math.sqrt((-2 * Math.log(radius)) / radius);
-      spare = v * factor;
-      return u * factor;
-    }
-  };
-}
-
 /** Student numbers of unit variance for an even number of degrees of freedom above two: a χ² of ν is a sum of ν/2 exponentials. */
 export function studentNumbers(uniform: () => number, degreesOfFreedom: number): () => number {
-  const normal = normalNumbers(uniform);
+  const normal = polarNormal(uniform);
   const pairs = degreesOfFreedom / 2;
   const scale = Math.sqrt(degreesOfFreedom - 2);
   return () => {

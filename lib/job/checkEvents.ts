@@ -2,7 +2,7 @@ import { publicHolidays } from "../series/publicHolidays.ts";
 import { readEvents } from "../series/readEvents.ts";
 import type { Problem } from "../series/series.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
-import { settingsKey } from "./keys.ts";
+import { eventFiles, noHolidays } from "./eventFiles.ts";
 import type { Settings } from "./settings.ts";
 
 /** One file of events, or the public holidays, as a run would know them. */
@@ -19,10 +19,8 @@ export async function checkEvents(
   asOf: string,
 ): Promise<CheckedEvents[]> {
   const checked: CheckedEvents[] = [];
-  for (const { key } of await store.list("events/")) {
-    const found = key.endsWith(".csv") ? await store.read(key) : undefined;
-    if (!found) continue;
-    const { events, problems } = readEvents(found.bytes, key, locale);
+  for await (const { key, bytes } of eventFiles(store)) {
+    const { events, problems } = readEvents(bytes, key, locale);
     checked.push({ file: key, events: events.length, problems });
   }
   if (country === undefined) return checked;
@@ -31,10 +29,7 @@ export async function checkEvents(
   try {
     checked.push({ file, events: (await publicHolidays(country, year, year)).length, problems: [] });
   } catch (error) {
-    if (!(error instanceof RangeError)) throw error;
-    const remedy = "use an ISO 3166 code such as PT or DE-BY, or take country out of the settings";
-    const problem = { table: settingsKey, code: "no-holidays", message: error.message, remedy, fatal: false };
-    checked.push({ file, events: 0, problems: [problem] });
+    checked.push({ file, events: 0, problems: [noHolidays(error, false)] });
   }
   return checked;
 }

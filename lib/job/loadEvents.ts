@@ -1,11 +1,10 @@
 import { publicHolidays } from "../series/publicHolidays.ts";
 import { type KnownEvent, readEvents } from "../series/readEvents.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
+import { eventFiles, noHolidays } from "./eventFiles.ts";
 import { settingsKey } from "./keys.ts";
 import type { Settings } from "./settings.ts";
 import type { FailedTable } from "./summary.ts";
-
-const eventsPrefix = "events/";
 
 /** Public holidays are taken from so many years before a run to so many after it. */
 const yearsAround = { before: 30, after: 5 };
@@ -34,12 +33,9 @@ export async function loadEvents(
 ): Promise<{ events: KnownEvent[]; refused: FailedTable[] }> {
   const events: KnownEvent[] = [];
   const refused: FailedTable[] = [];
-  for (const { key } of await store.list(eventsPrefix)) {
-    if (!key.endsWith(".csv")) continue;
-    const found = await store.read(key);
-    if (!found) continue;
+  for await (const { key, bytes } of eventFiles(store)) {
     const name = key.slice(0, -".csv".length);
-    const read = readEvents(found.bytes, name, locale);
+    const read = readEvents(bytes, name, locale);
     events.push(...read.events);
     const fatal = read.problems.filter((problem) => problem.fatal);
     if (fatal.length > 0) refused.push({ table: name, beside: true, problems: fatal });
@@ -49,10 +45,7 @@ export async function loadEvents(
   try {
     events.push(...(await holidaysAround(country, year)));
   } catch (error) {
-    if (!(error instanceof RangeError)) throw error;
-    const remedy = "use an ISO 3166 code such as PT or DE-BY, or take country out of the settings";
-    const problem = { table: settingsKey, code: "no-holidays", message: error.message, remedy, fatal: true };
-    refused.push({ table: settingsKey, beside: true, problems: [problem] });
+    refused.push({ table: settingsKey, beside: true, problems: [noHolidays(error, true)] });
   }
   return { events, refused };
 }

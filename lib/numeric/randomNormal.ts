@@ -1,3 +1,5 @@
+import { polarNormal } from "./polarNormal.ts";
+
 /**
  * Standard normal variates from a seed: uniform numbers of Marsaglia's (2003) xorshift32 with a Weyl sequence
  * (period about 2⁶⁴), turned normal by the polar method (Marsaglia & Bray 1964). The same seed gives the same numbers
@@ -14,21 +16,5 @@ export function randomNormal(seed: number): () => number {
     return (((state + weyl) >>> 0) + 0.5) / 4294967296;
   };
   for (let i = 0; i < 16; i++) uniform();
-  let spare = Number.NaN;
-  return () => {
-    if (!Number.isNaN(spare)) {
-      const value = spare;
-      spare = Number.NaN;
-      return value;
-    }
-    for (;;) {
-      const x = 2 * uniform() - 1;
-      const y = 2 * uniform() - 1;
-      const size = x * x + y * y;
-      if (size >= 1 || size === 0) continue;
-      const scale = Math.sqrt((-2 * Math.log(size)) / size);
-      spare = y * scale;
-      return x * scale;
-    }
-  };
+  return polarNormal(uniform);
 }

@@ -1,4 +1,5 @@
-import { normalNumbers, uniformNumbers } from "../../lib/drift/randomNumbers.ts";
+import { uniformNumbers } from "../../lib/drift/randomNumbers.ts";
+import { polarNormal } from "../../lib/numeric/polarNormal.ts";
 
 /** A kind of series to put before the monitor; what changes, changes at the eleventh look. */
 export interface DriftCase {
@@ -20,7 +21,7 @@ export const changeLook = 11;
 
 /** One series of `start` values and 52 looks, the same for the same seed. Shocks have unit variance. */
 export function drawSeries(one: DriftCase, start: number, seed: number): Float64Array {
-  const normal = normalNumbers(uniformNumbers(seed));
+  const normal = polarNormal(uniformNumbers(seed));
   const changeAt = start + changeLook - 1;
   const order = Math.max(one.coefficients.length, one.coefficientsAfter?.length ?? 0);
   const recent = new Float64Array(order + 1);

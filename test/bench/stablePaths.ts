@@ -3,9 +3,10 @@ import { boundaryFeatures } from "../../lib/drift/boundaryFeatures.ts";
 import { look } from "../../lib/drift/look.ts";
 import { openLookState, watchedKinds } from "../../lib/drift/lookState.ts";
 import type { ChangeKind } from "../../lib/drift/notice.ts";
-import { normalNumbers, uniformNumbers } from "../../lib/drift/randomNumbers.ts";
+import { uniformNumbers } from "../../lib/drift/randomNumbers.ts";
 import { fitReference } from "../../lib/drift/reference.ts";
 import type { TermPlan } from "../../lib/drift/terms.ts";
+import { polarNormal } from "../../lib/numeric/polarNormal.ts";
 
 /** What one stable path showed: the features of its reference, and each kind's largest statistic for each number of looks. */
 export interface StablePath {
@@ -23,7 +24,7 @@ const lookCounts = [8, 13, 26, 52, 104];
  */
 export function watchStablePath(seed: number, plan: TermPlan, looks: number): StablePath {
   const uniform = uniformNumbers(seed);
-  const normal = normalNumbers(uniform);
+  const normal = polarNormal(uniform);
   const shortest =
     40 + 3 * (plan.trend ? 1 : 0) + 2 * plan.season * (plan.season > 0 && plan.season <= 12 ? 1 : 0);
   const start = Math.round(shortest * (320 / shortest) ** uniform());

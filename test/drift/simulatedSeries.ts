@@ -1,4 +1,5 @@
-import { normalNumbers, uniformNumbers } from "../../lib/drift/randomNumbers.ts";
+import { uniformNumbers } from "../../lib/drift/randomNumbers.ts";
+import { polarNormal } from "../../lib/numeric/polarNormal.ts";
 
 interface SeriesPlan {
   readonly seed: number;
@@ -14,7 +15,7 @@ interface SeriesPlan {
 
 /** An AR(1) with unit normal shocks that may change at one index. */
 export function simulatedSeries(plan: SeriesPlan): number[] {
-  const normal = normalNumbers(uniformNumbers(plan.seed));
+  const normal = polarNormal(uniformNumbers(plan.seed));
   const { changeAt = plan.length } = plan;
   let deviation = 0;
   for (let time = 0; time < 100; time++) deviation = plan.coefficient * deviation + normal();
