@@ -5,7 +5,7 @@ import { look } from "./look.ts";
 import { type LookState, openLookState } from "./lookState.ts";
 import { fromStored, type Monitor, toStored } from "./monitor.ts";
 import { nameChange } from "./nameChange.ts";
-import type { ChangeNotice, Notice } from "./notice.ts";
+import type { ChangeNotice, Notice, SurpriseNotice } from "./notice.ts";
 import { fitReference } from "./reference.ts";
 import { findSurprises } from "./surprise.ts";
 
@@ -25,20 +25,35 @@ export function advanceMonitor(
   monitor: Monitor,
   newValues: ArrayLike<number>,
 ): { readonly monitor: Monitor; readonly notices: Notice[] } {
+  const { monitor: advanced, notices } = takeValues(monitor, newValues, () => false);
+  return { monitor: advanced, notices };
+}
+
+/** How far a monitor has come: what decides whether its successor is due. */
+export type Progress = Pick<Monitor, "looks" | "looksUsed" | "change">;
+
+/**
+ * As `advanceMonitor`, but stops after the value with which `isDone` holds; `taken` says how many that were. The
+ * reference is fitted once for all of them.
+ */
+export function takeValues(
+  monitor: Monitor,
+  newValues: ArrayLike<number>,
+  isDone: (progress: Progress) => boolean,
+): { readonly monitor: Monitor; readonly notices: Notice[]; readonly taken: number } {
   const state = resume(monitor, newValues.length);
   const statistics = monitor.statistics.map((path) => [...path]);
   const surprises = [...monitor.surprises];
   const notices: Notice[] = [];
   let change = monitor.change;
-  for (let at = 0; at < newValues.length; at++) {
-    const value = newValues[at];
+  let taken = 0;
+  while (taken < newValues.length) {
+    const value = newValues[taken++];
     const expected = expectedNext(state);
     appendValue(state, (value - state.reference.centre) / state.reference.scale);
-    if (Number.isNaN(value)) {
-      for (const path of statistics) path.push(null);
-      continue;
-    }
-    const looking = state.looksUsed < monitor.looks || (change !== null && change.status === "provisional");
+    const isGap = Number.isNaN(value);
+    const looking =
+      !isGap && (state.looksUsed < monitor.looks || (change !== null && change.status === "provisional"));
     if (!looking) for (const path of statistics) path.push(null);
     else {
       state.looksUsed++;
@@ -53,33 +68,41 @@ export function advanceMonitor(
         notices.push(next);
       }
     }
-    if (change !== null) continue;
-    for (const { time, size } of findSurprises(state, (known) => surprises.includes(known))) {
-      const { centre, scale } = state.reference;
-      const newest = time === state.count - 1;
-      const valueThen = centre + scale * state.values[time];
-      const expectedThen = newest ? centre + scale * expected : valueThen - scale * size;
-      notices.push({
-        code: "surprise",
-        index: time,
-        value: newest ? value : valueThen,
-        expected: expectedThen,
-        size,
-      });
-      surprises.push(time);
+    if (!isGap && change === null) {
+      const found = surpriseNotices(state, surprises, value, expected);
+      notices.push(...found);
+      for (const { index } of found) surprises.push(index);
     }
+    if (isDone({ looks: monitor.looks, looksUsed: state.looksUsed, change })) break;
   }
   return {
     monitor: {
       ...monitor,
-      values: [...monitor.values, ...toStored(newValues)],
+      values: [...monitor.values, ...toStored(newValues).slice(0, taken)],
       looksUsed: state.looksUsed,
       statistics,
       change,
       surprises,
     },
     notices,
+    taken,
   };
+}
+
+/** Values that stand out and were not told of yet, in units of the series. */
+function surpriseNotices(
+  state: LookState,
+  known: readonly number[],
+  newestValue: number,
+  newestExpected: number,
+): SurpriseNotice[] {
+  const { centre, scale } = state.reference;
+  return findSurprises(state, (time) => known.includes(time)).map(({ time, size }) => {
+    const newest = time === state.count - 1;
+    const value = newest ? newestValue : centre + scale * state.values[time];
+    const expected = newest ? centre + scale * newestExpected : value - scale * size;
+    return { code: "surprise", index: time, value, expected, size };
+  });
 }
 
 /** Brings a stored monitor back to work: the reference refitted with its order, its values taken in again. */

@@ -1,4 +1,4 @@
-import { advanceMonitor } from "./advanceMonitor.ts";
+import { type Progress, takeValues } from "./advanceMonitor.ts";
 import { findLastBreak, type PastBreak } from "./lastBreak.ts";
 import type { Monitor, MonitorSettings } from "./monitor.ts";
 import type { Notice } from "./notice.ts";
@@ -70,9 +70,11 @@ export function watchSeries(
     series.subarray(Math.max(0, from - firstIndex), Math.max(0, to - firstIndex));
   watch = renew(watch, between);
   const notices: Notice[] = [];
-  for (let index = Math.max(watch.seenUntil, firstIndex); index < firstIndex + series.length; index++) {
-    if (watch.monitor !== null) {
-      const step = advanceMonitor(watch.monitor, [series[index - firstIndex]]);
+  for (let index = Math.max(watch.seenUntil, firstIndex); index < firstIndex + series.length; ) {
+    if (watch.monitor === null) index++;
+    else {
+      const step = takeValues(watch.monitor, series.subarray(index - firstIndex), successorDue);
+      index += step.taken;
       const offset = watch.monitorStart - firstIndex;
       notices.push(...step.notices.map((notice) => shiftNotice(notice, offset)));
       watch = { ...watch, monitor: step.monitor };
@@ -82,7 +84,7 @@ export function watchSeries(
         watch = { ...watch, state: "relearning", regimeStart: changedAt, changedAt };
       }
     }
-    watch = renew({ ...watch, seenUntil: index + 1 }, between);
+    watch = renew({ ...watch, seenUntil: index }, between);
   }
   const place = watch.changedAt === null ? -1 : watch.changedAt - firstIndex;
   return {
@@ -117,11 +119,7 @@ function firstSight(
 /** Starts a fresh reference where one is due and there is enough to make it of. */
 function renew(watch: Watch, between: (from: number, to: number) => Float64Array): Watch {
   const { monitor, seenUntil, settings } = watch;
-  if (monitor !== null) {
-    const spent = monitor.change === null && monitor.looksUsed >= monitor.looks;
-    const settled = monitor.change?.status === "confirmed";
-    if (!spent && !settled) return watch;
-  }
+  if (monitor !== null && !successorDue(monitor)) return watch;
   const regime = between(watch.regimeStart, seenUntil);
   const enough = watch.changedAt === null ? shortestReference : shortestAfterChange;
   const observed = regime.reduce((sum, value) => sum + (Number.isNaN(value) ? 0 : 1), 0);
@@ -130,6 +128,10 @@ function renew(watch: Watch, between: (from: number, to: number) => Float64Array
   if (fresh === null) return monitor === null ? { ...watch, state: waiting(watch) } : watch;
   return { ...watch, state: "watching", monitor: fresh, monitorStart: seenUntil - reference.length };
 }
+
+/** Whether all looks are used up without a change, or the change is confirmed. */
+const successorDue = ({ change, looksUsed, looks }: Progress): boolean =>
+  change === null ? looksUsed >= looks : change.status === "confirmed";
 
 const waiting = (watch: Watch): WatchState => (watch.changedAt === null ? "waiting-for-data" : "relearning");
 
