@@ -51,6 +51,7 @@ export function findBreaks(values: ArrayLike<number>, options: BreakOptions = {}
   const columns = 1 + order + regressors.length;
   const shortest = shortestSegment(options.minSegment ?? 0.15, rows, columns);
   const most = Math.min(options.maxBreaks ?? 5, Math.floor(rows / shortest) - 1);
+  centreRows(response, design, columns);
   const sums = segmentSums(response, design, columns, shortest);
   const partitions = bestPartitions(sums, rows, shortest, most);
   const criteria = partitions.map(({ breaks, sumOfSquares }) => {
@@ -109,6 +110,20 @@ function makeRows(
     times.push(time);
   }
   return { response: Float64Array.from(response), design: Float64Array.from(design), times };
+}
+
+/**
+ * Takes the mean off the response and every column but the constant, in place. With the constant they span the same;
+ * without, sums of squares of values far from zero would lose the digits that matter.
+ */
+function centreRows(response: Float64Array, design: Float64Array, columns: number): void {
+  const takeOff = (array: Float64Array, start: number, step: number) => {
+    let mean = 0;
+    for (let at = start; at < array.length; at += step) mean += (array[at] * step) / array.length;
+    for (let at = start; at < array.length; at += step) array[at] -= mean;
+  };
+  takeOff(response, 0, 1);
+  for (let column = 1; column < columns; column++) takeOff(design, column, columns);
 }
 
 function shortestSegment(asked: number, rows: number, columns: number): number {

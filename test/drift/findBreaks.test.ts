@@ -72,6 +72,17 @@ describe("findBreaks", () => {
     expect(found.criteria[2].sumOfSquares).toBeCloseTo(sum, 8);
   });
 
+  it("finds the same however far from zero the values lie", async () => {
+    const nile = await r.evaluate("datasets::Nile");
+    const near = findBreaks(nile, { order: 1 });
+    const far = findBreaks(
+      nile.map((value) => value + 1e9),
+      { order: 1 },
+    );
+    expect(far.breaks).toEqual(near.breaks);
+    expect(far.supF).toBeCloseTo(near.supF, 6);
+  });
+
   it("says what it needs when segments would be too short", () => {
     expect(() => findBreaks([1, 2, 3], { order: 1 })).toThrow(
       /findBreaks needs segments of more than 2 rows/,
