@@ -1,4 +1,4 @@
-import { burgAllOrders, burgWorkspace } from "../autoregression/burg.ts";
+import { burgReflections, burgWorkspace } from "../autoregression/burg.ts";
 import { requireObserved, requireValues } from "../autoregression/checks.ts";
 import type { AutoregressiveFit } from "../autoregression/fit.ts";
 import { fitAutoregression } from "../autoregression/fitAutoregression.ts";
@@ -20,13 +20,13 @@ export interface SeriesDescription {
   readonly fit: AutoregressiveFit;
 }
 
-/** One way to describe a series, judged by AICc before the exact fit. */
-interface Trial {
+/** One way to describe a series. */
+export interface DescriptionPlan {
   readonly scale: "raw" | "log";
   readonly trend: boolean;
+  /** Season length of the seasonal terms, 0 for none. */
   readonly season: number;
   readonly order: number;
-  readonly criterion: number;
 }
 
 /**
@@ -44,16 +44,18 @@ export function describeSeries(
   values: ArrayLike<number>,
   options: Pick<ForecastOptions, "period" | "seasons"> = {},
 ): SeriesDescription {
-  requireValues("describeSeries", "values", values, "gaps-allowed");
-  requireObserved("describeSeries", values, 8);
-  const series = Float64Array.from(values);
-  const best = chooseTrial(series, seasonLengths(series.length, options));
-  const scaled = best.scale === "log" ? series.map(Math.log) : series;
-  const regressors = describingColumns(best.trend, best.season, 0, series.length, series.length);
-  for (let order = best.order; ; order--) {
+  return describeAs(values, planDescription(values, options));
+}
+
+/** The exact fit of a plan; of a lower order where the likelihood of the planned one cannot be maximised. */
+export function describeAs(values: ArrayLike<number>, plan: DescriptionPlan): SeriesDescription {
+  const { scale, trend, season } = plan;
+  const scaled = Float64Array.from(values, scale === "log" ? Math.log : (value) => value);
+  const regressors = describingColumns(trend, season, 0, scaled.length, scaled.length);
+  for (let order = plan.order; ; order--) {
     try {
       const fit = fitAutoregression(scaled, { order, method: "maximum-likelihood", regressors });
-      return { scale: best.scale, trend: best.trend, season: best.season, regressors, fit };
+      return { scale, trend, season, regressors, fit };
     } catch (error) {
       // A likelihood that cannot be maximised at this order (a deterministic stretch) may be at a smaller one.
       if (order === 0) throw error;
@@ -61,8 +63,16 @@ export function describeSeries(
   }
 }
 
-function chooseTrial(series: Float64Array, seasons: readonly number[]): Trial {
+/** The choice alone: which terms and order `describeSeries` would fit. Throws as it does. */
+export function planDescription(
+  values: ArrayLike<number>,
+  options: Pick<ForecastOptions, "period" | "seasons"> = {},
+): DescriptionPlan {
+  requireValues("describeSeries", "values", values, "gaps-allowed");
+  requireObserved("describeSeries", values, 8);
+  const series = Float64Array.from(values);
   const count = series.length;
+  const seasons = seasonLengths(count, options);
   const maxOrder = Math.max(1, Math.min(Math.floor(10 * Math.log10(count)), Math.floor(count / 4)));
   const workspace = burgWorkspace(count, maxOrder);
   let observed = 0;
@@ -74,23 +84,31 @@ function chooseTrial(series: Float64Array, seasons: readonly number[]): Trial {
     if (value > 0) logarithms += Math.log(value);
     else positive = false;
   }
-  let best: Trial = { scale: "raw", trend: false, season: 0, order: 0, criterion: Number.POSITIVE_INFINITY };
-  for (const scale of positive ? (["raw", "log"] as const) : (["raw"] as const)) {
-    const scaled = fillGaps(scale === "log" ? series.map(Math.log) : series, seasons[0] ?? 0, workspace);
-    const jacobian = scale === "log" ? 2 * logarithms : 0;
-    for (const season of [0, ...seasons]) {
-      for (const trend of [false, true]) {
-        const columns = describingColumns(trend, season, 0, count, count);
-        const residuals = columns.length === 0 ? centred(scaled) : leastSquares(columns, scaled)?.residuals;
+  const scales = (positive ? (["raw", "log"] as const) : (["raw"] as const)).map((scale) => ({
+    scale,
+    filled: fillGaps(scale === "log" ? series.map(Math.log) : series, seasons[0] ?? 0, workspace),
+    jacobian: scale === "log" ? 2 * logarithms : 0,
+  }));
+  let best: DescriptionPlan = { scale: "raw", trend: false, season: 0, order: 0 };
+  let lowest = Number.POSITIVE_INFINITY;
+  for (const season of [0, ...seasons]) {
+    for (const trend of [false, true]) {
+      const columns = describingColumns(trend, season, 0, count, count);
+      const terms = Math.max(1, columns.length);
+      for (const { scale, filled, jacobian } of scales) {
+        const residuals = columns.length === 0 ? centred(filled) : leastSquares(columns, filled)?.residuals;
         if (residuals === undefined) continue;
-        burgAllOrders(residuals, 0, maxOrder, workspace);
+        burgReflections(residuals, 0, maxOrder, workspace);
         for (let order = 0; order <= maxOrder; order++) {
           const variance = workspace.innovationVariances[order];
-          const parameters = order + Math.max(1, columns.length) + 1;
+          const parameters = order + terms + 1;
           const freedom = observed - parameters - 1;
           if (freedom <= 0 || !(variance > 0)) break;
           const criterion = observed * Math.log(variance) + (2 * parameters * observed) / freedom + jacobian;
-          if (criterion < best.criterion) best = { scale, trend, season, order, criterion };
+          if (criterion < lowest) {
+            lowest = criterion;
+            best = { scale, trend, season, order };
+          }
         }
       }
     }

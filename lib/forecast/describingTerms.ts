@@ -24,7 +24,10 @@ export function describingColumns(
     const wave = (column >> 1) + 1;
     const turn = (2 * Math.PI * wave) / season;
     const wavelike = column % 2 === 0 ? Math.cos : Math.sin;
-    columns.push(Float64Array.from({ length: count }, (_, t) => wavelike(turn * ((from + t) % season))));
+    const pattern = Float64Array.from({ length: season }, (_, place) => wavelike(turn * place));
+    const values = new Float64Array(count);
+    for (let t = 0; t < count; t++) values[t] = pattern[(((from + t) % season) + season) % season];
+    columns.push(values);
   }
   return columns;
 }

@@ -1,7 +1,7 @@
 import { monitorPaths } from "../drift/monitorPaths.ts";
 import { readWatch } from "../drift/storedWatch.ts";
 import { type Watch, type WatchOptions, type WatchResult, watchSeries } from "../drift/watchSeries.ts";
-import { describeSeries } from "../forecast/describingModel.ts";
+import { planDescription } from "../forecast/describingModel.ts";
 import type { Period } from "../series/series.ts";
 import type { MonitorFacts } from "../words/facts.ts";
 
@@ -38,7 +38,7 @@ export interface WatchTask {
 /** Trend and season that the describing model finds: they become columns of the reference. */
 function referenceTerms({ values, period }: WatchTask): { trend: boolean; season: number } {
   try {
-    const { trend, season } = describeSeries(values, { period });
+    const { trend, season } = planDescription(values, { period });
     return { trend, season };
   } catch (error) {
     // Too few values, or all the same: there is nothing to take off.

@@ -25,7 +25,7 @@ export function leastSquares(
   const scales = new Float64Array(k);
   const work = columns.map((column, j) => {
     const copy = Float64Array.from(column);
-    scales[j] = Math.hypot(...chunkNorms(copy));
+    scales[j] = lengthOf(copy);
     for (let i = 0; i < n; i++) copy[i] /= scales[j];
     return copy;
   });
@@ -75,13 +75,14 @@ function reflect(target: Float64Array, vector: Float64Array, twoOverNorm: number
   for (let i = from; i < target.length; i++) target[i] -= product * vector[i];
 }
 
-/** Norms of stretches, so that the length of a column of tiny or huge values neither under- nor overflows. */
-function chunkNorms(column: Float64Array): number[] {
-  const norms: number[] = [];
-  for (let start = 0; start < column.length; start += 1024) {
-    norms.push(Math.hypot(...column.subarray(start, start + 1024)));
-  }
-  return norms;
+/** Euclidean length, in units of the largest entry so that tiny or huge values neither under- nor overflow. */
+function lengthOf(column: Float64Array): number {
+  let largest = 0;
+  for (let i = 0; i < column.length; i++) largest = Math.max(largest, Math.abs(column[i]));
+  if (!(largest > 0) || largest === Number.POSITIVE_INFINITY) return largest;
+  let squares = 0;
+  for (let i = 0; i < column.length; i++) squares += (column[i] / largest) ** 2;
+  return largest * Math.sqrt(squares);
 }
 
 function covarianceFromTriangle(triangle: Float64Array[], scales: Float64Array): Float64Array {
