@@ -1,7 +1,7 @@
-import type { AverageForecast } from "./averageForecast.ts";
+import type { AverageForecast, DecidedForecast } from "./averageForecast.ts";
 import { calibratedReach } from "./calibration.ts";
 import { candidateName } from "./candidates.ts";
-import type { SeriesDescription } from "./describingModel.ts";
+import type { DescriptionPlan, SeriesDescription } from "./describingModel.ts";
 import type {
   BackTest,
   DescribingModel,
@@ -27,7 +27,8 @@ const NEWEST_TOLD = 5;
  * value of `known`.
  */
 export function assembleForecast(
-  average: AverageForecast,
+  { average, choice }: DecidedForecast,
+  plan: DescriptionPlan | null,
   description: SeriesDescription | undefined,
   known: Float64Array,
   options: ForecastOptions,
@@ -83,6 +84,7 @@ export function assembleForecast(
     chances:
       options.limits === undefined ? [] : limitChances(average, options.limits, options.seed ?? 0, late),
     backTest: shortened(average.backTest, horizon),
+    choice: { ...choice, describing: plan },
   };
 }
 

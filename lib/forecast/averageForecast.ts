@@ -1,15 +1,23 @@
 import { backTestOf } from "./backTest.ts";
 import { addOutcomes, type Calibration, type CalibrationEvidence, calibrate } from "./calibration.ts";
 import { type Candidate, fitBank, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
-import { type CombinedForecast, combineBank, forecastWorkspace, rollBank } from "./combinedForecast.ts";
+import { candidateWeights } from "./candidateWeights.ts";
+import {
+  bankWeights,
+  combineBank,
+  forecastWorkspace,
+  type RolledBank,
+  rollBank,
+} from "./combinedForecast.ts";
 import { dampOutliers } from "./dampOutliers.ts";
 import type { SeriesDescription } from "./describingModel.ts";
 import { fillGaps } from "./fillGaps.ts";
 import type { BackTest } from "./forecast.ts";
+import { backTestFrom, type ForecastChoice, storedBackTest } from "./forecastChoice.ts";
 import type { MemberFit } from "./memberFit.ts";
 import { naiveDoesBetter, naiveInstead } from "./naiveFallback.ts";
 import type { PredictiveSpread } from "./predictiveSpread.ts";
-import { horizonsCovered, rollingOrigins } from "./rollingOrigins.ts";
+import { horizonsCovered, type Origin, rollingOrigins } from "./rollingOrigins.ts";
 import { workingScales } from "./workingScale.ts";
 
 /** The average of the whole bank at the end of the series, with what the past says about it. */
@@ -30,21 +38,32 @@ export interface AverageForecast {
   readonly steps: readonly number[];
 }
 
+/** An average with what was decided for it, for later forecasts to go by; the describing model apart. */
+export interface DecidedForecast {
+  readonly average: AverageForecast;
+  readonly choice: Omit<ForecastChoice, "describing">;
+}
+
 /** Longest lag looked at: a season and some more, a third of the series, and 200 in any case. */
 function longestLag(count: number, seasons: readonly number[]): number {
   const season = seasons.length > 0 ? seasons[seasons.length - 1] : 0;
   return Math.max(1, Math.min(200, Math.floor(count / 3), Math.max(60, season + 32)));
 }
 
+/** Candidates that carry less than this share of all weight move no digit that is told, and are not fitted. */
+const LEAST_WEIGHT = 1e-4;
+
 /**
- * Forecasts `values` (gaps allowed inside, observed at both ends) by the average of all candidates.
+ * Forecasts `values` (gaps allowed inside, observed at both ends) by the average of all candidates: weighed and
+ * calibrated by the past, or as a standing choice says, which must fit the series (`choiceFits`).
  */
 export function averageForecast(
   values: Float64Array,
   seasons: readonly number[],
   horizon: number,
   description: SeriesDescription | undefined,
-): AverageForecast {
+  standing?: ForecastChoice,
+): DecidedForecast {
   const count = values.length;
   const maxOrder = longestLag(count, seasons);
   const workspace = forecastWorkspace(count, maxOrder);
@@ -64,22 +83,21 @@ export function averageForecast(
   // Two seasons and one value are the least a profile can be fitted to; short series need every origin they can have.
   const least = Math.max(8, seasons.length > 0 ? 2 * season + 1 : 0);
   const origins = rollingOrigins(count, horizon, least);
-  const rolled = rollBank(values, scales, candidates, origins, horizon, maxOrder, workspace);
-  const fitted = fitBank(scales, candidates, count, horizon, maxOrder, workspace);
+  const decision = standing
+    ? standingDecision(standing)
+    : freshDecision(
+        { values, scales, candidates, origins, season, horizon },
+        rollBank(values, scales, candidates, origins, horizon, maxOrder, workspace),
+      );
+  const weights = leading(decision.weights);
+  const wanted = (i: number) => weights[i] > 0;
+  const fitted = fitBank(scales, candidates, count, horizon, maxOrder, workspace, wanted);
+  fitted.fits.forEach((fit, i) => {
+    if (fit === undefined) weights[i] = 0;
+  });
   const bank = forecastBank(scales, candidates, fitted, count, horizon);
-  const combined = combineBank(bank, candidates, scales, rolled, -1, horizon);
-  const evidence: CalibrationEvidence = { scores: [], weights: [] };
-  const past: CombinedForecast[] = [];
-  for (let o = 0; o < origins.length; o++) {
-    const origin = origins[o];
-    const at = combineBank(rolled.banks[o], candidates, scales, rolled, o, origin.steps);
-    past.push(at);
-    addOutcomes(evidence, at.spread, values, origin.count);
-  }
-  const terms = meanTerms(bank.fits, combined.shares);
-  const prior = Math.sqrt((observed.length + terms) / Math.max(1, observed.length - terms));
-  const calibration = calibrate(evidence, prior, horizonsCovered(origins, count), observed.length);
-  const { backTest, naiveSeason } = backTestOf(values, past, origins, season, horizon, calibration);
+  const combined = combineBank(bank, candidates, scales, weights, horizon);
+  const { calibration, backTest, naiveSeason } = decision.record(meanTerms(bank.fits, combined.shares));
   const average: AverageForecast = {
     candidates,
     scales,
@@ -93,9 +111,77 @@ export function averageForecast(
     outliers: [...outliers].sort((a, b) => a - b),
     steps: [...steps].sort((a, b) => a - b),
   };
-  return naiveDoesBetter(backTest.relativeError, horizonsCovered(origins, count))
-    ? naiveInstead(average, values, naiveSeason, origins)
-    : average;
+  const choice = {
+    scales: scales.map(({ scale }) => scale.name),
+    seasons,
+    horizon,
+    weights: Array.from(weights, (weight) => Number(weight.toPrecision(6))),
+    calibration,
+    backTest: storedBackTest(backTest),
+    naiveSeason,
+  };
+  return {
+    average: naiveSeason === null ? average : naiveInstead(average, values, naiveSeason, origins),
+    choice,
+  };
+}
+
+/** Weights without the small ones, which change nothing that is told. */
+function leading(weights: Float64Array): Float64Array {
+  const total = weights.reduce((sum, weight) => sum + weight, 0);
+  return weights.map((weight) => (weight < LEAST_WEIGHT * total ? 0 : weight));
+}
+
+/** What the past says, asked for in two steps because calibration counts the terms of what was fitted. */
+interface Decision {
+  readonly weights: Float64Array;
+  readonly record: (terms: number) => {
+    readonly calibration: Calibration;
+    readonly backTest: BackTest;
+    readonly naiveSeason: number | null;
+  };
+}
+
+function standingDecision(standing: ForecastChoice): Decision {
+  const { calibration, naiveSeason } = standing;
+  return {
+    weights: Float64Array.from(standing.weights),
+    record: () => ({ calibration, backTest: backTestFrom(standing.backTest), naiveSeason }),
+  };
+}
+
+/** Weights by the rolled losses; the record of the average, combined at each origin without its own outcome. */
+function freshDecision(
+  past: {
+    readonly values: Float64Array;
+    readonly scales: readonly ScaledSeries[];
+    readonly candidates: readonly Candidate[];
+    readonly origins: readonly Origin[];
+    readonly season: number;
+    readonly horizon: number;
+  },
+  rolled: RolledBank,
+): Decision {
+  const { values, scales, candidates, origins, season, horizon } = past;
+  const record = (terms: number) => {
+    const evidence: CalibrationEvidence = { scores: [], weights: [] };
+    const combined = origins.map(({ count, steps }, o) => {
+      const weights = bankWeights(rolled.banks[o], rolled, o);
+      const at = combineBank(rolled.banks[o], candidates, scales, weights, steps);
+      addOutcomes(evidence, at.spread, values, count);
+      return at;
+    });
+    const observed = values.reduce((sum, value) => sum + (Number.isNaN(value) ? 0 : 1), 0);
+    const prior = Math.sqrt((observed + terms) / Math.max(1, observed - terms));
+    const horizons = horizonsCovered(origins, values.length);
+    const calibration = calibrate(evidence, prior, horizons, observed);
+    const test = backTestOf(values, combined, origins, season, horizon, calibration);
+    const { backTest } = test;
+    const naiveSeason = naiveDoesBetter(backTest.relativeError, horizons) ? test.naiveSeason : null;
+    return { calibration, backTest, naiveSeason };
+  };
+  const weights = candidateWeights(rolled.losses, -1, () => true, candidates.length, rolled.power);
+  return { weights, record };
 }
 
 /** Number of terms estimated, averaged over the candidates that carry the forecast. */

@@ -61,7 +61,9 @@ export function listCandidates(
   return bank;
 }
 
-/** Fits all candidates on the first `count` values, for forecasts of up to `horizon` steps. */
+/**
+ * Fits the wanted candidates (all unless told) on the first `count` values, for forecasts of up to `horizon` steps.
+ */
 export function fitBank(
   scales: readonly ScaledSeries[],
   candidates: readonly Candidate[],
@@ -69,14 +71,17 @@ export function fitBank(
   horizon: number,
   maxOrder: number,
   workspace: BurgWorkspace,
+  wanted: (candidate: number) => boolean = () => true,
 ): FittedBank {
   const fits: (MemberFit | undefined)[] = [];
   for (let i = 0; i < candidates.length; i++) {
     const { scale, preparation, description } = candidates[i];
     const before = candidates[i - 1];
-    if (description !== undefined) fits.push(describedFit(description, count));
+    if (!wanted(i)) fits.push(undefined);
+    else if (description !== undefined) fits.push(describedFit(description, count));
     // Drift kinds of one preparation stand side by side in the list and share a fit.
-    else if (before?.scale === scale && before.preparation === preparation) fits.push(fits[i - 1]);
+    else if (fits[i - 1] !== undefined && before?.scale === scale && before.preparation === preparation)
+      fits.push(fits[i - 1]);
     else fits.push(fitMember(scales[scale].values, count, preparation, maxOrder, workspace));
   }
   const variances = fits.map((fit, i) =>

@@ -75,18 +75,25 @@ function describedOptimism(fit: MemberFit | undefined, count: number): number {
   return ((count + terms) / Math.max(1, count - terms)) ** 2;
 }
 
-/** Combines one bank by the losses of the origins, leaving one out when it is judged itself. */
+/** Weights of a bank's candidates by the losses of the origins, leaving one out when it is judged itself. */
+export function bankWeights(
+  bank: BankForecast,
+  { losses, power }: Pick<RolledBank, "losses" | "power">,
+  leaveOut: number,
+): Float64Array {
+  const usable = (i: number): boolean => bank.fits[i] !== undefined;
+  return candidateWeights(losses, leaveOut, usable, bank.fits.length, power);
+}
+
+/** Combines one bank by weights: the weighted middle half at each step. */
 export function combineBank(
   bank: BankForecast,
   candidates: readonly Candidate[],
   scales: readonly ScaledSeries[],
-  { losses, power }: Pick<RolledBank, "losses" | "power">,
-  leaveOut: number,
+  weights: Float64Array,
   horizon: number,
 ): CombinedForecast {
   const count = candidates.length;
-  const usable = (i: number): boolean => bank.fits[i] !== undefined;
-  const weights = candidateWeights(losses, leaveOut, usable, count, power);
   const column = new Float64Array(count);
   const order = new Int32Array(count);
   const stepShares = new Float64Array(count);

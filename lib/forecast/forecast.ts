@@ -1,4 +1,5 @@
 import type { AutoregressiveFit } from "../autoregression/fit.ts";
+import type { ForecastChoice } from "./forecastChoice.ts";
 
 /** A central range a period: `low[h]`..`high[h]` holds the value with probability `level` percent. */
 export interface ForecastInterval {
@@ -68,6 +69,8 @@ export interface Forecast {
   readonly notes: readonly ForecastNote[];
   readonly chances: readonly LimitChance[];
   readonly backTest: BackTest;
+  /** What was decided from the past, for `choice` of a later forecast; `null` where nothing was. */
+  readonly choice: ForecastChoice | null;
 }
 
 export interface ForecastOptions {
@@ -84,4 +87,9 @@ export interface ForecastOptions {
   readonly limits?: { readonly above?: number; readonly below?: number };
   /** Index of the first value after the last lasting change, found by drift; earlier values count for less. */
   readonly changedAt?: number;
+  /**
+   * What an earlier forecast of the same series decided, to go by instead of deciding anew; sensible while fewer
+   * values came since than the horizon is long. Ignored when the series has become of another kind.
+   */
+  readonly choice?: ForecastChoice;
 }

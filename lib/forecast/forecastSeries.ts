@@ -2,8 +2,9 @@ import { requireValues, requireWhole } from "../autoregression/checks.ts";
 import { afterChange } from "./afterChange.ts";
 import { assembleForecast } from "./assembleForecast.ts";
 import { averageForecast } from "./averageForecast.ts";
-import { describeSeries, type SeriesDescription } from "./describingModel.ts";
+import { type DescriptionPlan, describeAs, planDescription } from "./describingModel.ts";
 import type { Forecast, ForecastOptions } from "./forecast.ts";
+import { choiceFits } from "./forecastChoice.ts";
 import { seasonLengths } from "./seasonLengths.ts";
 import { intermittentLevel, lastLevel, simpleForecast, steadyLevel } from "./simpleForecast.ts";
 
@@ -55,9 +56,20 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   // Periods that are past but unobserved are forecast over and dropped.
   const late = series.length - end;
   const seasons = seasonLengths(known.length, options);
-  const description = tryDescribe(known, options);
-  const average = averageForecast(known, seasons, options.horizon + late, description);
-  return assembleForecast(average, description, known, options, late, start);
+  const steps = options.horizon + late;
+  const { choice } = options;
+  if (choice && choiceFits(choice, observed, seasons, steps)) {
+    const { describing } = choice;
+    const description = describing === null ? undefined : tryDescribe(known, describing);
+    if (describing === null || description !== undefined) {
+      const decided = averageForecast(known, seasons, steps, description, choice);
+      return assembleForecast(decided, describing, description, known, options, late, start);
+    }
+  }
+  const plan = tryPlan(known, options);
+  const description = plan === null ? undefined : tryDescribe(known, plan);
+  const decided = averageForecast(known, seasons, steps, description);
+  return assembleForecast(decided, plan, description, known, options, late, start);
 }
 
 function checkOptions(values: ArrayLike<number>, options: ForecastOptions): void {
@@ -130,9 +142,13 @@ function zerosFollowSeason(series: Float64Array, season: number): boolean {
 }
 
 /** A series may be forecast that no likelihood describes (a perfect line): then it has no describing model. */
-function tryDescribe(known: Float64Array, options: ForecastOptions): SeriesDescription | undefined {
+const tryPlan = (known: Float64Array, options: ForecastOptions) =>
+  orNothing(() => planDescription(known, options)) ?? null;
+const tryDescribe = (known: Float64Array, plan: DescriptionPlan) => orNothing(() => describeAs(known, plan));
+
+function orNothing<T>(work: () => T): T | undefined {
   try {
-    return describeSeries(known, options);
+    return work();
   } catch (error) {
     if (error instanceof RangeError) return undefined;
     throw error;

@@ -134,6 +134,7 @@ export function simpleForecast(
     notes,
     chances: passing,
     backTest: noBackTest(horizon),
+    choice: null,
   };
 }
 
