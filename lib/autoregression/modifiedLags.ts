@@ -15,16 +15,27 @@ export function modifiedLags(detrended: Float64Array, longest: number): number {
   // Columns: the level before, the changes 1..longest before, and last the change itself.
   const size = longest + 2;
   const products = new Float64Array(size * size);
-  const at = (column: number, time: number) => {
-    if (column === 0) return detrended[time - 1];
-    const lag = column === size - 1 ? 0 : column;
-    return detrended[time - lag] - detrended[time - lag - 1];
-  };
-  for (let row = 0; row < size; row++) {
-    for (let column = 0; column <= row; column++) {
-      let sum = 0;
-      for (let time = first; time < detrended.length; time++) sum += at(row, time) * at(column, time);
+  const end = detrended.length;
+  const changes = new Float64Array(end);
+  for (let time = 1; time < end; time++) changes[time] = detrended[time] - detrended[time - 1];
+  const columnOf = (lag: number) => (lag === 0 ? size - 1 : lag);
+  for (let lag = 0; lag <= longest; lag++) {
+    let withLevel = 0;
+    for (let time = first; time < end; time++) withLevel += changes[time - lag] * detrended[time - 1];
+    products[columnOf(lag) * size] = withLevel;
+  }
+  for (let time = first; time < end; time++) products[0] += detrended[time - 1] ** 2;
+  for (let apart = 0; apart <= longest; apart++) {
+    let sum = 0;
+    for (let time = first; time < end; time++) sum += changes[time] * changes[time - apart];
+    // One lag on, both changes come from one time earlier: a product enters at the start and one leaves at the end.
+    for (let lag = 0; lag + apart <= longest; lag++) {
+      const [row, column] = lag === 0 ? [size - 1, columnOf(apart)] : [lag + apart, lag];
       products[row * size + column] = sum;
+      const before = first - 1 - lag;
+      const last = end - 1 - lag;
+      if (before - apart > 0)
+        sum += changes[before] * changes[before - apart] - changes[last] * changes[last - apart];
     }
   }
   const power = products[0];

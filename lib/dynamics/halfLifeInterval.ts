@@ -1,7 +1,7 @@
 import { burgAllOrders, burgWorkspace } from "../autoregression/burg.ts";
 import { requireValues, requireWhole } from "../autoregression/checks.ts";
 import { isStationary } from "../autoregression/partials.ts";
-import { randomNormal } from "../numeric/randomNormal.ts";
+import { recalledNormals } from "../numeric/recalledNormals.ts";
 import { biasCorrector, type EstimatedLevel } from "./firstOrderBias.ts";
 import { halfLife } from "./halfLife.ts";
 import { simulator } from "./simulator.ts";
@@ -68,13 +68,14 @@ export function halfLifeInterval(
   const correct = biasCorrector(p, n, estimated);
   const target = new Float64Array(p);
   correct(coefficients, target);
-  const simulate = simulator(towards(inside(coefficients), target), randomNormal(seed));
+  const simulate = simulator(towards(inside(coefficients), target));
+  const shocks = recalledNormals(seed, replications * n);
   const workspace = burgWorkspace(n, p);
   const series = new Float64Array(n);
   const replicate = new Float64Array(p);
   const lives = new Float64Array(replications);
   for (let r = 0; r < replications; r++) {
-    simulate(series);
+    simulate(series, shocks.subarray(r * n, (r + 1) * n));
     takeOff(series, estimated);
     burgAllOrders(series, 0, p, workspace);
     correct(workspace.coefficients.subarray((p - 1) * p), replicate);
@@ -99,9 +100,10 @@ function takeOff(series: Float64Array, estimated: EstimatedLevel): void {
   let mean = 0;
   let slope = 0;
   for (let t = 0; t < n; t++) {
-    mean += series[t] / n;
+    mean += series[t];
     slope += series[t] * (t - middle);
   }
+  mean /= n;
   slope = estimated === "trend" ? slope / ((n * (n * n - 1)) / 12) : 0;
   for (let t = 0; t < n; t++) series[t] -= mean + slope * (t - middle);
 }

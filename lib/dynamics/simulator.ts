@@ -1,11 +1,11 @@
 import { coefficientsToPartials, stepUp } from "../autoregression/partials.ts";
 
 /**
- * A function that overwrites a series with a draw from a stationary Gaussian AR process with unit innovations. The first
- * p values are drawn from their exact joint distribution, each from its predictor on the ones before it, so there is no
- * warm-up. Throws `RangeError` for a process that is not stationary.
+ * A function that overwrites a series with a draw from a stationary Gaussian AR process with unit innovations, made of as
+ * many independent standard normal `shocks`. The first p values are drawn from their exact joint distribution, each from
+ * its predictor on the ones before it, so there is no warm-up. Throws `RangeError` for a process that is not stationary.
  */
-export function simulator(coefficients: Float64Array, normal: () => number): (series: Float64Array) => void {
+export function simulator(coefficients: Float64Array): (series: Float64Array, shocks: Float64Array) => void {
   const p = coefficients.length;
   const partials = coefficientsToPartials(coefficients);
   // Row t holds the predictor of value t from the t ones before it.
@@ -20,11 +20,16 @@ export function simulator(coefficients: Float64Array, normal: () => number): (se
     stepUp(predictor, t + 1, partials[t]);
     variance *= (1 - partials[t]) * (1 + partials[t]);
   }
-  return (series) => {
-    for (let t = 0; t < series.length; t++) {
-      const known = t < p ? predictors[t] : coefficients;
-      let value = t < p ? deviations[t] * normal() : normal();
-      for (let j = 0; j < known.length; j++) value += known[j] * series[t - 1 - j];
+  return (series, shocks) => {
+    const start = Math.min(p, series.length);
+    for (let t = 0; t < start; t++) {
+      let value = deviations[t] * shocks[t];
+      for (let j = 0; j < t; j++) value += predictors[t][j] * series[t - 1 - j];
+      series[t] = value;
+    }
+    for (let t = start; t < series.length; t++) {
+      let value = shocks[t];
+      for (let j = 0; j < p; j++) value += coefficients[j] * series[t - 1 - j];
       series[t] = value;
     }
   };

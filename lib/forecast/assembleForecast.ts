@@ -1,7 +1,7 @@
-import type { AverageForecast, DecidedForecast } from "./averageForecast.ts";
+import type { AverageForecast } from "./averageForecast.ts";
 import { calibratedReach } from "./calibration.ts";
 import { candidateName } from "./candidates.ts";
-import type { DescriptionPlan, SeriesDescription } from "./describingModel.ts";
+import type { SeriesDescription } from "./describingModel.ts";
 import type {
   BackTest,
   DescribingModel,
@@ -10,6 +10,7 @@ import type {
   ForecastNote,
   ForecastOptions,
 } from "./forecast.ts";
+import type { ForecastChoice } from "./forecastChoice.ts";
 import { limitChances } from "./limitChances.ts";
 import { normalQuantile } from "./normal.ts";
 import { spreadQuantile } from "./predictiveSpread.ts";
@@ -27,8 +28,8 @@ const NEWEST_TOLD = 5;
  * value of `known`.
  */
 export function assembleForecast(
-  { average, choice }: DecidedForecast,
-  plan: DescriptionPlan | null,
+  average: AverageForecast,
+  choice: ForecastChoice,
   description: SeriesDescription | undefined,
   known: Float64Array,
   options: ForecastOptions,
@@ -84,7 +85,7 @@ export function assembleForecast(
     chances:
       options.limits === undefined ? [] : limitChances(average, options.limits, options.seed ?? 0, late),
     backTest: shortened(average.backTest, horizon),
-    choice: { ...choice, describing: plan },
+    choice,
   };
 }
 

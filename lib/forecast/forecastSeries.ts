@@ -62,14 +62,22 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
     const { describing } = choice;
     const description = describing === null ? undefined : tryDescribe(known, describing);
     if (describing === null || description !== undefined) {
-      const decided = averageForecast(known, seasons, steps, description, choice);
-      return assembleForecast(decided, describing, description, known, options, late, start);
+      const { average } = averageForecast(known, seasons, steps, description, choice);
+      return assembleForecast(average, choice, description, known, options, late, start);
     }
   }
   const plan = tryPlan(known, options);
   const description = plan === null ? undefined : tryDescribe(known, plan);
-  const decided = averageForecast(known, seasons, steps, description);
-  return assembleForecast(decided, plan, description, known, options, late, start);
+  const { average, choice: decided } = averageForecast(known, seasons, steps, description);
+  return assembleForecast(
+    average,
+    { ...decided, describing: plan },
+    description,
+    known,
+    options,
+    late,
+    start,
+  );
 }
 
 function checkOptions(values: ArrayLike<number>, options: ForecastOptions): void {

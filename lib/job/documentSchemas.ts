@@ -179,6 +179,39 @@ const problem = z.object({
   fatal: z.boolean(),
 });
 
+const standingChoice = z.object({
+  lastPeriod: period,
+  changedAt: z.nullable(period),
+  choice: z.object({
+    scales: z.array(z.string()),
+    seasons: numbers,
+    horizon: z.number(),
+    describing: z.nullable(
+      z.object({
+        scale: z.enum(["raw", "log"]),
+        trend: z.boolean(),
+        season: z.number(),
+        order: z.number(),
+      }),
+    ),
+    weights: numbers,
+    calibration: z.object({
+      narrow: z.number(),
+      wide: z.number(),
+      freedom: z.number(),
+      shortness: z.number(),
+    }),
+    backTest: z.object({
+      origins: z.number(),
+      meanAbsoluteError: z.array(orNull),
+      naiveMeanAbsoluteError: z.array(orNull),
+      relativeError: orNull,
+      coverage80: orNull,
+    }),
+    naiveSeason: orNull,
+  }),
+});
+
 const storedSeries = z.object({
   facts,
   digest: z.string(),
@@ -205,6 +238,7 @@ const storedSeries = z.object({
       }),
     ),
   }),
+  choice: z.optional(z.nullable(standingChoice)),
 }) satisfies z.ZodMiniType<StoredSeries>;
 
 /** `models/<table>/<asOf>.json`. */

@@ -3,6 +3,7 @@ import type { ObjectStore } from "../store/objectStore.ts";
 import type { SeriesFacts } from "../words/facts.ts";
 import { readDocument, type Versioned } from "./documents.ts";
 import { asOfFromKey, modelKey, modelPrefix } from "./keys.ts";
+import type { StandingChoice } from "./standingChoice.ts";
 import type { TrackState } from "./trackRecord.ts";
 
 /** One series after a run: what people are told, and what the next run goes on from. */
@@ -15,6 +16,8 @@ export interface StoredSeries {
   /** State of the drift room; read back through its own schema. */
   readonly watch: unknown;
   readonly track: TrackState;
+  /** What the forecast decided, to be gone by until it is due again; `null` where a simple rule forecasts. */
+  readonly choice?: StandingChoice | null;
 }
 
 /** `models/<table>/<asOf>.json`: immutable, one a table a run. */

@@ -22,6 +22,7 @@ import { orNull } from "./orNull.ts";
 import { seedOf } from "./seed.ts";
 import { seriesDigest } from "./seriesDigest.ts";
 import type { Settings } from "./settings.ts";
+import { choiceThatStands, choiceToKeep } from "./standingChoice.ts";
 import { rememberForecasts, scoreForecasts, type TrackState, trackRecord } from "./trackRecord.ts";
 import { advanceWatch, monitorFacts } from "./watchFacts.ts";
 
@@ -80,6 +81,13 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     falseAlarmRate: settings.falseAlarmRate,
     seed: seedOf(table, series.name),
   });
+  const newest = series.values.length - 1;
+  const changedAt = watched.changedAt === undefined ? null : calendar.periodOf(watched.changedAt);
+  const { dataFindings } = task;
+  const stands = choiceThatStands(previous?.stored.choice, {
+    ...{ horizon, newest, changedAt, dataFindings },
+    indexOf: calendar.indexOf,
+  });
   const bounds = { low: tableSettings.atLeast, high: tableSettings.atMost };
   const forecast = forecastSeries(adjusted.values, {
     horizon,
@@ -89,6 +97,7 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     bounds,
     limits: tableSettings.limits,
     changedAt: watched.changedAt,
+    choice: stands?.choice,
   });
   const periods = Array.from({ length: horizon }, (_, step) =>
     calendar.periodOf(series.values.length + step),
@@ -101,6 +110,7 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     watchOrigin,
     watch: watched.watch,
     track,
+    choice: choiceToKeep(stands, forecast, calendar.periodOf(newest), changedAt),
   };
 }
 
