@@ -1,4 +1,5 @@
 import { type LeastSquares, leastSquares } from "../numeric/leastSquares.ts";
+import { tabulate } from "../numeric/tabulate.ts";
 
 /** A regression of x_t on its own past. */
 export interface ConditionalLeastSquares {
@@ -33,7 +34,7 @@ export function conditionalLeastSquares(
     if (complete) rows.push(t);
   }
   const shift = withIntercept ? centre : 0;
-  const lagged = (lag: number) => Float64Array.from(rows, (t) => values[t - lag] - shift);
+  const lagged = (lag: number) => tabulate(rows.length, (row) => values[rows[row] - lag] - shift);
   const columns: Float64Array[] = withIntercept ? [new Float64Array(rows.length).fill(1)] : [];
   for (let j = 1; j <= order; j++) columns.push(lagged(j));
   const regression = leastSquares(columns, lagged(0));

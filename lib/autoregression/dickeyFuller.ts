@@ -1,5 +1,6 @@
 import { type LeastSquares, leastSquares } from "../numeric/leastSquares.ts";
 import { observedMean } from "../numeric/sums.ts";
+import { tabulate } from "../numeric/tabulate.ts";
 import { requireObserved, requireValues, requireWhole } from "./checks.ts";
 import { informationCriteria } from "./criteria.ts";
 import {
@@ -81,8 +82,7 @@ export function changeRegression(
   firstRow: number,
 ): ChangeRegression {
   const rows = values.length - firstRow;
-  const column = (of: (t: number) => number) =>
-    Float64Array.from({ length: Math.max(0, rows) }, (_, i) => of(firstRow + i));
+  const column = (of: (t: number) => number) => tabulate(Math.max(0, rows), (i) => of(firstRow + i));
   // With a constant among the terms the origin of the level is free.
   const origin = terms === "none" ? 0 : observedMean(values);
   const columns: Float64Array[] = [];

@@ -1,3 +1,4 @@
+import { tabulate } from "../numeric/tabulate.ts";
 import { requireWhole } from "./checks.ts";
 
 // Columns for `fitAutoregression`'s regressors. `start` continues a column past the data: with n values,
@@ -10,7 +11,7 @@ export function constantColumn(length: number): Float64Array {
 
 /** t = start + 1, start + 2, … */
 export function trendColumn(length: number, start = 0): Float64Array {
-  return Float64Array.from({ length }, (_, i) => start + i + 1);
+  return tabulate(length, (i) => start + i + 1);
 }
 
 /**
@@ -28,8 +29,8 @@ export function harmonicColumns(length: number, period: number, pairs: number, s
   for (let k = 1; k <= pairs; k++) {
     // The angle is taken modulo a whole turn first, so that late entries are as exact as early ones.
     const angle = (i: number) => (2 * Math.PI * ((k * (start + i + 1)) % period)) / period;
-    columns.push(Float64Array.from({ length }, (_, i) => Math.cos(angle(i))));
-    if (2 * k < period) columns.push(Float64Array.from({ length }, (_, i) => Math.sin(angle(i))));
+    columns.push(tabulate(length, (i) => Math.cos(angle(i))));
+    if (2 * k < period) columns.push(tabulate(length, (i) => Math.sin(angle(i))));
   }
   return columns;
 }

@@ -1,5 +1,6 @@
 import { leastSquares } from "../numeric/leastSquares.ts";
 import { observedMean } from "../numeric/sums.ts";
+import { tabulate } from "../numeric/tabulate.ts";
 import { requireObserved, requireValues, requireWhole } from "./checks.ts";
 import { changeRegression, schwertLags } from "./dickeyFuller.ts";
 import {
@@ -76,9 +77,9 @@ function quasiDetrend(values: ArrayLike<number>, trend: boolean): Float64Array {
   const n = values.length;
   const root = 1 - (trend ? 13.5 : 7) / n;
   const origin = observedMean(values);
-  const centredValues = Float64Array.from({ length: n }, (_, t) => values[t] - origin);
+  const centredValues = tabulate(n, (t) => values[t] - origin);
   const quasi = (column: ArrayLike<number>) =>
-    Float64Array.from({ length: n }, (_, t) => (t === 0 ? column[0] : column[t] - root * column[t - 1]));
+    tabulate(n, (t) => (t === 0 ? column[0] : column[t] - root * column[t - 1]));
   const terms = trend ? [constantColumn(n), trendColumn(n)] : [constantColumn(n)];
   const fit = leastSquares(terms.map(quasi), quasi(centredValues));
   const coefficients = fit?.coefficients ?? new Float64Array(terms.length);

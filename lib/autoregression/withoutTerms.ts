@@ -1,5 +1,6 @@
 import { leastSquares } from "../numeric/leastSquares.ts";
 import { observedMean } from "../numeric/sums.ts";
+import { tabulate } from "../numeric/tabulate.ts";
 import { constantColumn, trendColumn } from "./regressionTerms.ts";
 
 /** Values minus their mean, or minus their least-squares trend line. Takes no gaps. */
@@ -9,7 +10,7 @@ export function withoutTerms(values: ArrayLike<number>, trend: boolean): Float64
   const terms = trend ? [constantColumn(n), trendColumn(n)] : [constantColumn(n)];
   const fit = leastSquares(
     terms,
-    Float64Array.from({ length: n }, (_, t) => values[t] - origin),
+    tabulate(n, (t) => values[t] - origin),
   );
   return fit?.residuals ?? new Float64Array(n);
 }

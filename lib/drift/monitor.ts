@@ -1,3 +1,4 @@
+import { tabulate } from "../numeric/tabulate.ts";
 import type { ChangeKind, ChangeNotice } from "./notice.ts";
 
 /** What a monitor watches a series with. */
@@ -42,5 +43,5 @@ export function toStored(values: ArrayLike<number>): (number | null)[] {
 }
 
 export function fromStored(values: readonly (number | null)[]): Float64Array {
-  return Float64Array.from(values, (value) => value ?? Number.NaN);
+  return tabulate(values.length, (time) => values[time] ?? Number.NaN);
 }

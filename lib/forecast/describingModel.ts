@@ -3,6 +3,7 @@ import { requireObserved, requireValues } from "../autoregression/checks.ts";
 import type { AutoregressiveFit } from "../autoregression/fit.ts";
 import { fitAutoregression } from "../autoregression/fitAutoregression.ts";
 import { leastSquares } from "../numeric/leastSquares.ts";
+import { tabulate } from "../numeric/tabulate.ts";
 import { describingColumns } from "./describingTerms.ts";
 import { fillGaps } from "./fillGaps.ts";
 import type { ForecastOptions } from "./forecast.ts";
@@ -50,7 +51,7 @@ export function describeSeries(
 /** The exact fit of a plan; of a lower order where the likelihood of the planned one cannot be maximised. */
 export function describeAs(values: ArrayLike<number>, plan: DescriptionPlan): SeriesDescription {
   const { scale, trend, season } = plan;
-  const scaled = Float64Array.from(values, scale === "log" ? Math.log : (value) => value);
+  const scaled = tabulate(values.length, scale === "log" ? (t) => Math.log(values[t]) : (t) => values[t]);
   const regressors = describingColumns(trend, season, 0, scaled.length, scaled.length);
   for (let order = plan.order; ; order--) {
     try {
@@ -158,5 +159,5 @@ export function describedPath(
     for (let j = 0; j < order; j++) sum += fit.coefficients[j] * path[order + h - 1 - j];
     path[order + h] = sum;
   }
-  return Float64Array.from({ length: horizon }, (_, h) => path[order + h] + level(order + h));
+  return tabulate(horizon, (h) => path[order + h] + level(order + h));
 }

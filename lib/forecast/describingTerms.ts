@@ -1,3 +1,5 @@
+import { tabulate } from "../numeric/tabulate.ts";
+
 /** Number of seasonal columns: a pattern of up to 12 periods in full, of a longer one the first three waves. */
 function waveColumns(season: number): number {
   if (season < 2) return 0;
@@ -19,12 +21,12 @@ export function describingColumns(
   const waves = waveColumns(season);
   if (!trend && waves === 0) return [];
   const columns = [new Float64Array(count).fill(1)];
-  if (trend) columns.push(Float64Array.from({ length: count }, (_, t) => (from + t) / span));
+  if (trend) columns.push(tabulate(count, (t) => (from + t) / span));
   for (let column = 0; column < waves; column++) {
     const wave = (column >> 1) + 1;
     const turn = (2 * Math.PI * wave) / season;
     const wavelike = column % 2 === 0 ? Math.cos : Math.sin;
-    const pattern = Float64Array.from({ length: season }, (_, place) => wavelike(turn * place));
+    const pattern = tabulate(season, (place) => wavelike(turn * place));
     const values = new Float64Array(count);
     for (let t = 0; t < count; t++) values[t] = pattern[(((from + t) % season) + season) % season];
     columns.push(values);

@@ -1,4 +1,5 @@
 import { requireValues, requireWhole } from "../autoregression/checks.ts";
+import { tabulate } from "../numeric/tabulate.ts";
 import { afterChange } from "./afterChange.ts";
 import { assembleForecast } from "./assembleForecast.ts";
 import { averageForecast } from "./averageForecast.ts";
@@ -41,7 +42,7 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   checkOptions(values, options);
   let first = 0;
   while (Number.isNaN(values[first])) first++;
-  const series = Float64Array.from({ length: values.length - first }, (_, t) => values[first + t]);
+  const series = tabulate(values.length - first, (t) => values[first + t]);
   let end = series.length;
   while (Number.isNaN(series[end - 1])) end--;
   const whole = series.subarray(Math.max(0, end - LONGEST_HISTORY), end);

@@ -11,10 +11,13 @@ import { round } from "./plot.ts";
 import { statusChip } from "./status.ts";
 import { verticalScale } from "./verticalScale.ts";
 
-/** The front: every series of the run on one line each, what needs attention first. */
+/**
+ * The front: every series of the run on one line each, what needs attention first. `linkOf` leads to a series' section;
+ * `null` where it has none.
+ */
 export function frontPage(
   all: readonly Ranked[],
-  linkOf: (index: number) => string,
+  linkOf: (index: number) => string | null,
   run: RunFacts,
   voice: Voice,
 ): Markup {
@@ -23,6 +26,7 @@ export function frontPage(
   const several = run.tables.length > 1;
   return html`<nav class="front" aria-labelledby="all"><h2 id="all">All series, what needs attention first</h2>
 <p class="hint">Recent past and forecast; under each number the range that is meant to hold it ${percentWriter(voice.locale)(level)} of the time.</p>
+${linkOf(all.length - 1) === null ? html`<p class="hint">Lines that lead on have pictures below; of any other series, <code>npm start -- explain</code> with its table and name gives the account.</p>` : nothing}
 <ol>${all.map((one, index) => row(one, linkOf(index), several, run, voice))}</ol>${untoldLine(run)}</nav>`;
 }
 
@@ -34,13 +38,16 @@ function untoldLine({ untold }: RunFacts): Markup {
     : html`<p class="hint">And ${count} further series, ${untold?.steady ?? 0} of them steady: their numbers stand in the forecast files.</p>`;
 }
 
-function row(one: Ranked, link: string, several: boolean, run: RunFacts, voice: Voice): Markup {
+function row(one: Ranked, link: string | null, several: boolean, run: RunFacts, voice: Voice): Markup {
   const speech = speechFor(one.facts, voice, run.asOf);
   const { forecast } = one.facts;
   const interval = spokenInterval(forecast.intervals);
   const told = (value: number) => speech.write(value, speech.forecastStep);
   const news = newsOf(one, speech);
-  return html`<li><a href="${link}"><span class="name">${several ? html`<small>${plainName(one.table.table, 120)}</small> ` : nothing}${plainName(one.facts.series, 120)}</span>${statusChip(one)}${mini(one)}<span class="next"><b>${told(forecast.point[0])}</b> ${speech.unit ?? ""} <small>${told(interval.low[0])} to ${told(interval.high[0])}, ${speech.periods.name(forecast.periods[0])}</small></span>${news ? html`<span class="news">${news}</span>` : nothing}</a></li>`;
+  const line = html`<span class="name">${several ? html`<small>${plainName(one.table.table, 120)}</small> ` : nothing}${plainName(one.facts.series, 120)}</span>${statusChip(one)}${mini(one)}<span class="next"><b>${told(forecast.point[0])}</b> ${speech.unit ?? ""} <small>${told(interval.low[0])} to ${told(interval.high[0])}, ${speech.periods.name(forecast.periods[0])}</small></span>${news ? html`<span class="news">${news}</span>` : nothing}`;
+  return link === null
+    ? html`<li><div class="row">${line}</div></li>`
+    : html`<li><a href="${link}">${line}</a></li>`;
 }
 
 function newsOf({ facts }: Ranked, speech: Speech): string | null {

@@ -25,7 +25,7 @@ a{color:var(--water)}
 .front{margin-top:1.75rem}
 .front ol{list-style:none;margin:.75rem 0 0;padding:0;border-top:1px solid var(--rule)}
 .front li{border-bottom:1px solid var(--rule)}
-.front a{display:grid;grid-template-columns:minmax(8rem,1.1fr) 6.5rem minmax(8rem,1.2fr) minmax(14rem,1.6fr);gap:.15rem 1.25rem;align-items:center;padding:.6rem .25rem;color:inherit;text-decoration:none}
+.front a,.front .row{display:grid;grid-template-columns:minmax(8rem,1.1fr) 6.5rem minmax(8rem,1.2fr) minmax(14rem,1.6fr);gap:.15rem 1.25rem;align-items:center;padding:.6rem .25rem;color:inherit;text-decoration:none}
 .front a:hover{background:var(--card)}
 .name{font-size:1.15rem}
 small,.of{font:400 .85rem/1.3 system-ui,-apple-system,"Segoe UI",sans-serif;color:var(--soft)}
@@ -114,7 +114,7 @@ footer{padding-top:1rem;padding-bottom:2.5rem;color:var(--soft);font-size:.9rem}
 @media(max-width:46rem){
 .xs .more{display:none}
 header,main,footer{padding-left:.9rem;padding-right:.9rem}
-.front a{grid-template-columns:1fr auto;gap:.3rem .75rem}
+.front a,.front .row{grid-template-columns:1fr auto;gap:.3rem .75rem}
 .front .mini{grid-column:1/-1}.front .next{grid-column:1/-1}
 .series{margin:1.25rem -.35rem;padding:.9rem .75rem}
 }

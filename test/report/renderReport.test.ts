@@ -2,24 +2,28 @@ import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { escapeHtml, html } from "../../lib/report/markup.ts";
 import { renderReport } from "../../lib/report/renderReport.ts";
+import type { RunFacts } from "../../lib/words/facts.ts";
 import { branchFacts, britishVoice, loansRun } from "../support/factsFixture.ts";
+import { stationSurprise } from "../support/findingsFixture.ts";
 import { hardRun } from "../support/hardFacts.ts";
 
-const manySeries = (count: number) => ({
+/** Series of which the last ones have a surprise to tell. */
+const manySeries = (count: number, news = 0): RunFacts => ({
   ...loansRun,
   tables: [
     {
       table: "loans",
       problems: [],
-      series: Array.from({ length: count }, (_, index) =>
-        branchFacts({
+      series: Array.from({ length: count }, (_, index) => ({
+        ...branchFacts({
           series: `Branch ${index + 1}`,
           level: 100,
           coefficient: 0.6,
           shockSize: 12,
           seed: index,
         }),
-      ),
+        ...(index >= count - news ? { findings: [stationSurprise] } : {}),
+      })),
     },
   ],
 });
@@ -80,7 +84,7 @@ describe("the report", () => {
   });
 
   it("never gives two elements one id, and every link inside it leads somewhere", () => {
-    const pages = renderReport({ ...manySeries(150), failed: hardRun.failed }, britishVoice);
+    const pages = renderReport({ ...manySeries(150, 150), failed: hardRun.failed }, britishVoice);
     expect(pages.length).toBeGreaterThan(1);
     expect(pages.map((page) => page.key).slice(0, 2)).toEqual(["report.html", "report-2.html"]);
     const ids = new Map(
@@ -100,7 +104,20 @@ describe("the report", () => {
     const pages = renderReport(manySeries(500), britishVoice);
     for (const page of pages) expect(new TextEncoder().encode(page.html).length).toBeLessThan(15e6);
     expect(pages[0].html.match(/<span class="name">/g)).toHaveLength(500);
-    expect(pages.flatMap((page) => page.html.match(/<section id="s/g) ?? [])).toHaveLength(500);
+  });
+
+  it("of 500 series draws a hundred, or all with news where those are more", () => {
+    for (const [news, sections] of [
+      [3, 100],
+      [130, 130],
+    ]) {
+      const pages = renderReport(manySeries(500, news), britishVoice);
+      expect(pages.flatMap((page) => page.html.match(/<section id="s/g) ?? [])).toHaveLength(sections);
+      for (const branch of ["Branch 499", "Branch 500"])
+        expect(pages.map((page) => page.html).join("")).toMatch(new RegExp(`<h2 id="s\\d+h">${branch} `));
+      expect(pages[0].html.match(/<li><div class="row">/g)).toHaveLength(500 - sections);
+      expect(pages[0].html).toContain("Lines that lead on have pictures below");
+    }
   });
 
   it("is the same to the byte when made again", () => {
