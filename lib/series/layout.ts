@@ -54,15 +54,16 @@ export function countColumn(rows: readonly Row[], column: number): ColumnCounts 
   return { numbers, missing, texts: rows.length - numbers - missing };
 }
 
-/** Rows whose cell in a column is written in a format. */
-export function countDates(rows: readonly Row[], column: number, format: DateFormat): number {
+/** Rows whose cell in a column is written in a format; counted no further once they cannot be more than `toBeat`. */
+function countDates(rows: readonly Row[], column: number, format: DateFormat, toBeat: number): number {
   const cell = emptyDateCell();
-  let found = 0;
+  let missed = 0;
   for (const { cells } of rows) {
     const text = cells[column];
-    if (text !== undefined && text !== "" && format.read(text.trim(), cell)) found++;
+    if (text === undefined || text === "" || !format.read(text.trim(), cell)) missed++;
+    if (rows.length - missed <= toBeat) break;
   }
-  return found;
+  return rows.length - missed;
 }
 
 export interface DateColumn {
@@ -80,8 +81,9 @@ export function findDateColumn(
   let best: DateColumn | undefined;
   for (const column of columns) {
     for (const format of formats) {
-      const found = countDates(rows, column, format);
-      if (found > (best?.found ?? 0)) best = { column, format, found };
+      const toBeat = best?.found ?? 0;
+      const found = countDates(rows, column, format, toBeat);
+      if (found > toBeat) best = { column, format, found };
     }
   }
   return best;
