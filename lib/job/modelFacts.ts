@@ -69,13 +69,57 @@ function fadingOf(values: Float64Array, trend: boolean, halfLife: HalfLifeInterv
   return shockFading(values, { trend, halfLife }).verdict;
 }
 
-/** The describing model in numbers that survive JSON; `values` are departures from its terms, on its own scale. */
-export function modelFacts(model: DescribingModel, level: DescribedLevel, values: Float64Array): ModelFacts {
+/** How far a coefficient may move, in its standard errors, before what was simulated around it is simulated anew. */
+const smallMove = 0.25;
+
+/** Whether what was simulated for an earlier fit of the same model still describes this one. */
+function hardlyMoved(earlier: ModelFacts, { scale, trend, season, fit }: DescribingModel): boolean {
+  return (
+    earlier.scale === scale &&
+    earlier.trend === trend &&
+    earlier.season === season &&
+    earlier.coefficients.length === fit.coefficients.length &&
+    earlier.coefficients.every(
+      (value, lag) => Math.abs(value - fit.coefficients[lag]) <= smallMove * fit.standardErrors[lag],
+    )
+  );
+}
+
+/** The range of the half-life by simulation, and whether shocks fade by tests: a third of the time of an account. */
+function fadingFacts(
+  model: DescribingModel,
+  values: Float64Array,
+): Pick<ModelFacts, "halfLifeRange" | "fading"> {
+  const interval = halfLifeInterval(model.fit, { estimated: model.trend ? "trend" : "estimate" });
+  return {
+    halfLifeRange: { low: orNull(interval.low), high: orNull(interval.high) },
+    fading: fadingOf(values, model.trend, interval),
+  };
+}
+
+/** Whether a half-life lies in a range, `null` being without end. */
+const isWithin = (life: number | null, { low, high }: ModelFacts["halfLifeRange"]) =>
+  (life ?? Number.POSITIVE_INFINITY) >= (low ?? Number.POSITIVE_INFINITY) &&
+  (life ?? Number.POSITIVE_INFINITY) <= (high ?? Number.POSITIVE_INFINITY);
+
+/**
+ * The describing model in numbers that survive JSON; `values` are departures from its terms, on its own scale.
+ * `standing` is the account of the last run while its choice stands: where the coefficients hardly moved since, the range
+ * of the half-life and the verdict on fading are taken from it.
+ */
+export function modelFacts(
+  model: DescribingModel,
+  level: DescribedLevel,
+  values: Float64Array,
+  standing?: ModelFacts,
+): ModelFacts {
   const { fit } = model;
   const lags = Math.max(fit.order + 3, Math.min(residualLags, Math.floor(fit.observations / 5)));
   const life = orNull(halfLife(fit.coefficients));
-  const interval = halfLifeInterval(fit, { estimated: model.trend ? "trend" : "estimate" });
-  const range = { low: orNull(interval.low), high: orNull(interval.high) };
+  const { halfLifeRange, fading } =
+    standing && hardlyMoved(standing, model) && isWithin(life, standing.halfLifeRange)
+      ? standing
+      : fadingFacts(model, values);
   return {
     scale: model.scale,
     trend: model.trend,
@@ -87,7 +131,7 @@ export function modelFacts(model: DescribingModel, level: DescribedLevel, values
     standardErrors: Array.from(fit.standardErrors, (error) => (Number.isFinite(error) ? error : 0)),
     persistence: persistence(fit.coefficients),
     halfLife: life,
-    halfLifeRange: range,
+    halfLifeRange,
     longRunLevel: level.value,
     longRunLevelStandardError: orNull(level.standardError),
     longRunStandardDeviation: orNull(longRunStandardDeviation(model, level.value)),
@@ -99,7 +143,7 @@ export function modelFacts(model: DescribingModel, level: DescribedLevel, values
       fit.observations > 2 * lags && vary(fit.residuals)
         ? ljungBox(fit.residuals, { lags, fittedParameters: fit.order })
         : null,
-    fading: fadingOf(values, model.trend, interval),
+    fading,
     observations: fit.observations,
   };
 }

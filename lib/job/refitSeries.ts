@@ -105,7 +105,10 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
   const forecasts = forecastFacts(forecast, periods, { coming: adjusted.coming, bounds });
   const track = nextTrack(series, previous?.stored.track, forecasts, forecast.model.season, calendar);
   return {
-    facts: seriesFacts(series, task, { adjusted, watched, firstIndex, forecast, forecasts, track, calendar }),
+    facts: seriesFacts(series, task, {
+      ...{ adjusted, watched, firstIndex, forecast, forecasts, track, calendar },
+      standing: stands && previous?.stored.facts.model,
+    }),
     digest: seriesDigest(series, task),
     watchOrigin,
     watch: watched.watch,
@@ -142,6 +145,8 @@ interface Results {
   readonly forecasts: SeriesFacts["forecast"];
   readonly track: TrackState;
   readonly calendar: Calendar;
+  /** The last account of the model, while the choice it came from stands. */
+  readonly standing: SeriesFacts["model"] | undefined;
 }
 
 /** Rows of one period are combined by these when a value is a level rather than an amount: no total is told of it. */
@@ -155,7 +160,7 @@ function seriesFacts(series: Series, task: SeriesTask, results: Results): Series
   const { periodOf } = calendar;
   const level = describedLevel(model);
   const departing = departures(model, results.adjusted.values);
-  const described = modelFacts(model, level, departing);
+  const described = modelFacts(model, level, departing, results.standing);
   const kept = Math.min(values.length, historyKept[series.period]);
   const findings = seriesFindings(series, task, results);
   return {
