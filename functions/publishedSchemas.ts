@@ -12,7 +12,8 @@ export function publishedSchemas(): Record<string, string> {
   };
   const model = {
     title: "ebbwire model document",
-    description: "models/<table>/<asOf>.json: everything known of each series of a table after one run.",
+    description:
+      "models/<table>/<asOf>.json, compressed (.json.gz) for a table of 50 series or more: everything known of each series of a table after one run.",
     ...z.toJSONSchema(modelDocumentSchema),
   };
   const summary = {

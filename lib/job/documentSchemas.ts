@@ -241,7 +241,7 @@ const storedSeries = z.object({
   choice: z.optional(z.nullable(standingChoice)),
 }) satisfies z.ZodMiniType<StoredSeries>;
 
-/** `models/<table>/<asOf>.json`. */
+/** `models/<table>/<asOf>.json`, of many series `.json.gz`. */
 export const modelDocumentSchema = z.object({
   schema: z.literal(1),
   table: z.string(),

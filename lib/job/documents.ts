@@ -1,3 +1,4 @@
+import { gunzipSync, gzipSync } from "node:zlib";
 import type { ObjectStore } from "../store/objectStore.ts";
 
 const decoder = new TextDecoder();
@@ -5,6 +6,9 @@ const encoder = new TextEncoder();
 
 /** JSON as it is stored: the same bytes for the same data, a line break at the end. */
 export const encodeDocument = (data: unknown): Uint8Array => encoder.encode(`${JSON.stringify(data)}\n`);
+const isCompressed = (key: string) => key.endsWith(".gz");
+/** The quickest level: the digits of numbers hardly shrink with more. */
+const compress = (bytes: Uint8Array): Uint8Array => gzipSync(bytes, { level: 1 });
 export const encodeText = (text: string): Uint8Array => encoder.encode(text);
 export const decodeText = (bytes: Uint8Array): string => decoder.decode(bytes);
 
@@ -14,7 +18,7 @@ export interface Versioned {
 }
 
 /**
- * Reads one of our own documents.
+ * Reads one of our own documents, compressed when its key ends in `.gz`.
  * @throws Error naming the key when it is not JSON or of a schema this version does not know
  */
 export async function readDocument<T extends Versioned>(
@@ -25,7 +29,7 @@ export async function readDocument<T extends Versioned>(
   if (!found) return undefined;
   let data: unknown;
   try {
-    data = JSON.parse(decodeText(found.bytes));
+    data = JSON.parse(decodeText(isCompressed(key) ? gunzipSync(found.bytes) : found.bytes));
   } catch {
     throw new Error(
       `"${key}" in ${store.address} is not the JSON that was written there; restore an earlier version of it`,
@@ -45,7 +49,8 @@ export async function createDocument<T extends Versioned>(
   key: string,
   data: T,
 ): Promise<T> {
-  if ((await store.create(key, encodeDocument(data))) === "created") return data;
+  const bytes = encodeDocument(data);
+  if ((await store.create(key, isCompressed(key) ? compress(bytes) : bytes)) === "created") return data;
   const standing = await readDocument<T>(store, key);
   if (!standing)
     throw new Error(`"${key}" in ${store.address} was there a moment ago and is gone; run again`);

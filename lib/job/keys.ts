@@ -19,6 +19,8 @@ export const settingsKey = "settings.json";
 export const seriesPrefix = "series/";
 export const modelPrefix = (table: string) => `models/${table}/`;
 export const modelKey = (table: string, asOf: string) => `${modelPrefix(table)}${asOfKey(asOf)}.json`;
+/** The same of a table of many series, compressed. */
+export const packedModelKey = (table: string, asOf: string) => `${modelKey(table, asOf)}.gz`;
 export const forecastKey = (table: string, asOf: string) => `forecasts/${table}/${asOfKey(asOf)}.csv`;
 export const latestForecastKey = (table: string) => `forecasts/${table}/latest.csv`;
 export const runPrefix = (asOf: string) => `runs/${asOfKey(asOf)}/`;

@@ -1,8 +1,8 @@
 import type { Problem } from "../series/series.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
 import type { SeriesFacts } from "../words/facts.ts";
-import { readDocument, type Versioned } from "./documents.ts";
-import { asOfFromKey, modelKey, modelPrefix } from "./keys.ts";
+import { createDocument, readDocument, type Versioned } from "./documents.ts";
+import { asOfFromKey, modelKey, modelPrefix, packedModelKey } from "./keys.ts";
 import type { StandingChoice } from "./standingChoice.ts";
 import type { TrackState } from "./trackRecord.ts";
 
@@ -20,7 +20,7 @@ export interface StoredSeries {
   readonly choice?: StandingChoice | null;
 }
 
-/** `models/<table>/<asOf>.json`: immutable, one a table a run. */
+/** `models/<table>/<asOf>.json`, of many series `.json.gz`: immutable, one a table a run. */
 export interface ModelDocument extends Versioned {
   readonly table: string;
   readonly asOf: string;
@@ -32,31 +32,67 @@ export interface ModelDocument extends Versioned {
   readonly series: readonly StoredSeries[];
 }
 
+/** A model that stands, by its instant and its key. */
+interface Standing {
+  readonly asOf: string;
+  readonly key: string;
+}
+
 /** What stands under `models/<table>/` around one instant. */
 export interface ModelShelf {
-  readonly current: boolean;
-  readonly previousAsOf: string | undefined;
+  readonly current: Standing | undefined;
+  readonly previous: Standing | undefined;
   /** The newest one of all, if it is later than the instant. */
-  readonly later: string | undefined;
+  readonly later: Standing | undefined;
 }
+
+/** Series from which on a table's models are compressed, to a third: so many are read by programs, not by people. */
+const packedFrom = 50;
+
+/** Whether a table of so many series has its models compressed. */
+export const isPacked = (series: number): boolean => series >= packedFrom;
+
+/** Where a model of so many series is written. */
+const keyFor = ({ table, asOf, series }: ModelDocument) =>
+  isPacked(series.length) ? packedModelKey(table, asOf) : modelKey(table, asOf);
 
 /** Lists the models of one table (never those of tables nested below it). */
 export async function readModelShelf(store: ObjectStore, table: string, asOf: string): Promise<ModelShelf> {
   const prefix = modelPrefix(table);
-  const instants = (await store.list(prefix))
-    .map(({ key }) => key.slice(prefix.length))
-    .filter((rest) => rest.endsWith(".json") && !rest.includes("/"))
-    .map((rest) => asOfFromKey(rest.slice(0, -".json".length)))
-    .filter((instant) => instant !== undefined);
+  const standing = (await store.list(prefix)).flatMap(({ key }): Standing[] => {
+    const [, part] = /^([^/]+)\.json(?:\.gz)?$/.exec(key.slice(prefix.length)) ?? [];
+    const instant = part === undefined ? undefined : asOfFromKey(part);
+    return instant === undefined ? [] : [{ asOf: instant, key }];
+  });
   return {
-    current: instants.includes(asOf),
-    previousAsOf: instants.filter((instant) => instant < asOf).at(-1),
-    later: instants.filter((instant) => instant > asOf).at(-1),
+    current: standing.find((one) => one.asOf === asOf),
+    previous: standing.filter((one) => one.asOf < asOf).at(-1),
+    later: standing.filter((one) => one.asOf > asOf).at(-1),
   };
 }
 
-export const readModel = (store: ObjectStore, table: string, asOf: string) =>
-  readDocument<ModelDocument>(store, modelKey(table, asOf));
+/** Writes a model once; the one that stands is returned. */
+export const createModel = (store: ObjectStore, model: ModelDocument) =>
+  createDocument(store, keyFor(model), model);
+
+/** The model on a shelf's place. */
+export const readStandingModel = (store: ObjectStore, { key }: Standing) =>
+  readDocument<ModelDocument>(store, key);
+
+/** The model of a table at an instant, whichever way it was written; `packed` tells which way to try first. */
+export async function readModel(
+  store: ObjectStore,
+  table: string,
+  asOf: string,
+  packed: boolean,
+): Promise<ModelDocument | undefined> {
+  const keys = [modelKey(table, asOf), packedModelKey(table, asOf)];
+  for (const key of packed ? keys.reverse() : keys) {
+    const model = await readDocument<ModelDocument>(store, key);
+    if (model) return model;
+  }
+  return undefined;
+}
 
 /** The newest model of a table at or before an instant. */
 export async function readNewestModel(
@@ -65,6 +101,6 @@ export async function readNewestModel(
   asOf: string,
 ): Promise<ModelDocument | undefined> {
   const shelf = await readModelShelf(store, table, asOf);
-  const instant = shelf.current ? asOf : shelf.previousAsOf;
-  return instant === undefined ? undefined : readModel(store, table, instant);
+  const newest = shelf.current ?? shelf.previous;
+  return newest && readStandingModel(store, newest);
 }

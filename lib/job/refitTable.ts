@@ -9,12 +9,13 @@ import type { ProblemsDocument } from "./digest.ts";
 import { createDocument, encodeText } from "./documents.ts";
 import { tellDiscoveries } from "./falseDiscoveries.ts";
 import { forecastCsv } from "./forecastCsv.ts";
-import { forecastKey, latestForecastKey, modelKey, problemsKey } from "./keys.ts";
+import { forecastKey, latestForecastKey, problemsKey } from "./keys.ts";
 import {
+  createModel,
   type ModelDocument,
   type ModelShelf,
-  readModel,
   readModelShelf,
+  readStandingModel,
   type StoredSeries,
 } from "./modelDocument.ts";
 import { openSource } from "./openSource.ts";
@@ -45,7 +46,7 @@ async function writeForecasts(store: ObjectStore, model: ModelDocument, shelf: M
   if (shelf.later === undefined) {
     await store.write(latestForecastKey(table), csv);
     const { later } = await readModelShelf(store, table, asOf);
-    const newest = later === undefined ? undefined : await readModel(store, table, later);
+    const newest = later && (await readStandingModel(store, later));
     if (newest) await store.write(latestForecastKey(table), csvOf(newest));
   }
   await store.create(forecastKey(table, asOf), csv);
@@ -114,8 +115,7 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     table,
   });
   if (series.length === 0 || problems.some((problem) => problem.fatal)) return fail(task, problems);
-  const previous =
-    shelf.previousAsOf === undefined ? undefined : await readModel(store, table, shelf.previousAsOf);
+  const previous = shelf.previous && (await readStandingModel(store, shelf.previous));
   const earlier = new Map(
     previous?.series.map((stored) => [stored.facts.series, { asOf: previous.asOf, stored }]),
   );
@@ -136,7 +136,7 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     problems: [...problems, ...goneSeries(table, [...earlier.keys()], series)],
     series: falseDiscoveryRate === undefined ? accounts : tellDiscoveries(accounts, falseDiscoveryRate),
   };
-  const model = await createDocument(store, modelKey(table, asOf), made);
+  const model = await createModel(store, made);
   await writeForecasts(store, model, shelf);
   return { status: "refitted", series: model.series.length };
 }
@@ -152,7 +152,7 @@ export async function refitTable(task: TableTask): Promise<TableOutcome> {
   const shelf = await readModelShelf(store, table, asOf);
   try {
     if (!shelf.current) return await refitFresh(task, shelf);
-    const model = await readModel(store, table, asOf);
+    const model = await readStandingModel(store, shelf.current);
     if (!model) throw new Error(`the model of ${asOf} was listed and is gone`);
     await writeForecasts(store, model, shelf);
     return { status: "already", series: model.series.length };

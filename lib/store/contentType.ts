@@ -1,5 +1,6 @@
 const types: Readonly<Record<string, string>> = {
   csv: "text/csv; charset=utf-8",
+  gz: "application/gzip",
   html: "text/html; charset=utf-8",
   json: "application/json",
   svg: "image/svg+xml",

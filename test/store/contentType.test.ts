@@ -8,7 +8,7 @@ describe("contentType", () => {
     ["runs/2026.11/plan.json", "application/json"],
     ["chart.svg", "image/svg+xml"],
     ["notes.txt", "text/plain; charset=utf-8"],
-    ["series/a.csv.gz", "application/octet-stream"],
+    ["series/a.csv.gz", "application/gzip"],
     ["csv", "text/csv; charset=utf-8"],
     ["runs.json/none", "application/octet-stream"],
   ])("of %s is %s", (key, type) => {
