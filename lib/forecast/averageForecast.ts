@@ -1,11 +1,11 @@
 import { backTestOf } from "./backTest.ts";
-import { addOutcomes, type Calibration, type CalibrationEvidence, calibrate } from "./calibration.ts";
+import { addOutcomes, type Calibration, calibrate, noEvidence } from "./calibration.ts";
 import { type Candidate, fitBank, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
 import { candidateWeights } from "./candidateWeights.ts";
 import {
-  bankWeights,
   combineBank,
   forecastWorkspace,
+  pastWeights,
   type RolledBank,
   rollBank,
 } from "./combinedForecast.ts";
@@ -18,6 +18,7 @@ import type { MemberFit } from "./memberFit.ts";
 import { naiveDoesBetter, naiveInstead } from "./naiveFallback.ts";
 import type { PredictiveSpread } from "./predictiveSpread.ts";
 import { horizonsCovered, type Origin, rollingOrigins } from "./rollingOrigins.ts";
+import { memberShocks, NORMAL_TAILS, type ShockTails, shockTails } from "./shockTails.ts";
 import { workingScales } from "./workingScale.ts";
 
 /** The average of the whole bank at the end of the series, with what the past says about it. */
@@ -27,6 +28,7 @@ export interface AverageForecast {
   readonly fits: readonly (MemberFit | undefined)[];
   /** Row i (stride horizon) holds candidate i's own forecast. */
   readonly paths: Float64Array;
+  readonly weights: Float64Array;
   readonly shares: Float64Array;
   readonly spread: PredictiveSpread;
   readonly calibration: Calibration;
@@ -97,12 +99,16 @@ export function averageForecast(
   });
   const bank = forecastBank(scales, candidates, fitted, count, horizon);
   const combined = combineBank(bank, candidates, scales, weights, horizon);
-  const { calibration, backTest, naiveSeason } = decision.record(meanTerms(bank.fits, combined.shares));
+  const { calibration, backTest, naiveSeason } = decision.record(
+    meanTerms(bank.fits, combined.shares),
+    heaviestTails(bank.fits, combined.shares),
+  );
   const average: AverageForecast = {
     candidates,
     scales,
     fits: bank.fits,
     paths: bank.paths,
+    weights,
     shares: combined.shares,
     spread: combined.spread,
     calibration,
@@ -132,10 +138,13 @@ function leading(weights: Float64Array): Float64Array {
   return weights.map((weight) => (weight < LEAST_WEIGHT * total ? 0 : weight));
 }
 
-/** What the past says, asked for in two steps because calibration counts the terms of what was fitted. */
+/** What the past says, asked for in two steps because calibration looks at what was fitted. */
 interface Decision {
   readonly weights: Float64Array;
-  readonly record: (terms: number) => {
+  readonly record: (
+    terms: number,
+    tails: ShockTails,
+  ) => {
     readonly calibration: Calibration;
     readonly backTest: BackTest;
     readonly naiveSeason: number | null;
@@ -150,7 +159,7 @@ function standingDecision(standing: ForecastChoice): Decision {
   };
 }
 
-/** Weights by the rolled losses; the record of the average, combined at each origin without its own outcome. */
+/** Weights by the rolled losses; the record of the average, combined at each origin without its own outcomes. */
 function freshDecision(
   past: {
     readonly values: Float64Array;
@@ -163,24 +172,24 @@ function freshDecision(
   rolled: RolledBank,
 ): Decision {
   const { values, scales, candidates, origins, season, horizon } = past;
-  const record = (terms: number) => {
-    const evidence: CalibrationEvidence = { scores: [], weights: [] };
+  const record = (terms: number, tails: ShockTails) => {
+    const evidence = noEvidence();
     const combined = origins.map(({ count, steps }, o) => {
-      const weights = bankWeights(rolled.banks[o], rolled, o);
+      const weights = pastWeights(rolled, origins, o);
       const at = combineBank(rolled.banks[o], candidates, scales, weights, steps);
-      addOutcomes(evidence, at.spread, values, count);
+      addOutcomes(evidence, at.spread, values, count, (values.length - count) / horizon);
       return at;
     });
     const observed = values.reduce((sum, value) => sum + (Number.isNaN(value) ? 0 : 1), 0);
     const prior = Math.sqrt((observed + terms) / Math.max(1, observed - terms));
-    const horizons = horizonsCovered(origins, values.length);
-    const calibration = calibrate(evidence, prior, horizons, observed);
+    const horizons = horizonsCovered(origins);
+    const calibration = calibrate(evidence, prior, tails, horizons, observed);
     const test = backTestOf(values, combined, origins, season, horizon, calibration);
     const { backTest } = test;
     const naiveSeason = naiveDoesBetter(backTest.relativeError, horizons) ? test.naiveSeason : null;
     return { calibration, backTest, naiveSeason };
   };
-  const weights = candidateWeights(rolled.losses, -1, () => true, candidates.length, rolled.power);
+  const weights = candidateWeights(rolled.losses, () => true, candidates.length, rolled.power);
   return { weights, record };
 }
 
@@ -189,4 +198,16 @@ function meanTerms(fits: readonly (MemberFit | undefined)[], shares: Float64Arra
   let terms = 1;
   for (let i = 0; i < fits.length; i++) terms += shares[i] * (1 + (fits[i]?.model.meanOrder ?? 0));
   return terms;
+}
+
+/** Tails of the shocks of the candidate with the largest share; the describing model leaves no values to look at. */
+function heaviestTails(fits: readonly (MemberFit | undefined)[], shares: Float64Array): ShockTails {
+  let heaviest: MemberFit | undefined;
+  let most = 0;
+  fits.forEach((fit, i) => {
+    if (fit === undefined || fit.stages.length === 0 || shares[i] <= most) return;
+    heaviest = fit;
+    most = shares[i];
+  });
+  return heaviest === undefined ? NORMAL_TAILS : shockTails(memberShocks(heaviest));
 }

@@ -4,12 +4,10 @@
  * drown the near ones. Power 1 is the rule of Bates and Granger (1969); see `weightPower` for the one in use.
  *
  * `losses` row o (stride `count`) holds each candidate's loss at origin o, `NaN` when it could not be fitted there.
- * `leaveOut` is an origin to ignore, so that a combined forecast of the past can be judged by weights that did not
- * see its outcome; −1 for none. `usable` marks candidates with a forecast to weigh. Without losses: equal weights.
+ * `usable` marks candidates with a forecast to weigh. Without losses: equal weights.
  */
 export function candidateWeights(
   losses: readonly Float64Array[],
-  leaveOut: number,
   usable: (candidate: number) => boolean,
   count: number,
   power: number,
@@ -22,7 +20,7 @@ export function candidateWeights(
     let sum = 0;
     let seen = 0;
     for (let o = 0; o < losses.length; o++) {
-      if (o === leaveOut || Number.isNaN(losses[o][i])) continue;
+      if (Number.isNaN(losses[o][i])) continue;
       sum += losses[o][i];
       seen++;
     }

@@ -9,8 +9,9 @@ import {
 } from "./candidateBank.ts";
 import { candidateWeights, weightPower } from "./candidateWeights.ts";
 import type { MemberFit } from "./memberFit.ts";
+import { mixtureDeviation } from "./mixtureDeviation.ts";
 import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
-import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
+import { horizonsCovered, type Origin, shareOutcomes } from "./rollingOrigins.ts";
 import { weightedMiddle } from "./weightedMiddle.ts";
 
 /** The average at one origin: medians with their uncalibrated spread, and the part each candidate had. */
@@ -63,7 +64,7 @@ export function rollBank(
     banks.push(bank);
     losses.push(loss);
   });
-  return { banks, losses, power: weightPower(horizonsCovered(origins, values.length)) };
+  return { banks, losses, power: weightPower(horizonsCovered(origins)) };
 }
 
 /**
@@ -75,14 +76,19 @@ function describedOptimism(fit: MemberFit | undefined, count: number): number {
   return ((count + terms) / Math.max(1, count - terms)) ** 2;
 }
 
-/** Weights of a bank's candidates by the losses of the origins, leaving one out when it is judged itself. */
-export function bankWeights(
-  bank: BankForecast,
-  { losses, power }: Pick<RolledBank, "losses" | "power">,
-  leaveOut: number,
+/**
+ * Weights of the candidates at a past origin that is to be judged: by the losses at origins that share none of its
+ * outcomes, as if those had not been seen yet, with the power that the rest of the evidence allows.
+ */
+export function pastWeights(
+  { banks, losses }: RolledBank,
+  origins: readonly Origin[],
+  o: number,
 ): Float64Array {
-  const usable = (i: number): boolean => bank.fits[i] !== undefined;
-  return candidateWeights(losses, leaveOut, usable, bank.fits.length, power);
+  const { fits } = banks[o];
+  const apart = (_: unknown, other: number): boolean => !shareOutcomes(origins[other], origins[o]);
+  const power = weightPower(horizonsCovered(origins.filter(apart)));
+  return candidateWeights(losses.filter(apart), (i) => fits[i] !== undefined, fits.length, power);
 }
 
 /** Combines one bank by weights: the weighted middle half at each step. */
@@ -110,11 +116,7 @@ export function combineBank(
   };
 }
 
-/**
- * Spread of each working scale: the weighted middle over its candidates of innovation variance times the summed
- * squared shock response (one explosive candidate must not widen every range), plus how far the candidates that make
- * the average stand apart (model uncertainty).
- */
+/** Spread of each working scale: that of the mixture of its candidates about the average, seen on the scale. */
 function scaleSpreads(
   bank: BankForecast,
   candidates: readonly Candidate[],
@@ -132,18 +134,16 @@ function scaleSpreads(
     const ownWeights = Float64Array.from(members, (i) => weights[i]);
     const share = members.reduce((sum, i) => sum + shares[i], 0);
     const order = new Int32Array(members.length);
-    const column = new Float64Array(members.length);
+    const variances = new Float64Array(members.length);
+    const distances = new Float64Array(members.length);
     const deviations = new Float64Array(horizon);
     for (let h = 0; h < horizon && members.length > 0; h++) {
       const anchor = scale.forward(medians[h]);
-      let apart = 0;
-      for (const i of members) {
-        const distance = scale.forward(bank.paths[i * horizon + h]) - anchor;
-        if (Number.isFinite(distance)) apart += shares[i] * distance * distance;
+      for (let m = 0; m < members.length; m++) {
+        variances[m] = bank.variances[members[m]][h];
+        distances[m] = Math.abs(scale.forward(bank.paths[members[m] * horizon + h]) - anchor);
       }
-      for (let m = 0; m < members.length; m++) column[m] = bank.variances[members[m]][h];
-      const model = weightedMiddle(column, ownWeights, order);
-      deviations[h] = Math.sqrt(model + (share > 0 ? apart / share : 0));
+      deviations[h] = mixtureDeviation(variances, distances, ownWeights, order);
     }
     return { scale, share, deviations };
   });

@@ -1,10 +1,11 @@
 import type { AverageForecast } from "./averageForecast.ts";
-import { addOutcomes, type CalibrationEvidence, calibrate } from "./calibration.ts";
+import { addOutcomes, calibrate, noEvidence } from "./calibration.ts";
 import type { Candidate } from "./candidateBank.ts";
 import type { MemberFit } from "./memberFit.ts";
 import { naiveForecast } from "./naiveForecast.ts";
 import type { PredictiveSpread } from "./predictiveSpread.ts";
 import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
+import { shockTails } from "./shockTails.ts";
 import { workingScales } from "./workingScale.ts";
 
 /** Independent horizons from which a record counts as it stands. */
@@ -33,15 +34,12 @@ export function naiveInstead(
   const horizon = average.spread.medians.length;
   const lag = Math.max(1, season);
   const stepOf = (h: number): number => Math.floor(h / lag) + 1;
-  let power = 0;
-  let seen = 0;
-  for (let t = lag; t < count; t++) {
-    const step = values[t] - values[t - lag];
-    if (Number.isNaN(step)) continue;
-    power += step * step;
-    seen++;
-  }
-  const innovationVariance = seen > 0 ? power / seen : 0;
+  const changes = values
+    .subarray(Math.min(lag, count))
+    .map((value, t) => value - values[t])
+    .filter((change) => !Number.isNaN(change));
+  const power = changes.reduce((sum, change) => sum + change * change, 0);
+  const innovationVariance = changes.length > 0 ? power / changes.length : 0;
   const [scale] = workingScales([-1]);
   const spreadAt = (from: number, steps: number): PredictiveSpread => ({
     medians: naiveForecast(values, from, season, steps),
@@ -53,8 +51,10 @@ export function naiveInstead(
       },
     ],
   });
-  const evidence: CalibrationEvidence = { scores: [], weights: [] };
-  for (const { count: from, steps } of origins) addOutcomes(evidence, spreadAt(from, steps), values, from);
+  const evidence = noEvidence();
+  for (const { count: from, steps } of origins) {
+    addOutcomes(evidence, spreadAt(from, steps), values, from, (count - from) / horizon);
+  }
   const preparation = {
     differences: [lag],
     season: 0,
@@ -82,8 +82,9 @@ export function naiveInstead(
     scales: [{ scale, values }],
     fits: [fit],
     paths: spread.medians,
+    weights: Float64Array.of(1),
     shares: Float64Array.of(1),
     spread,
-    calibration: calibrate(evidence, 1, horizonsCovered(origins, count), count),
+    calibration: calibrate(evidence, 1, shockTails(changes), horizonsCovered(origins), count),
   };
 }

@@ -33,9 +33,23 @@ export function rollingOrigins(count: number, horizon: number, least: number): O
   });
 }
 
-/** How many whole horizons, laid end to end, the origins look back over: the independent evidence they hold. */
-export function horizonsCovered(origins: readonly Origin[], count: number): number {
-  if (origins.length === 0) return 0;
-  const longest = origins.reduce((most, { steps }) => Math.max(most, steps), 1);
-  return (count - origins[origins.length - 1].count) / longest;
+/**
+ * How many whole horizons the outcomes of the origins (newest first) cover together, each value counted once: the
+ * independent evidence they hold. A series with less than one horizon of outcomes has one of as many as there are.
+ */
+export function horizonsCovered(origins: readonly Origin[]): number {
+  let covered = 0;
+  let longest = 1;
+  let reached = Number.POSITIVE_INFINITY;
+  for (const { count, steps } of origins) {
+    covered += Math.max(0, Math.min(count + steps, reached) - count);
+    longest = Math.max(longest, steps);
+    reached = count;
+  }
+  return covered / longest;
+}
+
+/** Whether two origins are judged by some of the same outcomes. */
+export function shareOutcomes(a: Origin, b: Origin): boolean {
+  return a.count < b.count + b.steps && b.count < a.count + a.steps;
 }

@@ -1,11 +1,12 @@
 import type { AverageForecast } from "./averageForecast.ts";
 import { shockResponse } from "./memberFit.ts";
+import { mixtureDeviation } from "./mixtureDeviation.ts";
 
 /**
  * Quantile function of the sum over the horizon. Errors of coming periods share shocks: with ψ the shock response of
  * a candidate on its scale and d_h the slope back to units of the series, the sum varies by
- * σ² Σ_j (Σ_{h≥j} d_h ψ_{h−j})². Candidates of a scale are averaged by share, their disagreement on the sum added; scales are averaged by quantile, the
- * logarithmic one as a lognormal of the same relative deviation.
+ * σ² Σ_j (Σ_{h≥j} d_h ψ_{h−j})². Candidates of a scale are mixed as at each step (`mixtureDeviation`); scales are
+ * averaged by quantile, the logarithmic one as a lognormal of the same relative deviation.
  *
  * The sum runs over steps `from`..end (earlier steps are past and unobserved). The result increases in `z`, which the
  * caller widens by the calibration, and is the sum of medians at zero.
@@ -35,21 +36,30 @@ function totalDeviation(average: AverageForecast, index: number, from: number): 
     const anchored = scale.forward(median);
     return Number.isFinite(anchored) ? scale.slope(anchored) : 1;
   });
-  let variance = 0;
-  let share = 0;
+  const variances: number[] = [];
+  const distances: number[] = [];
+  const weights: number[] = [];
   average.candidates.forEach((candidate, i) => {
     const fit = average.fits[i];
-    if (candidate.scale !== index || fit === undefined || average.shares[i] === 0) return;
+    if (candidate.scale !== index || fit === undefined || average.weights[i] === 0) return;
     const response = shockResponse(fit, horizon);
+    let variance = 0;
     for (let j = 0; j < horizon; j++) {
       let effect = 0;
       for (let h = Math.max(j, from); h < horizon; h++) effect += slopes[h] * response[h - j];
-      variance += average.shares[i] * fit.model.innovationVariance * effect * effect;
+      variance += fit.model.innovationVariance * effect * effect;
     }
     let ownSum = 0;
     for (let h = from; h < horizon; h++) ownSum += average.paths[i * horizon + h];
-    variance += average.shares[i] * (ownSum - sum) ** 2;
-    share += average.shares[i];
+    variances.push(variance);
+    distances.push(Math.abs(ownSum - sum));
+    weights.push(average.weights[i]);
   });
-  return share > 0 ? Math.sqrt(variance / share) : 0;
+  if (weights.length === 0) return 0;
+  return mixtureDeviation(
+    Float64Array.from(variances),
+    Float64Array.from(distances),
+    Float64Array.from(weights),
+    new Int32Array(weights.length),
+  );
 }

@@ -199,7 +199,6 @@ const standingChoice = z.object({
       narrow: z.number(),
       wide: z.number(),
       freedom: z.number(),
-      shortness: z.number(),
     }),
     backTest: z.object({
       origins: z.number(),

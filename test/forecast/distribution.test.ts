@@ -1,11 +1,18 @@
 import { describe, expect, it } from "vitest";
 import type { AverageForecast } from "../../lib/forecast/averageForecast.ts";
-import { calibrate, calibratedReach, normalOfReach } from "../../lib/forecast/calibration.ts";
+import {
+  addOutcomes,
+  calibrate,
+  calibratedReach,
+  noEvidence,
+  normalOfReach,
+} from "../../lib/forecast/calibration.ts";
 import { limitChances } from "../../lib/forecast/limitChances.ts";
 import type { MemberFit } from "../../lib/forecast/memberFit.ts";
 import { normalProbability } from "../../lib/forecast/normal.ts";
 import { normalDraws } from "../../lib/forecast/normalDraws.ts";
-import { spreadQuantile, spreadScore } from "../../lib/forecast/predictiveSpread.ts";
+import { type PredictiveSpread, spreadQuantile, spreadScore } from "../../lib/forecast/predictiveSpread.ts";
+import { NORMAL_TAILS } from "../../lib/forecast/shockTails.ts";
 import { totalQuantile } from "../../lib/forecast/totals.ts";
 import { workingScales } from "../../lib/forecast/workingScale.ts";
 import { withR } from "../support/r.ts";
@@ -50,9 +57,10 @@ function oneProcess(
     scales: [{ scale, values: none }],
     fits: [fit],
     paths: medians,
+    weights: Float64Array.of(1),
     shares: Float64Array.of(1),
     spread: { medians, scales: [{ scale, share: 1, deviations }] },
-    calibration: { narrow: 1, wide: 1, freedom: 1e9, shortness: 1 },
+    calibration: { narrow: 1, wide: 1, freedom: 1e9 },
     backTest: {
       origins: 0,
       meanAbsoluteError: none,
@@ -146,19 +154,62 @@ describe("predictive spread", () => {
 });
 
 describe("calibration", () => {
-  it("widens to the quantiles of past scores as evidence grows", () => {
-    // Past scores spread like a normal of deviation 2: both factors must come to 2.
+  /** A spread of unit deviation about zero, so that an outcome is its own score. */
+  const unit = (steps: number): PredictiveSpread => ({
+    medians: new Float64Array(steps),
+    scales: [{ scale: workingScales([-1])[0], share: 1, deviations: new Float64Array(steps).fill(1) }],
+  });
+  const evidenceOf = (origins: readonly (readonly number[])[], ages = origins.map(() => 0)) => {
+    const evidence = noEvidence();
+    origins.forEach((outcomes, o) => {
+      addOutcomes(evidence, unit(outcomes.length), outcomes, 0, ages[o]);
+    });
+    return evidence;
+  };
+
+  it("comes to the quantiles of past scores as evidence grows, and is what the model says without any", () => {
     const draw = normalDraws(8);
-    const scores = Array.from({ length: 40000 }, () => Math.abs(2 * draw()));
-    const evidence = { scores, weights: scores.map(() => 1) };
-    const { narrow, wide } = calibrate(evidence, 1, 1e6, 1e9);
-    expect(narrow).toBeCloseTo(2, 1);
-    expect(wide).toBeCloseTo(2, 1);
-    expect(calibrate({ scores: [], weights: [] }, 1.1, 0, 100).narrow).toBe(1.1);
+    const origins = Array.from({ length: 400 }, () => Array.from({ length: 100 }, () => 1.5 * draw()));
+    const { narrow, wide } = calibrate(evidenceOf(origins), 1, NORMAL_TAILS, 400, 1e9);
+    expect(narrow).toBeCloseTo(1.5, 1);
+    expect(wide).toBeCloseTo(1.5, 1);
+    const nothing = calibrate(noEvidence(), 1.1, { narrow: 0.5, wide: 0.9 }, 0, 100);
+    expect(nothing.narrow).toBeCloseTo(0.55, 12);
+    expect(nothing.wide).toBeCloseTo(0.99, 12);
+  });
+
+  it("lies between past and prior as a weighted mean of logarithms", () => {
+    // One horizon: between = 0.25·2/2, worth 0.25/0.12 horizons of prior; every past score is 3.
+    const share = 1 / (1 + 0.25 / 0.12);
+    const { narrow } = calibrate(evidenceOf([[3, -3, 3]]), 1, NORMAL_TAILS, 1, 100);
+    expect(Math.log(narrow)).toBeCloseTo(share * Math.log(3 / 1.2815515655446004), 10);
+  });
+
+  it("believes an even past more than one of bursts with the same quantiles", () => {
+    const even = [0, 1, 2, 3].map(() => [4, 4, 0.5, 0.5]);
+    const bursts = [
+      [4, 4, 4, 4],
+      [4, 4, 4, 4],
+      [0.5, 0.5, 0.5, 0.5],
+      [0.5, 0.5, 0.5, 0.5],
+    ];
+    const factor = (origins: readonly (readonly number[])[]) =>
+      calibrate(evidenceOf(origins), 1, NORMAL_TAILS, 4, 100).narrow;
+    expect(factor(even)).toBeGreaterThan(1.2 * factor(bursts));
+    expect(factor(bursts)).toBeGreaterThan(1);
+  });
+
+  it("goes by recent horizons more than by old ones", () => {
+    const origins = Array.from({ length: 8 }, (_, o) => Array(4).fill(o < 4 ? 0.5 : 3));
+    const ages = origins.map((_, o) => o);
+    const calm = calibrate(evidenceOf(origins, ages), 1, NORMAL_TAILS, 8, 100).narrow;
+    const wild = calibrate(evidenceOf([...origins].reverse(), ages), 1, NORMAL_TAILS, 8, 100).narrow;
+    expect(calm).toBeLessThan(0.8);
+    expect(wild).toBeGreaterThan(1.2);
   });
 
   it("turns a reach back into the normal quantile it came from", () => {
-    const calibration = { narrow: 0.9, wide: 1.3, freedom: 10, shortness: 1.1 };
+    const calibration = { narrow: 0.9, wide: 1.3, freedom: 10 };
     for (const z of [-3, -1.5, -0.2, 0.6, 1.7, 2.6]) {
       expect(normalOfReach(calibration, calibratedReach(calibration, z))).toBeCloseTo(z, 9);
     }

@@ -2,14 +2,19 @@ import { describe, expect, it } from "vitest";
 import { burgWorkspace } from "../../lib/autoregression/burg.ts";
 import { smoothGaps } from "../../lib/autoregression/smoothGaps.ts";
 import { afterChange } from "../../lib/forecast/afterChange.ts";
+import type { BankForecast } from "../../lib/forecast/candidateBank.ts";
 import { candidateWeights, weightPower } from "../../lib/forecast/candidateWeights.ts";
+import { pastWeights } from "../../lib/forecast/combinedForecast.ts";
 import { dampOutliers } from "../../lib/forecast/dampOutliers.ts";
 import { fillGaps } from "../../lib/forecast/fillGaps.ts";
 import { localDrift } from "../../lib/forecast/localDrift.ts";
+import { fitMember } from "../../lib/forecast/memberFit.ts";
+import { mixtureDeviation } from "../../lib/forecast/mixtureDeviation.ts";
 import { naiveForecast } from "../../lib/forecast/naiveForecast.ts";
 import { normalDraws } from "../../lib/forecast/normalDraws.ts";
-import { rollingOrigins } from "../../lib/forecast/rollingOrigins.ts";
+import { horizonsCovered, rollingOrigins } from "../../lib/forecast/rollingOrigins.ts";
 import { levelProfile } from "../../lib/forecast/seasonalProfile.ts";
+import { memberShocks, shockTails } from "../../lib/forecast/shockTails.ts";
 import { weightedMiddle } from "../../lib/forecast/weightedMiddle.ts";
 import { withR } from "../support/r.ts";
 
@@ -125,17 +130,80 @@ describe("dampOutliers", () => {
 });
 
 describe("candidateWeights", () => {
-  it("is inverse to the squared error at four horizons and leaves the judged origin out", () => {
-    const losses = [Float64Array.of(1, 4), Float64Array.of(100, 1)];
-    expect(weightPower(2)).toBe(1);
-    expect([...candidateWeights(losses, 1, () => true, 2, 1)].map((one) => one.toFixed(6))).toEqual([
-      "1.000000",
-      "0.250000",
-    ]);
+  it("is inverse to the squared error at two horizons of evidence", () => {
+    const losses = [Float64Array.of(1, 4)];
+    expect([...candidateWeights(losses, () => true, 2, weightPower(2))].map((one) => one.toFixed(6))).toEqual(
+      ["1.000000", "0.250000"],
+    );
   });
 
   it("weighs all alike without evidence", () => {
-    expect([...candidateWeights([], -1, (i) => i !== 1, 3, 0)]).toEqual([1, 0, 1]);
+    expect([...candidateWeights([], (i) => i !== 1, 3, 0)]).toEqual([1, 0, 1]);
+  });
+});
+
+describe("pastWeights", () => {
+  it("judge an origin by the losses of those that share none of its outcomes, and by their number", () => {
+    // Three origins of two steps, a step apart: only the first and the last share nothing.
+    const origins = [8, 7, 6].map((count) => ({ count, steps: 2, fitted: 6 }));
+    const fits = origins.map(() => undefined);
+    const bank = { paths: new Float64Array(4), fits: [{}, {}], variances: fits } as unknown as BankForecast;
+    const losses = [Float64Array.of(1, 9), Float64Array.of(1e9, 1), Float64Array.of(4, 1)];
+    const rolled = { banks: [bank, bank, bank], losses, power: 2 };
+    // One horizon of evidence is left: the power is a half.
+    expect([...pastWeights(rolled, origins, 2)].map((one) => one.toFixed(6))).toEqual([
+      "1.000000",
+      "0.333333",
+    ]);
+    expect([...pastWeights(rolled, origins, 1)]).toEqual([1, 1]);
+  });
+});
+
+describe("mixtureDeviation", () => {
+  it("adds the mean square distance to the middle variance, a far one cut at three deviations", () => {
+    const order = new Int32Array(2);
+    const equal = Float64Array.of(1, 1);
+    expect(mixtureDeviation(Float64Array.of(4, 4), Float64Array.of(1, 3), equal, order)).toBeCloseTo(3, 12);
+    // (4 + (0 + 36)/2): distances of 1e6 and of no number count as 3·2.
+    for (const far of [1e6, Number.NaN]) {
+      expect(mixtureDeviation(Float64Array.of(4, 4), Float64Array.of(0, far), equal, order)).toBeCloseTo(
+        Math.sqrt(22),
+        12,
+      );
+    }
+  });
+});
+
+describe("shockTails", () => {
+  it("are those of the normal law for its own draws, and narrow where a few shocks make the mean square", () => {
+    const draw = normalDraws(31);
+    const normal = shockTails(Float64Array.from({ length: 20000 }, () => draw()));
+    expect(normal.narrow).toBeGreaterThan(0.98);
+    expect(normal.wide).toBeGreaterThan(0.98);
+    // One in a hundred of size 20 beside unit ones: mean square 0.99 + 0.01·400 = 4.99.
+    const mixed = shockTails(Float64Array.from({ length: 20000 }, (_, t) => (t % 100 === 0 ? 20 : draw())));
+    expect(mixed.narrow).toBeGreaterThan(0.42);
+    expect(mixed.narrow).toBeLessThan(0.48);
+    expect(mixed.wide).toBeGreaterThanOrEqual(mixed.narrow);
+    expect(shockTails(Float64Array.of(1, -1, 2))).toEqual({ narrow: 1, wide: 1 });
+  });
+
+  it("come from the one-step errors of a member on its own values", () => {
+    const values = Float64Array.of(5, 7, 6, 9, 8, 12, 11, 13);
+    const fit = fitMember(
+      values,
+      8,
+      { differences: [1], season: 0, profile: "none", line: false, drifts: ["whole"] },
+      1,
+      burgWorkspace(8, 1),
+    );
+    if (fit === undefined) throw new Error("no fit");
+    const [phi] = fit.model.coefficients;
+    const steps = [2, -1, 3, -1, 4, -1, 2].map((step) => step - 8 / 7);
+    [...memberShocks(fit)].forEach((shock, t) => {
+      expect(shock).toBeCloseTo(steps[t + 1] - phi * steps[t], 12);
+    });
+    expect(memberShocks(fit)).toHaveLength(6);
   });
 });
 
@@ -156,6 +224,12 @@ describe("rollingOrigins", () => {
       expect(new Set(origins.map(({ fitted }) => fitted)).size).toBeLessThanOrEqual(8);
     }
     expect(rollingOrigins(8, 4, 8)).toEqual([]);
+  });
+
+  it("cover each outcome once, in horizons", () => {
+    const at = (count: number, steps: number) => ({ count, steps, fitted: count });
+    expect(horizonsCovered([at(18, 2), at(16, 4), at(14, 4), at(4, 4)])).toBe((6 + 4) / 4);
+    expect(horizonsCovered([])).toBe(0);
   });
 });
 
