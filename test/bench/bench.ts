@@ -7,6 +7,7 @@ import { coreBench } from "./coreBench.ts";
 import { costBench } from "./costBench.ts";
 import { driftBench } from "./driftBench.ts";
 import { jobBench } from "./jobBench.ts";
+import { largeBench } from "./largeBench.ts";
 import { makeBoundaries } from "./makeBoundaries.ts";
 import { readingBench } from "./readingBench.ts";
 
@@ -21,8 +22,12 @@ const PARTS: Record<string, (data: string | undefined) => Promise<BenchRow[]>> =
   reading: readingBench,
 };
 
-/** Run only when asked for by name: makes the table of the monitor's boundaries anew, into the file of `--data`. */
+/**
+ * Run only when asked for by name: a hundred thousand series (or as many as `--data` says), and the table of the monitor's
+ * boundaries made anew, into the file of `--data`.
+ */
 const ON_REQUEST: typeof PARTS = {
+  large: (count) => largeBench(count === undefined ? undefined : Number(count)),
   "drift-boundaries": async (file = "boundaries.json") => {
     makeBoundaries(file);
     return [];
@@ -30,8 +35,8 @@ const ON_REQUEST: typeof PARTS = {
 };
 
 /**
- * `npm run bench -- [core | accuracy | bundles | cost | drift | reading | job] [--data FILE] [--json FILE]`: runs one part, or all, and prints a table
- * of what was measured, against what, and the goal.
+ * `npm run bench -- [core | accuracy | bundles | cost | drift | reading | job | large] [--data FILE] [--json FILE]`: runs
+ * one part, or all but the large one, and prints a table of what was measured, against what, and the goal.
  */
 async function main(): Promise<void> {
   const { values: options, positionals } = parseArgs({
