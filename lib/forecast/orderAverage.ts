@@ -1,4 +1,5 @@
-import { type BurgWorkspace, burgAllOrders } from "../autoregression/burg.ts";
+import { type BurgWorkspace, burgReflections } from "../autoregression/burg.ts";
+import { stepUp } from "../autoregression/partials.ts";
 
 /** An autoregression whose coefficients are an average over orders. */
 export interface AveragedAutoregression {
@@ -22,7 +23,7 @@ export function orderAverage(
   workspace: BurgWorkspace,
 ): AveragedAutoregression {
   const n = values.length;
-  burgAllOrders(values, 0, maxOrder, workspace);
+  burgReflections(values, 0, maxOrder, workspace);
   const variances = workspace.innovationVariances;
   const weights = new Float64Array(maxOrder + 1);
   let best = Number.POSITIVE_INFINITY;
@@ -47,15 +48,17 @@ export function orderAverage(
     total += weights[p];
   }
   const coefficients = new Float64Array(longest);
+  // φ of one order after the other, stepped up in place as far as an order carries weight.
+  const current = workspace.coefficients.subarray(0, longest);
   let innovationVariance = 0;
   let meanOrder = 0;
   for (let p = 0; p <= longest; p++) {
+    if (p > 0) stepUp(current, p, workspace.partials[p - 1]);
     const weight = weights[p] / total;
     if (weight === 0) continue;
     innovationVariance += weight * variances[p];
     meanOrder += weight * p;
-    const row = (p - 1) * workspace.maxOrder;
-    for (let j = 0; j < p; j++) coefficients[j] += weight * workspace.coefficients[row + j];
+    for (let j = 0; j < p; j++) coefficients[j] += weight * current[j];
   }
   return { coefficients, innovationVariance, meanOrder };
 }
