@@ -6,6 +6,7 @@ import type { RunFacts, Voice } from "../words/facts.ts";
 import { staleSentence, surpriseSentence } from "../words/otherFindings.ts";
 import { plainName } from "../words/plainText.ts";
 import { type Speech, speechFor, spokenInterval } from "../words/speech.ts";
+import { tableBefore } from "../words/tableBefore.ts";
 import { html, type Markup, nothing } from "./markup.ts";
 import { round } from "./plot.ts";
 import { statusChip } from "./status.ts";
@@ -44,7 +45,8 @@ function row(one: Ranked, link: string | null, several: boolean, run: RunFacts, 
   const interval = spokenInterval(forecast.intervals);
   const told = (value: number) => speech.write(value, speech.forecastStep);
   const news = newsOf(one, speech);
-  const line = html`<span class="name">${several ? html`<small>${plainName(one.table.table, 120)}</small> ` : nothing}${plainName(one.facts.series, 120)}</span>${statusChip(one)}${mini(one)}<span class="next"><b>${told(forecast.point[0])}</b> ${speech.unit ?? ""} <small>${told(interval.low[0])} to ${told(interval.high[0])}, ${speech.periods.name(forecast.periods[0])}</small></span>${news ? html`<span class="news">${news}</span>` : nothing}`;
+  const table = several ? tableBefore(one.table.table, one.facts.series, 120) : null;
+  const line = html`<span class="name">${table === null ? nothing : html`<small>${table}</small> `}${plainName(one.facts.series, 120)}</span>${statusChip(one)}${mini(one)}<span class="next"><b>${told(forecast.point[0])}</b> ${speech.unit ?? ""} <small>${told(interval.low[0])} to ${told(interval.high[0])}, ${speech.periods.name(forecast.periods[0])}</small></span>${news ? html`<span class="news">${news}</span>` : nothing}`;
   return link === null
     ? html`<li><div class="row">${line}</div></li>`
     : html`<li><a href="${link}">${line}</a></li>`;

@@ -5,6 +5,7 @@ import { plainName } from "../words/plainText.ts";
 import { seriesAccount } from "../words/seriesAccount.ts";
 import { type Speech, speechFor } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
+import { tableBefore } from "../words/tableBefore.ts";
 import { attributionChart } from "./attributionChart.ts";
 import { autocorrelationChart } from "./autocorrelationChart.ts";
 import { coefficientChart } from "./coefficientChart.ts";
@@ -25,9 +26,10 @@ export function seriesSection(one: Ranked, id: string, run: RunFacts, voice: Voi
     const drawn = pictures.flatMap((picture) => (picture ? [picture] : []));
     return drawn.length > 0 ? html`<h3>${title}</h3><div class="pictures">${drawn}</div>` : nothing;
   };
+  const of = run.tables.length > 1 ? tableBefore(table.table, facts.series, 120) : null;
   const lines = [...account.changes, ...account.model, ...account.comparison, ...account.watch];
   return html`<section id="${id}" class="series" aria-labelledby="${id}h">
-<h2 id="${id}h">${run.tables.length > 1 ? html`<span class="of">${plainName(table.table, 120)}</span> ` : nothing}${plainName(facts.series, 120)} ${statusChip(one)}</h2>
+<h2 id="${id}h">${of === null ? nothing : html`<span class="of">${of}</span> `}${plainName(facts.series, 120)} ${statusChip(one)}</h2>
 ${tiles(speech)}
 ${list([...changesOf(facts, speech), ...account.others])}
 ${historyChart(`${id}p`, speech)}

@@ -8,9 +8,9 @@ import { dateWriter, reportPlace } from "./instants.ts";
 import { wrapLine } from "./lineWidth.ts";
 import { messageData } from "./messageData.ts";
 import { footerOf, type Note } from "./note.ts";
-import { plainName } from "./plainText.ts";
 import { seriesLines } from "./seriesLines.ts";
 import { speechFor, spokenInterval } from "./speech.ts";
+import { tableBefore } from "./tableBefore.ts";
 import { trackSentence } from "./trackSentence.ts";
 import { owedLines, troubleLines } from "./troubleLines.ts";
 
@@ -36,7 +36,8 @@ export function businessMessage(run: RunFacts, voice: Voice): Note {
   const { lines, told } = fillRoom(
     candidates.map((one) => {
       const speech = speechFor(one.facts, voice, run.asOf);
-      const label = several ? `${plainName(one.table.table, 30)}, ${speech.series}` : speech.series;
+      const table = several ? tableBefore(one.table.table, one.facts.series, 30) : null;
+      const label = table === null ? speech.series : `${table}, ${speech.series}`;
       return { label, news: one.attention >= newsFrom, lines: seriesLines(speech, label) };
     }),
     Math.max(least, wholeNote - before.length - after.length - (all.length > 4 ? 1 : 0)),

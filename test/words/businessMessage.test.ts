@@ -103,6 +103,18 @@ describe("the business note", () => {
     expect(lines.some((line) => /^… and \d+ more, steady\.$/.test(line))).toBe(true);
   });
 
+  it("names a series that has its table's name once", () => {
+    const tables = [
+      { table: "loans", series: [steadyBranch("Quay", 1)], problems: [] },
+      { table: "members", series: [steadyBranch("members", 2)], problems: [] },
+    ];
+    const { lines } = businessMessage({ ...loansRun, tables }, britishVoice);
+    expect(lines.slice(0, 2).map((line) => line.slice(0, line.indexOf(":")))).toEqual([
+      "loans, Quay",
+      "members",
+    ]);
+  });
+
   it("gives news its room before steady series get theirs", () => {
     const steady = Array.from({ length: 30 }, (_, index) => steadyBranch(`Steady ${index}`, index));
     const news = Array.from({ length: 4 }, (_, index) => ({ ...quay, series: `Changed ${index}` }));
