@@ -6,6 +6,7 @@ import { readTableStream } from "../series/readTableStream.ts";
 import type { Period, Problem, Series } from "../series/series.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
 import { type CheckedEvents, checkEvents } from "./checkEvents.ts";
+import { closedDays } from "./closedDays.ts";
 import { decodeText } from "./documents.ts";
 import { asOfText, seriesPrefix, settingsKey, tableEndings, tableNameFault, tableOfKey } from "./keys.ts";
 import { parseSettings, type Settings } from "./settings.ts";
@@ -20,6 +21,8 @@ export interface CheckedSeries {
   readonly gaps: number;
   /** Start of the newest gap, if any. */
   readonly latestGap: string | null;
+  /** Weekdays (0 Sunday .. 6 Saturday) that every gap falls on, where that looks like closed days. */
+  readonly closedDays: readonly number[];
   /** Periods that are over and have no value yet. */
   readonly periodsLate: number;
 }
@@ -66,6 +69,7 @@ function checkedSeries(series: Series, asOf: string, timeZone: string): CheckedS
     observed,
     gaps,
     latestGap: gap < 0 ? null : periodStart(start, period, gap),
+    closedDays: closedDays(series),
     periodsLate: periodsLate(lastPeriod, period, asOf, timeZone),
   };
 }

@@ -58,6 +58,9 @@ function readingLine({
   return `read as: ${parts.filter((part) => part !== "").join("; ")}`;
 }
 
+const weekdays = ["Sunday", "Monday", "Tuesday", "Wednesday", "Thursday", "Friday", "Saturday"];
+const weekday = (day: number) => weekdays[day];
+
 function seriesLines({ series, reading }: CheckedTable, report: CheckReport): string[] {
   const { period } = series[0];
   const names = periodNames(period, report.locale, report.timeZone, report.asOf);
@@ -70,6 +73,11 @@ function seriesLines({ series, reading }: CheckedTable, report: CheckReport): st
     `${name} has ${gaps}${latestGap ? `, the latest ${names.when(latestGap)}` : ""}`;
   const gappy = series.filter((one) => one.gaps > 0);
   if (gappy.length > 0) lines.push(`gaps: ${listed(gappy.map(gapWords), 4)}`);
+  const closed = [...new Set(gappy.flatMap((one) => one.closedDays))].sort();
+  if (closed.length > 0 && gappy.every((one) => one.closedDays.length > 0))
+    lines.push(
+      `every gap is a ${closed.map(weekday).join(" or ")}: if nothing happens then, say "emptyMeans": "zero" in the settings of this table`,
+    );
   const late = series.filter((one) => one.periodsLate > 0);
   if (late.length > 0) {
     const most = Math.max(...late.map((one) => one.periodsLate));

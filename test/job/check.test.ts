@@ -59,6 +59,25 @@ describe("check", () => {
     ]);
   });
 
+  it("tells closed days apart from missing ones", async () => {
+    const days = (isOpen: (weekday: number, at: number) => boolean) =>
+      `day,sold\n${Array.from({ length: 70 }, (_, at) => new Date(Date.UTC(2026, 8, 21) + at * 86_400_000))
+        .filter((date, at) => isOpen(date.getUTCDay(), at))
+        .map((date) => `${date.toISOString().slice(0, 10)},${100 + date.getUTCDate()}\n`)
+        .join("")}`;
+    const hint = (gaps: string) =>
+      `  every gap is a ${gaps}: if nothing happens then, say "emptyMeans": "zero" in the settings of this table`;
+    const told = async (isOpen: (weekday: number, at: number) => boolean) =>
+      (await tell({ "series/till.csv": days(isOpen) })).filter((line) => line.includes("every gap"));
+    expect(await told((weekday) => weekday !== 0)).toEqual([hint("Sunday")]);
+    expect(await told((weekday, at) => weekday % 6 !== 0 || at === 69)).toEqual([hint("Sunday or Saturday")]);
+    // Five days missing in a row, or Sundays with one Tuesday, are gaps like any other.
+    expect(await told((_, at) => at < 20 || at > 24)).toEqual([]);
+    expect(await told((weekday, at) => weekday !== 0 && at !== 29)).toEqual([]);
+    // Most Sundays have a value: these four are missing.
+    expect(await told((weekday, at) => weekday !== 0 || at > 30)).toEqual([]);
+  });
+
   it("lists every problem of every table with line, column and remedy, and counts what failed", async () => {
     const report = await checkStore({
       store: storeOf({
