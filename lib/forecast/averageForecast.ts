@@ -43,7 +43,7 @@ export interface AverageForecast {
 /** An average with what was decided for it, for later forecasts to go by; the describing model apart. */
 export interface DecidedForecast {
   readonly average: AverageForecast;
-  readonly choice: Omit<ForecastChoice, "describing">;
+  readonly choice: Omit<ForecastChoice, "version" | "length" | "describing">;
 }
 
 /** Longest lag looked at: a season and some more, a third of the series, and 200 in any case. */
@@ -186,7 +186,7 @@ function freshDecision(
     const calibration = calibrate(evidence, prior, tails, horizons, observed);
     const test = backTestOf(values, combined, origins, season, horizon, calibration);
     const { backTest } = test;
-    const naiveSeason = naiveDoesBetter(backTest.relativeError, horizons) ? test.naiveSeason : null;
+    const naiveSeason = naiveDoesBetter(backTest.relativeError, test.naiveLead) ? test.naiveSeason : null;
     return { calibration, backTest, naiveSeason };
   };
   const weights = candidateWeights(rolled.losses, () => true, candidates.length, rolled.power);

@@ -13,6 +13,7 @@ import { mixtureDeviation } from "./mixtureDeviation.ts";
 import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
 import { horizonsCovered, type Origin, shareOutcomes } from "./rollingOrigins.ts";
 import { weightedMiddle } from "./weightedMiddle.ts";
+import type { WorkingScale } from "./workingScale.ts";
 
 /** The average at one origin: medians with their uncalibrated spread, and the part each candidate had. */
 export interface CombinedForecast {
@@ -24,7 +25,8 @@ export interface CombinedForecast {
 /** Everything the average needs to know of the past: bank forecasts at each origin and what they lost. */
 export interface RolledBank {
   readonly banks: readonly BankForecast[];
-  readonly losses: readonly Float64Array[];
+  /** By working scale, then origin, then candidate: mean squared error on that scale. */
+  readonly losses: readonly (readonly Float64Array[])[];
   /** Power of the weights that this much evidence allows. */
   readonly power: number;
 }
@@ -40,31 +42,54 @@ export function rollBank(
   workspace: BurgWorkspace,
 ): RolledBank {
   const banks: BankForecast[] = [];
-  const losses: Float64Array[] = [];
+  const losses: Float64Array[][] = scales.map(() => []);
+  let lowest = Number.POSITIVE_INFINITY;
+  for (const value of values) if (value < lowest) lowest = value;
   let fitted: FittedBank = { fits: [], variances: [] };
   origins.forEach(({ count, steps, fitted: known }, o) => {
     if (o === 0 || origins[o - 1].fitted !== known) {
       fitted = fitBank(scales, candidates, known, horizon, maxOrder, workspace);
     }
     const bank = forecastBank(scales, candidates, fitted, count, steps);
-    const loss = new Float64Array(candidates.length).fill(Number.NaN);
-    for (let i = 0; i < candidates.length; i++) {
-      if (bank.fits[i] === undefined) continue;
-      let sum = 0;
-      let seen = 0;
-      for (let h = 0; h < steps; h++) {
-        const actual = values[count + h];
-        if (Number.isNaN(actual)) continue;
-        sum += (actual - bank.paths[i * steps + h]) ** 2 / (h + 1);
-        seen++;
-      }
-      const optimism = candidates[i].description === undefined ? 1 : describedOptimism(bank.fits[i], count);
-      if (seen > 0) loss[i] = Math.min((optimism * sum) / seen, Number.MAX_VALUE / 1e6);
-    }
+    const optimism = candidates.map(({ description }, i) =>
+      description === undefined ? 1 : describedOptimism(bank.fits[i], count),
+    );
+    scales.forEach(({ scale }, index) => {
+      losses[index].push(lossesOn(scale, lowest, values, bank, optimism, count, steps));
+    });
     banks.push(bank);
-    losses.push(loss);
   });
   return { banks, losses, power: weightPower(horizonsCovered(origins)) };
+}
+
+/** A path counts for no less than this part of the lowest value: it may have no logarithm at all. */
+const LOWEST_PART = 0.1;
+
+/** Mean squared error of every path of a bank as one scale sees it; `NaN` where there is no path or no outcome. */
+function lossesOn(
+  { name, forward }: WorkingScale,
+  lowest: number,
+  values: Float64Array,
+  bank: BankForecast,
+  optimism: readonly number[],
+  from: number,
+  steps: number,
+): Float64Array {
+  const floor = name === "raw" ? Number.NEGATIVE_INFINITY : forward(LOWEST_PART * lowest);
+  return Float64Array.from(bank.fits, (fit, i) => {
+    if (fit === undefined) return Number.NaN;
+    let sum = 0;
+    let seen = 0;
+    for (let h = 0; h < steps; h++) {
+      const actual = values[from + h];
+      if (Number.isNaN(actual)) continue;
+      const path = forward(bank.paths[i * steps + h]);
+      const error = forward(actual) - (Number.isNaN(path) ? floor : Math.max(path, floor));
+      sum += (error * error) / (h + 1);
+      seen++;
+    }
+    return seen > 0 ? Math.min((optimism[i] * sum) / seen, Number.MAX_VALUE / 1e6) : Number.NaN;
+  });
 }
 
 /**
@@ -88,7 +113,8 @@ export function pastWeights(
   const { fits } = banks[o];
   const apart = (_: unknown, other: number): boolean => !shareOutcomes(origins[other], origins[o]);
   const power = weightPower(horizonsCovered(origins.filter(apart)));
-  return candidateWeights(losses.filter(apart), (i) => fits[i] !== undefined, fits.length, power);
+  const judged = losses.map((origins) => origins.filter(apart));
+  return candidateWeights(judged, (i) => fits[i] !== undefined, fits.length, power);
 }
 
 /** Combines one bank by weights: the weighted middle half at each step. */

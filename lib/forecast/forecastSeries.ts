@@ -5,7 +5,7 @@ import { assembleForecast } from "./assembleForecast.ts";
 import { averageForecast } from "./averageForecast.ts";
 import { type DescriptionPlan, describeAs, planDescription } from "./describingModel.ts";
 import type { Forecast, ForecastOptions } from "./forecast.ts";
-import { choiceFits } from "./forecastChoice.ts";
+import { choiceFits, choiceOf } from "./forecastChoice.ts";
 import { seasonLengths } from "./seasonLengths.ts";
 import { intermittentLevel, lastLevel, simpleForecast, steadyLevel } from "./simpleForecast.ts";
 
@@ -25,7 +25,7 @@ const INTERMITTENT = 0.4;
  *
  * Candidates: levels about a mean or line, first, second and seasonal differences, with seasonal profiles shrunk by
  * evidence and three kinds of drift, on the raw and a variance-stabilising scale, each an average over orders; and
- * the describing model. Weights are inverse to the squared rolling-origin error on this very series; the average is
+ * the describing model. Weights are the likelihood of the rolling-origin errors on this very series; the average is
  * the weighted middle half at each step. Ranges come from the shock responses, widened by how the average did in the
  * past. A series too short, constant, mostly gaps or mostly zeros is forecast by the simplest honest rule and says so.
  *
@@ -59,7 +59,7 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   const seasons = seasonLengths(known.length, options);
   const steps = options.horizon + late;
   const { choice } = options;
-  if (choice && choiceFits(choice, observed, seasons, steps)) {
+  if (choice && choiceFits(choice, known, seasons, steps)) {
     const { describing } = choice;
     const description = describing === null ? undefined : tryDescribe(known, describing);
     if (describing === null || description !== undefined) {
@@ -72,7 +72,7 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   const { average, choice: decided } = averageForecast(known, seasons, steps, description);
   return assembleForecast(
     average,
-    { ...decided, describing: plan },
+    choiceOf(known, { ...decided, describing: plan }),
     description,
     known,
     options,

@@ -8,16 +8,15 @@ import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
 import { shockTails } from "./shockTails.ts";
 import { workingScales } from "./workingScale.ts";
 
-/** Independent horizons from which a record counts as it stands. */
-const ENOUGH_HORIZONS = 4;
+/** Standard errors that chance alone passes on this side once in twenty times. */
+const BEYOND_CHANCE = 1.6448536269514722;
 
 /**
- * Whether the record says that the naive forecast does better: a relative error of one or more over at least four
- * independent horizons. With fewer the record is mostly luck, and only an error of 1 + 1/√horizons or more counts.
+ * Whether the record says that the naive forecast does better: smaller errors over all, by a difference between
+ * origins that chance shows once in twenty times. Less is a tie, and the average stays.
  */
-export function naiveDoesBetter(relativeError: number, horizons: number): boolean {
-  if (horizons >= ENOUGH_HORIZONS) return relativeError >= 1;
-  return horizons > 0 && relativeError >= 1 + 1 / Math.sqrt(horizons);
+export function naiveDoesBetter(relativeError: number, naiveLead: number): boolean {
+  return relativeError >= 1 && naiveLead >= BEYOND_CHANCE;
 }
 
 /**

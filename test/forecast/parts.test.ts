@@ -2,6 +2,7 @@ import { describe, expect, it } from "vitest";
 import { burgWorkspace } from "../../lib/autoregression/burg.ts";
 import { smoothGaps } from "../../lib/autoregression/smoothGaps.ts";
 import { afterChange } from "../../lib/forecast/afterChange.ts";
+import { backTestOf } from "../../lib/forecast/backTest.ts";
 import type { BankForecast } from "../../lib/forecast/candidateBank.ts";
 import { candidateWeights, weightPower } from "../../lib/forecast/candidateWeights.ts";
 import { pastWeights } from "../../lib/forecast/combinedForecast.ts";
@@ -10,12 +11,14 @@ import { fillGaps } from "../../lib/forecast/fillGaps.ts";
 import { localDrift } from "../../lib/forecast/localDrift.ts";
 import { fitMember } from "../../lib/forecast/memberFit.ts";
 import { mixtureDeviation } from "../../lib/forecast/mixtureDeviation.ts";
+import { naiveDoesBetter } from "../../lib/forecast/naiveFallback.ts";
 import { naiveForecast } from "../../lib/forecast/naiveForecast.ts";
 import { normalDraws } from "../../lib/forecast/normalDraws.ts";
 import { horizonsCovered, rollingOrigins } from "../../lib/forecast/rollingOrigins.ts";
 import { levelProfile } from "../../lib/forecast/seasonalProfile.ts";
 import { memberShocks, shockTails } from "../../lib/forecast/shockTails.ts";
 import { weightedMiddle } from "../../lib/forecast/weightedMiddle.ts";
+import { workingScales } from "../../lib/forecast/workingScale.ts";
 import { withR } from "../support/r.ts";
 
 const r = withR();
@@ -130,11 +133,24 @@ describe("dampOutliers", () => {
 });
 
 describe("candidateWeights", () => {
-  it("is inverse to the squared error at two horizons of evidence", () => {
-    const losses = [Float64Array.of(1, 4)];
-    expect([...candidateWeights(losses, () => true, 2, weightPower(2))].map((one) => one.toFixed(6))).toEqual(
-      ["1.000000", "0.250000"],
-    );
+  it("is Student's likelihood of each origin's errors, worked by hand", () => {
+    // The better candidate has 1; of it 0.3 is known before: (1.3/4.3)^1.3 at two horizons.
+    const losses = [[Float64Array.of(1, 4)]];
+    const [best, other] = candidateWeights(losses, () => true, 2, weightPower(2));
+    expect(best).toBe(1);
+    expect(other).toBeCloseTo((1.3 / 4.3) ** 1.3, 12);
+  });
+
+  it("does not let one wild origin decide against three", () => {
+    const losses = [[1, 1, 1, 90].map((first, o) => Float64Array.of(first, o < 3 ? 4 : 60))];
+    const [steady, lucky] = candidateWeights(losses, () => true, 2, weightPower(4));
+    expect(steady).toBeGreaterThan(lucky);
+  });
+
+  it("judges on every scale alike", () => {
+    const mirrored = [[Float64Array.of(1, 5)], [Float64Array.of(0.05, 0.01)]];
+    const [one, other] = candidateWeights(mirrored, () => true, 2, 2);
+    expect(one).toBeCloseTo(other, 12);
   });
 
   it("weighs all alike without evidence", () => {
@@ -148,14 +164,44 @@ describe("pastWeights", () => {
     const origins = [8, 7, 6].map((count) => ({ count, steps: 2, fitted: 6 }));
     const fits = origins.map(() => undefined);
     const bank = { paths: new Float64Array(4), fits: [{}, {}], variances: fits } as unknown as BankForecast;
-    const losses = [Float64Array.of(1, 9), Float64Array.of(1e9, 1), Float64Array.of(4, 1)];
+    const losses = [[Float64Array.of(1, 9), Float64Array.of(1e9, 1), Float64Array.of(4, 1)]];
     const rolled = { banks: [bank, bank, bank], losses, power: 2 };
     // One horizon of evidence is left: the power is a half.
-    expect([...pastWeights(rolled, origins, 2)].map((one) => one.toFixed(6))).toEqual([
-      "1.000000",
-      "0.333333",
-    ]);
+    const [best, other] = pastWeights(rolled, origins, 2);
+    expect(best).toBe(1);
+    expect(other).toBeCloseTo((1.3 / 9.3) ** 0.65, 12);
     expect([...pastWeights(rolled, origins, 1)]).toEqual([1, 1]);
+  });
+});
+
+describe("naiveDoesBetter", () => {
+  const record = (model: readonly number[]) => {
+    // Horizons of one step; the naive forecast misses by 1 each time, the model by as much as is given.
+    const values = Float64Array.from({ length: 40 }, (_, t) => t);
+    const origins = model.map((_, o) => ({ count: 39 - o, steps: 1, fitted: 20 }));
+    const past = model.map((miss, o) => ({
+      spread: {
+        medians: Float64Array.of(39 - o + miss),
+        scales: [{ scale: workingScales([-1])[0], share: 1, deviations: Float64Array.of(1) }],
+      },
+      shares: Float64Array.of(1),
+    }));
+    return backTestOf(values, past, origins, 0, 1, { narrow: 1, wide: 1, freedom: 100 });
+  };
+
+  it("only past the chance of the difference, which is larger where it comes in a burst", () => {
+    // Misses of 1.5 and 0.9 in turn: 20 % worse on the mean, standard error 0.3/√9 = 0.1.
+    const even = record([1.5, 0.9, 1.5, 0.9, 1.5, 0.9, 1.5, 0.9, 1.5, 0.9]);
+    expect(even.naiveLead).toBeCloseTo(2, 10);
+    expect(even.backTest.relativeError).toBeCloseTo(1.2, 10);
+    // The same mean, all of it from one origin.
+    const burst = record([3, 1, 1, 1, 1, 1, 1, 1, 1, 1]);
+    expect(burst.backTest.relativeError).toBeCloseTo(1.2, 10);
+    expect(burst.naiveLead).toBeLessThan(1.1);
+    expect(naiveDoesBetter(1.2, even.naiveLead + 1e-9)).toBe(true);
+    expect(naiveDoesBetter(1.2, 0.5)).toBe(false);
+    expect(record([2, 2, 2]).naiveLead).toBe(Number.POSITIVE_INFINITY);
+    expect(record([2]).naiveLead).toBe(0);
   });
 });
 
