@@ -13,7 +13,7 @@ export function publishedSchemas(): Record<string, string> {
   const model = {
     title: "ebbwire model document",
     description:
-      "models/<table>/<asOf>.json, compressed (.json.gz) for a table of 50 series or more: everything known of each series of a table after one run.",
+      "models/<table>/<asOf>.json, compressed (.json.gz) from the second run of a table of 50 series or more: everything known of each series of a table after one run.",
     ...z.toJSONSchema(modelDocumentSchema),
   };
   const summary = {

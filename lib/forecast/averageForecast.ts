@@ -43,7 +43,7 @@ export interface AverageForecast {
 /** An average with what was decided for it, for later forecasts to go by; the describing model apart. */
 export interface DecidedForecast {
   readonly average: AverageForecast;
-  readonly choice: Omit<ForecastChoice, "describing">;
+  readonly choice: Omit<ForecastChoice, "version" | "length" | "describing">;
 }
 
 /** Longest lag looked at: a season and some more, a third of the series, and 200 in any case. */

@@ -4,12 +4,18 @@ import type { DescriptionPlan } from "./describingModel.ts";
 import type { BackTest } from "./forecast.ts";
 import { workingScales } from "./workingScale.ts";
 
+/** Of the bank of candidates, its weights and its calibration: to be raised when any of them changes its meaning. */
+const choiceVersion = 1;
+
 /**
  * What the past of a series decided: plain data that survives JSON. Deciding takes most of the time of a forecast, and
  * rolling-origin evidence comes in horizons: until a whole new one has been seen, deciding again repeats the evidence.
- * A forecast made by a standing choice fits its models to all values there are.
+ * A forecast made by a standing choice fits its models to all values it is given.
  */
 export interface ForecastChoice {
+  readonly version: number;
+  /** Periods it was made on. */
+  readonly length: number;
   /** Names of the working scales, season lengths and steps ahead that it was made with. */
   readonly scales: readonly string[];
   readonly seasons: readonly number[];
@@ -31,13 +37,22 @@ export interface ForecastChoice {
   readonly naiveSeason: number | null;
 }
 
-/** Whether a choice was made for a series of this kind: same scales, seasons and steps ahead, and the same bank. */
+/** A past that grew or shrank by more than this share is another past. */
+const sameLength = 1 / 8;
+
+/**
+ * Whether a choice was made for a series of this kind and length: same scales, seasons and steps ahead, the same bank, and
+ * about as much of a past.
+ */
 export function choiceFits(
   choice: ForecastChoice,
-  observed: Float64Array,
+  known: Float64Array,
   seasons: readonly number[],
   horizon: number,
 ): boolean {
+  if (choice.version !== choiceVersion) return false;
+  if (Math.abs(known.length - choice.length) > sameLength * choice.length) return false;
+  const observed = known.filter((value) => !Number.isNaN(value));
   const scales = workingScales(observed, seasons.length === 0).map(({ name }) => name);
   const same = (a: readonly unknown[], b: readonly unknown[]) => a.join() === b.join();
   const described = scales.some((name) => name === choice.describing?.scale) ? 1 : 0;
@@ -48,6 +63,14 @@ export function choiceFits(
     same(choice.seasons, seasons) &&
     choice.weights.length === scales.length * members + described
   );
+}
+
+/** A choice just made, with what tells later whether it fits. */
+export function choiceOf(
+  known: Float64Array,
+  decided: Omit<ForecastChoice, "version" | "length">,
+): ForecastChoice {
+  return { version: choiceVersion, length: known.length, ...decided };
 }
 
 const orNull = (value: number): number | null => (Number.isFinite(value) ? value : null);

@@ -74,9 +74,11 @@ function seriesLines({ series, reading }: CheckedTable, report: CheckReport): st
   const gappy = series.filter((one) => one.gaps > 0);
   if (gappy.length > 0) lines.push(`gaps: ${listed(gappy.map(gapWords), 4)}`);
   const closed = [...new Set(gappy.flatMap((one) => one.closedDays))].sort();
-  if (closed.length > 0 && gappy.every((one) => one.closedDays.length > 0))
+  // A stock or a price has no zero on a day without a row.
+  const adds = !["mean", "last", "max"].includes(reading?.combine?.rule ?? "sum");
+  if (adds && closed.length > 0 && gappy.every((one) => one.closedDays.length > 0))
     lines.push(
-      `every gap is a ${closed.map(weekday).join(" or ")}: if nothing happens then, say "emptyMeans": "zero" in the settings of this table`,
+      `every gap is a ${closed.map(weekday).join(" or ")}: if those days count as nothing (nothing sold, no calls), say "emptyMeans": "zero" in the settings of this table`,
     );
   const late = series.filter((one) => one.periodsLate > 0);
   if (late.length > 0) {

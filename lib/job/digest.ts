@@ -3,7 +3,7 @@ import { attentionTo, newsFrom } from "../words/attention.ts";
 import type { RunFacts, SeriesFacts, TableFacts } from "../words/facts.ts";
 import { readDocument, type Versioned } from "./documents.ts";
 import { problemsKey } from "./keys.ts";
-import { isPacked, readModel } from "./modelDocument.ts";
+import { modelReader } from "./modelDocument.ts";
 import type { FailedTable, Plan } from "./summary.ts";
 import { valuesInYear } from "./watchFacts.ts";
 
@@ -65,12 +65,10 @@ export async function gatherTables(
   const failed: FailedTable[] = [];
   const left: string[] = [];
   const gathering = new Gathering();
-  // Tables of a store are much alike: the next is looked for the way the last was written.
-  let packed = false;
+  const modelOf = modelReader(store, asOf);
   for (const table of names) {
-    const model = await readModel(store, table, asOf, packed);
+    const model = await modelOf(table);
     if (model) {
-      packed = isPacked(model.series.length);
       const series = gathering.take(model.series.map((one) => one.facts));
       tables.push({ table, series, problems: model.problems });
       continue;

@@ -182,7 +182,16 @@ const problem = z.object({
 const standingChoice = z.object({
   lastPeriod: period,
   changedAt: z.nullable(period),
+  basis: z.string(),
+  simulated: z.object({
+    halfLifeRange: z.object({ low: orNull, high: orNull }),
+    fading: z.enum(["fades", "permanent", "cannot-tell"]),
+    coefficients: numbers,
+    observations: z.number(),
+  }),
   choice: z.object({
+    version: z.number(),
+    length: z.number(),
     scales: z.array(z.string()),
     seasons: numbers,
     horizon: z.number(),

@@ -49,13 +49,6 @@ export interface ModelShelf {
 /** Series from which on a table's models are compressed, to a third: so many are read by programs, not by people. */
 const packedFrom = 50;
 
-/** Whether a table of so many series has its models compressed. */
-export const isPacked = (series: number): boolean => series >= packedFrom;
-
-/** Where a model of so many series is written. */
-const keyFor = ({ table, asOf, series }: ModelDocument) =>
-  isPacked(series.length) ? packedModelKey(table, asOf) : modelKey(table, asOf);
-
 /** Lists the models of one table (never those of tables nested below it). */
 export async function readModelShelf(store: ObjectStore, table: string, asOf: string): Promise<ModelShelf> {
   const prefix = modelPrefix(table);
@@ -71,27 +64,44 @@ export async function readModelShelf(store: ObjectStore, table: string, asOf: st
   };
 }
 
-/** Writes a model once; the one that stands is returned. */
-export const createModel = (store: ObjectStore, model: ModelDocument) =>
-  createDocument(store, keyFor(model), model);
+const isPacked = ({ key }: Standing) => key.endsWith(".gz");
+
+/**
+ * Writes a model once; the one that stands is returned. Compressed once the model before it had many series: that one is
+ * the same for every run of an instant, whatever it reads now, so that all write to one key.
+ */
+export function createModel(
+  store: ObjectStore,
+  model: ModelDocument,
+  before: { readonly place: Standing; readonly series: number } | undefined,
+): Promise<ModelDocument> {
+  const packed = before !== undefined && (isPacked(before.place) || before.series >= packedFrom);
+  const key = packed ? packedModelKey(model.table, model.asOf) : modelKey(model.table, model.asOf);
+  return createDocument(store, key, model);
+}
 
 /** The model on a shelf's place. */
 export const readStandingModel = (store: ObjectStore, { key }: Standing) =>
   readDocument<ModelDocument>(store, key);
 
-/** The model of a table at an instant, whichever way it was written; `packed` tells which way to try first. */
-export async function readModel(
+/**
+ * Reads the models of one instant, table by table, whichever way each was written. Tables of a store are much alike: the
+ * next is looked for the way the last was found.
+ */
+export function modelReader(
   store: ObjectStore,
-  table: string,
   asOf: string,
-  packed: boolean,
-): Promise<ModelDocument | undefined> {
-  const keys = [modelKey(table, asOf), packedModelKey(table, asOf)];
-  for (const key of packed ? keys.reverse() : keys) {
-    const model = await readDocument<ModelDocument>(store, key);
-    if (model) return model;
-  }
-  return undefined;
+): (table: string) => Promise<ModelDocument | undefined> {
+  let keyOf = [modelKey, packedModelKey];
+  return async (table) => {
+    for (const way of keyOf) {
+      const model = await readDocument<ModelDocument>(store, way(table, asOf));
+      if (!model) continue;
+      if (way !== keyOf[0]) keyOf = [...keyOf].reverse();
+      return model;
+    }
+    return undefined;
+  };
 }
 
 /** The newest model of a table at or before an instant. */

@@ -22,7 +22,8 @@ import { orNull } from "./orNull.ts";
 import { seedOf } from "./seed.ts";
 import { seriesDigest } from "./seriesDigest.ts";
 import type { Settings } from "./settings.ts";
-import { choiceThatStands, choiceToKeep } from "./standingChoice.ts";
+import { type SimulatedFading, simulateFading } from "./simulateFading.ts";
+import { basisOf, choiceThatStands, keepChoice, wentBy } from "./standingChoice.ts";
 import { rememberForecasts, scoreForecasts, type TrackState, trackRecord } from "./trackRecord.ts";
 import { advanceWatch, monitorFacts } from "./watchFacts.ts";
 
@@ -84,8 +85,11 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
   const newest = series.values.length - 1;
   const changedAt = watched.changedAt === undefined ? null : calendar.periodOf(watched.changedAt);
   const { dataFindings } = task;
-  const stands = choiceThatStands(previous?.stored.choice, {
-    ...{ horizon, newest, changedAt, dataFindings },
+  const timeZone = tableSettings.timeZone ?? settings.timeZone;
+  const basisUntil = (lastPeriod: string) =>
+    basisOf({ ...tableSettings, timeZone }, task.events, series.start, lastPeriod);
+  const stood = choiceThatStands(previous?.stored.choice, {
+    ...{ horizon, newest, changedAt, dataFindings, basisUntil },
     indexOf: calendar.indexOf,
   });
   const bounds = { low: tableSettings.atLeast, high: tableSettings.atMost };
@@ -97,23 +101,28 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     bounds,
     limits: tableSettings.limits,
     changedAt: watched.changedAt,
-    choice: stands?.choice,
+    choice: stood?.choice,
   });
   const periods = Array.from({ length: horizon }, (_, step) =>
     calendar.periodOf(series.values.length + step),
   );
   const forecasts = forecastFacts(forecast, periods, { coming: adjusted.coming, bounds });
   const track = nextTrack(series, previous?.stored.track, forecasts, forecast.model.season, calendar);
+  const kept = stood && wentBy(stood, forecast) ? stood : undefined;
+  const departing = departures(forecast.model, adjusted.values);
+  const simulated = simulateFading(forecast.model, departing, kept?.simulated);
   return {
     facts: seriesFacts(series, task, {
-      ...{ adjusted, watched, firstIndex, forecast, forecasts, track, calendar },
-      standing: stands && previous?.stored.facts.model,
+      ...{ adjusted, watched, firstIndex, forecast, forecasts, track, calendar, departing, simulated },
     }),
     digest: seriesDigest(series, task),
     watchOrigin,
     watch: watched.watch,
     track,
-    choice: choiceToKeep(stands, forecast, calendar.periodOf(newest), changedAt),
+    choice: keepChoice(kept, forecast, simulated, () => {
+      const lastPeriod = calendar.periodOf(newest);
+      return { lastPeriod, changedAt, basis: basisUntil(lastPeriod) };
+    }),
   };
 }
 
@@ -145,8 +154,9 @@ interface Results {
   readonly forecasts: SeriesFacts["forecast"];
   readonly track: TrackState;
   readonly calendar: Calendar;
-  /** The last account of the model, while the choice it came from stands. */
-  readonly standing: SeriesFacts["model"] | undefined;
+  /** Departures of the values from the model's terms. */
+  readonly departing: Float64Array;
+  readonly simulated: SimulatedFading;
 }
 
 /** Rows of one period are combined by these when a value is a level rather than an amount: no total is told of it. */
@@ -159,8 +169,8 @@ function seriesFacts(series: Series, task: SeriesTask, results: Results): Series
   const { model, backTest } = forecast;
   const { periodOf } = calendar;
   const level = describedLevel(model);
-  const departing = departures(model, results.adjusted.values);
-  const described = modelFacts(model, level, departing, results.standing);
+  const { departing } = results;
+  const described = modelFacts(model, level, results.simulated);
   const kept = Math.min(values.length, historyKept[series.period]);
   const findings = seriesFindings(series, task, results);
   return {

@@ -136,7 +136,8 @@ async function refitFresh(task: TableTask, shelf: ModelShelf): Promise<TableOutc
     problems: [...problems, ...goneSeries(table, [...earlier.keys()], series)],
     series: falseDiscoveryRate === undefined ? accounts : tellDiscoveries(accounts, falseDiscoveryRate),
   };
-  const model = await createModel(store, made);
+  const before = shelf.previous && { place: shelf.previous, series: previous?.series.length ?? 0 };
+  const model = await createModel(store, made, before);
   await writeForecasts(store, model, shelf);
   return { status: "refitted", series: model.series.length };
 }

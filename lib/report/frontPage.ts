@@ -27,7 +27,7 @@ export function frontPage(
   const several = run.tables.length > 1;
   return html`<nav class="front" aria-labelledby="all"><h2 id="all">All series, what needs attention first</h2>
 <p class="hint">Recent past and forecast; under each number the range that is meant to hold it ${percentWriter(voice.locale)(level)} of the time.</p>
-${linkOf(all.length - 1) === null ? html`<p class="hint">Lines that lead on have pictures below; of any other series, <code>npm start -- explain</code> with its table and name gives the account.</p>` : nothing}
+${linkOf(all.length - 1) === null ? html`<p class="hint">Lines that lead on have pictures; the full account of any other series is given by <code>explain</code>.</p>` : nothing}
 <ol>${all.map((one, index) => row(one, linkOf(index), several, run, voice))}</ol>${untoldLine(run)}</nav>`;
 }
 

@@ -66,7 +66,7 @@ describe("check", () => {
         .map((date) => `${date.toISOString().slice(0, 10)},${100 + date.getUTCDate()}\n`)
         .join("")}`;
     const hint = (gaps: string) =>
-      `  every gap is a ${gaps}: if nothing happens then, say "emptyMeans": "zero" in the settings of this table`;
+      `  every gap is a ${gaps}: if those days count as nothing (nothing sold, no calls), say "emptyMeans": "zero" in the settings of this table`;
     const told = async (isOpen: (weekday: number, at: number) => boolean) =>
       (await tell({ "series/till.csv": days(isOpen) })).filter((line) => line.includes("every gap"));
     expect(await told((weekday) => weekday !== 0)).toEqual([hint("Sunday")]);

@@ -38,19 +38,25 @@ describe("a table of fifty series", () => {
     expect(before[latestForecastKey("wide")].split("\n")).toHaveLength(1 + 50 * 8 + 1);
   });
 
-  it("goes on from models of a time when it had fewer series", async () => {
+  it("is compressed from the run on that follows one of many series, whatever the table holds by then", async () => {
     const store = new MemoryStore();
-    const rows = packedTable(50, 70, 3).trim().split("\n");
-    const narrow = rows.slice(0, -1).map((row) => row.split(",").slice(0, 50).join(","));
-    await write(store, narrow);
-    await runJob({ store, asOf: earlier, webhooks: [] });
-    expect(await store.read(modelKey("wide", earlier))).toBeDefined();
-    await write(store, rows);
-    await runJob({ store, asOf, webhooks: [] });
-    const facts = await readFacts(store, "wide", asOf);
-    expect(facts?.series.map(({ comparison }) => comparison?.since ?? "none")).toEqual([
-      ...Array(49).fill(earlier),
-      "none",
-    ]);
+    const rows = packedTable(50, 72, 3).trim().split("\n");
+    const narrow = (count: number) =>
+      rows.slice(0, count).map((row) => row.split(",").slice(0, 50).join(","));
+    const keys = (week: string) =>
+      Object.keys(store.texts()).filter((key) => key.startsWith(`models/wide/${week}`));
+    const run = async (lines: readonly string[], at: string) => {
+      await write(store, lines);
+      await runJob({ store, asOf: at, webhooks: [] });
+    };
+    await run(narrow(71), "2026-11-16T06:00:00Z"); // 49 series
+    await run(rows.slice(0, 72), earlier); // 50, after 49
+    await run(narrow(73), asOf); // 49 again, after 50
+    expect(keys("2026-11-16")).toEqual([modelKey("wide", "2026-11-16T06:00:00Z")]);
+    expect(keys("2026-11-23")).toEqual([modelKey("wide", earlier)]);
+    expect(keys("2026-11-30")).toEqual([packedModelKey("wide", asOf)]);
+    expect((await readFacts(store, "wide", asOf))?.series.map((one) => one.comparison?.since)).toEqual(
+      Array(49).fill(earlier),
+    );
   });
 });

@@ -1,8 +1,11 @@
 import { describe, expect, it } from "vitest";
+import type { DescribingModel } from "../../lib/forecast/forecast.ts";
 import { modelKey } from "../../lib/job/keys.ts";
 import type { ModelDocument } from "../../lib/job/modelDocument.ts";
 import { runJob } from "../../lib/job/run.ts";
-import { choiceThatStands } from "../../lib/job/standingChoice.ts";
+import { simulateFading } from "../../lib/job/simulateFading.ts";
+import { basisOf, choiceThatStands } from "../../lib/job/standingChoice.ts";
+import { randomNormal } from "../../lib/numeric/randomNormal.ts";
 import { MemoryStore } from "../support/memoryStore.ts";
 
 const monday = (index: number) =>
@@ -36,11 +39,61 @@ describe("what a forecast decided", () => {
   });
 
   it("falls when a change was noticed since, and when its period is not in the series any more", () => {
-    const before = { lastPeriod: "w9", changedAt: null, choice: {} as never };
-    const question = { horizon: 4, newest: 11, indexOf: () => 9, changedAt: null, dataFindings: [] };
+    const before = { lastPeriod: "w9", changedAt: null, basis: "b", choice: {}, simulated: {} } as never;
+    const question = {
+      ...{ horizon: 4, newest: 11, indexOf: () => 9, changedAt: null, dataFindings: [] },
+      basisUntil: () => "b",
+    };
     expect(choiceThatStands(before, question)).toBe(before);
     expect(choiceThatStands(before, { ...question, changedAt: "w5" })).toBeUndefined();
     expect(choiceThatStands(before, { ...question, indexOf: () => 12 })).toBeUndefined();
+    expect(choiceThatStands(before, { ...question, basisUntil: () => "c" })).toBeUndefined();
     expect(choiceThatStands(null, question)).toBeUndefined();
+  });
+
+  it("rests on the events of its past and on what an empty period means, not on events to come", () => {
+    const basis = (settings: object, dates: readonly string[]) =>
+      basisOf(
+        settings,
+        dates.map((day) => ({ name: "fair", from: day, until: day, tables: null })),
+        "2025-01-06",
+        "2026-11-23",
+      );
+    expect(basis({}, ["2026-05-01", "2027-05-01", "2024-05-01"])).toBe(basis({}, ["2026-05-01"]));
+    expect(basis({}, ["2026-05-01"])).not.toBe(basis({}, []));
+    expect(basis({ emptyMeans: "zero" }, [])).not.toBe(basis({}, []));
+    expect(basis({ unit: "loans", horizon: 4 }, [])).toBe(basis({}, []));
+  });
+});
+
+describe("what is simulated for an account", () => {
+  const model = (coefficient: number, observations = 100): DescribingModel => ({
+    ...{ scale: "raw", trend: false, season: 0, relation: "is", weight: 1 },
+    fit: {
+      ...{ method: "maximum-likelihood", order: 1, mean: 0, meanStandardError: 1, innovationVariance: 1 },
+      ...{ logLikelihood: 0, aic: 0, aicc: 0, bic: 0, observations },
+      coefficients: Float64Array.of(coefficient),
+      standardErrors: Float64Array.of(0.08),
+      residuals: new Float64Array(observations),
+    },
+  });
+  const normal = randomNormal(2);
+  const values = Float64Array.from({ length: 100 }, normal);
+
+  it("is kept for small steps, but not for many of them in one direction, nor for a longer series", () => {
+    const first = simulateFading(model(0.6), values);
+    expect(simulateFading(model(0.61), values, first)).toBe(first);
+    expect(simulateFading(model(0.615), values, simulateFading(model(0.61), values, first))).toBe(first);
+    // Two steps of 0.19 standard errors are 0.38 from the fit it was simulated for.
+    const further = simulateFading(model(0.63), values, simulateFading(model(0.615), values, first));
+    expect(further).not.toBe(first);
+    expect(further).toEqual(simulateFading(model(0.63), values));
+    expect(simulateFading(model(0.6, 106), values, first)).toBe(first);
+    expect(simulateFading(model(0.6, 107), values, first)).not.toBe(first);
+  });
+
+  it("is not kept for a half-life outside its range", () => {
+    const first = { ...simulateFading(model(0.6), values), halfLifeRange: { low: 5, high: null } };
+    expect(simulateFading(model(0.6), values, first)).not.toBe(first);
   });
 });

@@ -116,7 +116,7 @@ describe("the report", () => {
       for (const branch of ["Branch 499", "Branch 500"])
         expect(pages.map((page) => page.html).join("")).toMatch(new RegExp(`<h2 id="s\\d+h">${branch} `));
       expect(pages[0].html.match(/<li><div class="row">/g)).toHaveLength(500 - sections);
-      expect(pages[0].html).toContain("Lines that lead on have pictures below");
+      expect(pages[0].html).toContain("Lines that lead on have pictures;");
     }
   });
 
