@@ -1,4 +1,5 @@
 import { type BurgWorkspace, burgWorkspace } from "../autoregression/burg.ts";
+import { tabulate } from "../numeric/tabulate.ts";
 import {
   type BankForecast,
   type Candidate,
@@ -76,15 +77,16 @@ function lossesOn(
   steps: number,
 ): Float64Array {
   const floor = name === "raw" ? Number.NEGATIVE_INFINITY : forward(LOWEST_PART * lowest);
-  return Float64Array.from(bank.fits, (fit, i) => {
-    if (fit === undefined) return Number.NaN;
+  const actuals = tabulate(steps, (h) => forward(values[from + h]));
+  return tabulate(bank.fits.length, (i) => {
+    if (bank.fits[i] === undefined) return Number.NaN;
     let sum = 0;
     let seen = 0;
     for (let h = 0; h < steps; h++) {
-      const actual = values[from + h];
+      const actual = actuals[h];
       if (Number.isNaN(actual)) continue;
       const path = forward(bank.paths[i * steps + h]);
-      const error = forward(actual) - (Number.isNaN(path) ? floor : Math.max(path, floor));
+      const error = actual - (Number.isNaN(path) ? floor : Math.max(path, floor));
       sum += (error * error) / (h + 1);
       seen++;
     }
