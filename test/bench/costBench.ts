@@ -52,25 +52,27 @@ async function measure(): Promise<Measured> {
   await lay(259);
   await runJob({ store, asOf: "2026-11-23T06:00:00Z", webhooks: [] });
   await lay(260);
-  const before = size(store);
+  const before = { all: size(store), runs: size(store, "runs/") };
   store.ofTables = { puts: 0, gets: 0, lists: 0 };
   store.ofRun = { puts: 0, gets: 0, lists: 0 };
   // Time of the processor, so that what else the machine does is not counted.
   const began = process.cpuUsage();
   await runJob({ store, asOf: "2026-11-30T06:00:00Z", webhooks: [] });
   const { user, system } = process.cpuUsage(began);
+  const ofRun = size(store, "runs/") - before.runs;
   const perTable = (kind: Kind) => store.ofTables[kind] / tables;
   return {
     millisecondsPerSeries: (user + system) / 1000 / (tables * seriesPerTable),
     requestsPerTable: { puts: perTable("puts"), gets: perTable("gets"), lists: perTable("lists") },
     requestsPerRun: store.ofRun,
-    bytesPerSeries: (size(store) - before) / (tables * seriesPerTable),
+    bytesPerSeries: (size(store) - before.all - ofRun) / (tables * seriesPerTable),
+    bytesPerRun: ofRun,
     millisecondsPerRequest: 20,
   };
 }
 
-const size = (store: MemoryStore) =>
-  [...store.objects.values()].reduce((sum, bytes) => sum + bytes.length, 0);
+const size = (store: MemoryStore, prefix = "") =>
+  [...store.objects].reduce((sum, [key, bytes]) => sum + (key.startsWith(prefix) ? bytes.length : 0), 0);
 
 /** Prints the README's cost table from what a run takes here and the dated price file. */
 export async function costBench(): Promise<BenchRow[]> {

@@ -15,8 +15,10 @@ export interface Measured {
   /** Requests for one table and run, closing included, and those of a run as such. */
   readonly requestsPerTable: Requests;
   readonly requestsPerRun: Requests;
-  /** Bytes that one run leaves for one series: model, forecast, its share of message and report. */
+  /** Bytes that one run leaves for one series: model and forecasts. */
   readonly bytesPerSeries: number;
+  /** Bytes that one run leaves as such: messages, and a report that draws its full hundred series. */
+  readonly bytesPerRun: number;
   /** Taken, not measured: time of one request from Lambda to S3, of which four are under way at once. */
   readonly millisecondsPerRequest: number;
 }
@@ -76,7 +78,8 @@ export function monthlyCost(scenario: Scenario, measured: Measured, prices: Pric
     transitions * prices.stepFunctionsTransition +
     (runsPerMonth + watchesPerMonth) * prices.schedulerInvocation;
 
-  const storedGigabytes = (12 * runsPerMonth * series * measured.bytesPerSeries) / 1e9;
+  const bytes = series * measured.bytesPerSeries + measured.bytesPerRun;
+  const storedGigabytes = (12 * runsPerMonth * bytes) / 1e9;
   const storageAfterAYear = storedGigabytes * prices.s3GigabyteMonth;
 
   const alarmMetrics = fleet ? 12 : 5;

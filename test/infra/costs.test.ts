@@ -7,6 +7,7 @@ const measured: Measured = {
   requestsPerTable: { puts: 3, gets: 4, lists: 1 },
   requestsPerRun: { puts: 20, gets: 20, lists: 6 },
   bytesPerSeries: 2000,
+  bytesPerRun: 500_000,
   millisecondsPerRequest: 0,
 };
 const million = { name: "", series: 1_000_000, seriesPerTable: 100, runsPerMonth: 1, fleet: true };
@@ -26,6 +27,12 @@ describe("the cost of a deployment", () => {
     const byHand = 10_000 * (0.000015 + 0.0000016 + 0.000005) + 1206 * 0.000025;
     expect(requests).toBeGreaterThan(byHand);
     expect(requests - byHand).toBeLessThan(0.005);
+  });
+
+  it("keeps a year of runs, by hand 24.006 GB", () => {
+    // 12 × (1,000,000 × 2,000 bytes + 500,000 bytes)
+    const { storageAfterAYear } = monthlyCost(million, measured, prices);
+    expect(storageAfterAYear).toBeCloseTo(24.006 * prices.s3GigabyteMonth, 10);
   });
 
   it("grows with series, runs and slowness, and never falls", () => {
