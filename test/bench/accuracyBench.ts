@@ -38,21 +38,21 @@ const NAMES: Readonly<Record<string, Period>> = {
 /** Sums over the series of one period. */
 interface Tally {
   series: number;
-  values: number;
   errors: { percentage: number; scaled: number };
   ofMean: { percentage: number; scaled: number };
   naive: { percentage: number; scaled: number };
   plain: { percentage: number; scaled: number; interval: number };
   interval: number;
-  inside80: number;
-  inside95: number;
+  /** Share of each series' values inside. */
+  inside80: number[];
+  inside95: number[];
   milliseconds: number[];
 }
 
 /**
  * Accuracy of `forecastSeries` on held-out ends of series: JSON lines `{id, period, values, holdout}` at `path`. By
  * period: sMAPE, MASE and OWA (mean of both over Naive2's) of the median, which is what these measures reward, and
- * of the mean; mean scaled interval score and coverage at 80 and 95; median time a series. The plain rival is one
+ * of the mean; mean scaled interval score and coverage at 80 and 95 (standard error by series); median time a series. The plain rival is one
  * Burg autoregression of raw first differences by AICc with its Gaussian interval.
  */
 export async function accuracyBench(path: string | undefined): Promise<BenchRow[]> {
@@ -76,14 +76,13 @@ function emptyTally(): Tally {
   const none = { percentage: 0, scaled: 0 };
   return {
     series: 0,
-    values: 0,
     errors: { ...none },
     ofMean: { ...none },
     naive: { ...none },
     plain: { ...none, interval: 0 },
     interval: 0,
-    inside80: 0,
-    inside95: 0,
+    inside80: [],
+    inside95: [],
     milliseconds: [],
   };
 }
@@ -104,11 +103,10 @@ function score(tally: Tally, { values, holdout }: HeldOut, period: Period): void
   const [narrow, wide] = forecast.intervals;
   tally.interval += accuracy.meanScaledIntervalScore(holdout, wide, scaling);
   tally.plain.interval += accuracy.meanScaledIntervalScore(holdout, plain.interval, scaling);
-  holdout.forEach((value, h) => {
-    tally.values++;
-    if (value >= narrow.low[h] && value <= narrow.high[h]) tally.inside80++;
-    if (value >= wide.low[h] && value <= wide.high[h]) tally.inside95++;
-  });
+  const inside = ({ low, high }: ForecastInterval): number =>
+    holdout.filter((value, h) => value >= low[h] && value <= high[h]).length / horizon;
+  tally.inside80.push(inside(narrow));
+  tally.inside95.push(inside(wide));
 }
 
 function add(
@@ -184,9 +182,16 @@ function rowsOf(period: Period, tally: Tally): BenchRow[] {
     row("sMAPE", errors.percentage / series, "%"),
     row("MASE", errors.scaled / series),
     row("MSIS at 95", intervalScore, "", "plain Gaussian interval", intervalScore / plainScore, "below 1"),
-    row("coverage of 80", (100 * tally.inside80) / tally.values, "%", "", Number.NaN, "78.5 to 81.5"),
-    row("coverage of 95", (100 * tally.inside95) / tally.values, "%", "", Number.NaN, "93.5 to 96.5"),
+    row("coverage of 80", ...coverage(tally.inside80), "", Number.NaN, "78.5 to 81.5"),
+    row("coverage of 95", ...coverage(tally.inside95), "", Number.NaN, "93.5 to 96.5"),
     row("median time a series", times[times.length >> 1], "ms"),
     row("longest time a series", times[times.length - 1], "ms"),
   ];
+}
+
+/** Mean share in percent, with its standard error: values of one series hit and miss together, series apart. */
+function coverage(shares: readonly number[]): [number, string] {
+  const mean = shares.reduce((sum, share) => sum + share, 0) / shares.length;
+  const power = shares.reduce((sum, share) => sum + (share - mean) ** 2, 0);
+  return [100 * mean, `% ± ${((100 * Math.sqrt(power)) / shares.length).toFixed(1)}`];
 }
