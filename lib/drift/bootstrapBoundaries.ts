@@ -33,22 +33,26 @@ export function stableMaxima(
 }
 
 /**
- * Boundaries that spend the false-alarm rate evenly: α' is the `rate` quantile of the smallest rank p-value
- * over the kinds, and each boundary the 1 − α' quantile of its own maxima.
+ * Boundaries that spend the false-alarm rate in the given parts: α' is the `rate` quantile of the smallest rank
+ * p-value divided by its kind's part, and each boundary the 1 − part·α' quantile of its own maxima.
  */
-export function evenBoundaries(maxima: readonly Float64Array[], rate: number): Float64Array {
+export function spentBoundaries(
+  maxima: readonly Float64Array[],
+  parts: readonly number[],
+  rate: number,
+): Float64Array {
   const paths = maxima[0].length;
   const smallest = new Float64Array(paths).fill(1);
-  for (const own of maxima) {
+  for (const [kind, own] of maxima.entries()) {
     const order = Array.from(own.keys()).sort((a, b) => own[b] - own[a]);
     order.forEach((path, rank) => {
-      smallest[path] = Math.min(smallest[path], (rank + 1) / paths);
+      smallest[path] = Math.min(smallest[path], (rank + 1) / paths / parts[kind]);
     });
   }
   smallest.sort();
   const share = smallest[Math.max(0, Math.ceil(rate * paths) - 1)];
-  return Float64Array.from(maxima, (own) => {
+  return Float64Array.from(maxima, (own, kind) => {
     const sorted = Float64Array.from(own).sort();
-    return sorted[Math.min(paths - 1, Math.max(0, Math.floor((1 - share) * paths)))];
+    return sorted[Math.min(paths - 1, Math.max(0, Math.floor((1 - share * parts[kind]) * paths)))];
   });
 }

@@ -1,8 +1,9 @@
-import { evenBoundaries, stableMaxima } from "./bootstrapBoundaries.ts";
+import { spentBoundaries, stableMaxima } from "./bootstrapBoundaries.ts";
 import { tabulatedBoundaries } from "./boundaryTable.ts";
 import { clusteringAllowance } from "./clustering.ts";
 import { watchedKinds } from "./lookState.ts";
 import type { Reference } from "./reference.ts";
+import { spendingOf } from "./spending.ts";
 
 export interface BoundaryRequest {
   readonly looks: number;
@@ -22,7 +23,10 @@ export function boundariesFor(
 ): { readonly boundaries: Float64Array; readonly source: "table" | "bootstrap" } {
   const { looks, falseAlarmRate, seed, bootstrap } = request;
   const tabulated = bootstrap ? undefined : tabulatedBoundaries(reference, looks, falseAlarmRate);
-  const boundaries = tabulated ?? evenBoundaries(stableMaxima(reference, looks, paths, seed), falseAlarmRate);
-  boundaries[watchedKinds(reference).indexOf("shock-size")] += clusteringAllowance(reference);
+  const kinds = watchedKinds(reference);
+  const boundaries =
+    tabulated ??
+    spentBoundaries(stableMaxima(reference, looks, paths, seed), kinds.map(spendingOf), falseAlarmRate);
+  boundaries[kinds.indexOf("shock-size")] += clusteringAllowance(reference);
   return { boundaries, source: tabulated === undefined ? "bootstrap" : "table" };
 }

@@ -3,15 +3,15 @@ import { isStable } from "./simulatePath.ts";
 import { seasonColumns } from "./terms.ts";
 
 /** How many features a reference without trend and season has; the rest follow them. */
-export const plainFeatures = 17;
+export const plainFeatures = 18;
 
 /**
  * What of a reference its boundaries depend on, smooth enough for a linear regression of their quantiles: one;
  * the persistence and its excesses over 0.3, 0.6, 0.8 and 0.92; the largest root squared, its excess over 0.85
  * and the lags beyond two (all 0 for a single lag); the length as l = ln(values / 156); the tail as 1/ν and
- * times l, and whether it is normal; 1/ν times the excesses of persistence over 0.5 and 0.8; l times persistence
+ * times l, and whether it is normal; 1/ν times the excesses of persistence over 0.5, 0.8 and 0.92; l times persistence
  * and times its excess over 0.7. Then trend, by itself and times persistence over 0.5 and l, and the number of
- * seasonal columns, by itself and times l.
+ * seasonal columns, by itself and times l, and whether the pattern is longer than twelve periods.
  */
 export function boundaryFeatures(reference: Reference): number[] {
   const { order, values, degreesOfFreedom, trend, season } = reference;
@@ -40,6 +40,7 @@ export function boundaryFeatures(reference: Reference): number[] {
     degreesOfFreedom >= 100 ? 1 : 0,
     tail * over(0.5),
     tail * over(0.8),
+    tail * over(0.92),
     persistence * length,
     over(0.7) * length,
     turning,
@@ -47,6 +48,7 @@ export function boundaryFeatures(reference: Reference): number[] {
     turning * length,
     seasonal,
     seasonal * length,
+    season > 12 ? 1 : 0,
   ];
 }
 

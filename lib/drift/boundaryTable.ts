@@ -9,6 +9,7 @@ import type { Reference } from "./reference.ts";
  * simulated series of many orders, persistences, tails and lengths, watched as the monitor watches, stand behind
  * each, so a boundary has less noise than a bootstrap of a thousand paths and costs a few multiplications. Since
  * the regression knows only the estimates, it carries their uncertainty, which a bootstrap from them does not.
+ * The kinds pass their boundaries as often as spending says, together at the false-alarm rate.
  * Fitted apart for one lag and for more;
  * tabulated for 40 to 400 values, 8 to 104 looks and false-alarm rates of 1 to 20 %; linear in ln of both between.
  */
@@ -26,7 +27,6 @@ export function tabulatedBoundaries(
     falseAlarmRate < tabulatedRates[0] ||
     falseAlarmRate > tabulatedRates[tabulatedRates.length - 1];
   if (outside) return undefined;
-  const { season } = reference;
   const features = boundaryFeatures(reference);
   const kinds = watchedKinds(reference);
   const terms = kinds.length > 3;
@@ -42,8 +42,7 @@ export function tabulatedBoundaries(
       dot(own, features, own.length) + dot(like, features, plainFeatures) - dot(base, features, plainFeatures)
     );
   };
-  const lowest = Math.max(0, lowestBoundary - 0.75 * Math.max(0, Math.log(falseAlarmRate / 0.05)));
-  const nearUnitRoot = (heavyTailShift * Math.max(0, features[1] - 0.6)) / reference.degreesOfFreedom;
+  const lowest = Math.max(0, lowestLevelBoundary - 0.75 * Math.max(0, Math.log(falseAlarmRate / 0.05)));
   const share = between(tabulatedRates, falseAlarmRate);
   const step = between(tabulatedLooks, looks);
   return Float64Array.from(kinds, (kind) => {
@@ -51,22 +50,16 @@ export function tabulatedBoundaries(
     const high = at52(kind, share.index + 1);
     const shifts = lookShifts[kind] ?? lookShifts.level;
     const shift = shifts[step.index] + step.part * (shifts[step.index + 1] - shifts[step.index]);
-    const unsteady = kind === "level" || kind === "persistence" ? nearUnitRoot : 0;
-    const extra = unsteady + (season > 12 ? longSeasonShift : 0);
-    const boundary = low + share.part * (high - low) + shift + extra;
-    return Math.max(boundary, lowest);
+    const boundary = low + share.part * (high - low) + shift;
+    return kind === "level" ? Math.max(boundary, lowest) : boundary;
   });
 }
 
 /**
- * Near a unit root a level cannot be judged, its statistic stays low and so would its boundary, until one heavy
- * shock passes it: no notice without this much evidence (an average likelihood ratio of 3.5), less at rates above 5 %.
+ * Near a unit root a level cannot be judged: its statistic stays low and so would its boundary, until one heavy shock
+ * passes it. So no notice of level without an average likelihood ratio of five, of less at rates above 5 %.
  */
-const lowestBoundary = 1.25;
-/** Heavy tails together with a near unit root brought 7 % instead of 5 % without this. */
-const heavyTailShift = 3.3;
-/** A pattern of which a reference holds few rounds (24 and more periods) needs higher boundaries: 7.5 % without. */
-const longSeasonShift = 0.4;
+const lowestLevelBoundary = Math.log(5);
 
 /** Place of 5 % among the tabulated rates. */
 const middleRate = tabulatedRates.indexOf(0.05);

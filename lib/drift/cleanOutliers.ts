@@ -1,24 +1,31 @@
 import type { LookState } from "./lookState.ts";
-import { judgePatch, longestPatch, type Patch, scoreValues } from "./outlierPatch.ts";
+import { judgePatch, type Patch, scoreValues } from "./outlierPatch.ts";
 
-/** How many outliers may be removed, and beyond how many standard errors. */
+/** How many neighbours may be removed together, beyond how many standard errors, and how many times. */
 interface CleaningRule {
   readonly beyond: number;
-  readonly most: number;
+  readonly longest: number;
+  readonly patches: number;
 }
 
-/** For the statistics, and for naming a change, where a value taken out is evidence lost. */
-export const watching: CleaningRule = { beyond: 4, most: 3 };
-export const naming: CleaningRule = { beyond: 4, most: 1 };
+/**
+ * For the statistics, and for naming a change, where a value taken out is evidence lost. One patch only: taking
+ * out a second cost two to five points of the power against larger shocks, which bring several large values.
+ */
+export const watching: CleaningRule = { beyond: 4, longest: 3, patches: 1 };
+export const naming: CleaningRule = { beyond: 4, longest: 1, patches: 1 };
 /** The shock size loses only what is plainly no shock of the model's, by this many standard errors. */
 const forShockSizeBeyond = 4.2;
-/** What two and three neighbours must pass beyond a single value, in standard errors. */
-const patchMargins = [0, 0, 0.6, 1];
+/**
+ * What two and three neighbours must pass beyond a single value, in standard errors: less would take out the first
+ * values of larger shocks too often, more would take wild neighbours for them.
+ */
+const patchMargins = [0, 0, 0.8, 1.3];
 
 /**
  * Makes the cleaned copies anew from the raw values: the monitored value, or patch of two or three neighbours,
  * that is most beyond its limit is moved back to where the model puts it (additive outliers: Chang, Tiao and
- * Chen 1988; patches: Justel, Peña and Tsay 2001), until none passes or the rule's number is reached. Patches
+ * Chen 1988; patches: Justel, Peña and Tsay 2001), until none passes or the rule allows no more. Patches
  * are tried as one because neighbours hide each other. Starting from the raw values at every look lets a value
  * that looked wild alone come back once later ones bear it out.
  */
@@ -31,13 +38,12 @@ export function cleanOutliers(state: LookState, rule: CleaningRule): void {
     shockValues[time] = state.values[time];
   }
   state.outlierCount = 0;
-  let cleansShockSize = true;
-  while (state.outlierCount < rule.most) {
+  for (let round = 0; round < rule.patches; round++) {
     const { patch } = state.work;
     const found = largestPatch(state, rule, patch);
     if (!found) return;
     const limit = forShockSizeBeyond + patchMargins[patch.length];
-    cleansShockSize = cleansShockSize && patch.statistic > limit * limit;
+    const cleansShockSize = patch.statistic > limit * limit;
     for (let i = 0; i < patch.length; i++) {
       const time = patch.time + i;
       const size = patch.sizes[i];
@@ -53,11 +59,10 @@ export function cleanOutliers(state: LookState, rule: CleaningRule): void {
 function largestPatch(state: LookState, rule: CleaningRule, best: Patch): boolean {
   const { start, count } = state;
   const { candidate } = state.work;
-  const longest = Math.min(longestPatch, rule.most - state.outlierCount);
   scoreValues(state);
   let excess = 1;
   for (let time = start; time < count; time++) {
-    for (let length = 1; length <= longest && time + length <= count; length++) {
+    for (let length = 1; length <= rule.longest && time + length <= count; length++) {
       if (isTaken(state, time + length - 1)) break;
       judgePatch(state, time, length, candidate);
       const limit = rule.beyond + patchMargins[length];

@@ -29,6 +29,7 @@ export interface LookWork {
   readonly lagHere: ColumnSums;
   readonly lagRow: Float64Array;
   readonly lagPriors: Float64Array;
+  readonly lagColumn: Float64Array;
   /** Student log density, see studentTable. */
   readonly table: Float64Array;
   /** Log-likelihood of the reference rows on the σ grid. */
@@ -74,6 +75,7 @@ export function openWork(reference: Reference, kinds: readonly ChangeKind[], cap
     lagHere: emptySums(order, columns),
     lagRow: new Float64Array(order),
     lagPriors: new Float64Array(order).fill(persistencePrior ** 2),
+    lagColumn: new Float64Array(columns),
     table: studentTable(reference.degreesOfFreedom),
     beforeAll: new Float64Array(scaleGrid),
   };

@@ -1,5 +1,6 @@
 import { appendValue } from "../../lib/drift/appendValue.ts";
 import { boundaryFeatures } from "../../lib/drift/boundaryFeatures.ts";
+import { clusteringAllowance } from "../../lib/drift/clustering.ts";
 import { look } from "../../lib/drift/look.ts";
 import { openLookState, watchedKinds } from "../../lib/drift/lookState.ts";
 import type { ChangeKind } from "../../lib/drift/notice.ts";
@@ -29,7 +30,7 @@ export function watchStablePath(seed: number, plan: TermPlan, looks: number): St
     40 + 3 * (plan.trend ? 1 : 0) + 2 * plan.season * (plan.season > 0 && plan.season <= 12 ? 1 : 0);
   const start = Math.round(shortest * (320 / shortest) ** uniform());
   const coefficients = drawCoefficients(uniform);
-  const degreesOfFreedom = [0, 0, 0, 0, 10, 6, 5, 5, 4][Math.floor(9 * uniform())];
+  const degreesOfFreedom = [0, 0, 0, 0, 0, 10, 6, 5, 5, 4][Math.floor(10 * uniform())];
   const shock = () => (degreesOfFreedom === 0 ? normal() : student(normal, degreesOfFreedom));
   const path = new Float64Array(start + looks);
   for (let time = -300, recent = new Float64Array(4); time < path.length; time++) {
@@ -43,6 +44,8 @@ export function watchStablePath(seed: number, plan: TermPlan, looks: number): St
   const given = uniform() < 0.25 ? Math.max(1, coefficients.length) : undefined;
   const reference = fitReference(path.slice(0, start), plan, given, maxOrder);
   const state = openLookState(reference, looks, looks);
+  const allowance = clusteringAllowance(reference);
+  const shockSize = watchedKinds(plan).indexOf("shock-size");
   const counts = lookCounts.filter((count) => count <= looks);
   const maxima = counts.map((count) => ({ looks: count, values: watchedKinds(plan).map(() => -9) }));
   for (let at = 0; at < looks; at++) {
@@ -56,6 +59,8 @@ export function watchStablePath(seed: number, plan: TermPlan, looks: number): St
       }
     }
   }
+  // The monitor adds the allowance to the fitted boundary; the fit must know it, or the rate would not be met.
+  for (const { values } of maxima) values[shockSize] -= allowance;
   return { kinds: watchedKinds(plan), features: boundaryFeatures(reference), maxima };
 }
 
