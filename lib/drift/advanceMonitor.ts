@@ -143,6 +143,7 @@ function makeNotice(
   const named = nameChange(
     state,
     monitor.boundaries.map(({ boundary }) => boundary),
+    status,
   );
   return {
     code: "change",

@@ -1,7 +1,7 @@
 import { cleanOutliers, naming } from "./cleanOutliers.ts";
 import { type Explanation, weighExplanations } from "./jointEvidence.ts";
 import type { LookState } from "./lookState.ts";
-import type { ChangeKind } from "./notice.ts";
+import type { ChangeKind, ChangeNotice } from "./notice.ts";
 import { fitNull } from "./nullFit.ts";
 import { weighKinds } from "./weighKinds.ts";
 
@@ -24,7 +24,11 @@ const nearTie = 1.1;
  * are weighed into scores (see weighKinds); the date is the posterior mode, its range the 5 % and 95 % points of
  * the posterior. To be called right after a look.
  */
-export function nameChange(state: LookState, boundaries: ArrayLike<number>): NamedChange {
+export function nameChange(
+  state: LookState,
+  boundaries: ArrayLike<number>,
+  status: ChangeNotice["status"],
+): NamedChange {
   cleanOutliers(state, naming);
   fitNull(state);
   const explanations = weighExplanations(state);
@@ -34,7 +38,7 @@ export function nameChange(state: LookState, boundaries: ArrayLike<number>): Nam
     return taking - logSum(explanations.filter(({ kinds }) => !(kinds & bit)));
   });
   const { time, low, high } = dateChange(state, explanations);
-  const scores = weighKinds(state, logOdds, boundaries);
+  const scores = weighKinds(state, logOdds, boundaries, status);
   const ranked = [...scores.keys()].sort((a, b) => scores[b] - scores[a]);
   const [first, second] = ranked;
   const holding = explanations.filter((one) => one.time === time && one.kinds & (1 << first));
