@@ -1,23 +1,16 @@
-import { backTestOf } from "./backTest.ts";
-import { addOutcomes, type Calibration, calibrate, noEvidence } from "./calibration.ts";
+import type { Calibration } from "./calibration.ts";
 import { type Candidate, fitBank, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
-import { candidateWeights } from "./candidateWeights.ts";
-import {
-  combineBank,
-  forecastWorkspace,
-  pastWeights,
-  type RolledBank,
-  rollBank,
-} from "./combinedForecast.ts";
+import { combineBank, forecastWorkspace, rollBank } from "./combinedForecast.ts";
 import { dampOutliers } from "./dampOutliers.ts";
 import type { SeriesDescription } from "./describingModel.ts";
 import { fillGaps } from "./fillGaps.ts";
 import type { BackTest } from "./forecast.ts";
-import { backTestFrom, type ForecastChoice, storedBackTest } from "./forecastChoice.ts";
+import { type ForecastChoice, storedBackTest } from "./forecastChoice.ts";
+import { freshDecision, standingDecision } from "./forecastDecision.ts";
 import type { MemberFit } from "./memberFit.ts";
-import { naiveDoesBetter, naiveInstead } from "./naiveFallback.ts";
+import { naiveInstead } from "./naiveFallback.ts";
 import type { PredictiveSpread } from "./predictiveSpread.ts";
-import { horizonsCovered, type Origin, rollingOrigins } from "./rollingOrigins.ts";
+import { rollingOrigins } from "./rollingOrigins.ts";
 import { memberShocks, NORMAL_TAILS, type ShockTails, shockTails } from "./shockTails.ts";
 import { workingScales } from "./workingScale.ts";
 
@@ -101,7 +94,7 @@ export function averageForecast(
   const combined = combineBank(bank, candidates, scales, weights, horizon);
   const { calibration, backTest, naiveSeason } = decision.record(
     meanTerms(bank.fits, combined.shares),
-    heaviestTails(bank.fits, combined.shares),
+    leadersTails(bank.fits, combined.shares),
   );
   const average: AverageForecast = {
     candidates,
@@ -138,61 +131,6 @@ function leading(weights: Float64Array): Float64Array {
   return weights.map((weight) => (weight < LEAST_WEIGHT * total ? 0 : weight));
 }
 
-/** What the past says, asked for in two steps because calibration looks at what was fitted. */
-interface Decision {
-  readonly weights: Float64Array;
-  readonly record: (
-    terms: number,
-    tails: ShockTails,
-  ) => {
-    readonly calibration: Calibration;
-    readonly backTest: BackTest;
-    readonly naiveSeason: number | null;
-  };
-}
-
-function standingDecision(standing: ForecastChoice): Decision {
-  const { calibration, naiveSeason } = standing;
-  return {
-    weights: Float64Array.from(standing.weights),
-    record: () => ({ calibration, backTest: backTestFrom(standing.backTest), naiveSeason }),
-  };
-}
-
-/** Weights by the rolled losses; the record of the average, combined at each origin without its own outcomes. */
-function freshDecision(
-  past: {
-    readonly values: Float64Array;
-    readonly scales: readonly ScaledSeries[];
-    readonly candidates: readonly Candidate[];
-    readonly origins: readonly Origin[];
-    readonly season: number;
-    readonly horizon: number;
-  },
-  rolled: RolledBank,
-): Decision {
-  const { values, scales, candidates, origins, season, horizon } = past;
-  const record = (terms: number, tails: ShockTails) => {
-    const evidence = noEvidence();
-    const combined = origins.map(({ count, steps }, o) => {
-      const weights = pastWeights(rolled, origins, o);
-      const at = combineBank(rolled.banks[o], candidates, scales, weights, steps);
-      addOutcomes(evidence, at.spread, values, count, (values.length - count) / horizon);
-      return at;
-    });
-    const observed = values.reduce((sum, value) => sum + (Number.isNaN(value) ? 0 : 1), 0);
-    const prior = Math.sqrt((observed + terms) / Math.max(1, observed - terms));
-    const horizons = horizonsCovered(origins);
-    const calibration = calibrate(evidence, prior, tails, horizons, observed);
-    const test = backTestOf(values, combined, origins, season, horizon, calibration);
-    const { backTest } = test;
-    const naiveSeason = naiveDoesBetter(backTest.relativeError, test.naiveLead) ? test.naiveSeason : null;
-    return { calibration, backTest, naiveSeason };
-  };
-  const weights = candidateWeights(rolled.losses, () => true, candidates.length, rolled.power);
-  return { weights, record };
-}
-
 /** Number of terms estimated, averaged over the candidates that carry the forecast. */
 function meanTerms(fits: readonly (MemberFit | undefined)[], shares: Float64Array): number {
   let terms = 1;
@@ -201,13 +139,13 @@ function meanTerms(fits: readonly (MemberFit | undefined)[], shares: Float64Arra
 }
 
 /** Tails of the shocks of the candidate with the largest share; the describing model leaves no values to look at. */
-function heaviestTails(fits: readonly (MemberFit | undefined)[], shares: Float64Array): ShockTails {
-  let heaviest: MemberFit | undefined;
+function leadersTails(fits: readonly (MemberFit | undefined)[], shares: Float64Array): ShockTails {
+  let leader: MemberFit | undefined;
   let most = 0;
   fits.forEach((fit, i) => {
     if (fit === undefined || fit.stages.length === 0 || shares[i] <= most) return;
-    heaviest = fit;
+    leader = fit;
     most = shares[i];
   });
-  return heaviest === undefined ? NORMAL_TAILS : shockTails(memberShocks(heaviest));
+  return leader === undefined ? NORMAL_TAILS : shockTails(memberShocks(leader));
 }
