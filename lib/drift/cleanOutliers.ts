@@ -55,27 +55,30 @@ export function cleanOutliers(state: LookState, rule: CleaningRule): void {
   }
 }
 
-/** Finds the patch that passes its limit by the largest factor, among those that still may be removed. */
+/**
+ * Finds the patch whose statistic is furthest past its limit, among those that still may be removed. By the difference,
+ * not the factor: of two wild neighbours of opposite sign one alone may pass its lower limit by the larger factor.
+ */
 function largestPatch(state: LookState, rule: CleaningRule, best: Patch): boolean {
   const { start, count } = state;
   const { candidate } = state.work;
   scoreValues(state);
-  let excess = 1;
+  let excess = 0;
   for (let time = start; time < count; time++) {
     for (let length = 1; length <= rule.longest && time + length <= count; length++) {
       if (isTaken(state, time + length - 1)) break;
       judgePatch(state, time, length, candidate);
       const limit = rule.beyond + patchMargins[length];
-      const ratio = candidate.statistic / (limit * limit);
-      if (ratio <= excess) continue;
-      excess = ratio;
+      const past = candidate.statistic - limit * limit;
+      if (past <= excess) continue;
+      excess = past;
       best.time = time;
       best.length = length;
       best.statistic = candidate.statistic;
       best.sizes.set(candidate.sizes);
     }
   }
-  return excess > 1;
+  return excess > 0;
 }
 
 function isTaken(state: LookState, time: number): boolean {

@@ -99,7 +99,10 @@ const pitfalls: readonly { readonly one: DriftCase; readonly goal: string }[] = 
     goal: "at most 7",
   },
   { one: { name: "two adjacent outliers", coefficients: [0.5], outliers: [5, 5] }, goal: "at most 24" },
-  { one: { name: "two adjacent outliers of either sign", coefficients: [0.5], outliers: [5, -5] }, goal: "" },
+  {
+    one: { name: "two adjacent outliers of either sign", coefficients: [0.5], outliers: [5, -5] },
+    goal: "at most 24",
+  },
   { one: { name: "three adjacent outliers", coefficients: [0.5], outliers: [5, 5, 5] }, goal: "at most 38" },
   { one: { name: "AR(2) .5 .3, order chosen", coefficients: [0.5, 0.3] }, goal: "at most 7" },
   {

@@ -98,9 +98,13 @@ describe("a monitor", () => {
     expect(notices[0]).toMatchObject({ index: 180 });
   });
 
-  it("takes two wild neighbours for no lasting change", () => {
+  it.each([8, -8])("takes two wild neighbours, one of 8 and one of %d, for no lasting change", (second) => {
     const steady = simulatedSeries({ seed: 21, length: 208, coefficient: 0.5 });
-    const spoiled = steady.map((value, at) => (at === 180 || at === 181 ? value + 8 : value));
+    const wild = new Map([
+      [180, 8],
+      [181, second],
+    ]);
+    const spoiled = steady.map((value, at) => value + (wild.get(at) ?? 0));
     const { notices } = advanceMonitor(startMonitor(steady.slice(0, 156), year), spoiled.slice(156));
     expect(changes(notices)).toEqual([]);
   });
