@@ -109,6 +109,20 @@ describe("a monitor", () => {
     expect(changes(notices)).toEqual([]);
   });
 
+  it("takes several wild values far apart for one-offs, and none of them for larger shocks", () => {
+    let noticed = 0;
+    for (let seed = 1; seed <= 60; seed++) {
+      const values = simulatedSeries({ seed: 700 + seed, length: 208, coefficient: 0.5 });
+      for (const place of [166, 180, 196]) values[place] += place === 180 ? -8 : 8;
+      const { notices } = advanceMonitor(startMonitor(values.slice(0, 156), year), values.slice(156));
+      if (changes(notices).length > 0) noticed++;
+      const surprises = notices.filter(({ code }) => code === "surprise").length;
+      if (changes(notices).length === 0) expect(surprises).toBeGreaterThan(1);
+    }
+    // At the rate of 5 % it was set to, three of sixty; were they taken for larger shocks, nearly all.
+    expect(noticed).toBeLessThan(15);
+  });
+
   it("makes no notice of change once its looks are used up", () => {
     const late = simulatedSeries({ seed: 5, length: 300, coefficient: 0.4, changeAt: 212, level: 8 });
     const monitor = startMonitor(late.slice(0, 156), year);
