@@ -11,3 +11,11 @@ export interface BenchRow {
   /** The goal in words, for example "at least 30 times faster"; empty without one. */
   readonly goal: string;
 }
+
+/** A row; a figure by itself unless `rest` says against what. */
+export const benchRow = (
+  name: string,
+  value: number,
+  unit: string,
+  rest: Partial<BenchRow> = {},
+): BenchRow => ({ name, value, unit, against: "", ratio: Number.NaN, goal: "", ...rest });

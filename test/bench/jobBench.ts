@@ -9,7 +9,7 @@ import type { ObjectStore } from "../../lib/store/objectStore.ts";
 import { S3Store } from "../../lib/store/s3Store.ts";
 import { cephInstalled, startGateway } from "../support/cephGateway.ts";
 import { forecastFaults } from "../support/completeForecasts.ts";
-import type { BenchRow } from "./benchRow.ts";
+import { type BenchRow, benchRow } from "./benchRow.ts";
 import { packedTable } from "./packedTable.ts";
 
 const encode = (text: string) => new TextEncoder().encode(text);
@@ -71,16 +71,6 @@ async function timed<T>(work: () => Promise<T>): Promise<{ seconds: number; proc
   return { seconds: (performance.now() - began) / 1000, processor: (user + system) / 1e6, result };
 }
 
-const row = (name: string, value: number, unit: string, rest: Partial<BenchRow> = {}): BenchRow => ({
-  name,
-  value,
-  unit,
-  against: "",
-  ratio: Number.NaN,
-  goal: "",
-  ...rest,
-});
-
 const packedWidth = 100;
 
 /** Weekly tables, all but the newest of their 261 weeks, or with it. */
@@ -125,36 +115,36 @@ async function packedRows(): Promise<BenchRow[]> {
   const native = nativeRate(packedTable(packedWidth, 260, 7));
   const goal = "at least 80";
   const rows = [
-    row("first run, 100 series a table, n = 260", folder.first, "series/s", { goal }),
-    row("the same by the processor's time", folder.firstPerProcessor, "series/s", { goal }),
+    benchRow("first run, 100 series a table, n = 260", folder.first, "series/s", { goal }),
+    benchRow("the same by the processor's time", folder.firstPerProcessor, "series/s", { goal }),
     ...(native === undefined
       ? []
       : [
-          row("first run, by the processor's time", folder.firstPerProcessor, "series/s", {
+          benchRow("first run, by the processor's time", folder.firstPerProcessor, "series/s", {
             against: `native R, ar + arima(method = "ML") + predict: ${native.toFixed(2)} series/s`,
             ratio: folder.firstPerProcessor / native,
             goal: "at least 25 times",
           }),
         ]),
-    row("second run with one new week", folder.second, "series/s", {
+    benchRow("second run with one new week", folder.second, "series/s", {
       against: "first run",
       ratio: folder.second / folder.first,
       goal: "at least 3 times",
     }),
-    row("the same by the processor's time", folder.secondPerProcessor, "series/s", {
+    benchRow("the same by the processor's time", folder.secondPerProcessor, "series/s", {
       against: "first run",
       ratio: folder.secondPerProcessor / folder.firstPerProcessor,
     }),
-    row("object calls of a run", one.calls, "calls for one table"),
-    row("object calls for each further table", (folder.calls - one.calls) / (tables - 1), "calls", {
+    benchRow("object calls of a run", one.calls, "calls for one table"),
+    benchRow("object calls for each further table", (folder.calls - one.calls) / (tables - 1), "calls", {
       goal: "at most 8",
     }),
-    row("largest memory", process.resourceUsage().maxRSS / 1024, "MB"),
+    benchRow("largest memory", process.resourceUsage().maxRSS / 1024, "MB"),
   ];
   const bucket = await onBucket((store) => packedRuns(store, tables, packedWidth));
   if (bucket)
     rows.push(
-      row("first run on a bucket", bucket.first, "series/s", {
+      benchRow("first run on a bucket", bucket.first, "series/s", {
         against: "folder",
         ratio: bucket.first / folder.first,
         goal: "at least 0.85",
@@ -199,13 +189,13 @@ async function fileRows(path: string): Promise<BenchRow[]> {
       faults += forecastFaults(new TextDecoder().decode(file?.bytes), ["value"], horizon).length;
     }
     return [
-      row("series of the file forecast", result.series, "series", {
+      benchRow("series of the file forecast", result.series, "series", {
         against: "in the file",
         ratio: result.series / lines.length,
       }),
-      row("failed tables", result.failed.length, "tables", { goal: "0" }),
-      row("faults in forecast files", faults, "faults", { goal: "0" }),
-      row("time for all of them", seconds, "s"),
+      benchRow("failed tables", result.failed.length, "tables", { goal: "0" }),
+      benchRow("faults in forecast files", faults, "faults", { goal: "0" }),
+      benchRow("time for all of them", seconds, "s"),
     ];
   });
 }

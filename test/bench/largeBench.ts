@@ -4,7 +4,7 @@ import { join } from "node:path";
 import { refitOnThreads } from "../../functions/tableWorkers.ts";
 import { runJob } from "../../lib/job/run.ts";
 import { FolderStore } from "../../lib/store/folderStore.ts";
-import type { BenchRow } from "./benchRow.ts";
+import { type BenchRow, benchRow } from "./benchRow.ts";
 import { packedTable } from "./packedTable.ts";
 
 const width = 1000;
@@ -46,23 +46,14 @@ export async function largeBench(series = 100_000): Promise<BenchRow[]> {
   );
   const small = await measure(smallTables, texts);
   const large = await measure(Math.ceil(series / width), texts);
-  const row = (name: string, value: number, unit: string, rest: Partial<BenchRow> = {}): BenchRow => ({
-    name,
-    value,
-    unit,
-    against: "",
-    ratio: Number.NaN,
-    goal: "",
-    ...rest,
-  });
   return [
-    row(`${smallTables * width} series in ${smallTables} tables`, small.rate, "series/s"),
-    row(`${series} series in tables of ${width}`, large.rate, "series/s", {
+    benchRow(`${smallTables * width} series in ${smallTables} tables`, small.rate, "series/s"),
+    benchRow(`${series} series in tables of ${width}`, large.rate, "series/s", {
       against: "the small run",
       ratio: large.rate / small.rate,
       goal: "at least 0.8",
     }),
-    row("time of the large run", large.seconds, "s"),
-    row("largest memory, all threads", large.megabytes, "MB", { goal: "at most 1500" }),
+    benchRow("time of the large run", large.seconds, "s"),
+    benchRow("largest memory, all threads", large.megabytes, "MB", { goal: "at most 1500" }),
   ];
 }
