@@ -2,6 +2,7 @@ import { execFileSync } from "node:child_process";
 import { mkdtempSync, readFileSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
+import { fileURLToPath } from "node:url";
 import { CreateBucketCommand, S3Client } from "@aws-sdk/client-s3";
 import { runJob } from "../../lib/job/run.ts";
 import { FolderStore } from "../../lib/store/folderStore.ts";
@@ -200,7 +201,21 @@ async function fileRows(path: string): Promise<BenchRow[]> {
   });
 }
 
+/** The demo as `npm start` runs it once it is built: its store laid, sixteen weeks replayed. */
+function demoRow(): BenchRow {
+  const folder = mkdtempSync(join(tmpdir(), "ebbwire-bench-"));
+  try {
+    const began = performance.now();
+    const program = fileURLToPath(new URL("./local.js", import.meta.url));
+    execFileSync(process.execPath, [program], { cwd: folder, stdio: "ignore" });
+    const seconds = (performance.now() - began) / 1000;
+    return benchRow("the demo, sixteen weeks replayed", seconds, "s", { goal: "at most 20" });
+  } finally {
+    rmSync(folder, { recursive: true, force: true });
+  }
+}
+
 /** `bench job [--data PATH]`. */
 export async function jobBench(path?: string): Promise<BenchRow[]> {
-  return [...(await packedRows()), ...(path ? await fileRows(path) : [])];
+  return [...(await packedRows()), demoRow(), ...(path ? await fileRows(path) : [])];
 }
