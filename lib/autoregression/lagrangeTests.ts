@@ -1,6 +1,7 @@
 import { chiSquareTail } from "../numeric/gammaFunctions.ts";
 import { leastSquares } from "../numeric/leastSquares.ts";
 import { compensatedSum, observedMean } from "../numeric/sums.ts";
+import { tabulate } from "../numeric/tabulate.ts";
 import { requireObserved, requireValues, requireWhole } from "./checks.ts";
 import { conditionalLeastSquares } from "./conditionalLeastSquares.ts";
 import type { ChiSquareTest } from "./ljungBox.ts";
@@ -43,10 +44,10 @@ export function breuschGodfrey(
   const rows = residuals?.length ?? 0;
   const columns: Float64Array[] = [new Float64Array(rows).fill(1)];
   for (let j = 1; j <= order; j++) {
-    columns.push(Float64Array.from({ length: rows }, (_, i) => values[i + order - j] - centre));
+    columns.push(tabulate(rows, (i) => values[i + order - j] - centre));
   }
   for (let lag = 1; lag <= lags; lag++) {
-    columns.push(Float64Array.from({ length: rows }, (_, i) => residuals?.[i - lag] ?? 0));
+    columns.push(tabulate(rows, (i) => residuals?.[i - lag] ?? 0));
   }
   const auxiliary = residuals && leastSquares(columns, residuals);
   if (residuals === undefined || auxiliary === undefined) {

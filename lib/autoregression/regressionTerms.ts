@@ -42,7 +42,7 @@ export function harmonicColumns(length: number, period: number, pairs: number, s
 export function seasonalColumns(length: number, period: number, start = 0): Float64Array[] {
   requireWhole("seasonalColumns", "period", period, 2);
   return Array.from({ length: period - 1 }, (_, season) =>
-    Float64Array.from({ length }, (__, i) => {
+    tabulate(length, (i) => {
       const now = (start + i) % period;
       if (now === season) return 1;
       return now === period - 1 ? -1 : 0;
@@ -52,11 +52,11 @@ export function seasonalColumns(length: number, period: number, start = 0): Floa
 
 /** 0 before index `at`, 1 from there on: a lasting shift of the level. */
 export function stepColumn(length: number, at: number, start = 0): Float64Array {
-  return Float64Array.from({ length }, (_, i) => (start + i >= at ? 1 : 0));
+  return tabulate(length, (i) => (start + i >= at ? 1 : 0));
 }
 
 /** 1 at each of the given indexes, else 0: an event. */
 export function eventColumn(length: number, at: readonly number[], start = 0): Float64Array {
   const places = new Set(at);
-  return Float64Array.from({ length }, (_, i) => (places.has(start + i) ? 1 : 0));
+  return tabulate(length, (i) => (places.has(start + i) ? 1 : 0));
 }

@@ -1,6 +1,6 @@
 import type { Calibration } from "./calibration.ts";
 import { type Candidate, fitBank, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
-import { combineBank, forecastWorkspace, rollBank } from "./combinedForecast.ts";
+import { combineBank, rollBank } from "./combinedForecast.ts";
 import { dampOutliers } from "./dampOutliers.ts";
 import type { SeriesDescription } from "./describingModel.ts";
 import { fillGaps } from "./fillGaps.ts";
@@ -9,6 +9,7 @@ import { type ForecastChoice, storedBackTest } from "./forecastChoice.ts";
 import { freshDecision, standingDecision } from "./forecastDecision.ts";
 import type { MemberFit } from "./memberFit.ts";
 import { naiveInstead } from "./naiveFallback.ts";
+import { orderWorkspace } from "./orderAverage.ts";
 import type { PredictiveSpread } from "./predictiveSpread.ts";
 import { rollingOrigins } from "./rollingOrigins.ts";
 import { memberShocks, NORMAL_TAILS, type ShockTails, shockTails } from "./shockTails.ts";
@@ -61,7 +62,7 @@ export function averageForecast(
 ): DecidedForecast {
   const count = values.length;
   const maxOrder = longestLag(count, seasons);
-  const workspace = forecastWorkspace(count, maxOrder);
+  const workspace = orderWorkspace(count, maxOrder);
   const season = seasons.length > 0 ? seasons[0] : 0;
   const observed = values.filter((value) => !Number.isNaN(value));
   const outliers = new Set<number>();
@@ -81,7 +82,7 @@ export function averageForecast(
   const decision = standing
     ? standingDecision(standing)
     : freshDecision(
-        { values, scales, candidates, origins, season, horizon },
+        { values, observed: observed.length, scales, candidates, origins, season, horizon },
         rollBank(values, scales, candidates, origins, horizon, maxOrder, workspace),
       );
   const weights = leading(decision.weights);

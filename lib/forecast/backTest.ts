@@ -4,9 +4,7 @@ import type { BackTest } from "./forecast.ts";
 import { naiveForecast } from "./naiveForecast.ts";
 import { spreadQuantile } from "./predictiveSpread.ts";
 import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
-
-/** Normal quantile of a central 80 % range. */
-const NORMAL_80 = 1.2815515655446004;
+import { NARROW } from "./shockTails.ts";
 
 /**
  * Rolling-origin record of the average: each past forecast was combined with weights that did not see its outcome.
@@ -26,7 +24,7 @@ export function backTestOf(
   const plain = new Float64Array(horizon);
   const seasonal = new Float64Array(horizon);
   const seen = new Float64Array(horizon);
-  const reach = calibratedReach(calibration, NORMAL_80);
+  const reach = calibratedReach(calibration, NARROW);
   const leads = { plain: [] as number[], seasonal: [] as number[] };
   let inside = 0;
   let total = 0;

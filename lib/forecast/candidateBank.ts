@@ -1,7 +1,7 @@
-import type { BurgWorkspace } from "../autoregression/burg.ts";
 import { type DriftKind, type Preparation, preparations } from "./candidates.ts";
 import { describedPath, type SeriesDescription } from "./describingModel.ts";
 import { errorVariances, fitMember, forecastMember, type MemberFit } from "./memberFit.ts";
+import type { OrderWorkspace } from "./orderAverage.ts";
 import type { WorkingScale } from "./workingScale.ts";
 
 /** A series on one working scale, gaps filled and outliers damped. */
@@ -70,20 +70,20 @@ export function fitBank(
   count: number,
   horizon: number,
   maxOrder: number,
-  workspace: BurgWorkspace,
+  workspace: OrderWorkspace,
   wanted: (candidate: number) => boolean = () => true,
 ): FittedBank {
-  const fits: (MemberFit | undefined)[] = [];
-  for (let i = 0; i < candidates.length; i++) {
-    const { scale, preparation, description } = candidates[i];
-    const before = candidates[i - 1];
-    if (!wanted(i)) fits.push(undefined);
-    else if (description !== undefined) fits.push(describedFit(description, count));
-    // Drift kinds of one preparation stand side by side in the list and share a fit.
-    else if (fits[i - 1] !== undefined && before?.scale === scale && before.preparation === preparation)
-      fits.push(fits[i - 1]);
-    else fits.push(fitMember(scales[scale].values, count, preparation, maxOrder, workspace));
-  }
+  // Drift kinds of one preparation stand side by side in the list and share a fit.
+  let shared: { scale: number; preparation: Preparation; fit: MemberFit | undefined } | undefined;
+  const fits = candidates.map(({ scale, preparation, description }, i) => {
+    if (!wanted(i)) return undefined;
+    if (description !== undefined) return describedFit(description, count);
+    if (shared?.scale !== scale || shared.preparation !== preparation) {
+      const fit = fitMember(scales[scale].values, count, preparation, maxOrder, workspace);
+      shared = { scale, preparation, fit };
+    }
+    return shared.fit;
+  });
   const variances = fits.map((fit, i) =>
     fit === undefined ? new Float64Array(0) : errorVariances(fit, candidates[i].drift, horizon),
   );

@@ -1,4 +1,3 @@
-import { type BurgWorkspace, burgWorkspace } from "../autoregression/burg.ts";
 import { tabulate } from "../numeric/tabulate.ts";
 import {
   type BankForecast,
@@ -11,6 +10,7 @@ import {
 import { candidateWeights, weightPower } from "./candidateWeights.ts";
 import type { MemberFit } from "./memberFit.ts";
 import { mixtureDeviation } from "./mixtureDeviation.ts";
+import type { OrderWorkspace } from "./orderAverage.ts";
 import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
 import { horizonsCovered, type Origin, shareOutcomes } from "./rollingOrigins.ts";
 import { weightedMiddle } from "./weightedMiddle.ts";
@@ -40,7 +40,7 @@ export function rollBank(
   origins: readonly Origin[],
   horizon: number,
   maxOrder: number,
-  workspace: BurgWorkspace,
+  workspace: OrderWorkspace,
 ): RolledBank {
   const banks: BankForecast[] = [];
   const losses: Float64Array[][] = scales.map(() => []);
@@ -175,9 +175,4 @@ function scaleSpreads(
     }
     return { scale, share, deviations };
   });
-}
-
-/** Work space for series of this length and order. */
-export function forecastWorkspace(count: number, maxOrder: number): BurgWorkspace {
-  return burgWorkspace(count, Math.max(1, maxOrder));
 }

@@ -1,6 +1,5 @@
-import type { BurgWorkspace } from "../autoregression/burg.ts";
 import { median } from "./median.ts";
-import { orderAverage } from "./orderAverage.ts";
+import { type OrderWorkspace, orderAverage } from "./orderAverage.ts";
 import { levelProfile } from "./seasonalProfile.ts";
 
 export interface DampedSeries {
@@ -28,7 +27,7 @@ const FEW_FAR = 4;
  *
  * `values` without gaps. At most 2 %, or four, may be far, else nothing is touched.
  */
-export function dampOutliers(values: Float64Array, season: number, workspace: BurgWorkspace): DampedSeries {
+export function dampOutliers(values: Float64Array, season: number, workspace: OrderWorkspace): DampedSeries {
   const count = values.length;
   const untouched: DampedSeries = { values, outliers: [], steps: [] };
   if (count < 12) return untouched;

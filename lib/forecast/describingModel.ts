@@ -1,4 +1,4 @@
-import { burgReflections, burgWorkspace } from "../autoregression/burg.ts";
+import { burgReflections } from "../autoregression/burg.ts";
 import { requireObserved, requireValues } from "../autoregression/checks.ts";
 import type { AutoregressiveFit } from "../autoregression/fit.ts";
 import { fitAutoregression } from "../autoregression/fitAutoregression.ts";
@@ -7,6 +7,7 @@ import { tabulate } from "../numeric/tabulate.ts";
 import { describingColumns } from "./describingTerms.ts";
 import { fillGaps } from "./fillGaps.ts";
 import type { ForecastOptions } from "./forecast.ts";
+import { orderWorkspace } from "./orderAverage.ts";
 import { seasonLengths } from "./seasonLengths.ts";
 
 /** The one autoregression whose weights, half-life and shock attribution are reported of a series. */
@@ -75,7 +76,7 @@ export function planDescription(
   const count = series.length;
   const seasons = seasonLengths(count, options);
   const maxOrder = Math.max(1, Math.min(Math.floor(10 * Math.log10(count)), Math.floor(count / 4)));
-  const workspace = burgWorkspace(count, maxOrder);
+  const workspace = orderWorkspace(count, maxOrder);
   let observed = 0;
   let positive = true;
   let logarithms = 0;

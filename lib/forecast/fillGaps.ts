@@ -1,5 +1,4 @@
-import type { BurgWorkspace } from "../autoregression/burg.ts";
-import { orderAverage } from "./orderAverage.ts";
+import { type OrderWorkspace, orderAverage } from "./orderAverage.ts";
 import { levelProfile } from "./seasonalProfile.ts";
 
 /**
@@ -11,7 +10,7 @@ import { levelProfile } from "./seasonalProfile.ts";
  * Leading and trailing gaps are not here: callers trim the first and forecast over the second. Filled values are
  * for fitting only; errors are never scored on them. Returns a new array; the input when it has no gap.
  */
-export function fillGaps(values: Float64Array, season: number, workspace: BurgWorkspace): Float64Array {
+export function fillGaps(values: Float64Array, season: number, workspace: OrderWorkspace): Float64Array {
   const gaps: number[] = [];
   for (let t = 0; t < values.length; t++) if (Number.isNaN(values[t])) gaps.push(t);
   if (gaps.length === 0) return values;
@@ -80,7 +79,7 @@ function addSeason(
 const SWEEPS = 10;
 
 /** Gauss–Seidel on the sum of squared errors, forward and backward, of an autoregression of the differences. */
-function settle(filled: Float64Array, gaps: readonly number[], workspace: BurgWorkspace): void {
+function settle(filled: Float64Array, gaps: readonly number[], workspace: OrderWorkspace): void {
   const count = filled.length;
   const steps = new Float64Array(count - 1);
   let mean = 0;

@@ -35,6 +35,8 @@ export function standingDecision(standing: ForecastChoice): Decision {
 export function freshDecision(
   past: {
     readonly values: Float64Array;
+    /** Values that are no gaps. */
+    readonly observed: number;
     readonly scales: readonly ScaledSeries[];
     readonly candidates: readonly Candidate[];
     readonly origins: readonly Origin[];
@@ -43,7 +45,7 @@ export function freshDecision(
   },
   rolled: RolledBank,
 ): Decision {
-  const { values, scales, candidates, origins, season, horizon } = past;
+  const { values, observed, scales, candidates, origins, season, horizon } = past;
   const record = (terms: number, tails: ShockTails) => {
     const evidence = noEvidence();
     const combined = origins.map(({ count, steps }, o) => {
@@ -52,7 +54,6 @@ export function freshDecision(
       addOutcomes(evidence, at.spread, values, count, (values.length - count) / horizon);
       return at;
     });
-    const observed = values.reduce((sum, value) => sum + (Number.isNaN(value) ? 0 : 1), 0);
     const prior = Math.sqrt((observed + terms) / Math.max(1, observed - terms));
     const horizons = horizonsCovered(origins);
     const calibration = calibrate(evidence, prior, tails, horizons, observed);

@@ -1,7 +1,6 @@
-import type { BurgWorkspace } from "../autoregression/burg.ts";
 import type { DriftKind, Preparation } from "./candidates.ts";
 import { localDrift } from "./localDrift.ts";
-import { type AveragedAutoregression, orderAverage } from "./orderAverage.ts";
+import { type AveragedAutoregression, type OrderWorkspace, orderAverage } from "./orderAverage.ts";
 import { levelProfile, meanProfile } from "./seasonalProfile.ts";
 
 /** A preparation fitted to the first `count` values of a series on its working scale. */
@@ -48,7 +47,7 @@ export function fitMember(
   count: number,
   preparation: Preparation,
   maxOrder: number,
-  workspace: BurgWorkspace,
+  workspace: OrderWorkspace,
 ): MemberFit | undefined {
   const { differences, season, profile } = preparation;
   let lost = 0;

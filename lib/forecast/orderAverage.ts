@@ -1,5 +1,18 @@
-import { type BurgWorkspace, burgReflections } from "../autoregression/burg.ts";
+import { type BurgReflections, burgReflections, reflectionWorkspace } from "../autoregression/burg.ts";
 import { stepUp } from "../autoregression/partials.ts";
+
+/** Buffers of `orderAverage`, for series and orders up to what they were made for. */
+export interface OrderWorkspace extends BurgReflections {
+  readonly maxOrder: number;
+  /** Space for φ of one order. */
+  readonly coefficients: Float64Array;
+}
+
+/** Space for series of up to `capacity` values and orders up to `maxOrder`. */
+export function orderWorkspace(capacity: number, maxOrder: number): OrderWorkspace {
+  const coefficients = new Float64Array(maxOrder);
+  return { ...reflectionWorkspace(capacity, maxOrder), maxOrder, coefficients };
+}
 
 /** An autoregression whose coefficients are an average over orders. */
 export interface AveragedAutoregression {
@@ -20,7 +33,7 @@ export function orderAverage(
   values: Float64Array,
   maxOrder: number,
   estimated: number,
-  workspace: BurgWorkspace,
+  workspace: OrderWorkspace,
 ): AveragedAutoregression {
   const n = values.length;
   burgReflections(values, 0, maxOrder, workspace);

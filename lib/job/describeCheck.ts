@@ -1,3 +1,4 @@
+import { weekdays } from "../series/periods.ts";
 import type { Reading } from "../series/reading.ts";
 import type { Period, Problem } from "../series/series.ts";
 import { periodNames } from "../words/periods.ts";
@@ -58,8 +59,8 @@ function readingLine({
   return `read as: ${parts.filter((part) => part !== "").join("; ")}`;
 }
 
-const weekdays = ["Sunday", "Monday", "Tuesday", "Wednesday", "Thursday", "Friday", "Saturday"];
-const weekday = (day: number) => weekdays[day];
+/** A weekday counted from Sunday, as dates count them. */
+const weekday = (day: number) => capital(weekdays[(day + 6) % 7]);
 
 function seriesLines({ series, reading }: CheckedTable, report: CheckReport): string[] {
   const { period } = series[0];

@@ -2,16 +2,13 @@ import * as z from "zod/mini";
 import { behaviourSchema, changeKindSchema, evidenceSchema } from "../drift/noticeSchemas.ts";
 import type { Finding, SeriesFacts } from "../words/facts.ts";
 import type { ModelDocument, StoredSeries } from "./modelDocument.ts";
+import { instant, numbers, orNull, period, say } from "./schemaParts.ts";
+import { standingChoiceSchema } from "./standingChoiceSchema.ts";
 import type { LastingSummary } from "./summary.ts";
 
 // The documents other programs read, as schemas: published by `npm run schemas`, and held to the types they describe
 // by the `satisfies` at the end of each.
 
-const say = (text: string) => z.describe(text);
-const numbers = z.array(z.number());
-const orNull = z.nullable(z.number());
-const instant = z.string().check(say("ISO instant, 2026-11-30T06:00:00Z."));
-const period = z.string().check(say("ISO date, or instant for hours, at which the period starts."));
 const dated = z.object({ period, low: period, high: period });
 const note = z.discriminatedUnion("code", [
   z.object({ code: z.literal("too-short"), observed: z.number() }),
@@ -179,47 +176,6 @@ const problem = z.object({
   fatal: z.boolean(),
 });
 
-const standingChoice = z.object({
-  lastPeriod: period,
-  changedAt: z.nullable(period),
-  basis: z.string(),
-  simulated: z.object({
-    halfLifeRange: z.object({ low: orNull, high: orNull }),
-    fading: z.enum(["fades", "permanent", "cannot-tell"]),
-    coefficients: numbers,
-    observations: z.number(),
-  }),
-  choice: z.object({
-    version: z.number(),
-    length: z.number(),
-    scales: z.array(z.string()),
-    seasons: numbers,
-    horizon: z.number(),
-    describing: z.nullable(
-      z.object({
-        scale: z.enum(["raw", "log"]),
-        trend: z.boolean(),
-        season: z.number(),
-        order: z.number(),
-      }),
-    ),
-    weights: numbers,
-    calibration: z.object({
-      narrow: z.number(),
-      wide: z.number(),
-      freedom: z.number(),
-    }),
-    backTest: z.object({
-      origins: z.number(),
-      meanAbsoluteError: z.array(orNull),
-      naiveMeanAbsoluteError: z.array(orNull),
-      relativeError: orNull,
-      coverage80: orNull,
-    }),
-    naiveSeason: orNull,
-  }),
-});
-
 const storedSeries = z.object({
   facts,
   digest: z.string(),
@@ -246,7 +202,7 @@ const storedSeries = z.object({
       }),
     ),
   }),
-  choice: z.optional(z.nullable(standingChoice)),
+  choice: z.optional(z.nullable(standingChoiceSchema)),
 }) satisfies z.ZodMiniType<StoredSeries>;
 
 /** `models/<table>/<asOf>.json`, of many series `.json.gz`. */

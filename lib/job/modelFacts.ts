@@ -15,6 +15,7 @@ import type { SimulatedFading } from "./simulateFading.ts";
 /** Weights and residual autocorrelations kept for pictures. */
 const weightsKept = 27;
 const residualLags = 20;
+
 /** Lag-1.. autocorrelations of the residuals that exist. */
 function residualAutocorrelations(residuals: Float64Array): number[] {
   const lags = Math.min(residualLags, Math.floor(residuals.length / 4));

@@ -10,7 +10,7 @@ import { messageData } from "./messageData.ts";
 import { footerOf, type Note } from "./note.ts";
 import { seriesLines } from "./seriesLines.ts";
 import { speechFor, spokenInterval } from "./speech.ts";
-import { tableBefore } from "./tableBefore.ts";
+import { nameInTable } from "./tableBefore.ts";
 import { trackSentence } from "./trackSentence.ts";
 import { owedLines, troubleLines } from "./troubleLines.ts";
 
@@ -36,8 +36,9 @@ export function businessMessage(run: RunFacts, voice: Voice): Note {
   const { lines, told } = fillRoom(
     candidates.map((one) => {
       const speech = speechFor(one.facts, voice, run.asOf);
-      const table = several ? tableBefore(one.table.table, one.facts.series, 30) : null;
-      const label = table === null ? speech.series : `${table}, ${speech.series}`;
+      const label = several
+        ? nameInTable(one.table.table, one.facts.series, speech.series, 30)
+        : speech.series;
       return { label, news: one.attention >= newsFrom, lines: seriesLines(speech, label) };
     }),
     Math.max(least, wholeNote - before.length - after.length - (all.length > 4 ? 1 : 0)),

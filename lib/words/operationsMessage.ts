@@ -1,4 +1,4 @@
-import { type Ranked, ranked } from "./attention.ts";
+import { ranked } from "./attention.ts";
 import type { RunFacts, Voice } from "./facts.ts";
 import { headline, newsCounts } from "./headline.ts";
 import { reportPlace, timeWriter } from "./instants.ts";
@@ -7,7 +7,7 @@ import { footerOf, type Note } from "./note.ts";
 import { numberWriter } from "./numbers.ts";
 import { plainName } from "./plainText.ts";
 import { countOf } from "./spans.ts";
-import { tableBefore } from "./tableBefore.ts";
+import { nameInTable } from "./tableBefore.ts";
 import { list, problemText } from "./troubleLines.ts";
 
 /** For those who run the job: what was done, what was not, and what to look at. */
@@ -41,7 +41,11 @@ export function operationsMessage(
             `Not reached before time ran out: ${list(run.left)}. Running again with the same time goes on with them.`,
           ]
         : []),
-      ...(late.length > 0 ? [`Late: ${list(late.map(seriesName))}.`] : []),
+      ...(late.length > 0
+        ? [
+            `Late: ${list(late.map(({ table, facts }) => nameInTable(table.table, facts.series, facts.series, 120)))}.`,
+          ]
+        : []),
       ...(noted.length > 0
         ? [
             `Problems noted in ${countOf(noted.length, "table", write)}: ${list(noted.map((one) => one.table))}.`,
@@ -55,9 +59,4 @@ export function operationsMessage(
     footer: footerOf(reportPlace(run.asOf, voice)),
     data: messageData(run, "operations", ranked(run)),
   };
-}
-
-function seriesName({ table, facts }: Ranked): string {
-  const before = tableBefore(table.table, facts.series, 120);
-  return before === null ? facts.series : `${before}, ${facts.series}`;
 }

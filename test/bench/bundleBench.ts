@@ -1,6 +1,5 @@
 import { execFile } from "node:child_process";
-import { mkdtempSync, readFileSync, rmSync } from "node:fs";
-import { tmpdir } from "node:os";
+import { readFileSync } from "node:fs";
 import { join } from "node:path";
 import { pathToFileURL } from "node:url";
 import { promisify } from "node:util";
@@ -8,8 +7,9 @@ import { gzipSync } from "node:zlib";
 import { FolderStore } from "../../lib/store/folderStore.ts";
 import { type FunctionName, functionBundles } from "../support/functionBundles.ts";
 import { hasLambdaRuntime, node24 } from "../support/lambdaRuntime.ts";
-import type { BenchRow } from "./benchRow.ts";
+import { type BenchRow, benchRow } from "./benchRow.ts";
 import { packedTable } from "./packedTable.ts";
+import { inTemporaryFolder } from "./temporaryFolder.ts";
 
 const run = promisify(execFile);
 const names: readonly FunctionName[] = ["Scheduled", "Portion", "Closing"];
@@ -17,14 +17,8 @@ const names: readonly FunctionName[] = ["Scheduled", "Portion", "Closing"];
 const node = hasLambdaRuntime ? node24 : process.execPath;
 const repeats = 9;
 
-const row = (name: string, value: number, unit: string, goal = "", against = ""): BenchRow => ({
-  name,
-  value,
-  unit,
-  against,
-  ratio: Number.NaN,
-  goal,
-});
+const row = (name: string, value: number, unit: string, goal = ""): BenchRow =>
+  benchRow(name, value, unit, { goal });
 
 /** Milliseconds to import a bundle in a new process, by the clock and of the processor: the medians of several. */
 async function importMilliseconds(file: string): Promise<{ clock: number; processor: number }> {
@@ -45,11 +39,10 @@ async function importMilliseconds(file: string): Promise<{ clock: number; proces
 }
 
 /** The scheduled bundle does a whole run of 100 series in a process of its own: time and largest memory. */
-async function hundredSeries(
+function hundredSeries(
   file: string,
 ): Promise<{ milliseconds: number; processor: number; megabytes: number }> {
-  const folder = mkdtempSync(join(tmpdir(), "ebbwire-bench-"));
-  try {
+  return inTemporaryFolder(async (folder) => {
     const store = new FolderStore(folder);
     for (let table = 0; table < 4; table++)
       await store.write(
@@ -67,9 +60,7 @@ async function hundredSeries(
       maxBuffer: 1e8,
     });
     return JSON.parse(stderr.trim().split("\n").at(-1) ?? "");
-  } finally {
-    rmSync(folder, { recursive: true, force: true });
-  }
+  });
 }
 
 /** Size of each deployed bundle, time to import it, and memory and time of a run of 100 series in it. */

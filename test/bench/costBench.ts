@@ -1,6 +1,6 @@
 import { runJob } from "../../lib/job/run.ts";
 import { MemoryStore } from "../support/memoryStore.ts";
-import type { BenchRow } from "./benchRow.ts";
+import { type BenchRow, benchRow } from "./benchRow.ts";
 import { costTable, type Measured, monthlyCost, scenarios } from "./costs.ts";
 import { packedTable } from "./packedTable.ts";
 import prices from "./prices.json" with { type: "json" };
@@ -80,12 +80,7 @@ export async function costBench(): Promise<BenchRow[]> {
   console.log(`\nMeasured here: ${JSON.stringify(measured)}`);
   console.log(`Prices: ${prices.region}, ${prices.date}, before free tiers\n`);
   console.log(`${costTable(measured, prices)}\n`);
-  return scenarios.map((scenario) => ({
-    name: scenario.name,
-    value: monthlyCost(scenario, measured, prices).total,
-    unit: "USD a month",
-    against: "",
-    ratio: Number.NaN,
-    goal: "",
-  }));
+  return scenarios.map((scenario) =>
+    benchRow(scenario.name, monthlyCost(scenario, measured, prices).total, "USD a month"),
+  );
 }

@@ -6,7 +6,7 @@ import { openLookState } from "../../lib/drift/lookState.ts";
 import type { ChangeKind, ChangeNotice } from "../../lib/drift/notice.ts";
 import { fitReference } from "../../lib/drift/reference.ts";
 import { startMonitor } from "../../lib/drift/startMonitor.ts";
-import type { BenchRow } from "./benchRow.ts";
+import { type BenchRow, benchRow } from "./benchRow.ts";
 import { changeLook, type DriftCase, drawSeries } from "./driftCases.ts";
 
 /** Series a stable case and a change case. */
@@ -211,9 +211,9 @@ function median(values: readonly number[]): number {
 
 function percent(name: string, share: number, count: number, goal: string): BenchRow {
   const error = 100 * Math.sqrt((share * (1 - share)) / Math.max(1, count));
-  return { name, value: 100 * share, unit: `% ± ${error.toFixed(1)}`, against: "", ratio: Number.NaN, goal };
+  return benchRow(name, 100 * share, `% ± ${error.toFixed(1)}`, { goal });
 }
 
 function plain(name: string, value: number, unit: string, goal: string): BenchRow {
-  return { name, value, unit, against: "", ratio: Number.NaN, goal };
+  return benchRow(name, value, unit, { goal });
 }

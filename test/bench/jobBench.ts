@@ -1,7 +1,5 @@
 import { execFileSync } from "node:child_process";
-import { mkdtempSync, readFileSync, rmSync } from "node:fs";
-import { tmpdir } from "node:os";
-import { join } from "node:path";
+import { readFileSync } from "node:fs";
 import { fileURLToPath } from "node:url";
 import { CreateBucketCommand, S3Client } from "@aws-sdk/client-s3";
 import { runJob } from "../../lib/job/run.ts";
@@ -12,6 +10,7 @@ import { cephInstalled, startGateway } from "../support/cephGateway.ts";
 import { forecastFaults } from "../support/completeForecasts.ts";
 import { type BenchRow, benchRow } from "./benchRow.ts";
 import { packedTable } from "./packedTable.ts";
+import { inTemporaryFolder } from "./temporaryFolder.ts";
 
 const encode = (text: string) => new TextEncoder().encode(text);
 const horizon = 8;
@@ -38,14 +37,8 @@ function counting(store: ObjectStore): ObjectStore & { calls: number } {
   return counted;
 }
 
-async function inFolder<T>(work: (store: ReturnType<typeof counting>) => Promise<T>): Promise<T> {
-  const folder = mkdtempSync(join(tmpdir(), "ebbwire-bench-"));
-  try {
-    return await work(counting(new FolderStore(folder)));
-  } finally {
-    rmSync(folder, { recursive: true, force: true });
-  }
-}
+const inFolder = <T>(work: (store: ReturnType<typeof counting>) => Promise<T>): Promise<T> =>
+  inTemporaryFolder((folder) => work(counting(new FolderStore(folder))));
 
 /** The same on a bucket of a gateway on this machine; `undefined` where Ceph is not installed. */
 async function onBucket<T>(work: (store: ReturnType<typeof counting>) => Promise<T>): Promise<T | undefined> {
@@ -202,20 +195,17 @@ async function fileRows(path: string): Promise<BenchRow[]> {
 }
 
 /** The demo as `npm start` runs it once it is built: its store laid, sixteen weeks replayed. */
-function demoRow(): BenchRow {
-  const folder = mkdtempSync(join(tmpdir(), "ebbwire-bench-"));
-  try {
+function demoRow(): Promise<BenchRow> {
+  return inTemporaryFolder(async (folder) => {
     const began = performance.now();
     const program = fileURLToPath(new URL("./local.js", import.meta.url));
     execFileSync(process.execPath, [program], { cwd: folder, stdio: "ignore" });
     const seconds = (performance.now() - began) / 1000;
     return benchRow("the demo, sixteen weeks replayed", seconds, "s", { goal: "at most 20" });
-  } finally {
-    rmSync(folder, { recursive: true, force: true });
-  }
+  });
 }
 
 /** `bench job [--data PATH]`. */
 export async function jobBench(path?: string): Promise<BenchRow[]> {
-  return [...(await packedRows()), demoRow(), ...(path ? await fileRows(path) : [])];
+  return [...(await packedRows()), await demoRow(), ...(path ? await fileRows(path) : [])];
 }

@@ -1,11 +1,10 @@
-import { mkdtempSync, rmSync } from "node:fs";
-import { availableParallelism, tmpdir } from "node:os";
-import { join } from "node:path";
+import { availableParallelism } from "node:os";
 import { refitOnThreads } from "../../functions/tableWorkers.ts";
 import { runJob } from "../../lib/job/run.ts";
 import { FolderStore } from "../../lib/store/folderStore.ts";
 import { type BenchRow, benchRow } from "./benchRow.ts";
 import { packedTable } from "./packedTable.ts";
+import { inTemporaryFolder } from "./temporaryFolder.ts";
 
 const width = 1000;
 const smallTables = 4;
@@ -18,9 +17,8 @@ interface Measured {
 }
 
 /** One first run over so many packed tables in a new folder, on all cores; the tables repeat after a few. */
-async function measure(tables: number, texts: readonly Uint8Array[]): Promise<Measured> {
-  const folder = mkdtempSync(join(tmpdir(), "ebbwire-bench-"));
-  try {
+function measure(tables: number, texts: readonly Uint8Array[]): Promise<Measured> {
+  return inTemporaryFolder(async (folder) => {
     const store = new FolderStore(folder);
     for (let table = 0; table < tables; table++)
       await store.write(`series/packed${table}.csv`, texts[table % texts.length]);
@@ -31,9 +29,7 @@ async function measure(tables: number, texts: readonly Uint8Array[]): Promise<Me
     if (series !== tables * width || failed.length + left.length > 0)
       throw new Error(`${series} series of ${tables * width}, ${failed.length} tables failed`);
     return { seconds, rate: series / seconds, megabytes: process.resourceUsage().maxRSS / 1024 };
-  } finally {
-    rmSync(folder, { recursive: true, force: true });
-  }
+  });
 }
 
 /**
