@@ -1,5 +1,5 @@
 import { backTestOf } from "./backTest.ts";
-import { addOutcomes, type Calibration, calibrate, noEvidence } from "./calibration.ts";
+import { addOutcomes, type Calibration, calibrate, expectedWidening, noEvidence } from "./calibration.ts";
 import type { Candidate, ScaledSeries } from "./candidateBank.ts";
 import { candidateWeights } from "./candidateWeights.ts";
 import { combineBank, pastWeights, type RolledBank } from "./combinedForecast.ts";
@@ -54,9 +54,9 @@ export function freshDecision(
       addOutcomes(evidence, at.spread, values, count, (values.length - count) / horizon);
       return at;
     });
-    const prior = Math.sqrt((observed + terms) / Math.max(1, observed - terms));
+    const expected = expectedWidening(observed, terms);
     const horizons = horizonsCovered(origins);
-    const calibration = calibrate(evidence, prior, tails, horizons, observed);
+    const calibration = calibrate(evidence, expected, tails, horizons, observed);
     const test = backTestOf(values, combined, origins, season, horizon, calibration);
     const { backTest } = test;
     const naiveSeason = naiveDoesBetter(backTest.relativeError, test.naiveLead) ? test.naiveSeason : null;

@@ -15,7 +15,7 @@ const MOST_FITS = 4;
 /**
  * Evenly spread origins over the later half of a series, newest first. The newest leaves as much of the horizon to
  * be checked as a series of this length can spare (an eighth of it, at most the horizon); none leaves fewer than
- * `least` values to fit. A quarter of the horizon apart where there is room: closer ones repeat the same evidence, and
+ * `least` values to fit. Half a horizon apart where there is room: closer ones repeat the same evidence, and
  * farther back is a past that says less of the present. Empty when the series is too short.
  */
 export function rollingOrigins(count: number, horizon: number, least: number): Origin[] {
@@ -23,7 +23,7 @@ export function rollingOrigins(count: number, horizon: number, least: number): O
   const oldest = Math.max(least, Math.ceil(count / 2));
   if (newest < oldest) return [];
   const room = (newest - oldest) / (MOST_ORIGINS - 1);
-  const spacing = Math.max(1, Math.floor(Math.min(room, horizon / 4)));
+  const spacing = Math.max(1, Math.floor(Math.min(room, horizon / 2)));
   const number = Math.min(MOST_ORIGINS, Math.floor((newest - oldest) / spacing) + 1);
   const sharing = Math.ceil(number / MOST_FITS);
   const at = (i: number): number => newest - i * spacing;

@@ -46,13 +46,17 @@ interface Tally {
   /** Share of each series' values inside. */
   inside80: number[];
   inside95: number[];
+  /** The same over its last four ends, each cut a horizon earlier: the series of a set share their times. */
+  earlier80: number[];
+  earlier95: number[];
   milliseconds: number[];
 }
 
 /**
  * Accuracy of `forecastSeries` on held-out ends of series: JSON lines `{id, period, values, holdout}` at `path`. By
  * period: sMAPE, MASE and OWA (mean of both over Naive2's) of the median, which is what these measures reward, and
- * of the mean; mean scaled interval score and coverage at 80 and 95 (standard error by series); median time a series. The plain rival is one
+ * of the mean; mean scaled interval score and coverage at 80 and 95 (standard error by series), at this end and
+ * over four, each a horizon earlier; median time a series. The plain rival is one
  * Burg autoregression of raw first differences by AICc with its Gaussian interval.
  */
 export async function accuracyBench(path: string | undefined): Promise<BenchRow[]> {
@@ -83,6 +87,8 @@ function emptyTally(): Tally {
     interval: 0,
     inside80: [],
     inside95: [],
+    earlier80: [],
+    earlier95: [],
     milliseconds: [],
   };
 }
@@ -103,11 +109,29 @@ function score(tally: Tally, { values, holdout }: HeldOut, period: Period): void
   const [narrow, wide] = forecast.intervals;
   tally.interval += accuracy.meanScaledIntervalScore(holdout, wide, scaling);
   tally.plain.interval += accuracy.meanScaledIntervalScore(holdout, plain.interval, scaling);
-  const inside = ({ low, high }: ForecastInterval): number =>
-    holdout.filter((value, h) => value >= low[h] && value <= high[h]).length / horizon;
-  tally.inside80.push(inside(narrow));
-  tally.inside95.push(inside(wide));
+  tally.inside80.push(shareInside(narrow, holdout));
+  tally.inside95.push(shareInside(wide, holdout));
+  const ends = [[narrow, wide].map((interval) => shareInside(interval, holdout))];
+  for (let back = 1; back <= EARLIER_ENDS; back++) {
+    const end = values.length - back * horizon;
+    if (end < LEAST_VALUES) break;
+    const then = values.slice(end, end + horizon);
+    const { intervals } = forecastSeries(values.slice(0, end), { horizon, levels: [80, 95], period });
+    ends.push(intervals.map((interval) => shareInside(interval, then)));
+  }
+  tally.earlier80.push(mean(ends.map(([share]) => share)));
+  tally.earlier95.push(mean(ends.map(([, share]) => share)));
 }
+
+/** Ends of a series that are scored for coverage besides its own, and the fewest values left before one. */
+const EARLIER_ENDS = 3;
+const LEAST_VALUES = 9;
+
+function shareInside({ low, high }: ForecastInterval, values: readonly number[]): number {
+  return values.filter((value, h) => value >= low[h] && value <= high[h]).length / values.length;
+}
+
+const mean = (all: readonly number[]): number => all.reduce((sum, one) => sum + one, 0) / all.length;
 
 function add(
   sum: { percentage: number; scaled: number },
@@ -184,6 +208,8 @@ function rowsOf(period: Period, tally: Tally): BenchRow[] {
     row("MSIS at 95", intervalScore, "", "plain Gaussian interval", intervalScore / plainScore, "below 1"),
     row("coverage of 80", ...coverage(tally.inside80), "", Number.NaN, "78.5 to 81.5"),
     row("coverage of 95", ...coverage(tally.inside95), "", Number.NaN, "93.5 to 96.5"),
+    row("coverage of 80, four ends", ...coverage(tally.earlier80), "", Number.NaN, "78.5 to 81.5"),
+    row("coverage of 95, four ends", ...coverage(tally.earlier95), "", Number.NaN, "93.5 to 96.5"),
     row("median time a series", times[times.length >> 1], "ms"),
     row("longest time a series", times[times.length - 1], "ms"),
   ];
@@ -191,7 +217,7 @@ function rowsOf(period: Period, tally: Tally): BenchRow[] {
 
 /** Mean share in percent, with its standard error: values of one series hit and miss together, series apart. */
 function coverage(shares: readonly number[]): [number, string] {
-  const mean = shares.reduce((sum, share) => sum + share, 0) / shares.length;
-  const power = shares.reduce((sum, share) => sum + (share - mean) ** 2, 0);
-  return [100 * mean, `% ± ${((100 * Math.sqrt(power)) / shares.length).toFixed(1)}`];
+  const middle = mean(shares);
+  const power = shares.reduce((sum, share) => sum + (share - middle) ** 2, 0);
+  return [100 * middle, `% ± ${((100 * Math.sqrt(power)) / shares.length).toFixed(1)}`];
 }

@@ -4,6 +4,7 @@ import {
   addOutcomes,
   calibrate,
   calibratedReach,
+  expectedWidening,
   noEvidence,
   normalOfReach,
 } from "../../lib/forecast/calibration.ts";
@@ -173,16 +174,29 @@ describe("calibration", () => {
     const { narrow, wide } = calibrate(evidenceOf(origins), 1, NORMAL_TAILS, 400, 1e9);
     expect(narrow).toBeCloseTo(1.5, 1);
     expect(wide).toBeCloseTo(1.5, 1);
-    const nothing = calibrate(noEvidence(), 1.1, { narrow: 0.5, wide: 0.9 }, 0, 100);
-    expect(nothing.narrow).toBeCloseTo(0.55, 12);
-    expect(nothing.wide).toBeCloseTo(0.99, 12);
+    const nothing = calibrate(noEvidence(), 1.1, { narrow: 0.5, wide: 0.9 }, 0, 1e12);
+    expect(nothing.narrow).toBeCloseTo(0.55, 9);
+    expect(nothing.wide).toBeCloseTo(0.99, 9);
   });
 
-  it("lies between past and prior as a weighted mean of logarithms", () => {
-    // One horizon: between = 0.25·2/2, worth 0.25/0.12 horizons of prior; every past score is 3.
-    const share = 1 / (1 + 0.25 / 0.12);
+  it("lies between past and expectation as a weighted mean of logarithms", () => {
+    // One horizon: between = 0.25·2/2, worth 0.25/0.06 horizons of expectation; every past score is 3.
+    const share = 1 / (1 + 0.25 / 0.06);
     const { narrow } = calibrate(evidenceOf([[3, -3, 3]]), 1, NORMAL_TAILS, 1, 100);
     expect(Math.log(narrow)).toBeCloseTo(share * Math.log(3 / 1.2815515655446004), 10);
+  });
+
+  it("believes the tails of many shocks, and little of those of a few", () => {
+    const tails = { narrow: 0.5, wide: 0.8 };
+    const narrowOf = (count: number): number => calibrate(noEvidence(), 1, tails, 0, count).narrow;
+    expect(narrowOf(2000)).toBeLessThan(0.53);
+    expect(narrowOf(20)).toBeGreaterThan(0.8);
+  });
+
+  it("expects ranges to widen with the terms estimated, by Akaike's final prediction error", () => {
+    // (n + k)/(n − k): 1.5 for 8 terms of 40 values beside none (Akaike 1970, Statistical predictor identification).
+    expect(expectedWidening(40, 8) / expectedWidening(40, 0)).toBeCloseTo(1.5, 12);
+    expect(expectedWidening(40, 0)).toBeLessThan(1);
   });
 
   it("believes an even past more than one of bursts with the same quantiles", () => {
