@@ -31,7 +31,10 @@ export interface BackTest {
 /** What the forecasting model decided, as coded data. */
 export type ForecastNote =
   | { readonly code: "too-short"; readonly observed: number }
-  | { readonly code: "constant"; readonly value: number }
+  /** All values are the same, or all of the last `observed` ones where zeros before the start were left out. */
+  | { readonly code: "constant"; readonly value: number; readonly observed?: number }
+  /** Zeros from before the series began were left out; `index` is its first value. */
+  | { readonly code: "zeros-first"; readonly index: number }
   | { readonly code: "mostly-gaps"; readonly observed: number; readonly periods: number }
   | { readonly code: "intermittent"; readonly shareOfZeros: number }
   | { readonly code: "naive-used"; readonly relativeError: number }

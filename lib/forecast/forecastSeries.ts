@@ -6,8 +6,10 @@ import { averageForecast } from "./averageForecast.ts";
 import { type DescriptionPlan, describeAs, planDescription } from "./describingModel.ts";
 import type { Forecast, ForecastOptions } from "./forecast.ts";
 import { choiceFits, choiceOf } from "./forecastChoice.ts";
+import { leadingZeros } from "./leadingZeros.ts";
 import { seasonLengths } from "./seasonLengths.ts";
 import { intermittentLevel, lastLevel, simpleForecast, steadyLevel } from "./simpleForecast.ts";
+import { boundsOf, inWholeNumbers } from "./valueKind.ts";
 
 /** Fewest observed values that a model is fitted to. */
 const LEAST_OBSERVED = 8;
@@ -28,6 +30,8 @@ const INTERMITTENT = 0.4;
  * the describing model. Weights are the likelihood of the rolling-origin errors on this very series; the average is
  * the weighted middle half at each step. Ranges come from the shock responses, widened by how the average did in the
  * past. A series too short, constant, mostly gaps or mostly zeros is forecast by the simplest honest rule and says so.
+ * Zeros from before a series began are left out, a series that was zero several times and never less stays so, and
+ * ranges of whole numbers are whole numbers.
  *
  * `values`: one a period, `NaN` for a gap; a trailing gap is a period that is past but was not observed, so the
  * first forecast is still for the period after the last entry. All outputs are finite and ordered: low ≤ median ≤
@@ -40,9 +44,21 @@ const INTERMITTENT = 0.4;
  */
 export function forecastSeries(values: ArrayLike<number>, options: ForecastOptions): Forecast {
   checkOptions(values, options);
-  let first = 0;
+  const given = tabulate(values.length, (t) => values[t]);
+  const observed = given.filter((value) => !Number.isNaN(value));
+  const bounds = boundsOf(observed, options.bounds);
+  const began = leadingZeros(given, LEAST_OBSERVED);
+  const forecast = forecastFrom(began, given, { ...options, bounds });
+  const notes =
+    began === 0 ? forecast.notes : [{ code: "zeros-first", index: began } as const, ...forecast.notes];
+  return { ...(observed.every(Number.isInteger) ? inWholeNumbers(forecast, bounds) : forecast), notes };
+}
+
+/** The forecast of `values` from index `began` on. */
+function forecastFrom(began: number, values: Float64Array, options: ForecastOptions): Forecast {
+  let first = began;
   while (Number.isNaN(values[first])) first++;
-  const series = tabulate(values.length - first, (t) => values[first + t]);
+  const series = values.subarray(first);
   let end = series.length;
   while (Number.isNaN(series[end - 1])) end--;
   const whole = series.subarray(Math.max(0, end - LONGEST_HISTORY), end);
@@ -117,7 +133,8 @@ function simpleTreatment(
 ): Forecast | undefined {
   const count = observed.length;
   if (count > 1 && observed.every((value) => value === observed[0])) {
-    return simpleForecast(series, options, steadyLevel(observed), [{ code: "constant", value: observed[0] }]);
+    const note = { code: "constant", value: observed[0], observed: count } as const;
+    return simpleForecast(series, options, steadyLevel(observed), [note]);
   }
   if (count < LEAST_OBSERVED) {
     return simpleForecast(series, options, lastLevel(observed), [{ code: "too-short", observed: count }]);

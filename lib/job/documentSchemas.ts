@@ -12,7 +12,8 @@ import type { LastingSummary } from "./summary.ts";
 const dated = z.object({ period, low: period, high: period });
 const note = z.discriminatedUnion("code", [
   z.object({ code: z.literal("too-short"), observed: z.number() }),
-  z.object({ code: z.literal("constant"), value: z.number() }),
+  z.object({ code: z.literal("constant"), value: z.number(), observed: z.optional(z.number()) }),
+  z.object({ code: z.literal("zeros-first"), index: z.number() }),
   z.object({ code: z.literal("mostly-gaps"), observed: z.number(), periods: z.number() }),
   z.object({ code: z.literal("intermittent"), shareOfZeros: z.number() }),
   z.object({ code: z.literal("naive-used"), relativeError: z.number() }),

@@ -102,7 +102,9 @@ export function forecastNoteSentence(finding: Of<"forecast-note">, speech: Speec
     case "too-short":
       return `only ${figures(note.observed, speech)} so far, so the forecast is a simple one`;
     case "constant":
-      return `every figure so far is ${speech.amount(note.value, valueStep(note.value))}, so the forecast repeats it`;
+      return `${sameFigures(note.observed, speech)} ${speech.amount(note.value, valueStep(note.value))}, so the forecast repeats it`;
+    case "zeros-first":
+      return `for the forecast, the zeros before ${speech.periods.inText(periodAt(note.index, speech))} are left out, as from before it began`;
     case "mostly-gaps":
       return `only ${figures(note.observed, speech)} in ${countOf(note.periods, facts.period, speech.write)}, so the forecast is a simple one`;
     case "intermittent":
@@ -114,6 +116,12 @@ export function forecastNoteSentence(finding: Of<"forecast-note">, speech: Speec
     case "outliers-damped":
       return `${figures(note.indexes.length, speech)} far from the rest ${note.indexes.length === 1 ? "counts" : "count"} for less`;
   }
+}
+
+function sameFigures(last: number | undefined, speech: Speech): string {
+  return last === undefined || last >= speech.facts.observed
+    ? "every figure so far is"
+    : `the last ${figures(last, speech)} are all`;
 }
 
 const figures = (count: number, speech: Speech) => countOf(count, "figure", speech.write);

@@ -95,7 +95,7 @@ function said(finding: Finding, speech: Speech): [number, string][] {
 }
 
 /** Decisions of the forecaster that change nothing for whoever plans with its numbers. */
-const forAnalysts = new Set(["outliers-damped", "level-step", "naive-used"]);
+const forAnalysts = new Set(["outliers-damped", "level-step", "naive-used", "zeros-first"]);
 
 /** Within the periods that the small bars show. */
 function isRecent(start: string, { facts }: Speech): boolean {

@@ -1,5 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
+import type { ForecastNote } from "../../lib/forecast/forecast.ts";
 import type { Finding, SeriesFacts } from "../../lib/words/facts.ts";
 import {
   eventSentence,
@@ -131,6 +132,19 @@ describe("the sentences of small matters", () => {
       forecastNoteSentence({ code: "forecast-note", note: { code: "level-step", index: 100 } }, speech),
     ).toBe(
       "for the forecast, figures before the week of 9 November count for less: the level may have stepped there",
+    );
+  });
+
+  it("say that the last figures are the same, or all of them, and where a series began", () => {
+    const tell = (note: ForecastNote) => forecastNoteSentence({ code: "forecast-note", note }, speech);
+    const { observed } = speech.facts;
+    expect(tell({ code: "constant", value: 7, observed })).toMatch(/^every figure so far is 7 loans, so/);
+    expect(tell({ code: "constant", value: 7 })).toMatch(/^every figure so far is 7 loans, so/);
+    expect(tell({ code: "constant", value: 7, observed: 12 })).toMatch(
+      /^the last 12 figures are all 7 loans, so/,
+    );
+    expect(tell({ code: "zeros-first", index: 100 })).toBe(
+      "for the forecast, the zeros before the week of 9 November are left out, as from before it began",
     );
   });
 
