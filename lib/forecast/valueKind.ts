@@ -10,9 +10,9 @@ const ZEROS_OF_A_FLOOR = 5;
  */
 export function boundsOf(
   observed: Float64Array,
-  stated: ForecastOptions["bounds"],
-): ForecastOptions["bounds"] {
-  if (stated?.low !== undefined || (stated?.high ?? 0) < 0) return stated;
+  stated: ForecastOptions["bounds"] = {},
+): NonNullable<ForecastOptions["bounds"]> {
+  if (stated.low !== undefined || (stated.high ?? 0) < 0) return stated;
   let zeros = 0;
   for (const value of observed) {
     if (value < 0) return stated;

@@ -5,6 +5,7 @@ import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
 import type { Forecast } from "../forecast/forecast.ts";
 import { forecastSeries } from "../forecast/forecastSeries.ts";
 import { naiveForecast } from "../forecast/naiveForecast.ts";
+import { boundsOf } from "../forecast/valueKind.ts";
 import { periodIndex, periodStart } from "../series/periods.ts";
 import type { KnownEvent } from "../series/readEvents.ts";
 import type { Series } from "../series/series.ts";
@@ -92,7 +93,11 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     ...{ horizon, newest, changedAt, dataFindings, basisUntil },
     indexOf: calendar.indexOf,
   });
-  const bounds = { low: tableSettings.atLeast, high: tableSettings.atMost };
+  // By the values as they are: taking events off may leave some below zero.
+  const bounds = boundsOf(
+    series.values.filter((value) => !Number.isNaN(value)),
+    { low: tableSettings.atLeast, high: tableSettings.atMost },
+  );
   const forecast = forecastSeries(adjusted.values, {
     horizon,
     levels: [...settings.levels].sort((a, b) => a - b),

@@ -75,3 +75,31 @@ describe("a table that is awkward", () => {
     }
   });
 });
+
+describe("counts with closures known beforehand", () => {
+  it("stay at zero or above in the closed weeks to come", async () => {
+    const random = seeded(4);
+    const closed = [12, 24, 37, 51, 66, 80, 95, 101, 105];
+    const monday = (week: number) => new Date(Date.UTC(2024, 0, 1 + 7 * week)).toISOString().slice(0, 10);
+    const rows = Array.from(
+      { length: 104 },
+      (_, week) => `${monday(week)},${closed.includes(week) ? 0 : 8 + Math.floor(9 * random())}`,
+    );
+    const store = new MemoryStore();
+    await fillStore(store, {
+      "series/t.csv": `week,value\n${rows.join("\n")}\n`,
+      "events/closures.csv": `date,name\n${closed.map((week) => `${monday(week)},closed`).join("\n")}\n`,
+    });
+    await runJob({ store, asOf: `${monday(104)}T06:00:00Z`, webhooks: [] });
+    const lines = store.texts()["forecasts/t/latest.csv"]!.trim().split("\n").slice(1);
+    const closedWeek = lines
+      .find((line) => line.includes(monday(105)))!
+      .split(",")
+      .slice(2)
+      .map(Number);
+    expect(closedWeek[0]).toBeLessThan(4);
+    for (const line of lines) {
+      for (const value of line.split(",").slice(2).map(Number)) expect(value, line).toBeGreaterThanOrEqual(0);
+    }
+  });
+});
