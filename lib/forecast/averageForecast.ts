@@ -46,6 +46,8 @@ function longestLag(count: number, seasons: readonly number[]): number {
   return Math.max(1, Math.min(200, Math.floor(count / 3), Math.max(60, season + 32)));
 }
 
+/** Steps ahead judged at a past origin at least: the next value alone of a few origins is mostly chance. */
+const LEAST_JUDGED = 4;
 /** Candidates that carry less than this share of all weight move no digit that is told, and are not fitted. */
 const LEAST_WEIGHT = 1e-4;
 
@@ -78,12 +80,13 @@ export function averageForecast(
   const candidates = listCandidates(scales, seasons, description);
   // Two seasons and one value are the least a profile can be fitted to; short series need every origin they can have.
   const least = Math.max(8, seasons.length > 0 ? 2 * season + 1 : 0);
-  const origins = rollingOrigins(count, horizon, least);
+  const judged = Math.max(horizon, LEAST_JUDGED);
+  const origins = rollingOrigins(count, judged, least);
   const decision = standing
     ? standingDecision(standing)
     : freshDecision(
-        { values, observed: observed.length, scales, candidates, origins, season, horizon },
-        rollBank(values, scales, candidates, origins, horizon, maxOrder, workspace),
+        { values, observed: observed.length, scales, candidates, origins, season, horizon: judged },
+        rollBank(values, scales, candidates, origins, judged, maxOrder, workspace),
       );
   const weights = leading(decision.weights);
   const wanted = (i: number) => weights[i] > 0;

@@ -76,8 +76,8 @@ const TAILS_SAMPLING = 0.79;
 
 /**
  * Deviations that the errors of an average will have, expected before any was seen, over those of its spread:
- * (n + k)/(n − k) for k terms estimated from n values. That is Akaike's final prediction error (1970), but of
- * deviations rather than variances: an estimated term errs in every step ahead again.
+ * `AVERAGE_OF_MIXTURE` times (n + k)/(n − k) for k terms estimated from n values. The latter is Akaike's final
+ * prediction error (1970), but of deviations rather than variances: an estimated term errs in every step ahead again.
  */
 export function expectedWidening(count: number, terms: number): number {
   return (AVERAGE_OF_MIXTURE * (count + terms)) / Math.max(1, count - terms);

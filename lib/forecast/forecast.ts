@@ -31,7 +31,7 @@ export interface BackTest {
 /** What the forecasting model decided, as coded data. */
 export type ForecastNote =
   | { readonly code: "too-short"; readonly observed: number }
-  /** All values are the same, or all of the last `observed` ones where zeros before the start were left out. */
+  /** The last `observed` values, which are all that were looked at, are the same; older documents do not tell how many. */
   | { readonly code: "constant"; readonly value: number; readonly observed?: number }
   /** Zeros from before the series began were left out; `index` is its first value. */
   | { readonly code: "zeros-first"; readonly index: number }

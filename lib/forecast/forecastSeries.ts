@@ -9,7 +9,7 @@ import { choiceFits, choiceOf } from "./forecastChoice.ts";
 import { leadingZeros } from "./leadingZeros.ts";
 import { seasonLengths } from "./seasonLengths.ts";
 import { intermittentLevel, lastLevel, simpleForecast, steadyLevel } from "./simpleForecast.ts";
-import { boundsOf, inWholeNumbers } from "./valueKind.ts";
+import { areWhole, betweenWholeNumbers, boundsOf, chancesWithin, inWholeNumbers } from "./valueKind.ts";
 
 /** Fewest observed values that a model is fitted to. */
 const LEAST_OBSERVED = 8;
@@ -45,13 +45,18 @@ const INTERMITTENT = 0.4;
 export function forecastSeries(values: ArrayLike<number>, options: ForecastOptions): Forecast {
   checkOptions(values, options);
   const given = tabulate(values.length, (t) => values[t]);
-  const observed = given.filter((value) => !Number.isNaN(value));
+  const began = leadingZeros(given);
+  const observed = given.subarray(began).filter((value) => !Number.isNaN(value));
   const bounds = boundsOf(observed, options.bounds);
-  const began = leadingZeros(given, LEAST_OBSERVED);
-  const forecast = forecastFrom(began, given, { ...options, bounds });
-  const notes =
-    began === 0 ? forecast.notes : [{ code: "zeros-first", index: began } as const, ...forecast.notes];
-  return { ...(observed.every(Number.isInteger) ? inWholeNumbers(forecast, bounds) : forecast), notes };
+  const whole = areWhole(observed);
+  const limits = whole ? betweenWholeNumbers(options.limits) : options.limits;
+  const forecast = forecastFrom(began, given, { ...options, bounds, limits });
+  return {
+    ...forecast,
+    ...(whole ? inWholeNumbers(forecast, bounds) : {}),
+    chances: chancesWithin(forecast.chances, options.limits, bounds),
+    notes: began === 0 ? forecast.notes : [{ code: "zeros-first", index: began }, ...forecast.notes],
+  };
 }
 
 /** The forecast of `values` from index `began` on. */

@@ -1,14 +1,20 @@
 /** A run of zeros less likely than this among the values that came later belongs to another time. */
 const UNLIKELY = 0.01;
+/** One zero may be anything. */
+const FEWEST = 2;
+/** A run this many times as long as any later one is no season's: a shop shut by night or in winter. */
+const LONGER = 2;
+/** Fewest values after them that tell what zeros are like here. */
+const LEAST_SINCE = 8;
 
 /**
- * How many zeros at the start of a series come from before there was anything to count: a branch not yet open, an
- * article not yet on the shelf. 0 unless they are more than the zeros among the later values make likely, by the
- * chance that so many come in a row when z of the m values after the first other one are zero,
- * Π (z + 1 + i)/(m + 2 + i), each by the rule of succession (Laplace 1774). Fewer than `least` values after them say
- * too little. Gaps are passed over; the count includes those among the zeros.
+ * How many values at the start of a series come from before there was anything to count: a branch not yet open, an
+ * article not yet on the shelf. 0 unless they are zeros, and more of them than the later values make likely: more than
+ * twice the longest later run, and less than one in a hundred by the chance that so many come in a row when z of the
+ * m values after the first other one are zero, Π (z + 1 + i)/(m + 2 + i), each by the rule of succession
+ * (Laplace 1774). Gaps are passed over; the count includes those among the zeros.
  */
-export function leadingZeros(values: Float64Array, least: number): number {
+export function leadingZeros(values: Float64Array): number {
   let started = 0;
   let run = 0;
   while (started < values.length && !(Math.abs(values[started]) > 0)) {
@@ -17,12 +23,16 @@ export function leadingZeros(values: Float64Array, least: number): number {
   }
   let later = 0;
   let zeros = 0;
+  let row = 0;
+  let longest = 0;
   for (let t = started + 1; t < values.length; t++) {
     if (Number.isNaN(values[t])) continue;
     later++;
-    if (values[t] === 0) zeros++;
+    row = values[t] === 0 ? row + 1 : 0;
+    if (row > 0) zeros++;
+    if (row > longest) longest = row;
   }
-  if (run === 0 || later + 1 < least) return 0;
+  if (run < FEWEST || run <= LONGER * longest || later + 1 < LEAST_SINCE) return 0;
   let chance = 1;
   for (let i = 0; i < run; i++) chance *= (zeros + 1 + i) / (later + 2 + i);
   return chance < UNLIKELY ? started : 0;

@@ -1,11 +1,15 @@
 import { cumulativeStdNormalProbability, probit } from "simple-statistics";
-import type { Forecast } from "../forecast/forecast.ts";
+import type { Forecast, ForecastOptions, LimitChance } from "../forecast/forecast.ts";
+import { within } from "../forecast/simpleForecast.ts";
+import { chancesWithin, inWholeNumbers, type Ranges } from "../forecast/valueKind.ts";
 import type { ForecastFacts } from "../words/facts.ts";
 
 interface Shift {
   /** What known events add to each step. */
-  readonly coming: ArrayLike<number>;
-  readonly bounds: { readonly low?: number; readonly high?: number };
+  readonly coming: Float64Array;
+  readonly bounds: NonNullable<ForecastOptions["bounds"]>;
+  /** Whether the values as they were read are whole numbers. */
+  readonly whole: boolean;
 }
 
 /** Chance of a value above the limit, from the range at the widest level taken as normal (for shifted steps only). */
@@ -18,9 +22,9 @@ function chanceAbove(forecast: Forecast, limit: number, step: number, added: num
 }
 
 /** The chances of passing limits with what events add: steps without an event keep theirs. */
-function shiftedChances(forecast: Forecast, coming: ArrayLike<number>): ForecastFacts["chances"] {
+function shiftedChances(forecast: Forecast, coming: Float64Array): LimitChance[] {
   return forecast.chances.map(({ direction, limit, each, any }) => {
-    const moved = Array.from(each, (chance, step) => {
+    const moved = each.map((chance, step) => {
       if (coming[step] === 0) return chance;
       const above = chanceAbove(forecast, limit, step, coming[step]);
       return direction === "above" ? above : 1 - above;
@@ -30,24 +34,46 @@ function shiftedChances(forecast: Forecast, coming: ArrayLike<number>): Forecast
 }
 
 /**
- * A forecast in numbers that survive JSON; `periods` name its steps. What known events add is added to every number, and
- * the bounds hold for the sum.
+ * A forecast in numbers that survive JSON; `periods` name its steps. What known events add is added to every number,
+ * the bounds hold for the sum, and ranges of whole numbers end at whole numbers.
  */
 export function forecastFacts(
   forecast: Forecast,
   periods: readonly string[],
-  { coming, bounds }: Shift,
+  { coming, bounds, whole }: Shift,
 ): ForecastFacts {
-  const { low: least = Number.NEGATIVE_INFINITY, high: most = Number.POSITIVE_INFINITY } = bounds;
-  const within = (value: number, count = 1) => Math.min(count * most, Math.max(count * least, value));
-  const shifted = (values: ArrayLike<number>) =>
-    Array.from(values, (value, step) => (coming[step] === 0 ? value : within(value + coming[step])));
-  const added = Array.from(coming).reduce((sum, value) => sum + value, 0);
-  const moved = (value: number) => (added === 0 ? value : within(value + added, periods.length));
-  const { total } = forecast;
+  const moved = coming.some((amount) => amount !== 0) ? withEvents(forecast, coming, bounds) : forecast;
+  const { point, median, intervals, total } = whole ? inWholeNumbers(moved, bounds) : moved;
   return {
     periods,
-    point: shifted(forecast.point),
+    point: Array.from(point),
+    median: Array.from(median),
+    intervals: intervals.map(({ level, low, high }) => ({
+      level,
+      low: Array.from(low),
+      high: Array.from(high),
+    })),
+    total,
+    chances: chancesWithin(shiftedChances(forecast, coming), undefined, bounds).map(
+      ({ each, ...chance }) => ({
+        ...chance,
+        each: Array.from(each),
+      }),
+    ),
+    candidates: forecast.candidates,
+  };
+}
+
+/** The same with what events add, within bounds; the total is that of the points. */
+function withEvents(forecast: Ranges, coming: Float64Array, bounds: Shift["bounds"]): Ranges {
+  const shifted = (values: Float64Array) => values.map((value, step) => within(value + coming[step], bounds));
+  const point = shifted(forecast.point);
+  const sum = point.reduce((all, one) => all + one, 0);
+  const added = sum - forecast.total.point;
+  const { low: least = Number.NEGATIVE_INFINITY, high: most = Number.POSITIVE_INFINITY } = bounds;
+  const withinSum = (value: number) => Math.min(point.length * most, Math.max(point.length * least, value));
+  return {
+    point,
     median: shifted(forecast.median),
     intervals: forecast.intervals.map(({ level, low, high }) => ({
       level,
@@ -55,14 +81,12 @@ export function forecastFacts(
       high: shifted(high),
     })),
     total: {
-      point: moved(total.point),
-      intervals: total.intervals.map(({ level, low, high }) => ({
+      point: sum,
+      intervals: forecast.total.intervals.map(({ level, low, high }) => ({
         level,
-        low: moved(low),
-        high: moved(high),
+        low: Math.min(sum, withinSum(low + added)),
+        high: Math.max(sum, withinSum(high + added)),
       })),
     },
-    chances: shiftedChances(forecast, coming),
-    candidates: forecast.candidates,
   };
 }

@@ -2,10 +2,11 @@ import type { AutoregressiveFit, AutoregressiveProcess } from "../autoregression
 import type { PastBreak } from "../drift/lastBreak.ts";
 import type { WatchResult } from "../drift/watchSeries.ts";
 import { movingAverageWeights } from "../dynamics/movingAverageWeights.ts";
-import type { Forecast } from "../forecast/forecast.ts";
+import type { Forecast, ForecastNote } from "../forecast/forecast.ts";
 import { forecastSeries } from "../forecast/forecastSeries.ts";
+import { leadingZeros } from "../forecast/leadingZeros.ts";
 import { naiveForecast } from "../forecast/naiveForecast.ts";
-import { boundsOf } from "../forecast/valueKind.ts";
+import { areWhole, boundsOf } from "../forecast/valueKind.ts";
 import { periodIndex, periodStart } from "../series/periods.ts";
 import type { KnownEvent } from "../series/readEvents.ts";
 import type { Series } from "../series/series.ts";
@@ -68,7 +69,9 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     periodOf: (index) => periodStart(series.start, series.period, index),
     indexOf: (period) => periodIndex(series.start, series.period, period),
   };
-  const adjusted = adjustForEvents(series, task.events, {
+  const began = leadingZeros(series.values);
+  const open = series.values.map((value, index) => (index < began ? Number.NaN : value));
+  const adjusted = adjustForEvents({ ...series, values: open }, task.events, {
     table,
     horizon,
     timeZone: tableSettings.timeZone ?? settings.timeZone,
@@ -78,7 +81,7 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
   const firstIndex = periodIndex(watchOrigin, series.period, series.start);
   const watched = advanceWatch(previous?.stored.watch, {
     firstIndex,
-    values: adjusted.values,
+    values: adjusted.values.map((value, index) => (index < began ? series.values[index] : value)),
     period: series.period,
     falseAlarmRate: settings.falseAlarmRate,
     seed: seedOf(table, series.name),
@@ -93,17 +96,17 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     ...{ horizon, newest, changedAt, dataFindings, basisUntil },
     indexOf: calendar.indexOf,
   });
-  // By the values as they are: taking events off may leave some below zero.
-  const bounds = boundsOf(
-    series.values.filter((value) => !Number.isNaN(value)),
-    { low: tableSettings.atLeast, high: tableSettings.atMost },
-  );
+  // By the values as they are: events taken off leave some that are no whole numbers or below zero.
+  const observed = open.filter((value) => !Number.isNaN(value));
+  const bounds = boundsOf(observed, { low: tableSettings.atLeast, high: tableSettings.atMost });
+  const eventsAhead = adjusted.coming.some((amount) => amount !== 0);
   const forecast = forecastSeries(adjusted.values, {
     horizon,
     levels: [...settings.levels].sort((a, b) => a - b),
     period: series.period,
     seed: seedOf(table, series.name, task.asOf),
-    bounds,
+    // With events to come, bounds hold for what they make of the forecast and not for the forecast without them.
+    bounds: eventsAhead ? unbounded : bounds,
     limits: tableSettings.limits,
     changedAt: watched.changedAt,
     choice: stood?.choice,
@@ -111,14 +114,17 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
   const periods = Array.from({ length: horizon }, (_, step) =>
     calendar.periodOf(series.values.length + step),
   );
-  const forecasts = forecastFacts(forecast, periods, { coming: adjusted.coming, bounds });
+  const forecasts = forecastFacts(forecast, periods, {
+    ...{ coming: adjusted.coming, bounds },
+    whole: areWhole(observed),
+  });
   const track = nextTrack(series, previous?.stored.track, forecasts, forecast.model.season, calendar);
   const kept = stood && wentBy(stood, forecast) ? stood : undefined;
   const departing = departures(forecast.model, adjusted.values);
   const simulated = simulateFading(forecast.model, departing, kept?.simulated);
   return {
     facts: seriesFacts(series, task, {
-      ...{ adjusted, watched, firstIndex, forecast, forecasts, track, calendar, departing, simulated },
+      ...{ began, adjusted, watched, firstIndex, forecast, forecasts, track, calendar, departing, simulated },
     }),
     digest: seriesDigest(series, task),
     watchOrigin,
@@ -151,7 +157,11 @@ function nextTrack(
   );
 }
 
+const unbounded = { low: Number.NEGATIVE_INFINITY, high: Number.POSITIVE_INFINITY };
+
 interface Results {
+  /** Index of the first value after zeros from before the series began, 0 without such. */
+  readonly began: number;
   readonly adjusted: EventAdjustment;
   readonly watched: WatchResult;
   readonly firstIndex: number;
@@ -229,11 +239,14 @@ function seriesFindings(series: Series, task: SeriesTask, results: Results): Fin
     ...changeFindings(watched.notices, earlier, { ...calendar, newest: series.values.length - 1, weights }),
     ...(watched.pastBreak ? [pastBreakFinding(watched.pastBreak, periodOf)] : []),
     ...results.adjusted.findings,
-    ...forecast.notes.map((note): Finding => ({ code: "forecast-note", note })),
+    ...(results.began > 0 ? [noteFinding({ code: "zeros-first", index: results.began })] : []),
+    ...forecast.notes.map(noteFinding),
     ...gapsFinding(series.values, periodOf),
     ...task.dataFindings,
   ];
 }
+
+const noteFinding = (note: ForecastNote): Finding => ({ code: "forecast-note", note });
 
 function pastBreakFinding(pastBreak: PastBreak, periodOf: Calendar["periodOf"]): Finding {
   const { index, low, high, levelBefore, levelAfter, pValue } = pastBreak;

@@ -46,9 +46,9 @@ interface Tally {
   /** Share of each series' values inside. */
   inside80: number[];
   inside95: number[];
-  /** The same over its last four ends, each cut a horizon earlier: the series of a set share their times. */
-  earlier80: number[];
-  earlier95: number[];
+  /** The same over its last ends, up to four, each a horizon earlier: the series of a set share their times. */
+  fourEnds80: number[];
+  fourEnds95: number[];
   milliseconds: number[];
 }
 
@@ -87,8 +87,8 @@ function emptyTally(): Tally {
     interval: 0,
     inside80: [],
     inside95: [],
-    earlier80: [],
-    earlier95: [],
+    fourEnds80: [],
+    fourEnds95: [],
     milliseconds: [],
   };
 }
@@ -119,8 +119,8 @@ function score(tally: Tally, { values, holdout }: HeldOut, period: Period): void
     const { intervals } = forecastSeries(values.slice(0, end), { horizon, levels: [80, 95], period });
     ends.push(intervals.map((interval) => shareInside(interval, then)));
   }
-  tally.earlier80.push(mean(ends.map(([share]) => share)));
-  tally.earlier95.push(mean(ends.map(([, share]) => share)));
+  tally.fourEnds80.push(mean(ends.map(([share]) => share)));
+  tally.fourEnds95.push(mean(ends.map(([, share]) => share)));
 }
 
 /** Ends of a series that are scored for coverage besides its own, and the fewest values left before one. */
@@ -208,8 +208,8 @@ function rowsOf(period: Period, tally: Tally): BenchRow[] {
     row("MSIS at 95", intervalScore, "", "plain Gaussian interval", intervalScore / plainScore, "below 1"),
     row("coverage of 80", ...coverage(tally.inside80), "", Number.NaN, "78.5 to 81.5"),
     row("coverage of 95", ...coverage(tally.inside95), "", Number.NaN, "93.5 to 96.5"),
-    row("coverage of 80, four ends", ...coverage(tally.earlier80), "", Number.NaN, "78.5 to 81.5"),
-    row("coverage of 95, four ends", ...coverage(tally.earlier95), "", Number.NaN, "93.5 to 96.5"),
+    row("coverage of 80, four ends", ...coverage(tally.fourEnds80), "", Number.NaN, "78.5 to 81.5"),
+    row("coverage of 95, four ends", ...coverage(tally.fourEnds95), "", Number.NaN, "93.5 to 96.5"),
     row("median time a series", times[times.length >> 1], "ms"),
     row("longest time a series", times[times.length - 1], "ms"),
   ];

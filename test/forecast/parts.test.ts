@@ -272,6 +272,11 @@ describe("rollingOrigins", () => {
     expect(rollingOrigins(8, 4, 8)).toEqual([]);
   });
 
+  it("stand half a horizon apart where there is room", () => {
+    const [newest, next] = rollingOrigins(400, 12, 8);
+    expect([newest.count, next.count]).toEqual([388, 382]);
+  });
+
   it("cover each outcome once, in horizons", () => {
     const at = (count: number, steps: number) => ({ count, steps, fitted: count });
     expect(horizonsCovered([at(18, 2), at(16, 4), at(14, 4), at(4, 4)])).toBe((6 + 4) / 4);
