@@ -102,5 +102,5 @@ export function diagnosticsLine(model: ModelFacts, tell: Statistics): string {
   const { statistic, degreesOfFreedom, pValue } = model.ljungBox;
   const verdict =
     pValue < 0.05 ? "structure is left: treat the rest with care" : "no structure left that the test sees";
-  return `Residuals: Ljung-Box ${tell.size(statistic)} on ${degreesOfFreedom} degrees of freedom, p = ${tell.probability(pValue)}: ${verdict}.${autocorrelation}`;
+  return `Residuals: Ljung-Box ${tell.size(statistic)} on ${degreesOfFreedom} degrees of freedom, ${tell.pValue(pValue)}: ${verdict}.${autocorrelation}`;
 }

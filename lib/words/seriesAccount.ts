@@ -112,7 +112,7 @@ function otherLines(finding: Finding, speech: Speech, tell: Statistics): string[
       const { low, high } = finding.change;
       const { name } = speech.periods;
       return line(
-        `${pastBreakSentence(finding, speech)} (interval ${name(low)} to ${name(high)}; p = ${tell.probability(finding.pValue)})`,
+        `${pastBreakSentence(finding, speech)} (interval ${name(low)} to ${name(high)}; ${tell.pValue(finding.pValue)})`,
       );
     }
     case "forecast-note":

@@ -9,7 +9,7 @@ export interface Statistics {
   readonly coefficient: (value: number | null) => string;
   /** The same with its sign always written. */
   readonly signed: (value: number | null) => string;
-  readonly probability: (value: number) => string;
+  readonly pValue: (value: number) => string;
 }
 
 /** Writers of statistics in a locale; `null` is told as "–". */
@@ -23,6 +23,6 @@ export function statisticsWriter(locale: string): Statistics {
     size: (value) => write(value, significantStep(value, 3, false)),
     coefficient: (value) => (value === null ? "–" : plain.format(noMinusZero(value))),
     signed: (value) => (value === null ? "–" : withSign.format(noMinusZero(value))),
-    probability: (value) => (value < 0.001 ? `< ${plain.format(0.001)}` : plain.format(value)),
+    pValue: (value) => (value < 0.001 ? `p < ${plain.format(0.001)}` : `p = ${plain.format(value)}`),
   };
 }

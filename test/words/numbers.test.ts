@@ -3,6 +3,7 @@ import { describe, expect, it } from "vitest";
 import { numberWriter, roundingStep, roundTo, significantStep } from "../../lib/words/numbers.ts";
 import { span } from "../../lib/words/spans.ts";
 import { sparkline } from "../../lib/words/sparkline.ts";
+import { statisticsWriter } from "../../lib/words/statistics.ts";
 import { unitAfter } from "../../lib/words/units.ts";
 
 const british = numberWriter("en-GB");
@@ -76,5 +77,18 @@ describe("small bars", () => {
   it("stand half high when nothing moves, and survive a history without figures", () => {
     expect(sparkline([5, 5], [5])).toBe("▄▄|▄");
     expect(sparkline([null], [])).toBe("·|");
+  });
+});
+
+describe("a p-value", () => {
+  it("is told to three decimals, or as below the least of them", () => {
+    const { pValue } = statisticsWriter("en-GB");
+    expect([0.58712, 0.001, 0.00099, 0].map(pValue)).toEqual([
+      "p = 0.587",
+      "p = 0.001",
+      "p < 0.001",
+      "p < 0.001",
+    ]);
+    expect(statisticsWriter("de-DE").pValue(0.00001)).toBe("p < 0,001");
   });
 });
