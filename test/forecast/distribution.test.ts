@@ -196,7 +196,7 @@ describe("calibration", () => {
   it("expects ranges to widen with the terms estimated, by Akaike's final prediction error", () => {
     // (n + k)/(n − k): 1.5 for 8 terms of 40 values beside none (Akaike 1970, Statistical predictor identification).
     expect(expectedWidening(40, 8) / expectedWidening(40, 0)).toBeCloseTo(1.5, 12);
-    expect(expectedWidening(40, 0)).toBeCloseTo(5 / 6, 12);
+    expect(expectedWidening(40, 0)).toBeCloseTo(0.8, 12);
   });
 
   it("believes an even past more than one of bursts with the same quantiles", () => {
