@@ -103,3 +103,28 @@ describe("counts with closures known beforehand", () => {
     }
   });
 });
+
+describe("a branch that opened after its table began", () => {
+  it("has the effect of events from when it was open, and says where it began", async () => {
+    const random = seeded(6);
+    const monday = (week: number) => new Date(Date.UTC(2024, 0, 1 + 7 * week)).toISOString().slice(0, 10);
+    const works = Array.from({ length: 12 }, (_, quarter) => 5 + 11 * quarter);
+    const rows = Array.from({ length: 130 }, (_, week) => {
+      const sold = 60 + Math.floor(9 * random()) - (works.includes(week) ? 20 : 0);
+      return `${monday(week)},${week < 60 ? 0 : sold}`;
+    });
+    const store = new MemoryStore();
+    await fillStore(store, {
+      "series/t.csv": `week,value\n${rows.join("\n")}\n`,
+      "events/works.csv": `date,name\n${works.map((week) => `${monday(week)},works`).join("\n")}\n`,
+    });
+    await runJob({ store, asOf: `${monday(130)}T06:00:00Z`, webhooks: [] });
+    const [key] = Object.keys(store.texts()).filter((one) => one.startsWith("models/t/"));
+    const { findings } = JSON.parse(store.texts()[key!]!).series[0].facts;
+    const effect = findings.find((one: { code: string }) => one.code === "event-effect");
+    expect(Math.abs(effect.effect + 20)).toBeLessThan(3 * effect.standardError);
+    expect(findings).toContainEqual({ code: "forecast-note", note: { code: "zeros-first", index: 60 } });
+    const [line] = store.texts()["forecasts/t/latest.csv"]!.split("\n").slice(1);
+    expect(line!.split(",").slice(3).map(Number).every(Number.isInteger), line).toBe(true);
+  });
+});
