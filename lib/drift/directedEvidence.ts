@@ -1,4 +1,5 @@
 import type { ColumnSums } from "./columnSums.ts";
+import { logMixture } from "./logMixture.ts";
 import type { LookState } from "./lookState.ts";
 import { forwardSolve } from "./smallMatrix.ts";
 
@@ -28,10 +29,7 @@ export function directedEvidence(
   information = Math.max(information, 1e-9);
   const rise = oneSided(state, information, sums.moment[0], prior.rise);
   const fall = oneSided(state, information, -sums.moment[0], prior.fall);
-  const larger = Math.max(rise, fall);
-  return (
-    larger + Math.log(prior.rises * Math.exp(rise - larger) + (1 - prior.rises) * Math.exp(fall - larger))
-  );
+  return logMixture(rise, fall, prior.rises);
 }
 
 function oneSided(state: LookState, information: number, moment: number, deviation: number): number {

@@ -1,6 +1,7 @@
 import { columnEvidence } from "./columnEvidence.ts";
 import { addRow, clearSums, copySums } from "./columnSums.ts";
 import { type DirectedPrior, directedEvidence } from "./directedEvidence.ts";
+import { logMixture } from "./logMixture.ts";
 import { type LookState, lastChangeTime } from "./lookState.ts";
 
 /** With more lags than one, this share of the prior moves the first alone and the rest all of them freely. */
@@ -25,11 +26,7 @@ export function weighPersistenceChanges(state: LookState): void {
     let logBayes = directedEvidence(state, lagTail, prior, lagColumn);
     if (order > 1) {
       copySums(lagTail, lagHere);
-      const free = columnEvidence(state, lagHere, lagPriors);
-      const larger = Math.max(free, logBayes);
-      logBayes =
-        larger +
-        Math.log(firstAlone * Math.exp(logBayes - larger) + (1 - firstAlone) * Math.exp(free - larger));
+      logBayes = logMixture(logBayes, columnEvidence(state, lagHere, lagPriors), firstAlone);
     }
     state.logBayes[kind * state.capacity + change - start] = logBayes;
   }
