@@ -1,4 +1,5 @@
 import type { AverageForecast } from "./averageForecast.ts";
+import { boundsOfSum, within } from "./bounds.ts";
 import { calibratedReach } from "./calibration.ts";
 import { candidateName } from "./candidates.ts";
 import type { SeriesDescription } from "./describingModel.ts";
@@ -14,7 +15,6 @@ import type { ForecastChoice } from "./forecastChoice.ts";
 import { limitChances } from "./limitChances.ts";
 import { normalQuantile } from "./normal.ts";
 import { spreadQuantile } from "./predictiveSpread.ts";
-import { within } from "./simpleForecast.ts";
 import { spreadMean } from "./spreadMean.ts";
 import { totalQuantile } from "./totals.ts";
 import { trivialDescription } from "./trivialDescription.ts";
@@ -51,10 +51,7 @@ export function assembleForecast(
     return mean;
   });
   const quantile = totalQuantile(average, late);
-  const sumBounds = {
-    low: bounds?.low === undefined ? undefined : bounds.low * horizon,
-    high: bounds?.high === undefined ? undefined : bounds.high * horizon,
-  };
+  const sumBounds = boundsOfSum(bounds, horizon);
   const sum = point.reduce((all, one) => all + one, 0);
   const total = {
     point: sum,

@@ -57,6 +57,9 @@ export interface DescribingModel {
   readonly weight: number;
 }
 
+/** The part of a forecast that says where values will lie. */
+export type Ranges = Pick<Forecast, "point" | "median" | "intervals" | "total">;
+
 export interface Forecast {
   /** Mean of the predictive distribution. */
   readonly point: Float64Array;
@@ -76,6 +79,11 @@ export interface Forecast {
   readonly choice: ForecastChoice | null;
 }
 
+export interface Bounds {
+  readonly low?: number;
+  readonly high?: number;
+}
+
 export interface ForecastOptions {
   /** Periods ahead, 1 or more. */
   readonly horizon: number;
@@ -86,7 +94,7 @@ export interface ForecastOptions {
   readonly seasons?: readonly number[];
   readonly seed?: number;
   /** Values cannot pass these. */
-  readonly bounds?: { readonly low?: number; readonly high?: number };
+  readonly bounds?: Bounds;
   readonly limits?: { readonly above?: number; readonly below?: number };
   /** Index of the first value after the last lasting change, found by drift; earlier values count for less. */
   readonly changedAt?: number;

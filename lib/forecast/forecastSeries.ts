@@ -3,13 +3,14 @@ import { tabulate } from "../numeric/tabulate.ts";
 import { afterChange } from "./afterChange.ts";
 import { assembleForecast } from "./assembleForecast.ts";
 import { averageForecast } from "./averageForecast.ts";
+import { boundsOf, chancesWithin } from "./bounds.ts";
 import { type DescriptionPlan, describeAs, planDescription } from "./describingModel.ts";
 import type { Forecast, ForecastOptions } from "./forecast.ts";
 import { choiceFits, choiceOf } from "./forecastChoice.ts";
 import { leadingZeros } from "./leadingZeros.ts";
 import { seasonLengths } from "./seasonLengths.ts";
 import { intermittentLevel, lastLevel, simpleForecast, steadyLevel } from "./simpleForecast.ts";
-import { areWhole, betweenWholeNumbers, boundsOf, chancesWithin, inWholeNumbers } from "./valueKind.ts";
+import { areWhole, betweenWholeNumbers, inWholeNumbers } from "./wholeNumbers.ts";
 
 /** Fewest observed values that a model is fitted to. */
 const LEAST_OBSERVED = 8;
@@ -51,10 +52,14 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   const whole = areWhole(observed);
   const limits = whole ? betweenWholeNumbers(options.limits) : options.limits;
   const forecast = forecastFrom(began, given, { ...options, bounds, limits });
+  const chances = forecast.chances.map((chance) => ({
+    ...chance,
+    limit: options.limits?.[chance.direction] ?? chance.limit,
+  }));
   return {
     ...forecast,
     ...(whole ? inWholeNumbers(forecast, bounds) : {}),
-    chances: chancesWithin(forecast.chances, options.limits, bounds),
+    chances: chancesWithin(chances, bounds),
     notes: began === 0 ? forecast.notes : [{ code: "zeros-first", index: began }, ...forecast.notes],
   };
 }

@@ -1,3 +1,4 @@
+import { boundsOfSum, within } from "./bounds.ts";
 import type { BackTest, Forecast, ForecastInterval, ForecastNote, ForecastOptions } from "./forecast.ts";
 import { normalQuantile } from "./normal.ts";
 import { studentFromNormal } from "./student.ts";
@@ -95,8 +96,7 @@ export function simpleForecast(
   }));
   const point = steps.map(() => keep(distribution.level));
   const sum = horizon * keep(distribution.level);
-  const keepSum = (value: number): number =>
-    within(value, { low: scaled(options.bounds?.low, horizon), high: scaled(options.bounds?.high, horizon) });
+  const sumBounds = boundsOfSum(options.bounds, horizon);
   const chance = (limit: number, step: number): number => {
     let low = 1e-6;
     let high = 1 - 1e-6;
@@ -125,8 +125,8 @@ export function simpleForecast(
       point: sum,
       intervals: levels.map((level) => ({
         level,
-        low: Math.min(sum, keepSum(distribution.total(horizon, 0.5 - level / 200))),
-        high: Math.max(sum, keepSum(distribution.total(horizon, 0.5 + level / 200))),
+        low: Math.min(sum, within(distribution.total(horizon, 0.5 - level / 200), sumBounds)),
+        high: Math.max(sum, within(distribution.total(horizon, 0.5 + level / 200), sumBounds)),
       })),
     },
     model: trivialDescription(values),
@@ -136,18 +136,6 @@ export function simpleForecast(
     backTest: noBackTest(horizon),
     choice: null,
   };
-}
-
-/** Clamps into bounds. */
-export function within(value: number, bounds: ForecastOptions["bounds"]): number {
-  return Math.min(
-    bounds?.high ?? Number.POSITIVE_INFINITY,
-    Math.max(bounds?.low ?? Number.NEGATIVE_INFINITY, value),
-  );
-}
-
-function scaled(bound: number | undefined, factor: number): number | undefined {
-  return bound === undefined ? undefined : bound * factor;
 }
 
 function noBackTest(horizon: number): BackTest {

@@ -1,5 +1,5 @@
 import { weekdays } from "../series/periods.ts";
-import type { Reading } from "../series/reading.ts";
+import { addsUp, type Reading } from "../series/reading.ts";
 import type { Period, Problem } from "../series/series.ts";
 import { periodNames } from "../words/periods.ts";
 import type { CheckedSeries, CheckedTable, CheckReport } from "./check.ts";
@@ -76,8 +76,11 @@ function seriesLines({ series, reading }: CheckedTable, report: CheckReport): st
   if (gappy.length > 0) lines.push(`gaps: ${listed(gappy.map(gapWords), 4)}`);
   const closed = [...new Set(gappy.flatMap((one) => one.closedDays))].sort();
   // A stock or a price has no zero on a day without a row.
-  const adds = !["mean", "last", "max"].includes(reading?.combine?.rule ?? "sum");
-  if (adds && closed.length > 0 && gappy.every((one) => one.closedDays.length > 0))
+  if (
+    addsUp(reading?.combine?.rule ?? "sum") &&
+    closed.length > 0 &&
+    gappy.every((one) => one.closedDays.length > 0)
+  )
     lines.push(
       `every gap is a ${closed.map(weekday).join(" or ")}: if those days count as nothing (nothing sold, no calls), say "emptyMeans": "zero" in the settings of this table`,
     );

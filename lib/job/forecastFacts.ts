@@ -1,13 +1,13 @@
 import { cumulativeStdNormalProbability, probit } from "simple-statistics";
-import type { Forecast, ForecastOptions, LimitChance } from "../forecast/forecast.ts";
-import { within } from "../forecast/simpleForecast.ts";
-import { chancesWithin, inWholeNumbers, type Ranges } from "../forecast/valueKind.ts";
+import { boundsOfSum, chancesWithin, within } from "../forecast/bounds.ts";
+import type { Bounds, Forecast, LimitChance, Ranges } from "../forecast/forecast.ts";
+import { inWholeNumbers } from "../forecast/wholeNumbers.ts";
 import type { ForecastFacts } from "../words/facts.ts";
 
 interface Shift {
   /** What known events add to each step. */
   readonly coming: Float64Array;
-  readonly bounds: NonNullable<ForecastOptions["bounds"]>;
+  readonly bounds: Bounds;
   /** Whether the values as they were read are whole numbers. */
   readonly whole: boolean;
 }
@@ -54,24 +54,21 @@ export function forecastFacts(
       high: Array.from(high),
     })),
     total,
-    chances: chancesWithin(shiftedChances(forecast, coming), undefined, bounds).map(
-      ({ each, ...chance }) => ({
-        ...chance,
-        each: Array.from(each),
-      }),
-    ),
+    chances: chancesWithin(shiftedChances(forecast, coming), bounds).map(({ each, ...chance }) => ({
+      ...chance,
+      each: Array.from(each),
+    })),
     candidates: forecast.candidates,
   };
 }
 
 /** The same with what events add, within bounds; the total is that of the points. */
-function withEvents(forecast: Ranges, coming: Float64Array, bounds: Shift["bounds"]): Ranges {
+function withEvents(forecast: Ranges, coming: Float64Array, bounds: Bounds): Ranges {
   const shifted = (values: Float64Array) => values.map((value, step) => within(value + coming[step], bounds));
   const point = shifted(forecast.point);
   const sum = point.reduce((all, one) => all + one, 0);
   const added = sum - forecast.total.point;
-  const { low: least = Number.NEGATIVE_INFINITY, high: most = Number.POSITIVE_INFINITY } = bounds;
-  const withinSum = (value: number) => Math.min(point.length * most, Math.max(point.length * least, value));
+  const sumBounds = boundsOfSum(bounds, point.length);
   return {
     point,
     median: shifted(forecast.median),
@@ -84,8 +81,8 @@ function withEvents(forecast: Ranges, coming: Float64Array, bounds: Shift["bound
       point: sum,
       intervals: forecast.total.intervals.map(({ level, low, high }) => ({
         level,
-        low: Math.min(sum, withinSum(low + added)),
-        high: Math.max(sum, withinSum(high + added)),
+        low: Math.min(sum, within(low + added, sumBounds)),
+        high: Math.max(sum, within(high + added, sumBounds)),
       })),
     },
   };

@@ -19,8 +19,9 @@ import {
   type StoredSeries,
 } from "./modelDocument.ts";
 import { openSource } from "./openSource.ts";
-import { refitSeries, type SeriesTask, sameCalendar } from "./refitSeries.ts";
+import { refitSeries, sameCalendar } from "./refitSeries.ts";
 import { seriesDigest } from "./seriesDigest.ts";
+import type { SeriesTask } from "./seriesTask.ts";
 import type { Settings } from "./settings.ts";
 
 interface TableTask {

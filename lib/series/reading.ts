@@ -3,6 +3,9 @@ import type { TableSettings } from "./tableSettings.ts";
 
 export type CombineRule = NonNullable<TableSettings["combine"]>;
 
+/** Whether values so combined are amounts, of which a total can be told, rather than levels (a stock, a price). */
+export const addsUp = (rule: CombineRule): boolean => rule === "sum" || rule === "count";
+
 /** What was taken for what when a table was read: plain JSON, stored with the model and told by `check`. */
 export interface Reading {
   readonly format: "text" | "parquet";

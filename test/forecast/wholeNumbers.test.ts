@@ -1,8 +1,8 @@
 import { describe, expect, it } from "vitest";
+import { boundsOf } from "../../lib/forecast/bounds.ts";
 import { forecastSeries } from "../../lib/forecast/forecastSeries.ts";
 import { leadingZeros } from "../../lib/forecast/leadingZeros.ts";
 import { normalDraws } from "../../lib/forecast/normalDraws.ts";
-import { boundsOf } from "../../lib/forecast/valueKind.ts";
 
 /** Whole numbers about `mean`, by rounding a normal law; never below zero. */
 function counts(count: number, mean: number, deviation: number, seed: number): number[] {
