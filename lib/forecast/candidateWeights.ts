@@ -1,7 +1,10 @@
+import { median } from "./median.ts";
+
 /**
  * What is known of the size of a horizon's errors beforehand, beside what the horizon itself says of it (degrees of
- * freedom of the one over those of the other). Set on the M1 and M4 sets of the bench together, where 0.1 to 1 differ
- * by less than their sampling error.
+ * freedom of the one over those of the other). It is known from the candidate in the middle: the best of many is
+ * best by luck where little was seen, and one step that was hit would rule out all others. Set on the M1 and M4 sets
+ * of the bench together, where 0.1 to 1 differ by less than their sampling error.
  */
 const KNOWN_BEFORE = 0.3;
 
@@ -24,7 +27,7 @@ export function candidateWeights(
 ): Float64Array {
   const sizes = new Float64Array(count);
   for (const origins of losses) {
-    const before = KNOWN_BEFORE * leastMean(origins, usable, count);
+    const before = KNOWN_BEFORE * typicalLoss(origins, usable, count);
     for (let i = 0; i < count; i++) {
       let sum = 0;
       let seen = 0;
@@ -47,13 +50,13 @@ export function candidateWeights(
   return weights;
 }
 
-/** Mean loss of the candidate with the least; 0 when none has any. */
-function leastMean(
+/** The median of the candidates' mean losses; 0 when none has any. */
+function typicalLoss(
   origins: readonly Float64Array[],
   usable: (candidate: number) => boolean,
   count: number,
 ): number {
-  let least = Number.POSITIVE_INFINITY;
+  const means = new Float64Array(count).fill(Number.NaN);
   for (let i = 0; i < count; i++) {
     if (!usable(i)) continue;
     let sum = 0;
@@ -63,9 +66,10 @@ function leastMean(
       sum += loss[i];
       seen++;
     }
-    if (seen > 0 && sum / seen < least) least = sum / seen;
+    if (seen > 0) means[i] = sum / seen;
   }
-  return Number.isFinite(least) ? least : 0;
+  const typical = median(means);
+  return Number.isNaN(typical) ? 0 : typical;
 }
 
 /**

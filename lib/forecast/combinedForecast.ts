@@ -162,16 +162,16 @@ function scaleSpreads(
     const ownWeights = Float64Array.from(members, (i) => weights[i]);
     const share = members.reduce((sum, i) => sum + shares[i], 0);
     const order = new Int32Array(members.length);
-    const variances = new Float64Array(members.length);
+    const precisions = new Float64Array(members.length);
     const distances = new Float64Array(members.length);
     const deviations = new Float64Array(horizon);
     for (let h = 0; h < horizon && members.length > 0; h++) {
       const anchor = scale.forward(medians[h]);
       for (let m = 0; m < members.length; m++) {
-        variances[m] = bank.variances[members[m]][h];
+        precisions[m] = 1 / bank.variances[members[m]][h];
         distances[m] = Math.abs(scale.forward(bank.paths[members[m] * horizon + h]) - anchor);
       }
-      deviations[h] = mixtureDeviation(variances, distances, ownWeights, order);
+      deviations[h] = mixtureDeviation(precisions, distances, ownWeights, order);
     }
     return { scale, share, deviations };
   });

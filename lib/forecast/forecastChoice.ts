@@ -5,7 +5,7 @@ import type { BackTest } from "./forecast.ts";
 import { workingScales } from "./workingScale.ts";
 
 /** Of the bank of candidates, its weights and its calibration: to be raised when any of them changes its meaning. */
-const choiceVersion = 2;
+const choiceVersion = 3;
 
 /**
  * What the past of a series decided: plain data that survives JSON. Deciding takes most of the time of a forecast, and

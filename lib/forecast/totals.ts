@@ -36,7 +36,7 @@ function totalDeviation(average: AverageForecast, index: number, from: number): 
     const anchored = scale.forward(median);
     return Number.isFinite(anchored) ? scale.slope(anchored) : 1;
   });
-  const variances: number[] = [];
+  const precisions: number[] = [];
   const distances: number[] = [];
   const weights: number[] = [];
   average.candidates.forEach((candidate, i) => {
@@ -51,13 +51,13 @@ function totalDeviation(average: AverageForecast, index: number, from: number): 
     }
     let ownSum = 0;
     for (let h = from; h < horizon; h++) ownSum += average.paths[i * horizon + h];
-    variances.push(variance);
+    precisions.push(1 / variance);
     distances.push(Math.abs(ownSum - sum));
     weights.push(average.weights[i]);
   });
   if (weights.length === 0) return 0;
   return mixtureDeviation(
-    Float64Array.from(variances),
+    Float64Array.from(precisions),
     Float64Array.from(distances),
     Float64Array.from(weights),
     new Int32Array(weights.length),

@@ -47,6 +47,21 @@ describe("the ranges of forecastSeries", () => {
     }
   });
 
+  it("stay within sight of a few values that are noise", () => {
+    const draw = normalDraws(12);
+    for (let one = 0; one < 300; one++) {
+      const values = Float64Array.from({ length: 8 + (one % 9) }, () => 10 * Math.exp(0.4 * draw()));
+      const period = one % 2 === 0 ? "quarter" : "month";
+      const { median, intervals } = forecastSeries(values, { horizon: 8, levels: [80], period });
+      const [least, most] = [Math.min(...values), Math.max(...values)];
+      const seen = most - least;
+      // A wandering slope that foretold one step by luck must not carry them away.
+      expect(Math.max(...median)).toBeLessThan(most + 2 * seen);
+      expect(Math.min(...median)).toBeGreaterThan(least - 2 * seen);
+      expect(Math.max(...intervals[0].high)).toBeLessThan(most + 20 * seen);
+    }
+  });
+
   it("grow with the unit of the series and move with its level", () => {
     const values = process(90, 0.6, 3);
     const options = { horizon: 5, levels: [80] };

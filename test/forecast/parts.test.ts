@@ -134,11 +134,11 @@ describe("dampOutliers", () => {
 
 describe("candidateWeights", () => {
   it("is Student's likelihood of each origin's errors, worked by hand", () => {
-    // The better candidate has 1; of it 0.3 is known before: (1.3/4.3)^1.3 at two horizons.
+    // The middle of 1 and 4 is 2.5; of it 0.3 is known before, 0.75: (1.75/4.75)^1.3 at two horizons.
     const losses = [[Float64Array.of(1, 4)]];
     const [best, other] = candidateWeights(losses, () => true, 2, weightPower(2));
     expect(best).toBe(1);
-    expect(other).toBeCloseTo((1.3 / 4.3) ** 1.3, 12);
+    expect(other).toBeCloseTo((1.75 / 4.75) ** 1.3, 12);
   });
 
   it("does not let one wild origin decide against three", () => {
@@ -166,10 +166,10 @@ describe("pastWeights", () => {
     const bank = { paths: new Float64Array(4), fits: [{}, {}], variances: fits } as unknown as BankForecast;
     const losses = [[Float64Array.of(1, 9), Float64Array.of(1e9, 1), Float64Array.of(4, 1)]];
     const rolled = { banks: [bank, bank, bank], losses, power: 2 };
-    // One horizon of evidence is left: the power is a half.
+    // One horizon of evidence is left, of losses 1 and 9: the power is a half, 0.3·5 was known before.
     const [best, other] = pastWeights(rolled, origins, 2);
     expect(best).toBe(1);
-    expect(other).toBeCloseTo((1.3 / 9.3) ** 0.65, 12);
+    expect(other).toBeCloseTo((2.5 / 10.5) ** 0.65, 12);
     expect([...pastWeights(rolled, origins, 1)]).toEqual([1, 1]);
   });
 });
@@ -206,17 +206,23 @@ describe("naiveDoesBetter", () => {
 });
 
 describe("mixtureDeviation", () => {
+  const order = new Int32Array(2);
+  const equal = Float64Array.of(1, 1);
+
   it("adds the mean square distance to the middle variance, a far one cut at three deviations", () => {
-    const order = new Int32Array(2);
-    const equal = Float64Array.of(1, 1);
-    expect(mixtureDeviation(Float64Array.of(4, 4), Float64Array.of(1, 3), equal, order)).toBeCloseTo(3, 12);
+    const quarters = Float64Array.of(0.25, 0.25);
+    expect(mixtureDeviation(quarters, Float64Array.of(1, 3), equal, order)).toBeCloseTo(3, 12);
     // (4 + (0 + 36)/2): distances of 1e6 and of no number count as 3·2.
     for (const far of [1e6, Number.NaN]) {
-      expect(mixtureDeviation(Float64Array.of(4, 4), Float64Array.of(0, far), equal, order)).toBeCloseTo(
-        Math.sqrt(22),
-        12,
-      );
+      const deviation = mixtureDeviation(quarters, Float64Array.of(0, far), equal, order);
+      expect(deviation).toBeCloseTo(Math.sqrt(22), 12);
     }
+  });
+
+  it("is that of the product of the densities' roots where candidates agree, worked by hand", () => {
+    // √(exp(−x²/2)·exp(−x²/8)) = exp(−x²·(1/2 + 1/8)/2): a variance of 1/(0.5 + 0.125) = 1.6.
+    const deviation = mixtureDeviation(Float64Array.of(1, 0.25), new Float64Array(2), equal, order);
+    expect(deviation).toBeCloseTo(Math.sqrt(1.6), 12);
   });
 });
 
