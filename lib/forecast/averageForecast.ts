@@ -1,5 +1,6 @@
 import type { Calibration } from "./calibration.ts";
 import { type Candidate, fitBank, forecastBank, listCandidates, type ScaledSeries } from "./candidateBank.ts";
+import { judgedBy } from "./candidateWeights.ts";
 import { combineBank, rollBank } from "./combinedForecast.ts";
 import { dampOutliers } from "./dampOutliers.ts";
 import type { SeriesDescription } from "./describingModel.ts";
@@ -95,7 +96,7 @@ export function averageForecast(
     if (fit === undefined) weights[i] = 0;
   });
   const bank = forecastBank(scales, candidates, fitted, count, horizon);
-  const combined = combineBank(bank, candidates, scales, weights, horizon);
+  const combined = combineBank(bank, candidates, scales, weights, horizon, judgedBy(origins));
   const { calibration, backTest, naiveSeason } = decision.record(
     meanTerms(bank.fits, combined.shares),
     leadersTails(bank.fits, combined.shares),

@@ -1,4 +1,5 @@
 import { median } from "./median.ts";
+import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
 
 /**
  * What is known of the size of a horizon's errors beforehand, beside what the horizon itself says of it (degrees of
@@ -78,4 +79,35 @@ function typicalLoss(
  */
 export function weightPower(horizons: number): number {
   return horizons / 2;
+}
+
+/** How far ahead candidates were judged, and the power their losses were given. */
+export interface Judged {
+  readonly steps: number;
+  readonly power: number;
+}
+
+export function judgedBy(origins: readonly Origin[]): Judged {
+  const steps = origins.reduce((most, origin) => Math.max(most, origin.steps), 0);
+  return { steps, power: weightPower(horizonsCovered(origins)) };
+}
+
+/**
+ * Weights at step `h` (from 0), to `out`. Beyond the steps that were judged, a candidate is expected to lose more than
+ * there by as much as its own error variance grows, and weighs less by the same power: a slope that wanders may have
+ * foretold the next value, and says little of the eighteenth. `variances` by candidate, then step.
+ */
+export function weightsAhead(
+  weights: Float64Array,
+  variances: readonly Float64Array[],
+  h: number,
+  { steps, power }: Judged,
+  out: Float64Array,
+): void {
+  for (let i = 0; i < weights.length; i++) {
+    const beyond = weights[i] > 0 && h >= steps && steps > 0;
+    // Largest values have variances past all numbers.
+    const grown = beyond ? Math.min(variances[i][h] / variances[i][steps - 1], Number.MAX_VALUE) : 1;
+    out[i] = grown > 1 ? weights[i] / grown ** power : weights[i];
+  }
 }

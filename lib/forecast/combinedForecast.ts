@@ -7,12 +7,12 @@ import {
   forecastBank,
   type ScaledSeries,
 } from "./candidateBank.ts";
-import { candidateWeights, weightPower } from "./candidateWeights.ts";
+import { candidateWeights, type Judged, judgedBy, weightsAhead } from "./candidateWeights.ts";
 import type { MemberFit } from "./memberFit.ts";
 import { mixtureDeviation } from "./mixtureDeviation.ts";
 import type { OrderWorkspace } from "./orderAverage.ts";
 import type { PredictiveSpread, ScaleSpread } from "./predictiveSpread.ts";
-import { horizonsCovered, type Origin, shareOutcomes } from "./rollingOrigins.ts";
+import { type Origin, shareOutcomes } from "./rollingOrigins.ts";
 import { weightedMiddle } from "./weightedMiddle.ts";
 import type { WorkingScale } from "./workingScale.ts";
 
@@ -28,8 +28,7 @@ export interface RolledBank {
   readonly banks: readonly BankForecast[];
   /** By working scale, then origin, then candidate: mean squared error on that scale. */
   readonly losses: readonly (readonly Float64Array[])[];
-  /** Power of the weights that this much evidence allows. */
-  readonly power: number;
+  readonly judged: Judged;
 }
 
 /** Makes every candidate's forecast at every origin and scores it on the values that were observed. */
@@ -60,7 +59,7 @@ export function rollBank(
     });
     banks.push(bank);
   });
-  return { banks, losses, power: weightPower(horizonsCovered(origins)) };
+  return { banks, losses, judged: judgedBy(origins) };
 }
 
 /** A path counts for no less than this part of the lowest value: it may have no logarithm at all. */
@@ -104,38 +103,43 @@ function describedOptimism(fit: MemberFit | undefined, count: number): number {
 }
 
 /**
- * Weights of the candidates at a past origin that is to be judged: by the losses at origins that share none of its
- * outcomes, as if those had not been seen yet, with the power that the rest of the evidence allows.
+ * Weights of the candidates at a past origin that is to be judged, and what they hold for: by the losses at origins
+ * that share none of its outcomes, as if those had not been seen yet, with the power that the rest of the evidence
+ * allows.
  */
 export function pastWeights(
   { banks, losses }: RolledBank,
   origins: readonly Origin[],
   o: number,
-): Float64Array {
+): { readonly weights: Float64Array; readonly judged: Judged } {
   const { fits } = banks[o];
   const apart = (_: unknown, other: number): boolean => !shareOutcomes(origins[other], origins[o]);
-  const power = weightPower(horizonsCovered(origins.filter(apart)));
-  const judged = losses.map((origins) => origins.filter(apart));
-  return candidateWeights(judged, (i) => fits[i] !== undefined, fits.length, power);
+  const judged = judgedBy(origins.filter(apart));
+  const others = losses.map((byOrigin) => byOrigin.filter(apart));
+  const usable = (i: number) => fits[i] !== undefined;
+  return { weights: candidateWeights(others, usable, fits.length, judged.power), judged };
 }
 
-/** Combines one bank by weights: the weighted middle half at each step. */
+/** Combines one bank by weights, which hold as far as was judged: the weighted middle half at each step. */
 export function combineBank(
   bank: BankForecast,
   candidates: readonly Candidate[],
   scales: readonly ScaledSeries[],
   weights: Float64Array,
   horizon: number,
+  judged: Judged,
 ): CombinedForecast {
   const count = candidates.length;
   const column = new Float64Array(count);
+  const ahead = new Float64Array(count);
   const order = new Int32Array(count);
   const stepShares = new Float64Array(count);
   const shares = new Float64Array(count);
   const medians = new Float64Array(horizon);
   for (let h = 0; h < horizon; h++) {
     for (let i = 0; i < count; i++) column[i] = weights[i] > 0 ? bank.paths[i * horizon + h] : 0;
-    medians[h] = weightedMiddle(column, weights, order, stepShares);
+    weightsAhead(weights, bank.variances, h, judged, ahead);
+    medians[h] = weightedMiddle(column, ahead, order, stepShares);
     for (let i = 0; i < count; i++) shares[i] += stepShares[i] / horizon;
   }
   return {

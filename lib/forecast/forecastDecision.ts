@@ -49,8 +49,8 @@ export function freshDecision(
   const record = (terms: number, tails: ShockTails) => {
     const evidence = noEvidence();
     const combined = origins.map(({ count, steps }, o) => {
-      const weights = pastWeights(rolled, origins, o);
-      const at = combineBank(rolled.banks[o], candidates, scales, weights, steps);
+      const { weights, judged } = pastWeights(rolled, origins, o);
+      const at = combineBank(rolled.banks[o], candidates, scales, weights, steps, judged);
       addOutcomes(evidence, at.spread, values, count, (values.length - count) / horizon);
       return at;
     });
@@ -62,6 +62,6 @@ export function freshDecision(
     const naiveSeason = naiveDoesBetter(backTest.relativeError, test.naiveLead) ? test.naiveSeason : null;
     return { calibration, backTest, naiveSeason };
   };
-  const weights = candidateWeights(rolled.losses, () => true, candidates.length, rolled.power);
+  const weights = candidateWeights(rolled.losses, () => true, candidates.length, rolled.judged.power);
   return { weights, record };
 }

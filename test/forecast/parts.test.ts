@@ -4,7 +4,7 @@ import { smoothGaps } from "../../lib/autoregression/smoothGaps.ts";
 import { afterChange } from "../../lib/forecast/afterChange.ts";
 import { backTestOf } from "../../lib/forecast/backTest.ts";
 import type { BankForecast } from "../../lib/forecast/candidateBank.ts";
-import { candidateWeights, weightPower } from "../../lib/forecast/candidateWeights.ts";
+import { candidateWeights, weightPower, weightsAhead } from "../../lib/forecast/candidateWeights.ts";
 import { pastWeights } from "../../lib/forecast/combinedForecast.ts";
 import { dampOutliers } from "../../lib/forecast/dampOutliers.ts";
 import { fillGaps } from "../../lib/forecast/fillGaps.ts";
@@ -158,6 +158,28 @@ describe("candidateWeights", () => {
   });
 });
 
+describe("weightsAhead", () => {
+  const variances = [Float64Array.of(1, 2, 3, 4), Float64Array.of(1, 4, 9, 36), Float64Array.of()];
+  const at = (h: number, steps: number, power: number) => {
+    const out = new Float64Array(3);
+    weightsAhead(Float64Array.of(0.5, 0.5, 0), variances, h, { steps, power }, out);
+    return [...out];
+  };
+
+  it("are the weights as far as was judged, and beyond fall with the growth of a candidate's own errors", () => {
+    expect(at(1, 2, 0.5)).toEqual([0.5, 0.5, 0]);
+    // From the second step to the fourth variances double and grow ninefold.
+    const [steady, wandering, unfitted] = at(3, 2, 0.5);
+    expect(steady).toBeCloseTo(0.5 / Math.SQRT2, 12);
+    expect(wandering).toBeCloseTo(0.5 / 3, 12);
+    expect(unfitted).toBe(0);
+  });
+
+  it("are the weights everywhere where nothing was judged", () => {
+    expect(at(3, 0, 0)).toEqual([0.5, 0.5, 0]);
+  });
+});
+
 describe("pastWeights", () => {
   it("judge an origin by the losses of those that share none of its outcomes, and by their number", () => {
     // Three origins of two steps, a step apart: only the first and the last share nothing.
@@ -165,12 +187,14 @@ describe("pastWeights", () => {
     const fits = origins.map(() => undefined);
     const bank = { paths: new Float64Array(4), fits: [{}, {}], variances: fits } as unknown as BankForecast;
     const losses = [[Float64Array.of(1, 9), Float64Array.of(1e9, 1), Float64Array.of(4, 1)]];
-    const rolled = { banks: [bank, bank, bank], losses, power: 2 };
+    const rolled = { banks: [bank, bank, bank], losses, judged: { steps: 2, power: 2 } };
     // One horizon of evidence is left, of losses 1 and 9: the power is a half, 0.3·5 was known before.
-    const [best, other] = pastWeights(rolled, origins, 2);
+    const { weights, judged } = pastWeights(rolled, origins, 2);
+    const [best, other] = weights;
+    expect(judged).toEqual({ steps: 2, power: 0.5 });
     expect(best).toBe(1);
     expect(other).toBeCloseTo((2.5 / 10.5) ** 0.65, 12);
-    expect([...pastWeights(rolled, origins, 1)]).toEqual([1, 1]);
+    expect([...pastWeights(rolled, origins, 1).weights]).toEqual([1, 1]);
   });
 });
 
