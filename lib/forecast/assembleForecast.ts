@@ -1,5 +1,5 @@
 import type { AverageForecast } from "./averageForecast.ts";
-import { boundsOfSum, within } from "./bounds.ts";
+import { aroundSum, within } from "./bounds.ts";
 import { calibratedReach } from "./calibration.ts";
 import { candidateName } from "./candidates.ts";
 import type { SeriesDescription } from "./describingModel.ts";
@@ -9,7 +9,7 @@ import type {
   Forecast,
   ForecastInterval,
   ForecastNote,
-  ForecastOptions,
+  ForecastPlan,
 } from "./forecast.ts";
 import type { ForecastChoice } from "./forecastChoice.ts";
 import { limitChances } from "./limitChances.ts";
@@ -32,34 +32,35 @@ export function assembleForecast(
   choice: ForecastChoice,
   description: SeriesDescription | undefined,
   known: Float64Array,
-  options: ForecastOptions,
+  options: ForecastPlan,
   late: number,
   start: number,
 ): Forecast {
-  const { horizon, levels, bounds } = options;
+  const { horizon, levels, bounds, coming } = options;
   const steps = Array.from({ length: horizon }, (_, h) => h);
   const reach = (level: number): number =>
     calibratedReach(average.calibration, normalQuantile(0.5 + level / 200));
-  const median = Float64Array.from(steps, (h) => within(average.spread.medians[late + h], bounds));
+  const median = Float64Array.from(steps, (h) =>
+    within(average.spread.medians[late + h] + coming[h], bounds),
+  );
   const intervals = orderedIntervals(levels, median, (level, h, side) =>
-    within(spreadQuantile(average.spread, late + h, side * reach(level)), bounds),
+    within(spreadQuantile(average.spread, late + h, side * reach(level)) + coming[h], bounds),
   );
   const point = Float64Array.from(steps, (h) => {
-    let mean = within(spreadMean(average.spread, late + h, average.calibration.narrow), bounds);
+    let mean = within(spreadMean(average.spread, late + h, average.calibration.narrow) + coming[h], bounds);
     // A skewed mean may leave a narrow central range; what is shown must stay inside it.
     for (const { low, high } of intervals) mean = Math.min(high[h], Math.max(low[h], mean));
     return mean;
   });
   const quantile = totalQuantile(average, late);
-  const sumBounds = boundsOfSum(bounds, horizon);
+  const added = coming.reduce((all, one) => all + one, 0);
   const sum = point.reduce((all, one) => all + one, 0);
   const total = {
     point: sum,
-    intervals: levels.map((level) => ({
-      level,
-      low: Math.min(sum, within(quantile(-reach(level)), sumBounds)),
-      high: Math.max(sum, within(quantile(reach(level)), sumBounds)),
-    })),
+    intervals: intervals.map((steps) => {
+      const ends = { low: added + quantile(-reach(steps.level)), high: added + quantile(reach(steps.level)) };
+      return { level: steps.level, ...aroundSum(sum, ends, steps, bounds) };
+    }),
   };
   const notes: ForecastNote[] = [];
   if (average.naive) notes.push({ code: "naive-used", relativeError: average.backTest.relativeError });
@@ -80,8 +81,10 @@ export function assembleForecast(
     candidates: namedShares(average),
     notes,
     chances:
-      options.limits === undefined ? [] : limitChances(average, options.limits, options.seed ?? 0, late),
-    backTest: shortened(average.backTest, horizon),
+      options.limits === undefined
+        ? []
+        : limitChances(average, options.limits, coming, options.seed ?? 0, late),
+    backTest: shownSteps(average.backTest, late, horizon),
     choice,
   };
 }
@@ -109,11 +112,11 @@ function orderedIntervals(
 }
 
 /** The record of the steps that are shown. */
-function shortened(backTest: BackTest, horizon: number): BackTest {
+function shownSteps(backTest: BackTest, late: number, horizon: number): BackTest {
   return {
     ...backTest,
-    meanAbsoluteError: backTest.meanAbsoluteError.slice(0, horizon),
-    naiveMeanAbsoluteError: backTest.naiveMeanAbsoluteError.slice(0, horizon),
+    meanAbsoluteError: backTest.meanAbsoluteError.slice(late, late + horizon),
+    naiveMeanAbsoluteError: backTest.naiveMeanAbsoluteError.slice(late, late + horizon),
   };
 }
 

@@ -10,8 +10,31 @@ export function within(value: number, bounds: Bounds | undefined): number {
 
 /** Bounds of the sum of so many values that keep `bounds`. */
 export function boundsOfSum(bounds: Bounds | undefined, count: number): Bounds {
-  const times = (bound: number | undefined) => (bound === undefined ? undefined : bound * count);
+  const times = (bound: number | undefined) =>
+    bound === undefined || !Number.isFinite(bound) ? bound : bound * count;
   return { low: times(bounds?.low), high: times(bounds?.high) };
+}
+
+/**
+ * Range of the sum of the steps in one range a step: around the `sum` told, within the bounds, and no nearer than any
+ * step alone reaches while all others are at their bound.
+ */
+export function aroundSum(
+  sum: number,
+  ends: { readonly low: number; readonly high: number },
+  steps: { readonly low: Float64Array; readonly high: Float64Array },
+  bounds: Bounds,
+): { low: number; high: number } {
+  const others = boundsOfSum(bounds, steps.low.length - 1);
+  const alone = {
+    low: Math.min(...steps.low) + (others.high ?? Number.POSITIVE_INFINITY),
+    high: Math.max(...steps.high) + (others.low ?? Number.NEGATIVE_INFINITY),
+  };
+  const sumBounds = boundsOfSum(bounds, steps.low.length);
+  return {
+    low: Math.min(sum, within(Math.min(ends.low, alone.low), sumBounds)),
+    high: Math.max(sum, within(Math.max(ends.high, alone.high), sumBounds)),
+  };
 }
 
 /** Exact zeros from which a series that never went below them is taken to end there. */

@@ -84,6 +84,12 @@ export interface Bounds {
   readonly high?: number;
 }
 
+/** Options as a forecast goes by them: with the bounds that the values show, and what events add to each step. */
+export interface ForecastPlan extends Omit<ForecastOptions, "effects"> {
+  readonly bounds: Bounds;
+  readonly coming: Float64Array;
+}
+
 export interface ForecastOptions {
   /** Periods ahead, 1 or more. */
   readonly horizon: number;
@@ -96,6 +102,11 @@ export interface ForecastOptions {
   /** Values cannot pass these. */
   readonly bounds?: Bounds;
   readonly limits?: { readonly above?: number; readonly below?: number };
+  /**
+   * What known events did to each value and will do to each coming one, in units of the series: `values.length +
+   * horizon` entries. Taken off before anything is fitted, and added to all that is said of the coming periods.
+   */
+  readonly effects?: Float64Array;
   /** Index of the first value after the last lasting change, found by drift; earlier values count for less. */
   readonly changedAt?: number;
   /**

@@ -3,9 +3,9 @@ import { tabulate } from "../numeric/tabulate.ts";
 import { afterChange } from "./afterChange.ts";
 import { assembleForecast } from "./assembleForecast.ts";
 import { averageForecast } from "./averageForecast.ts";
-import { boundsOf, chancesWithin } from "./bounds.ts";
+import { boundsOf, chancesWithin, within } from "./bounds.ts";
 import { type DescriptionPlan, describeAs, planDescription } from "./describingModel.ts";
-import type { Forecast, ForecastOptions } from "./forecast.ts";
+import type { Forecast, ForecastOptions, ForecastPlan } from "./forecast.ts";
 import { choiceFits, choiceOf } from "./forecastChoice.ts";
 import { leadingZeros } from "./leadingZeros.ts";
 import { seasonLengths } from "./seasonLengths.ts";
@@ -51,7 +51,11 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
   const bounds = boundsOf(observed, options.bounds);
   const whole = areWhole(observed);
   const limits = whole ? betweenWholeNumbers(options.limits) : options.limits;
-  const forecast = forecastFrom(began, given, { ...options, bounds, limits });
+  const { effects = new Float64Array(given.length + options.horizon), ...rest } = options;
+  // What an event took below a bound was no more than what was there.
+  const plain = given.map((value, t) => (effects[t] === 0 ? value : within(value - effects[t], bounds)));
+  const coming = effects.subarray(given.length);
+  const forecast = forecastFrom(began, plain, { ...rest, bounds, limits, coming });
   const chances = forecast.chances.map((chance) => ({
     ...chance,
     limit: options.limits?.[chance.direction] ?? chance.limit,
@@ -65,7 +69,7 @@ export function forecastSeries(values: ArrayLike<number>, options: ForecastOptio
 }
 
 /** The forecast of `values` from index `began` on. */
-function forecastFrom(began: number, values: Float64Array, options: ForecastOptions): Forecast {
+function forecastFrom(began: number, values: Float64Array, options: ForecastPlan): Forecast {
   let first = began;
   while (Number.isNaN(values[first])) first++;
   const series = values.subarray(first);
@@ -78,10 +82,10 @@ function forecastFrom(began: number, values: Float64Array, options: ForecastOpti
   const known = afterChange(whole, changedAt, Math.max(LEAST_SINCE_CHANGE, 4 * season));
   const start = dropped + whole.length - known.length;
   const observed = known.filter((value) => !Number.isNaN(value));
-  const simple = simpleTreatment(series.subarray(end - known.length), observed, options);
-  if (simple !== undefined) return simple;
   // Periods that are past but unobserved are forecast over and dropped.
   const late = series.length - end;
+  const simple = simpleTreatment(known, observed, options, late);
+  if (simple !== undefined) return simple;
   const seasons = seasonLengths(known.length, options);
   const steps = options.horizon + late;
   const { choice } = options;
@@ -108,7 +112,7 @@ function forecastFrom(began: number, values: Float64Array, options: ForecastOpti
 }
 
 function checkOptions(values: ArrayLike<number>, options: ForecastOptions): void {
-  const { horizon, levels, bounds, limits } = options;
+  const { horizon, levels, bounds, limits, effects, changedAt } = options;
   requireValues("forecastSeries", "values", values, "gaps-allowed");
   requireWhole("forecastSeries", "horizon", horizon, 1);
   for (const level of levels) {
@@ -116,8 +120,16 @@ function checkOptions(values: ArrayLike<number>, options: ForecastOptions): void
       throw new RangeError(`forecastSeries needs levels between 0 and 100 percent, got ${level}`);
     }
   }
-  if (bounds?.low !== undefined && bounds.high !== undefined && !(bounds.low <= bounds.high)) {
-    throw new RangeError(`forecastSeries needs bounds in order, got ${bounds.low} to ${bounds.high}`);
+  const { low = Number.NEGATIVE_INFINITY, high = Number.POSITIVE_INFINITY } = bounds ?? {};
+  if (!(low <= high)) throw new RangeError(`forecastSeries needs bounds in order, got ${low} to ${high}`);
+  if (changedAt !== undefined) requireWhole("forecastSeries", "changedAt", changedAt, 0);
+  if (effects !== undefined) {
+    requireValues("forecastSeries", "effects", effects, "no-gaps");
+    if (effects.length !== values.length + horizon) {
+      throw new RangeError(
+        `forecastSeries needs effects for ${values.length} values and ${horizon} coming ones, got ${effects.length}`,
+      );
+    }
   }
   for (const limit of [limits?.above, limits?.below]) {
     if (limit !== undefined && !Number.isFinite(limit)) {
@@ -139,15 +151,17 @@ function checkOptions(values: ArrayLike<number>, options: ForecastOptions): void
 function simpleTreatment(
   series: Float64Array,
   observed: Float64Array,
-  options: ForecastOptions,
+  options: ForecastPlan,
+  late: number,
 ): Forecast | undefined {
   const count = observed.length;
-  if (count > 1 && observed.every((value) => value === observed[0])) {
+  if (count < LEAST_OBSERVED) {
+    const note = { code: "too-short", observed: count } as const;
+    return simpleForecast(series, options, lastLevel(series, late), [note]);
+  }
+  if (observed.every((value) => value === observed[0])) {
     const note = { code: "constant", value: observed[0], observed: count } as const;
     return simpleForecast(series, options, steadyLevel(observed), [note]);
-  }
-  if (count < LEAST_OBSERVED) {
-    return simpleForecast(series, options, lastLevel(observed), [{ code: "too-short", observed: count }]);
   }
   if (count < 0.4 * series.length) {
     const note = { code: "mostly-gaps", observed: count, periods: series.length } as const;
@@ -163,7 +177,10 @@ function simpleTreatment(
   return undefined;
 }
 
-/** Whether zeros come at fixed places of the season (a closed summer): nine in ten periods as their place foretells. */
+/**
+ * Whether zeros come at fixed places of the season (a closed summer): where each place is foretold to be what it mostly
+ * is, no more than a tenth as many values are otherwise as there are of the rarer kind, zeros or not.
+ */
 function zerosFollowSeason(series: Float64Array, season: number): boolean {
   if (season < 2) return false;
   const zeros = new Float64Array(season);
@@ -173,12 +190,14 @@ function zerosFollowSeason(series: Float64Array, season: number): boolean {
     seen[t % season]++;
     if (value === 0) zeros[t % season]++;
   });
-  const foretold = zeros.reduce((sum, zero, place) => sum + Math.max(zero, seen[place] - zero), 0);
-  return foretold >= 0.9 * seen.reduce((sum, one) => sum + one, 0);
+  const otherwise = zeros.reduce((sum, zero, place) => sum + Math.min(zero, seen[place] - zero), 0);
+  const ofZeros = zeros.reduce((sum, zero) => sum + zero, 0);
+  const ofOthers = seen.reduce((sum, one) => sum + one, 0) - ofZeros;
+  return otherwise <= 0.1 * Math.min(ofZeros, ofOthers);
 }
 
 /** A series may be forecast that no likelihood describes (a perfect line): then it has no describing model. */
-const tryPlan = (known: Float64Array, options: ForecastOptions) =>
+const tryPlan = (known: Float64Array, options: ForecastPlan) =>
   orNothing(() => planDescription(known, options)) ?? null;
 const tryDescribe = (known: Float64Array, plan: DescriptionPlan) => orNothing(() => describeAs(known, plan));
 

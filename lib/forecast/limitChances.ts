@@ -14,17 +14,18 @@ const WORK = 2e7;
 
 /**
  * Chance that each coming period passes a limit, from the same distribution as the intervals, and that any does, by
- * simulation (steps before `from` are past and not looked at): errors of neighbouring periods go together as the shock response of the heaviest candidate says.
+ * simulation (steps before `from` are past and not looked at; `coming` is what events add to the others): errors of neighbouring periods go together as the shock response of the heaviest candidate says.
  */
 export function limitChances(
   average: AverageForecast,
   limits: NonNullable<ForecastOptions["limits"]>,
+  coming: Float64Array,
   seed: number,
   from: number,
 ): LimitChance[] {
   const chances: LimitChance[] = [];
-  if (limits.above !== undefined) chances.push(chanceOf(average, "above", limits.above, seed, from));
-  if (limits.below !== undefined) chances.push(chanceOf(average, "below", limits.below, seed, from));
+  if (limits.above !== undefined) chances.push(chanceOf(average, "above", limits.above, coming, seed, from));
+  if (limits.below !== undefined) chances.push(chanceOf(average, "below", limits.below, coming, seed, from));
   return chances;
 }
 
@@ -32,14 +33,15 @@ function chanceOf(
   average: AverageForecast,
   direction: "above" | "below",
   limit: number,
+  coming: Float64Array,
   seed: number,
   from: number,
 ): LimitChance {
   const horizon = average.spread.medians.length;
   // How many normal deviations the limit lies on the passing side of the median.
   const away = new Float64Array(horizon);
-  for (let h = 0; h < horizon; h++) {
-    const reach = spreadScore(average.spread, h, limit);
+  for (let h = from; h < horizon; h++) {
+    const reach = spreadScore(average.spread, h, limit - coming[h - from]);
     away[h] = normalOfReach(average.calibration, reach) * (direction === "above" ? 1 : -1);
   }
   const each = away.subarray(from).map((distance) => normalProbability(-distance));

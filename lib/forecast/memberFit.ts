@@ -157,13 +157,16 @@ export function shockResponse(fit: MemberFit, count: number): Float64Array {
 }
 
 /**
- * Error variance on the working scale 1..count steps ahead: innovation variance times the summed squared shock
- * response, plus what not knowing the mean of the last stage adds. That mean varies by the long-run variance
- * σ²/(1 − Σφ)² over the number of values, and differences carry its error on: as h² for a drift, whole for a level.
+ * What not knowing the mean of the last stage does: the variance of that mean, σ²/(1 − Σφ)² (the long-run variance)
+ * over the number of values, and how differences carry its error on to each step: growing for a drift, whole for a
+ * level.
  */
-export function errorVariances(fit: MemberFit, drift: DriftKind, count: number): Float64Array {
+export function meanError(
+  fit: MemberFit,
+  drift: DriftKind,
+  count: number,
+): { readonly variance: number; readonly effect: Float64Array } {
   const { coefficients, innovationVariance } = fit.model;
-  const response = shockResponse(fit, count);
   const effect = new Float64Array(count);
   if (drift !== "none") effect.fill(1);
   for (const lag of fit.preparation.differences) {
@@ -172,12 +175,21 @@ export function errorVariances(fit: MemberFit, drift: DriftKind, count: number):
   let rest = 1;
   for (let j = 0; j < coefficients.length; j++) rest -= coefficients[j];
   const used = fit.count - fit.preparation.differences.reduce((sum, lag) => sum + lag, 0);
-  const meanVariance = innovationVariance / Math.max(rest * rest, 1 / used) / used;
+  return { variance: innovationVariance / Math.max(rest * rest, 1 / used) / used, effect };
+}
+
+/**
+ * Error variance on the working scale 1..count steps ahead: innovation variance times the summed squared shock
+ * response, plus what not knowing the mean adds.
+ */
+export function errorVariances(fit: MemberFit, drift: DriftKind, count: number): Float64Array {
+  const response = shockResponse(fit, count);
+  const { variance, effect } = meanError(fit, drift, count);
   const variances = new Float64Array(count);
   let power = 0;
   for (let h = 0; h < count; h++) {
     power += response[h] * response[h];
-    variances[h] = innovationVariance * power + meanVariance * effect[h] * effect[h];
+    variances[h] = fit.model.innovationVariance * power + variance * effect[h] * effect[h];
   }
   return variances;
 }

@@ -1,5 +1,5 @@
-import { boundsOfSum, within } from "./bounds.ts";
-import type { BackTest, Forecast, ForecastInterval, ForecastNote, ForecastOptions } from "./forecast.ts";
+import { aroundSum, within } from "./bounds.ts";
+import type { BackTest, Forecast, ForecastInterval, ForecastNote, ForecastPlan } from "./forecast.ts";
 import { normalQuantile } from "./normal.ts";
 import { studentFromNormal } from "./student.ts";
 import { trivialDescription } from "./trivialDescription.ts";
@@ -29,21 +29,30 @@ export function steadyLevel(observed: Float64Array): SimpleDistribution {
   };
 }
 
-/** The last value repeated; strays add up like a random walk's, with the size of the observed steps. */
-export function lastLevel(observed: Float64Array): SimpleDistribution {
-  const last = observed[observed.length - 1];
-  let power = 0;
-  for (let t = 1; t < observed.length; t++) power += (observed[t] - observed[t - 1]) ** 2;
-  const freedom = Math.max(1, observed.length - 1);
-  // One value says nothing of how values stray: its own size is the only measure there is.
-  const step = observed.length > 1 ? Math.sqrt(power / freedom) : Math.abs(last);
+/**
+ * The last value repeated; strays add up like a random walk's, with the size of the observed steps. `values` end with
+ * an observed one and may have gaps; `late` more periods have passed since.
+ */
+export function lastLevel(values: Float64Array, late: number): SimpleDistribution {
+  const seen = [...values.keys()].filter((t) => !Number.isNaN(values[t]));
+  const last = values[values.length - 1];
+  const freedom = Math.max(1, seen.length - 1);
+  let variance = 0;
+  for (let i = 1; i < seen.length; i++) {
+    // A step over a gap has grown over as many periods.
+    variance += (values[seen[i]] - values[seen[i - 1]]) ** 2 / (seen[i] - seen[i - 1]) / freedom;
+  }
+  // Values that have not moved yet do not say how they will: as if one in so many moved by its own size.
+  const step = Math.sqrt(variance > 0 ? variance : last ** 2 / seen.length);
+  // Var Σ_h w_{late + h} of a random walk: Σ_i Σ_j (late + min(i, j)).
+  const ofTotal = (horizon: number) =>
+    horizon ** 2 * late + (horizon * (horizon + 1) * (2 * horizon + 1)) / 6;
   return {
     name: "last value",
     level: last,
-    quantile: (ahead, probability) => last + student(probability, freedom) * step * Math.sqrt(ahead),
+    quantile: (ahead, probability) => last + student(probability, freedom) * step * Math.sqrt(late + ahead),
     total: (horizon, probability) =>
-      horizon * last +
-      student(probability, freedom) * step * Math.sqrt((horizon * (horizon + 1) * (2 * horizon + 1)) / 6),
+      horizon * last + student(probability, freedom) * step * Math.sqrt(ofTotal(horizon)),
   };
 }
 
@@ -78,33 +87,35 @@ export function intermittentLevel(observed: Float64Array): SimpleDistribution {
 /** A forecast from a simple distribution, with everything a forecast must carry. */
 export function simpleForecast(
   values: Float64Array,
-  options: ForecastOptions,
+  options: ForecastPlan,
   distribution: SimpleDistribution,
   notes: readonly ForecastNote[],
 ): Forecast {
-  const { horizon, levels, limits } = options;
+  const { horizon, levels, limits, bounds, coming } = options;
   const steps = Float64Array.from({ length: horizon }, (_, h) => h + 1);
-  const keep = (value: number): number => within(value, options.bounds);
+  /** With what events add to a step, within bounds. */
+  const told = (value: number, step: number): number => within(value + coming[step - 1], bounds);
   const intervals: ForecastInterval[] = levels.map((level) => ({
     level,
     low: steps.map((step) =>
-      keep(Math.min(distribution.level, distribution.quantile(step, 0.5 - level / 200))),
+      told(Math.min(distribution.level, distribution.quantile(step, 0.5 - level / 200)), step),
     ),
     high: steps.map((step) =>
-      keep(Math.max(distribution.level, distribution.quantile(step, 0.5 + level / 200))),
+      told(Math.max(distribution.level, distribution.quantile(step, 0.5 + level / 200)), step),
     ),
   }));
-  const point = steps.map(() => keep(distribution.level));
-  const sum = horizon * keep(distribution.level);
-  const sumBounds = boundsOfSum(options.bounds, horizon);
-  const chance = (limit: number, step: number): number => {
+  const point = steps.map((step) => told(distribution.level, step));
+  const sum = point.reduce((all, one) => all + one, 0);
+  const added = coming.reduce((all, one) => all + one, 0);
+  /** Probability of the values up to where `before` ends to hold. */
+  const probabilityOf = (before: (value: number) => boolean, step: number): number => {
     let low = 1e-6;
     let high = 1 - 1e-6;
-    if (distribution.quantile(step, low) >= limit) return 0;
-    if (distribution.quantile(step, high) < limit) return 1;
+    if (!before(distribution.quantile(step, low))) return 0;
+    if (before(distribution.quantile(step, high))) return 1;
     for (let i = 0; i < 40; i++) {
       const middle = (low + high) / 2;
-      if (distribution.quantile(step, middle) < limit) low = middle;
+      if (before(distribution.quantile(step, middle))) low = middle;
       else high = middle;
     }
     return high;
@@ -112,7 +123,13 @@ export function simpleForecast(
   const passing = (["above", "below"] as const).flatMap((direction) => {
     const limit = limits?.[direction];
     if (limit === undefined) return [];
-    const each = steps.map((step) => (direction === "above" ? 1 - chance(limit, step) : chance(limit, step)));
+    // A value at the limit passes it neither way.
+    const each = steps.map((step) => {
+      const at = limit - coming[step - 1];
+      return direction === "above"
+        ? 1 - probabilityOf((value) => value <= at, step)
+        : probabilityOf((value) => value < at, step);
+    });
     // Strays of a level are independent; those of a random walk go together, for which this is the upper bound.
     const any = 1 - each.reduce((none, one) => none * (1 - one), 1);
     return [{ direction, limit, each, any: Math.max(any, ...each) }];
@@ -123,11 +140,10 @@ export function simpleForecast(
     intervals,
     total: {
       point: sum,
-      intervals: levels.map((level) => ({
-        level,
-        low: Math.min(sum, within(distribution.total(horizon, 0.5 - level / 200), sumBounds)),
-        high: Math.max(sum, within(distribution.total(horizon, 0.5 + level / 200), sumBounds)),
-      })),
+      intervals: intervals.map(({ level, ...each }) => {
+        const end = (side: -1 | 1) => added + distribution.total(horizon, 0.5 + (side * level) / 200);
+        return { level, ...aroundSum(sum, { low: end(-1), high: end(1) }, each, bounds) };
+      }),
     },
     model: trivialDescription(values),
     candidates: [{ name: distribution.name, weight: 1 }],

@@ -1,11 +1,12 @@
 import type { AverageForecast } from "./averageForecast.ts";
-import { shockResponse } from "./memberFit.ts";
+import { meanError, shockResponse } from "./memberFit.ts";
 import { mixtureDeviation } from "./mixtureDeviation.ts";
+import { spreadQuantile } from "./predictiveSpread.ts";
 
 /**
  * Quantile function of the sum over the horizon. Errors of coming periods share shocks: with ψ the shock response of
  * a candidate on its scale and d_h the slope back to units of the series, the sum varies by
- * σ² Σ_j (Σ_{h≥j} d_h ψ_{h−j})². Candidates of a scale are mixed as at each step (`mixtureDeviation`); scales are
+ * σ² Σ_j (Σ_{h≥j} d_h ψ_{h−j})², and by what not knowing the mean adds to all steps together. Candidates of a scale are mixed as at each step (`mixtureDeviation`); scales are
  * averaged by quantile, the logarithmic one as a lognormal of the same relative deviation.
  *
  * The sum runs over steps `from`..end (earlier steps are past and unobserved). The result increases in `z`, which the
@@ -13,6 +14,7 @@ import { mixtureDeviation } from "./mixtureDeviation.ts";
  */
 export function totalQuantile(average: AverageForecast, from: number): (z: number) => number {
   const { medians, scales } = average.spread;
+  if (from === medians.length - 1) return (z) => spreadQuantile(average.spread, from, z);
   const sum = medians.subarray(from).reduce((all, median) => all + median, 0);
   const parts = scales
     .map(({ share, scale }, index) => {
@@ -32,9 +34,14 @@ function totalDeviation(average: AverageForecast, index: number, from: number): 
   const { scale } = average.scales[index];
   const horizon = medians.length;
   const sum = medians.subarray(from).reduce((all, median) => all + median, 0);
-  const slopes = medians.map((median) => {
+  const { deviations } = average.spread.scales[index];
+  const slopes = medians.map((median, h) => {
     const anchored = scale.forward(median);
-    return Number.isFinite(anchored) ? scale.slope(anchored) : 1;
+    if (!Number.isFinite(anchored)) return 1;
+    // Where the scale bends within a deviation (a root near zero) the slope is that across it.
+    const reach = deviations[h];
+    if (scale.name !== "square-root" || !(reach > anchored)) return scale.slope(anchored);
+    return (scale.apart(anchored, reach) - scale.apart(anchored, -reach)) / (2 * reach);
   });
   const precisions: number[] = [];
   const distances: number[] = [];
@@ -49,6 +56,10 @@ function totalDeviation(average: AverageForecast, index: number, from: number): 
       for (let h = Math.max(j, from); h < horizon; h++) effect += slopes[h] * response[h - j];
       variance += fit.model.innovationVariance * effect * effect;
     }
+    const mean = meanError(fit, candidate.drift, horizon);
+    let meanEffect = 0;
+    for (let h = from; h < horizon; h++) meanEffect += slopes[h] * mean.effect[h];
+    variance += mean.variance * meanEffect * meanEffect;
     let ownSum = 0;
     for (let h = from; h < horizon; h++) ownSum += average.paths[i * horizon + h];
     precisions.push(1 / variance);

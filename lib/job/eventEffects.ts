@@ -1,5 +1,6 @@
 import { fitAutoregression } from "../autoregression/fitAutoregression.ts";
 import { describeSeries } from "../forecast/describingModel.ts";
+import { countObserved } from "../numeric/sums.ts";
 import { type EventColumn, eventColumns } from "../series/eventColumns.ts";
 import type { KnownEvent } from "../series/readEvents.ts";
 import type { Series } from "../series/series.ts";
@@ -8,11 +9,12 @@ import { distinctEvents } from "./distinctEvents.ts";
 
 type EventFinding = Extract<Finding, { code: "event-effect" }>;
 
-/** A series without the effects of known events, and what they add to the coming periods. */
+/** What known events did to a series and will do to the coming periods. */
 export interface EventAdjustment {
+  /** One entry a value, then one a coming period, in units of the series. */
+  readonly effects: Float64Array;
+  /** The series without them. */
   readonly values: Float64Array;
-  /** One entry a coming period, in units of the series. */
-  readonly coming: Float64Array;
   readonly findings: readonly EventFinding[];
 }
 
@@ -23,11 +25,12 @@ const fewestValues = 20;
 
 /**
  * Effects of known events, estimated jointly with level, trend, season and autoregression by generalised least squares
- * (exact maximum likelihood), on the scale of the data. Those with evidence are taken off the past and added to the
- * coming periods; everything else said of the series is about what is left.
+ * (exact maximum likelihood), on the scale of the data, from the values at index `began` on. Those with evidence are
+ * taken off the past and added to the coming periods; everything else said of the series is about what is left.
  */
 export function adjustForEvents(
   series: Series,
+  began: number,
   events: readonly KnownEvent[],
   context: {
     readonly table: string;
@@ -38,23 +41,29 @@ export function adjustForEvents(
   },
 ): EventAdjustment {
   const { values, period } = series;
-  const unchanged = { values, coming: new Float64Array(context.horizon), findings: [] };
-  const columns = events.length > 0 ? inGivenOrder(eventColumns(events, series, context), events) : [];
-  if (columns.length === 0 || series.observed < fewestValues) return unchanged;
-  const effects = estimate(values, columns, period);
-  if (!effects) return unchanged;
-  const told = effects.filter((one) => Math.abs(one.effect) > leastEvidence * one.standardError);
-  const sumAt = (index: number) =>
-    told.reduce((sum, { column, effect }) => sum + effect * column.values[index], 0);
+  const effects = new Float64Array(values.length + context.horizon);
+  const unchanged = { effects, values, findings: [] };
+  const open = values.slice().fill(Number.NaN, 0, began);
+  const columns =
+    events.length > 0 ? inGivenOrder(eventColumns(events, { ...series, values: open }, context), events) : [];
+  if (columns.length === 0) return unchanged;
+  const estimates = estimate(open, began, columns, period);
+  if (!estimates) return unchanged;
+  const told = estimates.filter((one) => Math.abs(one.effect) > leastEvidence * one.standardError);
+  for (const { column, effect } of told) {
+    column.values.forEach((share, since) => {
+      effects[began + since] += effect * share;
+    });
+  }
   return {
-    values: values.map((value, index) => value - sumAt(index)),
-    coming: Float64Array.from({ length: context.horizon }, (_, step) => sumAt(values.length + step)),
+    effects,
+    values: values.map((value, index) => value - effects[index]),
     findings: told.map(({ column, effect, standardError }) => ({
       code: "event-effect",
       name: column.name,
       effect,
       standardError,
-      coming: comingOf(column.values.subarray(values.length), effect, context.periodOf),
+      coming: comingOf(column.values.subarray(values.length - began), effect, context.periodOf),
     })),
   };
 }
@@ -73,12 +82,22 @@ function inGivenOrder(columns: readonly EventColumn[], events: readonly KnownEve
   return [...columns].sort((a, b) => (place.get(a.name) ?? 0) - (place.get(b.name) ?? 0));
 }
 
-function estimate(values: Float64Array, columns: readonly EventColumn[], period: Series["period"]) {
+/** Effects of the events that can be told apart, by columns that begin at `began`. */
+function estimate(
+  open: Float64Array,
+  began: number,
+  columns: readonly EventColumn[],
+  period: Series["period"],
+) {
+  const values = open.subarray(began);
+  const observed = countObserved(values);
+  if (observed < fewestValues) return undefined;
   try {
     const { regressors, fit } = describeSeries(values, { period });
     const terms = regressors.length > 0 ? regressors : [new Float64Array(values.length).fill(1)];
+    const since = columns.map((column) => ({ ...column, values: column.values.subarray(began) }));
     // A tenth as many events as values at most, the owner's own before public holidays.
-    const distinct = distinctEvents(columns, terms, values).slice(0, Math.floor(values.length / 10));
+    const distinct = distinctEvents(since, terms, values).slice(0, Math.floor(observed / 10));
     const all = [...terms, ...distinct.map((column) => column.values.subarray(0, values.length))];
     const { regression } = fitAutoregression(values, {
       order: fit.order,

@@ -1,8 +1,6 @@
-import { boundsOf } from "../forecast/bounds.ts";
 import { forecastSeries } from "../forecast/forecastSeries.ts";
 import { leadingZeros } from "../forecast/leadingZeros.ts";
 import { naiveForecast } from "../forecast/naiveForecast.ts";
-import { areWhole } from "../forecast/wholeNumbers.ts";
 import { periodIndex, periodStart } from "../series/periods.ts";
 import type { Series } from "../series/series.ts";
 import type { SeriesFacts } from "../words/facts.ts";
@@ -18,8 +16,6 @@ import { simulateFading } from "./simulateFading.ts";
 import { basisOf, choiceThatStands, keepChoice, wentBy } from "./standingChoice.ts";
 import { rememberForecasts, scoreForecasts, type TrackState } from "./trackRecord.ts";
 import { advanceWatch } from "./watchFacts.ts";
-
-const unbounded = { low: Number.NEGATIVE_INFINITY, high: Number.POSITIVE_INFINITY };
 
 /** Another step, or weeks that begin on another day: nothing of an earlier account can be gone on from. */
 export function sameCalendar(series: Series, { facts, watchOrigin }: StoredSeries): boolean {
@@ -40,8 +36,7 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     indexOf: (period) => periodIndex(series.start, series.period, period),
   };
   const began = leadingZeros(series.values);
-  const open = series.values.slice().fill(Number.NaN, 0, began);
-  const adjusted = adjustForEvents({ ...series, values: open }, task.events, {
+  const adjusted = adjustForEvents(series, began, task.events, {
     table,
     horizon,
     timeZone,
@@ -49,12 +44,9 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
   });
   const watchOrigin = previous?.stored.watchOrigin ?? series.start;
   const firstIndex = periodIndex(watchOrigin, series.period, series.start);
-  // The watch began with the zeros from before the series did, and goes on from them.
-  const watchedValues = adjusted.values.slice();
-  watchedValues.set(series.values.subarray(0, began));
   const watched = advanceWatch(previous?.stored.watch, {
     firstIndex,
-    values: watchedValues,
+    values: adjusted.values,
     period: series.period,
     falseAlarmRate: settings.falseAlarmRate,
     seed: seedOf(table, series.name),
@@ -68,35 +60,28 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
     ...{ horizon, newest, changedAt, dataFindings, basisUntil },
     indexOf: calendar.indexOf,
   });
-  // By the values as they are: events taken off leave some that are no whole numbers or below zero.
-  const observed = open.filter((value) => !Number.isNaN(value));
-  const bounds = boundsOf(observed, { low: tableSettings.atLeast, high: tableSettings.atMost });
-  const eventsAhead = adjusted.coming.some((amount) => amount !== 0);
-  const forecast = forecastSeries(adjusted.values, {
+  const forecast = forecastSeries(series.values, {
     horizon,
     levels: [...settings.levels].sort((a, b) => a - b),
     period: series.period,
     seed: seedOf(table, series.name, task.asOf),
-    // With events to come, bounds hold for what they make of the forecast and not for the forecast without them.
-    bounds: eventsAhead ? unbounded : bounds,
+    bounds: { low: tableSettings.atLeast, high: tableSettings.atMost },
     limits: tableSettings.limits,
+    effects: adjusted.effects,
     changedAt: watched.changedAt,
     choice: stood?.choice,
   });
   const periods = Array.from({ length: horizon }, (_, step) =>
     calendar.periodOf(series.values.length + step),
   );
-  const forecasts = forecastFacts(forecast, periods, {
-    ...{ coming: adjusted.coming, bounds },
-    whole: areWhole(observed),
-  });
+  const forecasts = forecastFacts(forecast, periods);
   const track = nextTrack(series, previous?.stored.track, forecasts, forecast.model.season, calendar);
   const kept = stood && wentBy(stood, forecast) ? stood : undefined;
-  const departing = departures(forecast.model, adjusted.values);
+  const departing = departures(forecast.model, adjusted.values.slice().fill(Number.NaN, 0, began));
   const simulated = simulateFading(forecast.model, departing, kept?.simulated);
   return {
     facts: seriesFacts(series, task, {
-      ...{ began, adjusted, watched, firstIndex, forecast, forecasts, track, calendar, departing, simulated },
+      ...{ adjusted, watched, firstIndex, forecast, forecasts, track, calendar, departing, simulated },
     }),
     digest: seriesDigest(series, task),
     watchOrigin,

@@ -19,7 +19,6 @@ export function seriesFindings(series: Series, task: SeriesTask, refit: Refit): 
     ...changeFindings(watched.notices, earlier, { ...calendar, newest: series.values.length - 1, weights }),
     ...(watched.pastBreak ? [pastBreakFinding(watched.pastBreak, periodOf)] : []),
     ...refit.adjusted.findings,
-    ...(refit.began > 0 ? [noteFinding({ code: "zeros-first", index: refit.began })] : []),
     ...forecast.notes.map(noteFinding),
     ...gapsFinding(series.values, periodOf),
     ...task.dataFindings,

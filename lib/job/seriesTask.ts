@@ -30,8 +30,6 @@ export interface Calendar {
 
 /** What refitting a series came to, before it is put into facts. */
 export interface Refit {
-  /** Index of the first value after zeros from before the series began, 0 without such. */
-  readonly began: number;
   readonly adjusted: EventAdjustment;
   readonly watched: WatchResult;
   readonly firstIndex: number;

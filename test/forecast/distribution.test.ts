@@ -22,18 +22,22 @@ const r = withR();
 const HORIZON = 6;
 const PREPARATION = { differences: [], season: 0, profile: "none", line: false, drifts: ["whole"] } as const;
 
-/** An average that is one AR(1) with unit shocks, its ranges those of the normal distribution. */
+/**
+ * An average that is one AR(1) with unit shocks, its ranges those of the normal distribution; its mean is known, or
+ * estimated from `count` values.
+ */
 function oneProcess(
   coefficient: number,
   differences: readonly number[],
   logarithm: boolean,
+  count?: number,
 ): AverageForecast {
   const scale = workingScales(logarithm ? [1, 2] : [-1, 2])[logarithm ? 1 : 0];
   const size = logarithm ? 0.01 : 1;
   const preparation = { ...PREPARATION, differences };
   const fit: MemberFit = {
     preparation,
-    count: 1e9,
+    count: count ?? 1e9,
     stages: [],
     levelProfile: undefined,
     meanProfile: undefined,
@@ -54,7 +58,7 @@ function oneProcess(
     return size * Math.sqrt(power);
   });
   return {
-    candidates: [{ scale: 0, preparation, drift: "whole" }],
+    candidates: [{ scale: 0, preparation, drift: count === undefined ? "none" : "whole" }],
     scales: [{ scale, values: none }],
     fits: [fit],
     paths: medians,
@@ -87,6 +91,18 @@ describe("totalQuantile", () => {
     }
   });
 
+  it("counts that the mean of all steps is estimated, as worked by hand", () => {
+    // White noise about the mean of 50: six shocks, and six times an error of variance 1/50.
+    const quantile = totalQuantile(oneProcess(0, [], false, 50), 0);
+    expect(quantile(1) - quantile(0)).toBeCloseTo(Math.sqrt(6 + 36 / 50), 10);
+  });
+
+  it("is the step's own when one step is left", () => {
+    const average = oneProcess(0.7, [1], true);
+    const quantile = totalQuantile(average, HORIZON - 1);
+    for (const z of [-2, 0, 1.3]) expect(quantile(z)).toBe(spreadQuantile(average.spread, HORIZON - 1, z));
+  });
+
   it("spans what simulated sums of a multiplicative process span", () => {
     const draw = normalDraws(4);
     const sums = Float64Array.from({ length: 20000 }, () => {
@@ -114,7 +130,7 @@ describe("limitChances", () => {
   const { deviations } = average.spread.scales[0];
 
   it("gives for each period the normal chance of the distance to the limit", () => {
-    const [{ each }] = limitChances(average, { above: 23 }, 1, 0);
+    const [{ each }] = limitChances(average, { above: 23 }, new Float64Array(HORIZON), 1, 0);
     each.forEach((chance, h) => {
       expect(chance).toBeCloseTo(1 - normalProbability(3 / deviations[h]), 5);
     });
@@ -132,7 +148,7 @@ describe("limitChances", () => {
       }
       if (hit) passed++;
     }
-    const [{ any }] = limitChances(average, { above: 23 }, 1, 0);
+    const [{ any }] = limitChances(average, { above: 23 }, new Float64Array(HORIZON), 1, 0);
     // 4,000 against 20,000 paths: three standard errors are 2.6 points.
     expect(Math.abs(any - passed / 20000)).toBeLessThan(0.026);
   });

@@ -39,8 +39,9 @@ const r = withR();
 describe("known events", () => {
   it("have the effect that R's arima gives the same regression, and come off the past", async () => {
     const series = fairSeries(60);
-    const { findings, values, coming } = adjustForEvents(
+    const { findings, values, effects } = adjustForEvents(
       series,
+      0,
       [...fairWeeks, weeks + 1].map(fair),
       context,
     );
@@ -57,6 +58,7 @@ describe("known events", () => {
     expect(Math.abs(findings[0].effect - effect)).toBeLessThan(error);
     expect(Math.abs(findings[0].effect - 60)).toBeLessThan(3 * findings[0].standardError);
     expect(values[20]).toBeCloseTo(series.values[20] - findings[0].effect, 9);
+    const coming = effects.subarray(weeks);
     expect(Array.from(coming, (amount) => amount !== 0)).toEqual([false, true, false, false]);
     expect(coming[1]).toBeCloseTo(findings[0].effect, 9);
     expect(findings[0].coming).toEqual([
@@ -66,19 +68,36 @@ describe("known events", () => {
 
   it("without evidence of an effect change nothing", () => {
     const series = fairSeries(0);
-    const { findings, values } = adjustForEvents(series, fairWeeks.map(fair), context);
+    const { findings, values } = adjustForEvents(series, 0, fairWeeks.map(fair), context);
     expect(findings).toEqual([]);
     expect(Array.from(values)).toEqual(Array.from(series.values));
   });
 
+  it("are learnt from the values since a series began, not from the zeros before", () => {
+    // Twelve values are too few to learn from, however many zeros stand before them.
+    const short = fairSeries(0);
+    short.values.fill(0, 0, weeks - 12);
+    const { findings } = adjustForEvents(short, weeks - 12, fairWeeks.map(fair), context);
+    expect(findings).toEqual([]);
+    const long = fairSeries(60);
+    const began = 50;
+    const since = { ...long, start: periodStart(start, "week", began), values: long.values.slice(began) };
+    const alone = adjustForEvents({ ...since, observed: weeks - began }, 0, fairWeeks.map(fair), context);
+    long.values.fill(0, 0, began);
+    const among = adjustForEvents(long, began, fairWeeks.map(fair), context);
+    expect(among.findings).toEqual(alone.findings);
+    expect([...among.values]).toEqual([...long.values.subarray(0, began), ...alone.values]);
+    expect([...among.effects]).toEqual([...new Float64Array(began), ...alone.effects]);
+  });
+
   it("meant for other tables are left aside", () => {
     const events = fairWeeks.map((week) => ({ ...fair(week), tables: ["desk-calls"] }));
-    expect(adjustForEvents(fairSeries(60), events, context).findings).toEqual([]);
+    expect(adjustForEvents(fairSeries(60), 0, events, context).findings).toEqual([]);
   });
 
   it("that fall on every period cannot be told from the level, and are left aside without a failure", () => {
     const always = Array.from({ length: weeks + 4 }, (_, week) => fair(week));
-    expect(adjustForEvents(fairSeries(60), always, context).findings).toEqual([]);
+    expect(adjustForEvents(fairSeries(60), 0, always, context).findings).toEqual([]);
   });
 });
 
@@ -91,7 +110,7 @@ describe("events that always fall together", () => {
       name(fair(week), "Easter"),
     ]);
     const others = [10, 60, 110, 160].map((week) => name(fair(week), "sale"));
-    const { findings } = adjustForEvents(fairSeries(60), [...together, ...others], context);
+    const { findings } = adjustForEvents(fairSeries(60), 0, [...together, ...others], context);
     expect(findings.map((finding) => finding.name)).toEqual(["Good Friday and Easter"]);
     expect(Math.abs(findings[0].effect - 60)).toBeLessThan(3 * findings[0].standardError);
   });
@@ -103,7 +122,7 @@ describe("events that always fall together", () => {
       ...late.map((week) => name(fair(week), "autumn fair")),
       ...fairWeeks.map((week) => name(fair(week), "any fair")),
     ];
-    const { findings } = adjustForEvents(fairSeries(60), events, context);
+    const { findings } = adjustForEvents(fairSeries(60), 0, events, context);
     expect(findings.map((finding) => finding.name).sort()).toEqual(["autumn fair", "spring fair"]);
   });
 });
