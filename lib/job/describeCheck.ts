@@ -82,7 +82,7 @@ function seriesLines({ series, reading }: CheckedTable, report: CheckReport): st
     gappy.every((one) => one.closedDays.length > 0)
   )
     lines.push(
-      `every gap is a ${closed.map(weekday).join(" or ")}: if those days count as nothing (nothing sold, no calls), say "emptyMeans": "zero" in the settings of this table`,
+      `hardly any ${closed.map(weekday).join(" or ")} has a value: if those days count as nothing (nothing sold, no calls), say "emptyMeans": "zero" in the settings of this table; all gaps count as nothing then`,
     );
   const late = series.filter((one) => one.periodsLate > 0);
   if (late.length > 0) {
