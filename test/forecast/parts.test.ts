@@ -328,8 +328,38 @@ describe("naiveForecast, localDrift and afterChange", () => {
 
   it("keep only what came after the change, or move the past to the new level", () => {
     const values = Float64Array.from([1, 1, 1, 1, 5, 5]);
-    expect([...afterChange(values, 4, 2)]).toEqual([5, 5]);
-    expect([...afterChange(values, 4, 10)]).toEqual([5, 5, 5, 5, 5, 5]);
-    expect(afterChange(values, undefined, 2)).toBe(values);
+    expect([...afterChange(values, 4, 2, 0)]).toEqual([5, 5]);
+    expect([...afterChange(values, 4, 10, 0)]).toEqual([5, 5, 5, 5, 5, 5]);
+    expect(afterChange(values, undefined, 2, 0)).toBe(values);
+  });
+
+  it("tell a step from the season and from growth", () => {
+    const path = (t: number) => [10, 40, 20, 0][t % 4] + 2 * t;
+    for (const since of [1, 2, 3, 7]) {
+      const values = Float64Array.from({ length: 11 + since }, (_, t) => path(t) + (t < 11 ? 0 : 50));
+      values[9] = Number.NaN;
+      const moved = afterChange(values, 11, 20, 4);
+      moved.forEach((value, t) => {
+        if (t !== 9) expect(value).toBe(path(t) + 50);
+      });
+    }
+    // One season before the change shows no growth, and a shorter past no season either.
+    expect([...afterChange(Float64Array.of(10, 40, 20, 0, 15), 4, 9, 4)]).toEqual([15, 45, 25, 5, 15]);
+    expect([...afterChange(Float64Array.of(10, 40, 20, 5), 3, 9, 4)]).toEqual([-5, 25, 5, 5]);
+  });
+
+  it("find a step of 40 in white noise of deviation 5 about a season six times that", () => {
+    const draw = normalDraws(3);
+    let wrong = 0;
+    for (let series = 0; series < 200; series++) {
+      const changed = 60 + (series % 12);
+      const values = Float64Array.from(
+        { length: changed + 3 + (series % 8) },
+        (_, t) => 100 + 30 * Math.sin((2 * Math.PI * t) / 12) + 5 * draw() + (t < changed ? 0 : 40),
+      );
+      wrong += Math.abs(afterChange(values, changed, 48, 12)[0] - values[0] - 40) / 200;
+    }
+    // One value less the one a season before would err by 5·√2·√(2/π) = 5.6 on average; there are three or more.
+    expect(wrong).toBeLessThan(5.6);
   });
 });
