@@ -102,7 +102,7 @@ function forecastFrom(began: number, values: Float64Array, options: ForecastPlan
   const { average, choice: decided } = averageForecast(known, seasons, steps, description);
   return assembleForecast(
     average,
-    choiceOf(known, { ...decided, describing: plan }),
+    choiceOf(known, { ...decided, describing: description === undefined ? null : plan }),
     description,
     known,
     options,

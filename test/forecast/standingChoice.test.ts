@@ -41,6 +41,16 @@ describe("a forecast by what an earlier one decided", () => {
     }
   });
 
+  it("stands for a straight line too, which no likelihood describes", () => {
+    const line = Float64Array.from({ length: 60 }, (_, t) => 10 + 2 * t);
+    const choice = JSON.parse(JSON.stringify(forecastSeries(line, options).choice));
+    const second = forecastSeries(line, { ...options, choice });
+    expect(second.choice).toBe(choice);
+    second.median.forEach((value, h) => {
+      expect(value).toBeCloseTo(130 + 2 * h, 6);
+    });
+  });
+
   it("keeps to a naive forecast that did better", () => {
     const normal = randomNormal(1);
     let found = 0;
