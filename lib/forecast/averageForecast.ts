@@ -125,7 +125,7 @@ export function averageForecast(
     naiveSeason,
   };
   return {
-    average: naiveSeason === null ? average : naiveInstead(average, values, naiveSeason, origins),
+    average: naiveSeason === null ? average : naiveInstead(average, values, naiveSeason, origins, judged),
     choice,
   };
 }

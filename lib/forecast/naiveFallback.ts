@@ -21,15 +21,18 @@ export function naiveDoesBetter(relativeError: number, naiveLead: number): boole
 
 /**
  * The naive forecast in place of an average: the last value, or the last season where `season` is above 1, repeated.
- * Its errors add up like a random walk's (of seasons), with the size they had in the past, calibrated in the same way.
+ * Its errors add up like a random walk's (of seasons), with the size they had in the past, calibrated in the same way:
+ * `judged` is the horizon that the origins were judged at.
  */
 export function naiveInstead(
   average: AverageForecast,
   values: Float64Array,
   season: number,
   origins: readonly Origin[],
+  judged: number,
 ): AverageForecast {
   const count = values.length;
+  const observed = values.filter((value) => !Number.isNaN(value)).length;
   const horizon = average.spread.medians.length;
   const lag = Math.max(1, season);
   const stepOf = (h: number): number => Math.floor(h / lag) + 1;
@@ -52,7 +55,7 @@ export function naiveInstead(
   });
   const evidence = noEvidence();
   for (const { count: from, steps } of origins) {
-    addOutcomes(evidence, spreadAt(from, steps), values, from, (count - from) / horizon);
+    addOutcomes(evidence, spreadAt(from, steps), values, from, (count - from) / judged);
   }
   const preparation = {
     differences: [lag],
@@ -84,6 +87,6 @@ export function naiveInstead(
     weights: Float64Array.of(1),
     shares: Float64Array.of(1),
     spread,
-    calibration: calibrate(evidence, 1, shockTails(changes), horizonsCovered(origins), count),
+    calibration: calibrate(evidence, 1, shockTails(changes), horizonsCovered(origins), observed),
   };
 }

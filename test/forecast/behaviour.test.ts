@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { predict } from "../../lib/autoregression/predict.ts";
 import { shockContributions } from "../../lib/dynamics/shockContributions.ts";
+import { averageForecast } from "../../lib/forecast/averageForecast.ts";
 import { describedPath, describeSeries } from "../../lib/forecast/describingModel.ts";
 import { describingColumns } from "../../lib/forecast/describingTerms.ts";
 import { forecastSeries } from "../../lib/forecast/forecastSeries.ts";
@@ -135,19 +136,41 @@ describe("forecastSeries", () => {
     for (let h = 0; h < 12; h++) expect(median[h] > 13).toBe(h >= 6);
   });
 
-  it("uses the naive forecast where the record says that it does better", () => {
-    // A level that jumps every 24 periods and is still in between: nothing beats the last value.
+  /** A level that jumps every 24 periods and is still in between: nothing beats the last value. */
+  function jumps(): number[] {
     const draw = normalDraws(12);
     let level = 100;
-    const values = Array.from({ length: 400 }, (_, t) => {
+    return Array.from({ length: 400 }, (_, t) => {
       if (t % 24 === 0) level += 10 * draw();
       return level;
     });
+  }
+
+  it("uses the naive forecast where the record says that it does better", () => {
+    const values = jumps();
     const forecast = forecastSeries(values, { horizon: 4, levels: [80] });
     const naive = forecast.notes.find((note) => note.code === "naive-used");
     expect(naive).toBeDefined();
     expect(forecast.backTest.relativeError).toBeGreaterThanOrEqual(1);
     for (const value of forecast.median) expect(Math.abs(value - values[399])).toBeLessThan(1);
+  });
+
+  it("ranges a naive forecast of the next period by the same evidence, however few more are asked for", () => {
+    const values = jumps();
+    const [one, four] = [1, 4].map((horizon) => forecastSeries(values, { horizon, levels: [80, 95] }));
+    expect(one.notes.map(({ code }) => code)).toContain("naive-used");
+    one.intervals.forEach(({ low, high }, level) => {
+      expect(low[0]).toBe(four.intervals[level].low[0]);
+      expect(high[0]).toBe(four.intervals[level].high[0]);
+    });
+  });
+
+  it("takes the freedom of a naive forecast's ranges from the values that were observed", () => {
+    const values = Float64Array.from(jumps(), (value, t) => (t % 4 === 1 ? Number.NaN : value));
+    const { average } = averageForecast(values, [], 4, undefined);
+    expect(average.naive).toBe(true);
+    // A sixth of 300 of 400.
+    expect(average.calibration.freedom).toBe(50);
   });
 
   it("starts from the new level after a change that it is told of", () => {
