@@ -55,7 +55,12 @@ export function refitSeries(series: Series, task: SeriesTask): StoredSeries {
   const changedAt = watched.changedAt === undefined ? null : calendar.periodOf(watched.changedAt);
   const { dataFindings } = task;
   const basisUntil = (lastPeriod: string) =>
-    basisOf({ ...tableSettings, timeZone }, task.events, series.start, lastPeriod);
+    basisOf(
+      { ...tableSettings, timeZone },
+      task.events,
+      series.start,
+      calendar.periodOf(calendar.indexOf(lastPeriod) + 1),
+    );
   const stood = choiceThatStands(previous?.stored.choice, {
     ...{ horizon, newest, changedAt, dataFindings, basisUntil },
     indexOf: calendar.indexOf,

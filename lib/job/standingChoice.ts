@@ -1,8 +1,10 @@
 import { createHash } from "node:crypto";
 import type { Forecast } from "../forecast/forecast.ts";
 import type { ForecastChoice } from "../forecast/forecastChoice.ts";
+import { isoInstant } from "../series/periods.ts";
 import type { KnownEvent } from "../series/readEvents.ts";
 import type { TableSettings } from "../series/tableSettings.ts";
+import { zoneOffset } from "../series/zone.ts";
 import type { Finding } from "../words/facts.ts";
 import type { SimulatedFading } from "./simulateFading.ts";
 
@@ -61,14 +63,24 @@ export function keepChoice(
   return choice && { ...made(), choice, simulated };
 }
 
-/** Names what shapes the values up to a period: the events from the series' start on, and how cells become values. */
+/**
+ * Names what shapes the values of the periods from `start` up to the one that `next` begins: the events that touch any
+ * of them, and how cells become values.
+ */
 export function basisOf(
   { every, combine, emptyMeans, timeZone }: TableSettings,
   events: readonly KnownEvent[],
   start: string,
-  lastPeriod: string,
+  next: string,
 ): string {
-  const past = events.filter(({ from }) => from >= start.slice(0, 10) && from <= lastPeriod.slice(0, 10));
+  // Events are days of the table's own calendar; hours are instants.
+  const local = (text: string): string => {
+    if (!text.includes("T")) return text;
+    const instant = Date.parse(text);
+    return isoInstant(instant + zoneOffset(instant, timeZone ?? "UTC"));
+  };
+  const [first, end] = [local(start).slice(0, 10), local(next)];
+  const past = events.filter(({ from, until }) => from < end && until >= first);
   const named = JSON.stringify({ every, combine, emptyMeans, timeZone, past });
   return createHash("sha256").update(named).digest("hex").slice(0, 16);
 }

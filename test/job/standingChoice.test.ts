@@ -57,12 +57,30 @@ describe("what a forecast decided", () => {
         settings,
         dates.map((day) => ({ name: "fair", from: day, until: day, tables: null })),
         "2025-01-06",
-        "2026-11-23",
+        "2026-11-30",
       );
     expect(basis({}, ["2026-05-01", "2027-05-01", "2024-05-01"])).toBe(basis({}, ["2026-05-01"]));
     expect(basis({}, ["2026-05-01"])).not.toBe(basis({}, []));
     expect(basis({ emptyMeans: "zero" }, [])).not.toBe(basis({}, []));
     expect(basis({ unit: "loans", horizon: 4 }, [])).toBe(basis({}, []));
+  });
+
+  it("rests on events that touch the first or the last period, wherever in it they fall", () => {
+    const rests = (from: string, until: string, start: string, next: string, timeZone = "UTC") =>
+      basisOf({ timeZone }, [{ name: "fair", from, until, tables: null }], start, next) !==
+      basisOf({ timeZone }, [], start, next);
+    const weeks = ["2025-01-06", "2026-11-30"] as const;
+    expect(rests("2026-11-25", "2026-11-25", ...weeks)).toBe(true);
+    expect(rests("2026-11-29", "2026-12-06", ...weeks)).toBe(true);
+    expect(rests("2026-11-30", "2026-12-06", ...weeks)).toBe(false);
+    expect(rests("2024-12-20", "2025-01-06", ...weeks)).toBe(true);
+    expect(rests("2024-12-20", "2025-01-05", ...weeks)).toBe(false);
+    // Noon to four of the afternoon of 30 November in London, which is the small hours of 1 December in Auckland.
+    const hours = ["2026-11-30T12:00:00Z", "2026-11-30T16:00:00Z"] as const;
+    expect(rests("2026-12-01", "2026-12-01", ...hours)).toBe(false);
+    expect(rests("2026-12-01", "2026-12-01", ...hours, "Pacific/Auckland")).toBe(true);
+    expect(rests("2026-11-30", "2026-11-30", ...hours)).toBe(true);
+    expect(rests("2026-11-30", "2026-11-30", ...hours, "Pacific/Auckland")).toBe(false);
   });
 });
 
