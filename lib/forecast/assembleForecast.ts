@@ -128,7 +128,7 @@ function modelOf(
   if (description === undefined) return trivialDescription(known);
   const { scale, trend, season, fit } = description;
   const place = average.candidates.findIndex((candidate) => candidate.description !== undefined);
-  return { scale, trend, season, fit, relation: "member", weight: place < 0 ? 0 : average.shares[place] };
+  return { scale, trend, season, fit, weight: place < 0 ? 0 : average.shares[place] };
 }
 
 function namedShares(average: AverageForecast): { name: string; weight: number }[] {

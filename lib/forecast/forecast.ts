@@ -51,9 +51,7 @@ export interface DescribingModel {
   /** Season length of the seasonal terms, 0 when there are none. */
   readonly season: number;
   readonly fit: AutoregressiveFit;
-  /** How the forecast follows from it: `is` when it made the forecast alone, `member` when it is one of an average. */
-  readonly relation: "is" | "member";
-  /** Share of the average this model carries (1 when `relation` is `is`). */
+  /** Share of the average this model carries. */
   readonly weight: number;
 }
 

@@ -26,7 +26,6 @@ export function trivialDescription(values: ArrayLike<number>): DescribingModel {
       observations: count,
       residuals: Float64Array.from(values, (value) => value - mean),
     },
-    relation: "member",
     weight: 0,
   };
 }

@@ -88,7 +88,6 @@ const model = z.object({
   scale: z.enum(["raw", "log"]),
   trend: z.boolean(),
   season: z.number(),
-  relation: z.enum(["is", "member"]),
   weight: z.number(),
   order: z.number(),
   coefficients: numbers,

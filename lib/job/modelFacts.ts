@@ -66,7 +66,6 @@ export function modelFacts(
     scale: model.scale,
     trend: model.trend,
     season: model.season,
-    relation: model.relation,
     weight: model.weight,
     order: fit.order,
     coefficients: Array.from(fit.coefficients),

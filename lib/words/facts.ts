@@ -38,7 +38,6 @@ export interface ModelFacts {
   readonly scale: "raw" | "log";
   readonly trend: boolean;
   readonly season: number;
-  readonly relation: "is" | "member";
   readonly weight: number;
   readonly order: number;
   readonly coefficients: readonly number[];

@@ -10,11 +10,7 @@ export function modelLine(model: ModelFacts, speech: Speech, tell: Statistics): 
     model.trend ? "a linear trend" : "no trend",
     model.season > 0 ? `a season of ${speech.write(model.season, 1)} ${speech.facts.period}s` : "no season",
   ].join(", ");
-  const relation =
-    model.relation === "is"
-      ? "it makes the forecast"
-      : `one of an average, with weight ${tell.coefficient(model.weight)}`;
-  return `Model: autoregression of order ${model.order} on ${terms}; ${speech.write(model.observations, 1)} values; ${relation}.${mixture(speech.facts)}`;
+  return `Model: autoregression of order ${model.order} on ${terms}; ${speech.write(model.observations, 1)} values; one of an average, with weight ${tell.coefficient(model.weight)}.${mixture(speech.facts)}`;
 }
 
 /** After a change the model still rests on both sides of it, until enough has come; its numbers lie between the two. */

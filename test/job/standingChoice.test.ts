@@ -86,7 +86,7 @@ describe("what a forecast decided", () => {
 
 describe("what is simulated for an account", () => {
   const model = (coefficient: number, observations = 100): DescribingModel => ({
-    ...{ scale: "raw", trend: false, season: 0, relation: "is", weight: 1 },
+    ...{ scale: "raw", trend: false, season: 0, weight: 1 },
     fit: {
       ...{ method: "maximum-likelihood", order: 1, mean: 0, meanStandardError: 1, innovationVariance: 1 },
       ...{ logLikelihood: 0, aic: 0, aicc: 0, bic: 0, observations },

@@ -100,7 +100,6 @@ export function branchFacts(branch: Branch): SeriesFacts {
       scale: "raw",
       trend: false,
       season: 0,
-      relation: "member",
       weight: 0.7,
       order: 1,
       coefficients: [coefficient],
