@@ -37,10 +37,16 @@ export function spreadQuantile(spread: PredictiveSpread, h: number, z: number): 
   return sum;
 }
 
-/** The standard normal quantile at which `value` stands at step `h`, within ±`limit`; the inverse of the quantile. */
-export function spreadScore(spread: PredictiveSpread, h: number, value: number, limit = 40): number {
-  let low = -limit;
-  let high = limit;
+/** Farther out no probability is told from nothing: φ(40) is below the least number there is. */
+const FARTHEST_SCORE = 40;
+
+/**
+ * The standard normal quantile at which `value` stands at step `h`, within ±`FARTHEST_SCORE`; the inverse of the
+ * quantile.
+ */
+export function spreadScore(spread: PredictiveSpread, h: number, value: number): number {
+  let low = -FARTHEST_SCORE;
+  let high = FARTHEST_SCORE;
   if (value <= spreadQuantile(spread, h, low)) return low;
   if (value >= spreadQuantile(spread, h, high)) return high;
   // Regula falsi with halving (Illinois): the function is smooth, increasing and nearly straight.
