@@ -1,7 +1,8 @@
 /**
  * Turns a standard normal quantile into that of Student's t at the same probability, by the Cornish–Fisher series of
- * Abramowitz and Stegun 26.7.5 (three digits from 4 degrees of freedom on, more with more): the tails of an error
- * whose size is itself estimated. Increasing in `z`.
+ * Abramowitz and Stegun 26.7.5: the tails of an error whose size is itself estimated. Of published tables, it falls
+ * short with 4 degrees of freedom by 0.3 % at the 95 % range (2.769 for 2.776), 1.3 % at 99 % and 5 % at 99.9 %; from
+ * 8 on it is within 0.5 % there too. Increasing in `z`.
  */
 export function studentFromNormal(z: number, freedom: number): number {
   const z2 = z * z;
