@@ -10,11 +10,12 @@ import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
 const KNOWN_BEFORE = 0.3;
 
 /**
- * Weights of candidates from their rolling-origin losses: exp(−power · mean log loss), the mean over origins and over
- * the scales that judge. It is the posterior of equally likely candidates whose errors are normal with a size that is
- * unknown and each origin's own (Student's likelihood), so that one wild horizon does not decide; which scale they are
- * normal on is not known either. With nothing known beforehand, one origin and one scale it is a power of the rule of
- * Bates and Granger (1969), inverse to the mean square.
+ * Weights of candidates from their rolling-origin losses: exp(−power · (1 + b) · mean log(loss + b · typical)), the
+ * mean over origins and over the scales that judge, b being `KNOWN_BEFORE` and `typical` the mean loss of the candidate
+ * in the middle on that scale. It is the posterior of equally likely candidates whose errors are normal with a size
+ * that is unknown and each origin's own (Student's likelihood), so that one wild horizon does not decide; which scale
+ * they are normal on is not known either. With b = 0, one origin and one scale it is a power of the rule of Bates and
+ * Granger (1969), inverse to the mean square.
  *
  * `losses[scale][origin]` holds each candidate's mean squared error, each error divided by the square root of its step
  * ahead so that far steps, whose errors grow like a random walk's, do not drown the near ones; `NaN` when it could not

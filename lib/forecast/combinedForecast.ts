@@ -94,8 +94,10 @@ function lossesOn(
 }
 
 /**
- * The describing model is fitted once, to the whole series, and so has seen the outcomes it is scored on. Akaike's
- * final prediction error (1970), ((n + k)/(n − k))², puts its squared errors on the footing of the refitted ones.
+ * The describing model is fitted once, to the whole series, and so has seen the outcomes it is scored on. The square of
+ * the ratio of Akaike's final prediction error (1970), (n + k)/(n − k), puts its squared errors on the footing of the
+ * refitted ones: Akaike's is that of squared errors one step ahead, and an estimated term errs in every step again, so
+ * that deviations are taken to grow by it as in `expectedWidening`.
  */
 function describedOptimism(fit: MemberFit | undefined, count: number): number {
   const terms = (fit?.model.meanOrder ?? 0) + 1;
