@@ -49,6 +49,30 @@ describe("spreadMean", () => {
     expect(spreadMean(spread, 0, 1)).toBeCloseTo(50 * Math.exp(0.12 ** 2 / 2), 4);
   });
 
+  it("is the mean in closed form where a quantile bends: at a doubling and at zero", () => {
+    const [, log] = workingScales([1, 2]);
+    const [, root] = workingScales([0, 2]);
+    const density = (z: number) => Math.exp(-(z * z) / 2) / Math.sqrt(2 * Math.PI);
+    const meanOf = (scale: typeof log, median: number, deviation: number) =>
+      spreadMean(
+        {
+          medians: Float64Array.of(median),
+          scales: [{ scale, share: 1, deviations: Float64Array.of(deviation) }],
+        },
+        0,
+        1,
+      );
+    // The trapezoid rule errs by h³·√3/216·φ(z) times the jump of the second derivative: below 1e-5 in each case.
+    for (const s of [0.5, 0.8]) {
+      const bend = Math.LN2 / s;
+      const below = Math.exp((s * s) / 2) * normalProbability(bend - s);
+      const above = 2 * ((1 - Math.LN2) * normalProbability(-bend) + s * density(bend));
+      expect(Math.abs(meanOf(log, 7, s) / (7 * (below + above)) - 1)).toBeLessThan(1e-5);
+    }
+    // E max(0, 1 + z)² = 2Φ(1) + φ(1) = 1.92466.
+    expect(Math.abs(meanOf(root, 1, 1) - 2 * normalProbability(1) - density(1))).toBeLessThan(1e-5);
+  });
+
   it("is the median on the raw scale", () => {
     const [raw] = workingScales([-1, 2]);
     const spread = {
