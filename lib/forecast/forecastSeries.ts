@@ -79,7 +79,9 @@ function forecastFrom(began: number, values: Float64Array, options: ForecastPlan
   const season = seasonLengths(whole.length, options)[0] ?? 0;
   const dropped = first + end - whole.length;
   const changedAt = options.changedAt === undefined ? undefined : options.changedAt - dropped;
-  const known = afterChange(whole, changedAt, Math.max(LEAST_SINCE_CHANGE, 4 * season), season);
+  let known = afterChange(whole, changedAt, Math.max(LEAST_SINCE_CHANGE, 4 * season), season);
+  // A cut may fall on a gap, and what follows is fitted from an observed value on.
+  while (Number.isNaN(known[0])) known = known.subarray(1);
   const start = dropped + whole.length - known.length;
   const observed = known.filter((value) => !Number.isNaN(value));
   // Periods that are past but unobserved are forecast over and dropped.

@@ -179,6 +179,19 @@ describe("forecastSeries", () => {
     for (const value of told.median) expect(Math.abs(value - 125)).toBeLessThan(3);
   });
 
+  it("starts from the first observed value after a change, or after the longest past that is looked at", () => {
+    const options = { horizon: 6, levels: [80], seasons: [] };
+    const values = process(130, 0.3, 9).map((value, t) => (t < 60 ? value : value + 25));
+    values.fill(Number.NaN, 60, 63);
+    values[90] += 40;
+    const told = forecastSeries(values, { ...options, changedAt: 60 });
+    expect(told).toEqual(forecastSeries(values, { ...options, changedAt: 63 }));
+    expect(told.notes).toContainEqual({ code: "outliers-damped", indexes: [90] });
+    const long = process(5003, 0.3, 9);
+    long.fill(Number.NaN, 2, 5);
+    expect(forecastSeries(long, options)).toEqual(forecastSeries(long, { ...options, changedAt: 5 }));
+  });
+
   it("lets the shares of its candidates sum to one, the describing model's among them", () => {
     const { candidates, model } = forecastSeries(process(90, 0.6, 21), { horizon: 5, levels: [80] });
     expect(candidates.reduce((sum, { weight }) => sum + weight, 0)).toBeCloseTo(1, 10);
