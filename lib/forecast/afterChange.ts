@@ -8,11 +8,11 @@ const LEAST_BEFORE = 3;
  * all of them, the earlier ones moved to the new level: the shape of the past (season, persistence) is kept, its level
  * is not.
  *
- * The step is the median change from one `season` to the next over the first season since the change, less the median
- * of the same before it: growth is taken to go on as it was, and not to be there when fewer than two seasons came
- * before. Later seasons are left out, for they are told apart from growth and wandering less well. Without a season
- * (0), or a whole one before the change, it is the difference of the medians of the values since and of as many before,
- * at least three.
+ * The step is the difference of the medians of the values since and of as many before, at least three. Where values a
+ * `season` apart have been nearer to each other, growth aside, than values in different places of it, it is the median
+ * change from one season to the next over the first season since, less the median of the same before the change:
+ * growth is taken to go on as it was, and not to be there when fewer than two seasons came before. Later seasons are
+ * left out, for what grows and wanders takes them ever farther from the step.
  *
  * `changedAt` is the index of the first value after the change. Returns the input when there is no change inside.
  */
@@ -34,9 +34,15 @@ export function afterChange(
   return values.map((value, t) => (t < changedAt ? value + step : value));
 }
 
-/** The step between equal places of the season; `NaN` where no such pair was observed. */
+/** The step between equal places of the season; `NaN` where no such pair was observed, or nearer values tell more. */
 function seasonalStep(values: Float64Array, changedAt: number, season: number): number {
-  const changes = values.map((value, t) => (t < season ? Number.NaN : value - values[t - season]));
-  const growth = changedAt < 2 * season ? 0 : median(changes.subarray(0, changedAt));
-  return median(changes.subarray(changedAt, changedAt + season)) - (Number.isNaN(growth) ? 0 : growth);
+  const changes = (lag: number) => values.map((value, t) => (t < lag ? Number.NaN : value - values[t - lag]));
+  const overSeason = changes(season);
+  const before = overSeason.subarray(0, changedAt);
+  const usual = changedAt < 2 * season ? 0 : median(before);
+  const growth = Number.isNaN(usual) ? 0 : usual;
+  const near = changes(Math.min(values.length - changedAt, Math.floor(season / 2))).subarray(0, changedAt);
+  if (median(before.map((change) => Math.abs(change - growth))) > median(near.map(Math.abs)))
+    return Number.NaN;
+  return median(overSeason.subarray(changedAt, changedAt + season)) - growth;
 }

@@ -348,6 +348,21 @@ describe("naiveForecast, localDrift and afterChange", () => {
     expect([...afterChange(Float64Array.of(10, 40, 20, 5), 3, 9, 4)]).toEqual([-5, 25, 5, 5]);
   });
 
+  it("find a step of 40 in weekly random walks, which have no season", () => {
+    const draw = normalDraws(5);
+    let wrong = 0;
+    for (let series = 0; series < 100; series++) {
+      let level = 0;
+      const values = Float64Array.from({ length: 163 + (series % 8) }, (_, t) => {
+        level += draw();
+        return level + (t < 160 ? 0 : 40);
+      });
+      wrong += Math.abs(afterChange(values, 160, 208, 52)[0] - values[0] - 40) / 100;
+    }
+    // The walk moves by √10·√(2/π) = 2.5 on average in the most values since, ten, and by 5.8 in a year.
+    expect(wrong).toBeLessThan(2.5);
+  });
+
   it("find a step of 40 in white noise of deviation 5 about a season six times that", () => {
     const draw = normalDraws(3);
     let wrong = 0;
