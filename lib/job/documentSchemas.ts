@@ -88,6 +88,7 @@ const model = z.object({
   scale: z.enum(["raw", "log"]),
   trend: z.boolean(),
   season: z.number(),
+  relation: z.optional(z.enum(["is", "member"])).check(say("In older documents only.")),
   weight: z.number(),
   order: z.number(),
   coefficients: numbers,
