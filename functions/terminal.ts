@@ -42,6 +42,7 @@ export function summaryLines(summary: RunSummary, where: string): string[] {
         `failed: ${table}${problem.line ? `, line ${problem.line}` : ""}: ${problem.message}; ${problem.remedy}`,
       );
   for (const table of summary.left) lines.push(`not reached: ${table}`);
+  for (const table of summary.gone ?? []) lines.push(`not there any more: ${table}`);
   for (const delivery of summary.deliveries)
     lines.push(
       `${delivery.webhook} (${delivery.audience}): ${delivery.status.replaceAll("-", " ")}${delivery.reason ? `: ${delivery.reason}` : ""}`,

@@ -38,6 +38,8 @@ export function reportRun(
 ): RunOutcome {
   for (const { table, problems } of summary.failed.slice(0, mostNames))
     log.warn("a table could not be refitted", { table, codes: problems.map(({ code }) => code) });
+  for (const table of (summary.gone ?? []).slice(0, mostNames))
+    log.warn("a table of the last run is not there any more", { table });
   for (const { webhook, audience, status, asOf } of summary.deliveries) {
     const fields = { webhook, audience, status, messageOf: asOf };
     if (status === "undelivered")

@@ -1,7 +1,7 @@
 import { renderReport } from "../report/renderReport.ts";
 import type { ObjectStore } from "../store/objectStore.ts";
 import type { RunFacts, Voice } from "../words/facts.ts";
-import { gatherTables, runFacts } from "./digest.ts";
+import { gatherGone, gatherTables, runFacts } from "./digest.ts";
 import { encodeText } from "./documents.ts";
 import { runPrefix } from "./keys.ts";
 import {
@@ -55,7 +55,8 @@ async function messageParts(
     const failed = facts.failed.filter(isNew);
     if (parts.length > 0 && tables.length + failed.length === 0) return parts;
     const durationMilliseconds = audience === "operations" ? closing.elapsedMilliseconds() : undefined;
-    const rest = { ...facts, tables, failed, durationMilliseconds };
+    const gone = parts.length === 0 ? facts.gone : [];
+    const rest = { ...facts, tables, failed, gone, durationMilliseconds };
     // Another process may have been first, with fewer tables: then theirs stands and one more part follows.
     parts.push(await createMessage(store, rest, voice, audience, parts.length + 1));
   }
@@ -80,6 +81,7 @@ export async function closeTables(closing: Closing): Promise<Closed> {
   const facts = runFacts(
     plan,
     await gatherTables(store, plan.asOf, plan.tables),
+    await gatherGone(store, plan),
     owed.map(({ message, webhook }) => ({ asOf: message.asOf, webhook: webhook.name })),
   );
   const voice = voiceOf(settings);

@@ -1,9 +1,9 @@
 import type { ObjectStore } from "../store/objectStore.ts";
 import { attentionTo, newsFrom } from "../words/attention.ts";
-import type { RunFacts, SeriesFacts, TableFacts } from "../words/facts.ts";
+import type { GoneTable, RunFacts, SeriesFacts, TableFacts } from "../words/facts.ts";
 import { readDocument, type Versioned } from "./documents.ts";
 import { problemsKey } from "./keys.ts";
-import { modelReader } from "./modelDocument.ts";
+import { hasForecast, modelReader } from "./modelDocument.ts";
 import type { FailedTable, Plan } from "./summary.ts";
 import { valuesInYear } from "./watchFacts.ts";
 
@@ -80,14 +80,27 @@ export async function gatherTables(
   return { tables, failed, left, ...gathering.counts() };
 }
 
+/** The tables that a plan found gone, and whether a forecast of each stands. */
+export async function gatherGone(store: ObjectStore, { asOf, gone = [] }: Plan): Promise<GoneTable[]> {
+  const tables: GoneTable[] = [];
+  for (const table of gone) tables.push({ table, hasForecast: await hasForecast(store, table, asOf) });
+  return tables;
+}
+
 /** The facts of a whole run. */
-export function runFacts(plan: Plan, gathered: Gathered, undelivered: RunFacts["undelivered"]): RunFacts {
+export function runFacts(
+  plan: Plan,
+  gathered: Gathered,
+  gone: readonly GoneTable[],
+  undelivered: RunFacts["undelivered"],
+): RunFacts {
   const { tables, failed, left, untold, expectedFalseNotices } = gathered;
   return {
     asOf: plan.asOf,
     tables,
     failed: [...plan.refused, ...failed],
     left,
+    gone,
     untold,
     expectedFalseNotices,
     undelivered,

@@ -234,5 +234,6 @@ export const summarySchema = z.object({
   stale: z.array(z.string()),
   failed: z.array(failed),
   left: z.array(z.string()),
+  gone: z.optional(z.array(z.string())),
   report: z.string(),
 }) satisfies z.ZodMiniType<LastingSummary>;

@@ -64,6 +64,12 @@ export async function readModelShelf(store: ObjectStore, table: string, asOf: st
   };
 }
 
+/** Whether a table has a forecast of another run: each stands since the model it was written after. */
+export async function hasForecast(store: ObjectStore, table: string, asOf: string): Promise<boolean> {
+  const { previous, later } = await readModelShelf(store, table, asOf);
+  return (previous ?? later) !== undefined;
+}
+
 const isPacked = ({ key }: Standing) => key.endsWith(".gz");
 
 /**

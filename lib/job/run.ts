@@ -88,7 +88,8 @@ export async function runJob(options: RunOptions): Promise<RunSummary> {
   const { store, remainingMilliseconds, progress } = options;
   const { clock, asOf, settings, undelivered } = await prepare(options);
   const began = clock();
-  const plan = await planRun({ store, asOf, settings });
+  const replayed = options.replaying === true && options.webhooks?.length === 0;
+  const plan = await planRun({ store, asOf, settings, replayed });
   const refit = options.refit ?? refitPortion;
   await refit({ store, asOf, tables: plan.tables, settings, remainingMilliseconds, clock, progress });
   return close({ ...options, settings }, plan, clock, began, undelivered);
@@ -158,6 +159,7 @@ function summarise(
     stale: facts.tables.filter(isStale).map((table) => table.table),
     failed: facts.failed,
     left: facts.left,
+    gone: facts.gone?.map(({ table }) => table) ?? [],
     deliveries,
     report,
     durationMilliseconds,

@@ -41,3 +41,29 @@ export async function readRunHistory(store: ObjectStore, asOf: string, now: Date
   );
   return { newest, undelivered };
 }
+
+/**
+ * The newest run before an instant that worded its message: one that was planned and never closed told nobody anything.
+ * Looks into the month and the one before; where runs are rarer, into the year and the one before.
+ */
+export async function toldRunBefore(store: ObjectStore, asOf: string): Promise<string | undefined> {
+  const year = Number(asOf.slice(0, 4));
+  const monthBefore = addMonths(new Date(`${asOf.slice(0, 7)}-15T12:00:00Z`), -1)
+    .toISOString()
+    .slice(0, 7);
+  for (const parts of [
+    [asOf.slice(0, 7), monthBefore],
+    [`${year}-`, `${year - 1}-`],
+  ]) {
+    const listed = await Promise.all(parts.map((part) => store.list(`runs/${part}`)));
+    const told = listed
+      .flat()
+      .filter(({ key }) => key.endsWith("/message-business.json"))
+      .map(({ key }) => asOfFromKey(key.split("/")[1]))
+      .filter((instant) => instant !== undefined && instant < asOf)
+      .sort()
+      .at(-1);
+    if (told !== undefined) return told;
+  }
+  return undefined;
+}

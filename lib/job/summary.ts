@@ -17,6 +17,10 @@ export interface Plan {
   readonly portions: readonly (readonly string[])[];
   /** Files whose names cannot be table names. */
   readonly refused: readonly FailedTable[];
+  /** Tables of the last run that are there no more. */
+  readonly gone?: readonly string[];
+  /** Made by a replay, whose messages are posted to nobody. */
+  readonly replayed?: boolean;
 }
 
 /** What one worker did with its portion. */
@@ -49,6 +53,8 @@ export interface RunSummary {
   readonly stale: readonly string[];
   readonly failed: readonly FailedTable[];
   readonly left: readonly string[];
+  /** Tables of the run before that are there no more; absent in summaries of earlier versions. */
+  readonly gone?: readonly string[];
   readonly deliveries: readonly DeliveryRecord[];
   /** Key of the report in the store. */
   readonly report: string;

@@ -1,7 +1,7 @@
 import type { Problem } from "../series/series.ts";
 import type { RunFacts } from "../words/facts.ts";
 import { plainName } from "../words/plainText.ts";
-import { list, problemText } from "../words/troubleLines.ts";
+import { goneLines, list, problemText } from "../words/troubleLines.ts";
 import { html, type Markup, nothing } from "./markup.ts";
 
 /** Problems of one table that are written out; a broken file may have thousands of the same. */
@@ -16,9 +16,11 @@ export function problemsSection(run: RunFacts): Markup {
     })),
     ...run.tables.map((one) => ({ ...one, note: "" })),
   ].filter((one) => one.problems.length > 0 || one.note !== "");
-  if (tables.length === 0 && run.left.length === 0) return nothing;
+  const gone = goneLines(run);
+  if (tables.length === 0 && run.left.length === 0 && gone.length === 0) return nothing;
   return html`<section class="troubles" aria-labelledby="troubles"><h2 id="troubles">Problems in the data</h2>
 ${run.left.length > 0 ? html`<p>Not reached before time ran out: ${list(run.left)}.</p>` : nothing}
+${gone.map((line) => html`<p>${line}</p>`)}
 ${tables.map(({ table, note, problems }) => html`<h3>${plainName(table, 120)}${note === "" ? nothing : html` <small>${note}</small>`}</h3>${problemList(problems)}`)}
 </section>`;
 }

@@ -167,6 +167,13 @@ export interface TableFacts {
   readonly problems: readonly Problem[];
 }
 
+/** A table of the run before that is there no more. */
+export interface GoneTable {
+  readonly table: string;
+  /** Its last forecast stands as it was. */
+  readonly hasForecast: boolean;
+}
+
 /** A whole run, as the digest and the report tell it. */
 export interface RunFacts {
   /** ISO instant. */
@@ -181,6 +188,8 @@ export interface RunFacts {
   }[];
   /** Tables not reached before time ran out. */
   readonly left: readonly string[];
+  /** Told by the first run that misses them, and no more. */
+  readonly gone?: readonly GoneTable[];
   /** Series left out of `tables` where a run has very many: steady ones, ones with news, and how many are watched. */
   readonly untold?: { readonly steady: number; readonly news: number; readonly watched: number };
   /** Notices that chance alone would bring over a year of looks, on average, over all watched series. */

@@ -5,12 +5,14 @@ import { isNewOrConfirmed } from "./freshness.ts";
 /**
  * Whether a run has anything to tell someone who wants to hear only of change: a change that is new or newly
  * confirmed, a surprise, late
- * data, a limit more likely passed than not, a table that failed or was not reached, or an earlier note still owed.
+ * data, a limit more likely passed than not, a table that failed, was not reached or is gone, or an earlier note still
+ * owed.
  */
 export function hasNews(run: RunFacts): boolean {
   return (
     run.failed.length > 0 ||
     run.left.length > 0 ||
+    (run.gone ?? []).length > 0 ||
     run.undelivered.length > 0 ||
     run.tables.some(
       (table) => table.problems.some((problem) => problem.fatal) || table.series.some(seriesHasNews),

@@ -4,7 +4,7 @@ import { isToldFirst } from "./freshness.ts";
 import { plainName } from "./plainText.ts";
 
 /** How many of each sort of news a run holds. */
-export function newsCounts(run: Pick<RunFacts, "tables" | "failed" | "untold">) {
+export function newsCounts(run: Pick<RunFacts, "tables" | "failed" | "gone" | "untold">) {
   const { untold = { steady: 0, news: 0 } } = run;
   const findings = run.tables.flatMap((table) => table.series.flatMap((facts) => facts.findings));
   const count = (test: (finding: Finding) => boolean) => findings.filter(test).length;
@@ -17,6 +17,7 @@ export function newsCounts(run: Pick<RunFacts, "tables" | "failed" | "untold">) 
     surprises: count((finding) => finding.code === "surprise"),
     late: count((finding) => finding.code === "stale"),
     failed: run.failed.filter((one) => !one.beside).length,
+    gone: run.gone?.length ?? 0,
     beside: run.failed.filter((one) => one.beside).length,
   };
 }
@@ -38,10 +39,13 @@ export function headline(run: RunFacts): string {
     ...some(counts.surprises, "one-off surprise"),
     ...some(counts.late, "series late", "series late"),
     ...some(counts.failed, "table not read", "tables not read"),
+    ...some(counts.gone, "table gone since the last run", "tables gone since the last run"),
     ...some(counts.beside, "file of events or settings not usable", "files of events or settings not usable"),
   ];
   const tables = run.tables.length + counts.failed;
   const only = run.tables[0]?.table ?? run.failed[0]?.table;
-  const what = tables === 1 && only !== undefined ? plainName(only) : `${tables} tables`;
-  return `${what}: ${news.length > 0 ? news.join(", ") : "nothing has changed"}`;
+  // The one table there is has nothing to do with those that are gone.
+  const one = only === undefined || counts.gone > 0 ? "1 table" : plainName(only);
+  const steady = tables === 0 ? "none was read" : "nothing has changed";
+  return `${tables === 1 ? one : `${tables} tables`}: ${news.length > 0 ? news.join(", ") : steady}`;
 }

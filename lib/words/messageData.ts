@@ -32,6 +32,7 @@ export function messageData(
     omitted: all.length - series.length + (run.untold?.steady ?? 0) + (run.untold?.news ?? 0),
     failed: run.failed.slice(0, 20).map((one) => plainName(one.table, 120)),
     left: run.left.length,
+    gone: (run.gone ?? []).slice(0, 20).map((one) => plainName(one.table, 120)),
     expectedFalseNotices: run.expectedFalseNotices,
   };
 }

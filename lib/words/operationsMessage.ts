@@ -8,7 +8,7 @@ import { numberWriter } from "./numbers.ts";
 import { plainName } from "./plainText.ts";
 import { countOf } from "./spans.ts";
 import { nameInTable } from "./tableBefore.ts";
-import { list, problemText } from "./troubleLines.ts";
+import { goneLines, list, problemText } from "./troubleLines.ts";
 
 /** For those who run the job: what was done, what was not, and what to look at. */
 export function operationsMessage(
@@ -29,8 +29,9 @@ export function operationsMessage(
     .flatMap(({ table, problems }) => [
       `Failed: ${plainName(table)}. ${problems[0] ? problemText(problems[0]) : "No reason was recorded."}`,
     ]);
+  const gone = goneLines(run);
   return {
-    title: `${run.failed.length + run.left.length + run.undelivered.length > 0 ? "Needs a look" : "All done"}: run of ${time(run.asOf)}`,
+    title: `${run.failed.length + run.left.length + gone.length + run.undelivered.length > 0 ? "Needs a look" : "All done"}: run of ${time(run.asOf)}`,
     lines: [
       `Refitted ${countOf(run.tables.length, "table", write)} with ${write(counts.series, 1)} series${took}; ${countOf(run.failed.length, "table", write)} failed, ${write(run.left.length, 1)} not reached.`,
       `News: ${headline(run)}.`,
@@ -41,6 +42,7 @@ export function operationsMessage(
             `Not reached before time ran out: ${list(run.left)}. Running again with the same time goes on with them.`,
           ]
         : []),
+      ...gone,
       ...(late.length > 0
         ? [
             `Late: ${list(late.map(({ table, facts }) => nameInTable(table.table, facts.series, facts.series, 120)))}.`,

@@ -1,5 +1,5 @@
 import type { Problem } from "../series/series.ts";
-import type { RunFacts } from "./facts.ts";
+import type { GoneTable, RunFacts } from "./facts.ts";
 import { plainName, plainText } from "./plainText.ts";
 
 /** Where a problem is, what it is and what to do: "line 14, column date: …". */
@@ -32,10 +32,35 @@ export function troubleLines(run: RunFacts, most = 4): string[] {
           `${plainName(table)}: ${problemText(problems[0])}${problems.length > 1 ? ` (and ${problems.length - 1} more)` : ""}`,
         ],
   );
-  const all = [...failed, ...left, ...noted];
+  const all = [...failed, ...left, ...goneLines(run), ...noted];
   return all.length <= most
     ? all
     : [...all.slice(0, most - 1), `… and ${all.length - most + 1} more problems in the report.`];
+}
+
+/** Tables that are there no more, in one line however many: a whole folder may have been renamed. */
+export function goneLines({ gone = [] }: RunFacts): string[] {
+  const said = (tables: readonly GoneTable[], one: string, many: string) => {
+    if (tables.length === 0) return [];
+    const names = tables.map(({ table }) => table);
+    const what =
+      tables.length === 1
+        ? `The table "${plainName(names[0])}" of the last run is not there any more; ${one}`
+        : `${tables.length} tables of the last run are not there any more (${list(names)}); ${many}`;
+    return [`${what}. Nothing to do, if that is meant; a renamed table begins anew under its new name.`];
+  };
+  return [
+    ...said(
+      gone.filter((one) => one.hasForecast),
+      "its last forecast stands as it was",
+      "their last forecasts stand as they were",
+    ),
+    ...said(
+      gone.filter((one) => !one.hasForecast),
+      "there was no forecast of it",
+      "there were no forecasts of them",
+    ),
+  ];
 }
 
 /** Up to three names and how many more. */

@@ -100,4 +100,22 @@ describe("closing", () => {
       .map(([, one]) => one);
     for (const name of ["desk-calls", "loans", "members"]) expect(text).toContain(name);
   });
+
+  it("tells a table of the last run that is gone, as one function does", async () => {
+    const { cloud, store } = await planned();
+    await runPortion(sampleEvent("portion"), lambdaContext(), cloud);
+    await runClosing(sampleEvent("closing"), lambdaContext(), cloud);
+    store.objects.delete("series/loans.csv");
+    const asOf = "2026-12-01T06:00:00Z";
+    expect(await runScheduled({ asOf }, lambdaContext(), cloud)).toMatchObject({ outcome: "handed over" });
+    const portion = { BatchInput: { asOf }, Items: [{ tables: ["desk-calls", "members"] }] };
+    await runPortion(portion, lambdaContext(), cloud);
+    expect(await runClosing({ asOf }, lambdaContext(), cloud)).toMatchObject({ tables: 2, failedCount: 0 });
+    const message = store.texts()["runs/2026-12-01T06-00-00Z/message-business.json"];
+    expect(JSON.parse(message).message.title).toBe("2 tables: 1 table gone since the last run");
+    expect(message).toContain("of the last run is not there any more; its last forecast stands as it was.");
+    expect(cloud.lines()).toContainEqual(
+      expect.objectContaining({ message: "a table of the last run is not there any more", table: "loans" }),
+    );
+  });
 });

@@ -41,7 +41,7 @@ describe("the digest of very many series", () => {
     // A rate of 5 % over 52 looks, each a week: 2,500 weekly series bring 125 false notices a year.
     expect(gathered.expectedFalseNotices).toBeCloseTo(125, 6);
     const plan = { schema: 1, asOf, tables, portions: [tables], refused: [] } as const;
-    const { lines } = businessMessage(runFacts(plan, gathered, []), voice);
+    const { lines } = businessMessage(runFacts(plan, gathered, [], []), voice);
     const counts = lines.find((line) => line.startsWith("… and"))?.match(/\d[\d,]*/g) ?? [];
     const [rest, withNews] = counts.map((text) => Number(text.replace(",", "")));
     expect(rest).toBeGreaterThan(2475);
