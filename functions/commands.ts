@@ -1,5 +1,6 @@
 import { parseArgs } from "node:util";
 import { SettingsError } from "../lib/job/loadSettings.ts";
+import { NoTablesError } from "../lib/job/noTables.ts";
 import { OutdatedRunError } from "../lib/job/run.ts";
 import { StoreError } from "../lib/store/objectStore.ts";
 import { checkCommand } from "./checkCommand.ts";
@@ -21,7 +22,8 @@ const usage = `ebbwire: forecasts for every series in a store, and a note when s
   S is a folder or s3://bucket/prefix; T an ISO instant such as 2026-11-30T06:00:00Z (default: now)
   run also takes --workers N (threads; default: all processors but one), --replaying (an older T), and
   --allow-local-webhook (plain http to this machine, for tests)
-  exit codes: 0 done, 1 some table or the store failed, 2 wrong use, 3 a note was not delivered
+  exit codes: 0 done, 1 some table or the store failed, 2 wrong use or no table in the store, 3 a note was not
+  delivered
 `;
 
 export interface CommandOptions {
@@ -86,7 +88,11 @@ export async function runCommand(words: readonly string[]): Promise<number> {
       process.stderr.write(`${error.message}\n(npm start -- --help lists the commands)\n`);
       return 2;
     }
-    if (error instanceof SettingsError || error instanceof OutdatedRunError) {
+    if (
+      error instanceof SettingsError ||
+      error instanceof NoTablesError ||
+      error instanceof OutdatedRunError
+    ) {
       process.stderr.write(`${error.message}\n`);
       return 2;
     }

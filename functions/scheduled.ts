@@ -1,5 +1,6 @@
 import { asOfKey } from "../lib/job/keys.ts";
 import { loadSettings } from "../lib/job/loadSettings.ts";
+import { NoTablesError } from "../lib/job/noTables.ts";
 import { planRun } from "../lib/job/plan.ts";
 import { refitPortion } from "../lib/job/refit.ts";
 import { closeRun, OutdatedRunError, runJob } from "../lib/job/run.ts";
@@ -24,6 +25,12 @@ interface Outdated {
   readonly asOf: string;
 }
 
+/** No table was dropped into the store yet: there is nothing to do, and trying again would not change it. */
+interface WithoutTables {
+  readonly outcome: "no tables";
+  readonly asOf: string;
+}
+
 /**
  * The function the schedule invokes, at least once a period: `{ "asOf": "2026-11-30T06:00:00Z" }`.
  *
@@ -43,7 +50,7 @@ export async function runScheduled(
   event: unknown,
   context: LambdaContext,
   cloud: Cloud,
-): Promise<RunOutcome | HandedOver | Watched | Outdated> {
+): Promise<RunOutcome | HandedOver | Watched | Outdated | WithoutTables> {
   const request = scheduledRequest(event, new Date(cloud.clock()));
   const common = { requestId: context.awsRequestId };
   if (request.kind === "watch")
@@ -58,6 +65,10 @@ export async function runScheduled(
     if (error instanceof OutdatedRunError) {
       log.warn("a newer run stands: this late trigger is let be");
       return { outcome: "outdated", asOf };
+    }
+    if (error instanceof NoTablesError) {
+      log.warn("there are no tables under series/ yet: nothing was done");
+      return { outcome: "no tables", asOf };
     }
     log.error("the run is not done", { error: error instanceof Error ? error.name : "unknown" });
     throw error;

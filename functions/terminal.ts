@@ -52,6 +52,8 @@ export function summaryLines(summary: RunSummary, where: string): string[] {
 }
 
 export function exitCodeOf(summary: RunSummary): number {
+  // Without a table the store is most often the wrong one, or its tables lie elsewhere.
+  if (summary.tables + summary.failed.length + summary.left.length === 0) return 2;
   if (summary.failed.length > 0 || summary.left.length > 0) return 1;
   return summary.deliveries.some(
     (delivery) => delivery.status === "undelivered" || delivery.status === "not-configured",

@@ -75,6 +75,7 @@ export { describeSeries } from "./forecast/describingModel.ts";
 export type { Forecast, ForecastOptions } from "./forecast/forecast.ts";
 export { forecastSeries } from "./forecast/forecastSeries.ts";
 export { SettingsError } from "./job/loadSettings.ts";
+export { NoTablesError } from "./job/noTables.ts";
 export { planRun } from "./job/plan.ts";
 export type { Progress } from "./job/progress.ts";
 export { type RefitOptions, refitPortion } from "./job/refit.ts";

@@ -3,6 +3,7 @@ import { addsUp, type Reading } from "../series/reading.ts";
 import type { Period, Problem } from "../series/series.ts";
 import { periodNames } from "../words/periods.ts";
 import type { CheckedSeries, CheckedTable, CheckReport } from "./check.ts";
+import { noTablesText } from "./noTables.ts";
 
 const count = (number: number, one: string, many = `${one}s`) => `${number} ${number === 1 ? one : many}`;
 
@@ -106,10 +107,7 @@ function howMany(readable: number, all: number): string {
 export function describeCheck(report: CheckReport): string[] {
   const lines: string[] = [];
   const readable = report.tables.filter((table) => table.readable).length;
-  if (report.tables.length === 0)
-    lines.push(
-      `There are no tables in ${report.address} yet: put CSV files under series/, such as series/loans.csv.`,
-    );
+  if (report.tables.length === 0) lines.push(noTablesText(report.address));
   else lines.push(`${howMany(readable, report.tables.length)} in ${report.address} can be read.`);
   if (report.settings.problems.length > 0)
     lines.push(

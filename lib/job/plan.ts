@@ -2,6 +2,7 @@ import type { ObjectStore } from "../store/objectStore.ts";
 import { createDocument, readDocument } from "./documents.ts";
 import { asOfText, planKey, seriesPrefix, tableNameFault, tableOfKey } from "./keys.ts";
 import { loadEvents } from "./loadEvents.ts";
+import { NoTablesError } from "./noTables.ts";
 import { toldRunBefore } from "./runHistory.ts";
 import { defaultSettings, type Settings } from "./settings.ts";
 import type { FailedTable, Plan } from "./summary.ts";
@@ -36,7 +37,7 @@ async function goneTables(store: ObjectStore, asOf: string, tables: ReadonlySet<
  * Lists the tables under `series/` and writes what the run sets out to do, once: a retry gets the first plan back,
  * even if files came or went meanwhile.
  *
- * @throws StoreError when the store cannot be listed or written
+ * @throws StoreError when the store cannot be listed or written, NoTablesError when there is nothing to do or to tell
  */
 export async function planRun(options: {
   readonly store: ObjectStore;
@@ -63,6 +64,8 @@ export async function planRun(options: {
   for (let from = 0; from < ordered.length; from += tablesPerPortion)
     portions.push(ordered.slice(from, from + tablesPerPortion));
   const gone = await goneTables(store, asOf, tables);
+  if (ordered.length + gone.length === 0 && refused.every((one) => one.beside))
+    throw new NoTablesError(store.address);
   return createDocument<Plan>(store, planKey(asOf), {
     schema: 1,
     asOf,

@@ -82,7 +82,7 @@ async function prepare(options: RunOptions) {
  * goes on where the first try stopped. Two runs at once give the same documents and one message. A table that fails
  * does not stop the others.
  *
- * @throws SettingsError when settings.json cannot be used, OutdatedRunError, StoreError
+ * @throws SettingsError when settings.json cannot be used, NoTablesError, OutdatedRunError, StoreError
  */
 export async function runJob(options: RunOptions): Promise<RunSummary> {
   const { store, remainingMilliseconds, progress } = options;

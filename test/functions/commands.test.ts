@@ -1,5 +1,5 @@
 import { execFile } from "node:child_process";
-import { mkdir, readFile, writeFile } from "node:fs/promises";
+import { mkdir, readdir, readFile, rm, writeFile } from "node:fs/promises";
 import { join } from "node:path";
 import { promisify } from "node:util";
 import { buildSync } from "esbuild";
@@ -110,6 +110,33 @@ describe("the command line", () => {
     expect(code).toBe(0);
     expect(stdout).toMatch(/weekly/);
     expect((await command("explain", "weekly", "--store", store)).stderr).toMatch(/run first/);
+  });
+
+  it("says what check says of a store without a table, ends with 2 and writes nothing", async () => {
+    const store = await temporaryFolder();
+    const checked = await command("check", "--store", store);
+    expect(checked.stdout).toMatch(/^There are no tables in .* yet: put CSV files under series\//);
+    const replay = ["replay", "--store", store, "--from", "2026-11-30T06:00:00Z"];
+    for (const words of [["run", "--store", store], replay]) {
+      const { code, stdout, stderr } = await command(...words);
+      expect(code).toBe(2);
+      expect(stderr).toContain(checked.stdout);
+      expect(stdout).toBe("");
+    }
+    expect(await readdir(store)).toEqual([]);
+  });
+
+  it("names the tables that are gone, and ends with 2 where none is left", async () => {
+    const store = await smallStore();
+    await command("run", "--store", store, "--as-of", "2026-11-30T06:00:00Z");
+    await rm(join(store, "series/monthly.csv"));
+    const fewer = await command("run", "--store", store, "--as-of", "2026-12-01T06:00:00Z");
+    expect(fewer.stdout).toMatch(/^not there any more: monthly$/m);
+    expect(fewer.code).toBe(0);
+    await rm(join(store, "series"), { recursive: true });
+    const none = await command("run", "--store", store, "--as-of", "2026-12-02T06:00:00Z");
+    expect(none.stdout).toMatch(/0 tables: 2 tables gone since the last run/);
+    expect(none.code).toBe(2);
   });
 
   it("ends with 2 on settings that cannot be used, every problem at once, nothing written", async () => {

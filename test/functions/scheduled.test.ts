@@ -118,6 +118,24 @@ describe("the scheduled function alone", () => {
     expect(outcome).toMatchObject({ outcome: "closed", asOf: "2026-11-30T06:00:05Z" });
   });
 
+  it.each(["never", "auto", "always"] as const)(
+    "says that there are no tables yet, posts nothing and writes nothing (fleet: %s)",
+    async (fleet) => {
+      const { cloud, store } = await filled({ fleet });
+      for (const key of Object.keys(tinyTables())) store.objects.delete(key);
+      const before = store.texts();
+      expect(await runScheduled(sampleEvent("scheduled"), lambdaContext(), cloud)).toEqual({
+        outcome: "no tables",
+        asOf: "2026-11-30T06:00:00Z",
+      });
+      expect(cloud.lines().map(({ message }) => message)).toEqual([
+        "there are no tables under series/ yet: nothing was done",
+      ]);
+      expect(store.texts()).toEqual(before);
+      expect(cloud.started).toEqual([]);
+    },
+  );
+
   it("fails on settings that cannot be used, before anything is written", async () => {
     const { cloud, store } = await filled();
     await store.write("settings.json", new TextEncoder().encode('{"horizon": "far"}'));
