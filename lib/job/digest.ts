@@ -74,7 +74,12 @@ export async function gatherTables(
       continue;
     }
     const problems = await readDocument<ProblemsDocument>(store, problemsKey(asOf, table));
-    if (problems) failed.push({ table, problems: problems.problems });
+    if (problems)
+      failed.push({
+        table,
+        hasForecast: await hasForecast(store, table, asOf),
+        problems: problems.problems,
+      });
     else left.push(table);
   }
   return { tables, failed, left, ...gathering.counts() };

@@ -220,6 +220,7 @@ export const modelDocumentSchema = z.object({
 const failed = z.object({
   table: z.string(),
   beside: z.optional(z.boolean()),
+  hasForecast: z.optional(z.boolean()),
   problems: z.array(problem),
 });
 

@@ -18,7 +18,7 @@ function refusal(table: string, key: string, fault: string): FailedTable {
     remedy: "rename the file under series/",
     fatal: true,
   };
-  return { table, problems: [problem] };
+  return { table, hasForecast: false, problems: [problem] };
 }
 
 /**

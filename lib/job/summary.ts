@@ -5,6 +5,8 @@ export interface FailedTable {
   readonly table: string;
   /** No table at all but a file beside them: known events, or the settings. */
   readonly beside?: boolean;
+  /** Of a table: whether an earlier forecast of it stands. Not known where a worker reports, nor in earlier versions. */
+  readonly hasForecast?: boolean;
   readonly problems: readonly Problem[];
 }
 

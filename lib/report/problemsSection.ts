@@ -1,7 +1,7 @@
 import type { Problem } from "../series/series.ts";
 import type { RunFacts } from "../words/facts.ts";
 import { plainName } from "../words/plainText.ts";
-import { goneLines, list, problemText } from "../words/troubleLines.ts";
+import { failureText, goneLines, list, problemText } from "../words/troubleLines.ts";
 import { html, type Markup, nothing } from "./markup.ts";
 
 /** Problems of one table that are written out; a broken file may have thousands of the same. */
@@ -10,10 +10,7 @@ const most = 20;
 /** What is wrong in the data, table by table, with line, column and remedy; tables that failed come first. */
 export function problemsSection(run: RunFacts): Markup {
   const tables = [
-    ...run.failed.map((one) => ({
-      ...one,
-      note: one.beside ? "could not be used" : "not refitted; an earlier forecast stands as it was",
-    })),
+    ...run.failed.map((one) => ({ ...one, note: failureText(one) })),
     ...run.tables.map((one) => ({ ...one, note: "" })),
   ].filter((one) => one.problems.length > 0 || one.note !== "");
   const gone = goneLines(run);

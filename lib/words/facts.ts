@@ -179,11 +179,13 @@ export interface RunFacts {
   /** ISO instant. */
   readonly asOf: string;
   readonly tables: readonly TableFacts[];
-  /** Tables that could not be read or refitted this time; their earlier forecasts stand. */
+  /** Tables that could not be read or refitted this time. */
   readonly failed: readonly {
     readonly table: string;
     /** No table but a file beside them, such as known events. */
     readonly beside?: boolean;
+    /** False when no earlier forecast of the table stands. */
+    readonly hasForecast?: boolean;
     readonly problems: readonly Problem[];
   }[];
   /** Tables not reached before time ran out. */

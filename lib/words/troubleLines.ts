@@ -15,13 +15,20 @@ export function problemText(problem: Problem): string {
   return place.length > 0 ? `${place.join(", ")}: ${said}` : said;
 }
 
+/** What became of a table that failed, or of a file beside the tables. */
+export function failureText({ beside, hasForecast }: RunFacts["failed"][number]): string {
+  if (beside) return "could not be used";
+  return hasForecast === false
+    ? "not refitted; there is no forecast of it yet"
+    : "not refitted; an earlier forecast stands as it was";
+}
+
 /** What went wrong, for the last lines of a note: one line a table, worst first. */
 export function troubleLines(run: RunFacts, most = 4): string[] {
-  const failed = run.failed.map(({ table, beside, problems }) => {
-    const worst = problems.find((one) => one.fatal) ?? problems[0];
+  const failed = run.failed.map((one) => {
+    const worst = one.problems.find((problem) => problem.fatal) ?? one.problems[0];
     const why = worst ? ` ${problemText(worst)}` : "";
-    const what = beside ? "could not be used." : "was not refitted; an earlier forecast stands as it was.";
-    return `${plainName(table)} ${what}${why}`;
+    return `${plainName(one.table)} ${one.beside ? "" : "was "}${failureText(one)}.${why}`;
   });
   const left =
     run.left.length > 0 ? [`Not reached in time: ${list(run.left)}; the retry goes on with them.`] : [];

@@ -2,10 +2,12 @@ import { createServer } from "node:http";
 import type { AddressInfo } from "node:net";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { modelDocumentSchema, summarySchema } from "../../lib/job/documentSchemas.ts";
+import { readMessage } from "../../lib/job/readBack.ts";
 import { runJob } from "../../lib/job/run.ts";
 import type { Webhook } from "../../lib/job/webhooks.ts";
 import { FolderStore } from "../../lib/store/folderStore.ts";
 import type { ObjectStore } from "../../lib/store/objectStore.ts";
+import type { Message } from "../../lib/webhook/message.ts";
 import { cephStore, hasGateway } from "../support/cephStore.ts";
 import { fillStore, smallTables, storeTexts } from "../support/jobStores.ts";
 import { MemoryStore } from "../support/memoryStore.ts";
@@ -97,6 +99,14 @@ describe("a run", () => {
       for (const problem of problems) expect(problem).toMatchObject({ table, message: /\w/, remedy: /\w/ });
     }
     expect(later.failed.find((one) => one.table === "weekly")?.problems[0].line).toBe(2);
+    const { lines } = (await readMessage(store, later.asOf, "business")) as Message;
+    const text = lines.join(" ");
+    expect(text).toContain("empty was not refitted; there is no forecast of it yet.");
+    const failed = later.failed.filter((one) => one.hasForecast).map((one) => one.table);
+    expect(failed).toEqual(["weekly"]);
+    const report = (await storeTexts(store))[later.report];
+    expect(report).toContain("weekly <small>not refitted; an earlier forecast stands as it was</small>");
+    expect(report).toContain("empty <small>not refitted; there is no forecast of it yet</small>");
     const after = await storeTexts(store);
     for (const [key, text] of Object.entries(before))
       if (!key.startsWith("series/") && !key.endsWith("latest.csv")) expect(after[key]).toBe(text);
