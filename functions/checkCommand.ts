@@ -1,6 +1,6 @@
 import { checkStore } from "../lib/job/check.ts";
 import { describeCheck } from "../lib/job/describeCheck.ts";
-import type { CommandOptions } from "./commands.ts";
+import type { CommandOptions } from "./commandLine.ts";
 import { say } from "./terminal.ts";
 import { instantOf, storeOf } from "./usage.ts";
 

@@ -1,9 +1,9 @@
-import { parseArgs } from "node:util";
 import { SettingsError } from "../lib/job/loadSettings.ts";
 import { NoTablesError } from "../lib/job/noTables.ts";
 import { OutdatedRunError } from "../lib/job/run.ts";
 import { StoreError } from "../lib/store/objectStore.ts";
 import { checkCommand } from "./checkCommand.ts";
+import { type CommandName, type CommandOptions, commandLine } from "./commandLine.ts";
 import { demoCommand } from "./demoCommand.ts";
 import { explainCommand } from "./explainCommand.ts";
 import { replayCommand, runOnceCommand } from "./runCommands.ts";
@@ -15,7 +15,7 @@ const usage = `ebbwire: forecasts for every series in a store, and a note when s
   npm start -- run     --store S [--as-of T]             one run
   npm start -- replay  --store S --from T [--until T] [--every week]
                                                          the past, run by run; posts nothing
-  npm start -- check   --store S [--as-of T]             reads everything, writes nothing, lists every problem
+  npm start -- check   --store S [--as-of T] [--json]    reads everything, writes nothing, lists every problem
   npm start -- explain TABLE [SERIES] --store S [--as-of T] [--json]
                                                          an analyst's account
 
@@ -26,21 +26,9 @@ const usage = `ebbwire: forecasts for every series in a store, and a note when s
   delivered
 `;
 
-export interface CommandOptions {
-  readonly store?: string;
-  readonly "as-of"?: string;
-  readonly from?: string;
-  readonly until?: string;
-  readonly every?: string;
-  readonly json?: boolean;
-  readonly replaying?: boolean;
-  readonly "allow-local-webhook"?: boolean;
-  readonly workers?: string;
-}
-
 type Command = (words: readonly string[], options: CommandOptions) => Promise<number>;
 
-const commands: Record<string, Command> = {
+const commands: Record<CommandName, Command> = {
   demo: demoCommand,
   run: runOnceCommand,
   replay: replayCommand,
@@ -48,41 +36,15 @@ const commands: Record<string, Command> = {
   explain: explainCommand,
 };
 
-function parse(words: readonly string[]) {
-  try {
-    return parseArgs({
-      args: [...words],
-      allowPositionals: true,
-      options: {
-        store: { type: "string" },
-        "as-of": { type: "string" },
-        from: { type: "string" },
-        until: { type: "string" },
-        every: { type: "string" },
-        json: { type: "boolean" },
-        replaying: { type: "boolean" },
-        "allow-local-webhook": { type: "boolean" },
-        workers: { type: "string" },
-        help: { type: "boolean", short: "h" },
-      },
-    });
-  } catch (error) {
-    throw new UsageError((error as Error).message);
-  }
-}
-
 /** Runs one command line and says the exit code. Mistakes of use and of settings are told without a stack trace. */
 export async function runCommand(words: readonly string[]): Promise<number> {
   try {
-    const { values, positionals } = parse(words);
-    if (values.help) {
+    const line = commandLine(words);
+    if (!line) {
       process.stdout.write(usage);
       return 0;
     }
-    const name = positionals[0] ?? "demo";
-    const command = Object.hasOwn(commands, name) ? commands[name] : undefined;
-    if (!command) throw new UsageError(`there is no command "${name}"`);
-    return await command(positionals.slice(1), values);
+    return await commands[line.name](line.words, line.options);
   } catch (error) {
     if (error instanceof UsageError) {
       process.stderr.write(`${error.message}\n(npm start -- --help lists the commands)\n`);

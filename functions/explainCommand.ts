@@ -3,7 +3,7 @@ import { loadSettings } from "../lib/job/loadSettings.ts";
 import { readFacts } from "../lib/job/readBack.ts";
 import { voiceOf } from "../lib/job/voice.ts";
 import { explainSeries } from "../lib/words/explainSeries.ts";
-import type { CommandOptions } from "./commands.ts";
+import type { CommandOptions } from "./commandLine.ts";
 import { say } from "./terminal.ts";
 import { instantOf, storeOf, UsageError } from "./usage.ts";
 

@@ -1,7 +1,7 @@
 import { readMessage } from "../lib/job/readBack.ts";
 import { replayRuns } from "../lib/job/replay.ts";
 import { runJob } from "../lib/job/run.ts";
-import type { CommandOptions } from "./commands.ts";
+import type { CommandOptions } from "./commandLine.ts";
 import { refitOnThreads } from "./tableWorkers.ts";
 import { exitCodeOf, messageText, progressLine, say, summaryLines } from "./terminal.ts";
 import { instantOf, localSecrets, periodOf, storeOf, UsageError, workersOf } from "./usage.ts";

@@ -55,6 +55,18 @@ describe("the command line", () => {
     [["explain", "--store", "x"], /name of a table/],
     [["run", "--frob"], /--frob/],
     [["run", "--store", "ftp://x"], /ftp/],
+    [
+      ["run", "--store", "x", "--from", "2026-01-05T06:00:00Z", "--every", "month", "--json"],
+      /^--from belongs to replay, not to run\n--every belongs to replay, not to run\n--json belongs to check and explain, not to run\n/,
+    ],
+    [["check", "--store", "x", "--workers", "2"], /^--workers belongs to run, not to check\n/],
+    [
+      ["replay", "--store", "x", "--as-of", "now"],
+      /^--as-of belongs to run, check and explain, not to replay\n/,
+    ],
+    [["--store", "x"], /^--store belongs to run, replay, check and explain, not to the demo, which/],
+    [["explain", "sales", "Bahnhof", "extra", "--store", "x"], /"extra" is one word too many/],
+    [["run", "x"], /^run takes options alone: "x" is one word too many/],
   ])("refuses %j with exit code 2 and says what is wrong", async (words, expected) => {
     const { code, stderr } = await command(...words);
     expect(code).toBe(2);
