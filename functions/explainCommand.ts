@@ -1,6 +1,6 @@
 import { asOfText } from "../lib/job/keys.ts";
 import { loadSettings } from "../lib/job/loadSettings.ts";
-import { readFacts } from "../lib/job/readBack.ts";
+import { readFacts, whyNoFacts } from "../lib/job/readBack.ts";
 import { voiceOf } from "../lib/job/voice.ts";
 import { explainSeries } from "../lib/words/explainSeries.ts";
 import type { CommandOptions } from "./commandLine.ts";
@@ -13,8 +13,9 @@ export async function explainCommand(words: readonly string[], options: CommandO
   if (!table) throw new UsageError("explain needs the name of a table");
   const store = storeOf(options.store);
   const settings = await loadSettings(store);
-  const found = await readFacts(store, table, asOfText(instantOf("as-of", options["as-of"])));
-  if (!found) throw new UsageError(`no model of table "${table}" stands in ${store.address} yet: run first`);
+  const asOf = asOfText(instantOf("as-of", options["as-of"]));
+  const found = await readFacts(store, table, asOf);
+  if (!found) throw new UsageError(await whyNoFacts(store, table, asOf));
   const chosen = found.series.filter((facts) => name === undefined || facts.series === name);
   if (chosen.length === 0)
     throw new UsageError(

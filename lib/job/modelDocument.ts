@@ -49,14 +49,19 @@ export interface ModelShelf {
 /** Series from which on a table's models are compressed, to a third: so many are read by programs, not by people. */
 const packedFrom = 50;
 
-/** Lists the models of one table (never those of tables nested below it). */
-export async function readModelShelf(store: ObjectStore, table: string, asOf: string): Promise<ModelShelf> {
+/** The models of one table (never those of tables nested below it), oldest first. */
+async function listModels(store: ObjectStore, table: string): Promise<Standing[]> {
   const prefix = modelPrefix(table);
-  const standing = (await store.list(prefix)).flatMap(({ key }): Standing[] => {
+  return (await store.list(prefix)).flatMap(({ key }): Standing[] => {
     const [, part] = /^([^/]+)\.json(?:\.gz)?$/.exec(key.slice(prefix.length)) ?? [];
     const instant = part === undefined ? undefined : asOfFromKey(part);
     return instant === undefined ? [] : [{ asOf: instant, key }];
   });
+}
+
+/** Lists the models of one table around an instant. */
+export async function readModelShelf(store: ObjectStore, table: string, asOf: string): Promise<ModelShelf> {
+  const standing = await listModels(store, table);
   return {
     current: standing.find((one) => one.asOf === asOf),
     previous: standing.filter((one) => one.asOf < asOf).at(-1),
@@ -69,6 +74,10 @@ export async function hasForecast(store: ObjectStore, table: string, asOf: strin
   const { previous, later } = await readModelShelf(store, table, asOf);
   return (previous ?? later) !== undefined;
 }
+
+/** Instant of a table's oldest model. */
+export const firstModel = async (store: ObjectStore, table: string): Promise<string | undefined> =>
+  (await listModels(store, table))[0]?.asOf;
 
 const isPacked = ({ key }: Standing) => key.endsWith(".gz");
 

@@ -122,6 +122,9 @@ describe("the command line", () => {
     expect(code).toBe(0);
     expect(stdout).toMatch(/weekly/);
     expect((await command("explain", "weekly", "--store", store)).stderr).toMatch(/run first/);
+    const misspelt = await command("explain", "weakly", "East", "--store", store);
+    expect(misspelt.code).toBe(2);
+    expect(misspelt.stderr).toMatch(/^there is no table "weakly" in .*: did you mean "weekly"\?\n/);
   });
 
   it("says what check says of a store without a table, ends with 2 and writes nothing", async () => {
