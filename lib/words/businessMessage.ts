@@ -5,7 +5,7 @@ import { fillRoom } from "./fillRoom.ts";
 import { barsPast } from "./forecastSentences.ts";
 import { headline } from "./headline.ts";
 import { dateWriter, reportPlace } from "./instants.ts";
-import { wrapLine } from "./lineWidth.ts";
+import { sentenceLines } from "./lineWidth.ts";
 import { messageData } from "./messageData.ts";
 import { footerOf, type Note } from "./note.ts";
 import { seriesLines } from "./seriesLines.ts";
@@ -29,9 +29,9 @@ export function businessMessage(run: RunFacts, voice: Voice): Note {
   const all = ranked(run);
   const candidates = voice.quietWhenSteady ? all.filter((one) => one.attention >= newsFrom) : all;
   const several = run.tables.length > 1;
-  const before = owedLines(run, dateWriter(voice)).flatMap((line) => wrapLine(line));
-  const after = [...closingLines(all, candidates.length > 0, voice), ...troubleLines(run)].flatMap((line) =>
-    wrapLine(line),
+  const before = owedLines(run, dateWriter(voice)).flatMap(sentenceLines);
+  const after = [...closingLines(all, candidates.length > 0, voice), ...troubleLines(run)].flatMap(
+    sentenceLines,
   );
   const { lines, told } = fillRoom(
     candidates.map((one) => {

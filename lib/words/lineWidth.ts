@@ -24,3 +24,17 @@ export function wrapLine(line: string, again = ""): string[] {
   }
   return [...lines, rest.join("")];
 }
+
+/**
+ * Sets sentences into lines that fit, as many to a line as there is room for and none over two lines; only one longer
+ * than a line is broken, and goes on after dots.
+ */
+export function sentenceLines(text: string): string[] {
+  const lines: string[] = [];
+  for (const one of text.split(/(?<=[.!?…]["')”]?) +(?=["'(“]?\p{L})/u)) {
+    const joined = lines.length > 0 ? `${lines[lines.length - 1]} ${one}` : one;
+    if (lines.length > 0 && fits(joined)) lines[lines.length - 1] = joined;
+    else lines.push(...wrapLine(one, "… "));
+  }
+  return lines;
+}

@@ -163,6 +163,32 @@ describe("the business note", () => {
     expect(lines).toContain("Not reached in time: members; the retry goes on with them.");
   });
 
+  it("breaks no sentence of what went wrong over two lines", () => {
+    const problem = {
+      table: "sales",
+      line: 512,
+      column: "Altstadt",
+      code: "odd-value",
+      message: '"1.250" is a thousand times what stands around it, and may be 1,250 with its point misread',
+      remedy: "correct it, or leave the cell empty when the value is not known",
+      fatal: false,
+    };
+    const tables = [{ ...loansRun.tables[0], problems: [problem] }];
+    const { lines } = businessMessage({ ...loansRun, tables }, britishVoice);
+    expect(lines.slice(-2)).toEqual([
+      'loans: line 512, column Altstadt: "1.250" is a thousand times what stands around it, and may be 1,250 with its point misread.',
+      "Correct it, or leave the cell empty when the value is not known.",
+    ]);
+  });
+
+  it("marks where a sentence longer than a line goes on", () => {
+    const message = `${"a very long account of one cell ".repeat(6)}ends`;
+    const problem = { table: "loans", code: "x", message, remedy: "mend it", fatal: false };
+    const tables = [{ ...loansRun.tables[0], problems: [problem] }];
+    const { lines } = businessMessage({ ...loansRun, tables }, britishVoice);
+    expect(lines.at(-1)).toMatch(/^… .*ends\. Mend it\.$/);
+  });
+
   it("says first that an earlier note never arrived", () => {
     const undelivered = [{ asOf: "2026-11-30T06:00:00Z", webhook: "counter" }];
     const { lines } = businessMessage({ ...loansRun, undelivered }, britishVoice);
