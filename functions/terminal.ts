@@ -45,7 +45,7 @@ export function summaryLines(summary: RunSummary, where: string): string[] {
   for (const table of summary.gone ?? []) lines.push(`not there any more: ${table}`);
   for (const delivery of summary.deliveries)
     lines.push(
-      `${delivery.webhook} (${delivery.audience}): ${delivery.status.replaceAll("-", " ")}${delivery.reason ? `: ${delivery.reason}` : ""}`,
+      `${delivery.webhook} (${delivery.audience})${delivery.asOf === summary.asOf ? "" : `, the note of ${delivery.asOf}`}: ${delivery.status.replaceAll("-", " ")}${delivery.reason ? `: ${delivery.reason}` : ""}`,
     );
   lines.push(`report: ${where}/${summary.report}`);
   return lines;
