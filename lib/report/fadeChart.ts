@@ -1,6 +1,7 @@
 import { area, line } from "d3-shape";
 import { lastPersistenceChange } from "../words/changeWords.ts";
 import type { SeriesFacts } from "../words/facts.ts";
+import { toldFading } from "../words/fading.ts";
 import { fadingWeights } from "../words/fadingWeights.ts";
 import type { Speech } from "../words/speech.ts";
 import { html, type Markup } from "./markup.ts";
@@ -13,7 +14,8 @@ interface Curves {
   readonly nowName: string;
   readonly before: readonly number[] | null;
   readonly beforeName: string;
-  readonly halfLife: number | null;
+  /** `null` when shocks do not fade; absent where the data cannot tell. */
+  readonly halfLife?: number | null;
 }
 
 /**
@@ -41,7 +43,7 @@ function curvesOf(facts: SeriesFacts): Curves {
     nowName: "now",
     before: old.length > 0 ? fadingWeights(coefficients, count) : null,
     beforeName: "model compared with",
-    halfLife: model.halfLife,
+    ...(toldFading(model).hasHalfLife ? { halfLife: model.halfLife } : {}),
   };
 }
 
@@ -66,7 +68,11 @@ export function fadeChart(id: string, speech: Speech): Markup {
     { sample: "half", text: "one half left" },
   ];
   const halfWords =
-    half === null ? "It never falls to one half for good." : `Half is left after ${speech.span(half)}.`;
+    half === undefined
+      ? "The data cannot tell when half is left."
+      : half === null
+        ? "It never falls to one half for good."
+        : `Half is left after ${speech.span(half)}.`;
   return plot({
     id,
     title: `How a shock fades, by ${period}s after it`,
@@ -80,7 +86,9 @@ export function fadeChart(id: string, speech: Speech): Markup {
       html`<path class="half" d="M0,${y(0.5)}H${side}"/>`,
       before ? html`<path class="reference" d="${curve(before) ?? ""}"/>` : html``,
       html`<path class="past" d="${curve(now) ?? ""}"/>`,
-      half !== null && half <= count - 1 ? html`<path class="dot" d="M${x(half)},${y(0.5)}h0"/>` : html``,
+      typeof half === "number" && half <= count - 1
+        ? html`<path class="dot" d="M${x(half)},${y(0.5)}h0"/>`
+        : html``,
     ],
     legend,
     table: {

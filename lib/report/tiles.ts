@@ -1,4 +1,6 @@
 import { lastPersistenceChange } from "../words/changeWords.ts";
+import type { ModelFacts } from "../words/facts.ts";
+import { toldFading } from "../words/fading.ts";
 import { hasTotal, limitStep } from "../words/forecastSentences.ts";
 import { allWhole, roundingStep } from "../words/numbers.ts";
 import { anOrA, countOf } from "../words/spans.ts";
@@ -17,20 +19,27 @@ export function tiles(speech: Speech): Markup {
   const change = lastPersistenceChange(speech.facts);
   const life = (value: number | null) =>
     value === null ? "never" : speech.span(value).replace(/^about /, "");
+  const [half, beneath] = change
+    ? [
+        life(change.after.halfLife),
+        `since ${speech.periods.inText(change.change.period)}; before, ${life(change.before.halfLife)}`,
+      ]
+    : [toldFading(model).hasHalfLife ? life(model.halfLife) : "not known", fading(model)];
   const horizon = countOf(forecast.periods.length, period, speech.write);
   return html`<dl class="tiles">
 <div><dt>${capital(speech.periods.name(forecast.periods[0]))}</dt><dd><b>${speech.write(forecast.point[0], speech.forecastStep)}</b> ${unit}<small>${range(next.low[0], next.high[0], speech.forecastStep)}</small></dd></div>
 ${hasTotal(speech.facts) ? html`<div><dt>All ${horizon}</dt><dd><b>${speech.write(forecast.total.point, totalStep)}</b> ${unit}<small>${range(total.low, total.high, totalStep)}</small></dd></div>` : html``}
-<div><dt>A shock loses half in</dt><dd><b>${life(change ? change.after.halfLife : model.halfLife)}</b><small>${change ? `since ${speech.periods.inText(change.change.period)}; before, ${life(change.before.halfLife)}` : fading(model.fading)}</small></dd></div>
+<div><dt>A shock loses half in</dt><dd><b>${half}</b><small>${beneath}</small></dd></div>
 ${forecast.chances.map((one) => html`<div><dt>Chance of ${anOrA(period)} ${period} ${one.direction} ${speech.write(one.limit, limitStep(one.limit))}</dt><dd><b>${speech.chance(one.any).replace(/^about /, "")}</b><small>within ${horizon}</small></dd></div>`)}
 </dl>`;
 }
 
-const fading = (kind: "fades" | "permanent" | "cannot-tell") =>
+const fading = (model: ModelFacts) =>
   ({
     fades: "the data say that it fades",
+    swings: "it swings back; the data do not say how soon that ends",
     permanent: "it may well be permanent",
     "cannot-tell": "the data cannot tell whether it fades",
-  })[kind];
+  })[toldFading(model).verdict];
 
 const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);

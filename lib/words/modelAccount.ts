@@ -1,4 +1,5 @@
 import type { ComparisonFacts, ModelFacts, SeriesFacts } from "./facts.ts";
+import { toldFading } from "./fading.ts";
 import type { Speech } from "./speech.ts";
 import type { Statistics } from "./statistics.ts";
 import { textTable } from "./textTable.ts";
@@ -19,28 +20,39 @@ function mixture({ findings, model }: SeriesFacts): string {
   return mixed ? " It rests on values from both sides of the change: what holds since stands above." : "";
 }
 
-/** Persistence, half-life with its 90 % interval, long-run level, shock size and rhythm, a line each. */
+/** What the data say of shocks, after the sum of the coefficients. */
+const fadingWords = {
+  fades: "the data say that shocks fade",
+  swings: "the data say that no shift lasts, but not how soon the swings after a shock die out",
+  permanent: "the data do not contradict permanent shocks",
+  "cannot-tell": "the data cannot tell fading from permanent shocks",
+} as const;
+
+/** Half-life with its 90 % interval, where the data can tell one. */
+function halfLifeLines(model: ModelFacts, speech: Speech, tell: Statistics): string[] {
+  const { halfLife, halfLifeRange: range, order } = model;
+  const { period } = speech.facts;
+  if (!toldFading(model).hasHalfLife) return [];
+  if (order === 0) return [`Half-life of a shock: less than 1 ${period}; nothing is left of it by then.`];
+  const end = (value: number | null) => (value === null ? "no bound" : tell.size(value));
+  const half = halfLife === null ? "infinite: shocks do not fade" : `${tell.size(halfLife)} ${period}s`;
+  return [`Half-life of a shock: ${half} (90% interval ${end(range.low)} to ${end(range.high)}).`];
+}
+
+/** Persistence, half-life, long-run level, shock size and rhythm, a line each. */
 export function meaningLines(model: ModelFacts, speech: Speech, tell: Statistics): string[] {
-  const { halfLifeRange: range, rhythm, longRunLevel, longRunLevelStandardError: levelError } = model;
+  const { rhythm, longRunLevel, longRunLevelStandardError: levelError } = model;
   const periods = `${speech.facts.period}s`;
   const inUnit = speech.unit === null ? "" : ` ${speech.unit}`;
   const onScale = model.scale === "log" ? " (of the logarithm)" : inUnit;
-  const end = (value: number | null) => (value === null ? "no bound" : tell.size(value));
-  const half =
-    model.halfLife === null ? "infinite: shocks do not fade" : `${tell.size(model.halfLife)} ${periods}`;
   const level = levelError === null ? "" : ` (standard error ${tell.size(levelError)})`;
   const spread =
     model.longRunStandardDeviation === null
       ? "; no bounded spread around it"
       : `; standard deviation around it ${tell.size(model.longRunStandardDeviation)}${inUnit}`;
-  const fading = {
-    fades: "the data say that shocks fade",
-    permanent: "the data do not contradict permanent shocks",
-    "cannot-tell": "the data cannot tell fading from permanent shocks",
-  }[model.fading];
   return [
-    `Persistence (sum of coefficients): ${tell.coefficient(model.persistence)}; ${fading}.`,
-    `Half-life of a shock: ${half} (90% interval ${end(range.low)} to ${end(range.high)}).`,
+    `Persistence (sum of coefficients): ${tell.coefficient(model.persistence)}; ${fadingWords[toldFading(model).verdict]}.`,
+    ...halfLifeLines(model, speech, tell),
     `Long-run level: ${tell.size(longRunLevel)}${inUnit}${level}${spread}.`,
     `Shock size (standard deviation of the innovations): ${tell.size(model.shockSize)}${onScale}.`,
     rhythm
@@ -58,6 +70,9 @@ export function comparisonLines(
 ): string[] {
   const { halfLife, persistence } = comparison;
   const life = (value: number | null) => (value === null ? "infinite" : tell.size(value));
+  const lives = toldFading(speech.facts.model).hasHalfLife
+    ? `; half-life ${life(halfLife.before)} then, ${life(halfLife.after)} ${speech.facts.period}s now`
+    : "";
   const rows = comparison.coefficients.map((one) => [
     `lag ${one.lag}`,
     tell.coefficient(one.before),
@@ -66,7 +81,7 @@ export function comparisonLines(
     tell.coefficient(one.standardError),
   ]);
   return [
-    `Against the model of ${date}: order ${comparison.orderBefore} then, ${comparison.orderAfter} now; persistence ${tell.coefficient(persistence.before)} then, ${tell.coefficient(persistence.after)} now; half-life ${life(halfLife.before)} then, ${life(halfLife.after)} ${speech.facts.period}s now.`,
+    `Against the model of ${date}: order ${comparison.orderBefore} then, ${comparison.orderAfter} now; persistence ${tell.coefficient(persistence.before)} then, ${tell.coefficient(persistence.after)} now${lives}.`,
     ...(rows.length > 0
       ? textTable([["coefficient", "old", "new", "difference", "std. error"], ...rows])
       : ["No coefficients then or now: the series has no memory in either model."]),
