@@ -23,14 +23,20 @@ const faded = 0.1;
  */
 export function surpriseRemainder(finding: Of<"surprise">, speech: Speech): string | null {
   const { inText, when } = speech.periods;
-  const small = faded * Math.abs(finding.value - finding.expected);
+  const shock = finding.value - finding.expected;
+  const small = faded * Math.abs(shock);
   const [next, ...later] = finding.remaining.filter((one) => one.period >= speech.facts.forecast.periods[0]);
   if (!next) return null;
   if (Math.abs(next.amount) < small) return `it will have all but faded by ${inText(next.period)}`;
-  const what = next.amount > 0 ? "adds" : "takes off";
   const gone = later.find((one) => Math.abs(one.amount) < small);
   const end = gone ? ` and has all but faded by ${inText(gone.period)}` : "";
-  return `if nothing else happens it still ${what} about ${speech.roughNumber(Math.abs(next.amount))} ${when(next.period)}${end}`;
+  const left = speech.roughNumber(Math.abs(next.amount));
+  // Of the other sign than the surprise: no rest of it, but its swing back.
+  if (next.amount * shock < 0) {
+    const back = next.amount > 0 ? `a rebound, about ${left} more` : `a dip, about ${left} less`;
+    return `if nothing else happens it is followed by ${back} ${when(next.period)}${end}`;
+  }
+  return `if nothing else happens it still ${next.amount > 0 ? "adds" : "takes off"} about ${left} ${when(next.period)}${end}`;
 }
 
 /** Observed values are told as they were recorded, to at most six digits. */

@@ -77,6 +77,18 @@ const saysSlower = ({ before, after }: ChangeFinding) =>
   (after.halfLife ?? Number.POSITIVE_INFINITY) > (before.halfLife ?? Number.POSITIVE_INFINITY);
 
 /**
+ * What is left in words. Of the same sign as the shock it adds or takes off; of the other sign it is no rest of the
+ * shock but its swing back, and said as such: a shortfall that adds would read as an error.
+ */
+function leftWords({ shock, later }: Remainder, left: string, when: string): string {
+  if (later.effect * shock > 0)
+    return `still ${later.effect > 0 ? "adds" : "takes off"} about ${left} ${when}`;
+  return later.effect > 0
+    ? `is followed by a rebound, about ${left} more ${when}`
+    : `is followed by a dip, about ${left} less ${when}`;
+}
+
+/**
  * "last week's surplus of 38 loans still adds about 19 in the week of 11 January", or `null` without such a shock.
  * With a change of persistence the shock fades as it does since the change; and `null` too when the change is to
  * slower fading but the shock will have faded.
@@ -90,10 +102,9 @@ export function remainderSentence(speech: Speech, change?: ChangeFinding): strin
   if (speech.roughNumber(Math.abs(shock)) === speech.write(0, 1)) return null;
   const { before, after } = whose(speech, period);
   const start = `${before} ${shock > 0 ? "surplus" : "shortfall"} of ${size}${after}`;
-  const when = speech.periods.when(later.period);
   if (Math.abs(later.effect) < Math.abs(shock) / 20)
     return change && saysSlower(change)
       ? null
       : `${start} will have faded by ${speech.periods.inText(later.period)}`;
-  return `${start} still ${later.effect > 0 ? "adds" : "takes off"} about ${left} ${when}`;
+  return `${start} ${leftWords(remainder, left, speech.periods.when(later.period))}`;
 }

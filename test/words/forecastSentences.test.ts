@@ -80,14 +80,16 @@ describe("the sentence of the forecast", () => {
 });
 
 describe("the sentence of what is left of a shock", () => {
-  it("adds for what is left above and takes off for what is left below, with sizes to two digits", () => {
+  it("adds or takes off by the sign of the shock, tells a swing back as such, with sizes to two digits", () => {
     fc.assert(
       fc.property(steady, (facts) => {
         const text = remainderSentence(speech(facts));
         const [{ shock, effects }] = facts.attribution?.shocks ?? [];
         if (text === null) return;
         const told = text.match(
-          new RegExp(`(surplus|shortfall) of ${number} loans?.* still (adds|takes off) about ${number}`),
+          new RegExp(
+            `(surplus|shortfall) of ${number} loans?.* (still adds|still takes off|is followed by a rebound,|is followed by a dip,) about ${number}`,
+          ),
         );
         const half = effects.findIndex((effect) => Math.abs(effect) <= Math.abs(shock) / 2);
         const left = effects[half === -1 ? effects.length - 1 : half];
@@ -100,10 +102,28 @@ describe("the sentence of what is left of a shock", () => {
         const rough = (said: string, truth: number) =>
           expect(Math.abs(readNumber(said) - truth)).toBeLessThanOrEqual(Math.max(0.5, truth * 0.05) + 1e-9);
         rough(told[2], Math.abs(shock));
-        expect(told[3]).toBe(left > 0 ? "adds" : "takes off");
+        const same = shock > 0 ? "still adds" : "still takes off";
+        const other = shock > 0 ? "is followed by a dip," : "is followed by a rebound,";
+        expect(told[3]).toBe(left * shock > 0 ? same : other);
         rough(told[4], Math.abs(left));
       }),
       { numRuns: 2000 },
+    );
+  });
+
+  it("of a shortfall that raises a later figure tells a rebound, of a surplus that lowers one a dip", () => {
+    const swung = (shock: number): SeriesFacts => ({
+      ...quay,
+      attribution: {
+        longRunLevel: 155,
+        shocks: [{ period: "2026-11-30", shock, effects: [-shock / 8, 0] }],
+      },
+    });
+    expect(remainderSentence(speech(swung(-72)))).toBe(
+      "last week's shortfall of 72 loans is followed by a rebound, about 9 more in the week of 7 December",
+    );
+    expect(remainderSentence(speech(swung(72)))).toBe(
+      "last week's surplus of 72 loans is followed by a dip, about 9 less in the week of 7 December",
     );
   });
 
