@@ -5,7 +5,7 @@ import { look } from "./look.ts";
 import { type LookState, openLookState } from "./lookState.ts";
 import { fromStored, type Monitor, toStored } from "./monitor.ts";
 import { nameChange } from "./nameChange.ts";
-import type { ChangeNotice, Notice, SurpriseNotice } from "./notice.ts";
+import type { ChangeNotice, Notice, Passed, SurpriseNotice } from "./notice.ts";
 import { fitReference } from "./reference.ts";
 import { findSurprises } from "./surprise.ts";
 
@@ -124,20 +124,26 @@ function judge(state: LookState, monitor: Monitor, change: ChangeNotice | null):
       if (margin >= 0 && (lead < 0 || margin > state.statistics[lead] - monitor.boundaries[lead].boundary))
         lead = kind;
     }
-    return lead < 0 ? null : makeNotice(state, monitor, lead, "provisional", state.count - 1);
+    if (lead < 0) return null;
+    const { kind } = monitor.boundaries[lead];
+    const passed = { kind, statistic: state.statistics[lead], look: state.looksUsed };
+    return makeNotice(state, monitor, lead, passed, { status: "provisional", noticedAt: state.count - 1 });
   }
   if (change.status === "confirmed" || state.looksUsed < change.evidence.looksUsed + confirmAfter)
     return null;
   const lead = monitor.boundaries.findIndex(({ boundary }) => boundary === change.evidence.boundary);
-  return makeNotice(state, monitor, lead, "confirmed", change.noticedAt);
+  // A notice of an earlier version holds the same numbers, as its own.
+  const { statistic, looksUsed: look } = change.evidence;
+  const passed = change.evidence.passed ?? { kind: monitor.boundaries[lead].kind, statistic, look };
+  return makeNotice(state, monitor, lead, passed, { status: "confirmed", noticedAt: change.noticedAt });
 }
 
 function makeNotice(
   state: LookState,
   monitor: Monitor,
   lead: number,
-  status: "provisional" | "confirmed",
-  noticedAt: number,
+  passed: Passed,
+  { status, noticedAt }: Pick<ChangeNotice, "status" | "noticedAt">,
 ): ChangeNotice {
   const statistic = state.statistics[lead];
   const named = nameChange(
@@ -159,6 +165,7 @@ function makeNotice(
       boundary: monitor.boundaries[lead].boundary,
       looksUsed: state.looksUsed,
       looks: monitor.looks,
+      passed,
       falseAlarmRate: monitor.falseAlarmRate,
       ...(hasClusters(state.reference) ? { caution: "clustered-shocks" } : {}),
     },

@@ -18,12 +18,21 @@ export interface Behaviour {
   readonly observations: number;
 }
 
-/** Numbers a reader can check. */
+/** The statistic that passed its boundary first, as it stood at the look that brought the notice. */
+export interface Passed {
+  readonly kind: ChangeKind;
+  readonly statistic: number;
+  readonly look: number;
+}
+
+/** Numbers a reader can check, at the look that called the change: its notice, or its confirmation. */
 export interface Evidence {
   readonly statistic: number;
   readonly boundary: number;
   readonly looksUsed: number;
   readonly looks: number;
+  /** What the change was noticed by, `statistic` being of the same kind; documents of earlier versions have none. */
+  readonly passed?: Passed;
   /** Chance of any false notice over all `looks`. */
   readonly falseAlarmRate: number;
   /** Large shocks came in clusters before, too: false notices are then more frequent than the rate says. */

@@ -27,6 +27,7 @@ export const evidenceSchema = z.object({
   boundary: z.number(),
   looksUsed: z.number(),
   looks: z.number(),
+  passed: z.optional(z.object({ kind: changeKindSchema, statistic: z.number(), look: z.number() })),
   falseAlarmRate: z.number(),
   caution: z.optional(z.literal("clustered-shocks")),
 }) satisfies z.ZodMiniType<Evidence>;

@@ -25,7 +25,7 @@ export function changeAccount(finding: ChangeFinding, speech: Speech, tell: Stat
       ? `Kind: ${technical[finding.kind]} or ${technical[alternative]}; both fit nearly as well (${kindNames[finding.kind]}, or ${kindNames[alternative]}).`
       : `Kind: ${technical[finding.kind]} (${kindNames[finding.kind]}); no other kind fits nearly as well.`,
     `Date: ${name(change.period)}; interval ${name(change.low)} to ${name(change.high)}.`,
-    `Evidence: statistic ${tell.size(evidence.statistic)} against a boundary of ${tell.size(evidence.boundary)}, at look ${evidence.looksUsed} of ${evidence.looks}; a steady series gives any notice over all ${evidence.looks} looks with probability ${percent}.`,
+    `${evidenceWords(finding, tell)}; a steady series gives any notice over all ${evidence.looks} looks with probability ${percent}.${judgedApart(finding)}`,
     ...(evidence.caution === "clustered-shocks"
       ? [
           "Caution: large shocks seem to have come in clusters before, too; false notices are then up to three times as frequent as that.",
@@ -43,6 +43,24 @@ export function changeAccount(finding: ChangeFinding, speech: Speech, tell: Stat
     ]),
     notSaid(finding, speech),
   ];
+}
+
+/** What the change was noticed by. An account of an earlier version holds, once confirmed, the numbers of that look alone. */
+function evidenceWords({ evidence, status }: ChangeFinding, tell: Statistics): string {
+  const { passed, looks, looksUsed } = evidence;
+  const [statistic, boundary] = [tell.size(evidence.statistic), tell.size(evidence.boundary)];
+  if (passed)
+    return `Evidence: the ${technical[passed.kind]} statistic passed its boundary of ${boundary} with ${tell.size(passed.statistic)}, at look ${passed.look} of ${looks}`;
+  return status === "provisional"
+    ? `Evidence: statistic ${statistic} against a boundary of ${boundary}, at look ${looksUsed} of ${looks}`
+    : `Evidence: when confirmed, at look ${looksUsed} of ${looks}, the statistic it was noticed by stood at ${statistic} against a boundary of ${boundary}`;
+}
+
+/** Any statistic may be the first to pass; what sort of change it is comes from what explains the values best. */
+function judgedApart({ evidence, kind }: ChangeFinding): string {
+  return evidence.passed && evidence.passed.kind !== kind
+    ? " The kind is judged apart from that, by what explains the values best."
+    : "";
 }
 
 function notSaid({ after, status }: ChangeFinding, speech: Speech): string {

@@ -75,6 +75,23 @@ describe("a monitor", () => {
     expect(monitor.change).toEqual(JSON.parse(JSON.stringify(second)));
   });
 
+  it("keeps with the confirmation what the change was noticed by, though the notice be of an earlier version", () => {
+    const { monitor, notices } = advanceMonitor(startMonitor(risen.slice(0, 156), year), risen.slice(156));
+    const [first, second] = changes(notices);
+    const { statistic, looksUsed: look } = first.evidence;
+    expect(first.evidence.passed).toEqual({ kind: "persistence", statistic, look });
+    expect(second.evidence.passed).toEqual(first.evidence.passed);
+    expect(second.evidence.statistic).not.toBe(statistic);
+    const path = monitorPaths(monitor).find(({ kind }) => kind === "persistence");
+    expect(path?.statistics[look - 1]).toBeCloseTo(statistic, 4);
+
+    const until = first.noticedAt + 1;
+    const noticed = advanceMonitor(startMonitor(risen.slice(0, 156), year), risen.slice(156, until)).monitor;
+    const { passed: _passed, ...evidence } = first.evidence;
+    const older = { ...noticed, change: { ...first, evidence } };
+    expect(changes(advanceMonitor(older, risen.slice(until)).notices)).toEqual([second]);
+  });
+
   it("uses no look for a gap and lets one stand anywhere", () => {
     const holed = risen.map((value, at) => (at % 19 === 5 ? Number.NaN : value));
     const { monitor, notices } = advanceMonitor(

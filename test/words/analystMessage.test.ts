@@ -23,6 +23,29 @@ describe("the analyst's notice", () => {
     expect(text).toContain("a steady series gives any notice over all 52 looks with probability 5%");
   });
 
+  it("names the statistic that a change was noticed by, with its value and look at the notice", () => {
+    const evidence = {
+      ...quayChange.evidence,
+      statistic: 1.4,
+      looksUsed: 28,
+      passed: { kind: "level" as const, statistic: 2.31, look: 20 },
+    };
+    const changed = { ...quayChange, status: "confirmed" as const, evidence };
+    const said = (change: ChangeFinding) =>
+      analystMessage(runOf({ ...quay, findings: [change] }), britishVoice).lines.join("\n");
+    expect(said(changed)).toContain(
+      "Evidence: the level statistic passed its boundary of 1.52 with 2.31, at look 20 of 52; a steady series gives any notice over all 52 looks with probability 5%. The kind is judged apart from that, by what explains the values best.",
+    );
+    expect(said({ ...changed, kind: "level" })).not.toContain("judged apart");
+  });
+
+  it("of a change confirmed by an earlier version says that its numbers are those of the confirmation", () => {
+    const facts = { ...quay, findings: [{ ...quayChange, status: "confirmed" as const }] };
+    expect(analystMessage(runOf(facts), britishVoice).lines.join("\n")).toContain(
+      "Evidence: when confirmed, at look 30 of 52, the statistic it was noticed by stood at 2.31 against a boundary of 1.52;",
+    );
+  });
+
   it("dates the change with its interval and sets both behaviours side by side", () => {
     expect(text).toContain("Date: week of 21 September; interval week of 31 August to week of 12 October.");
     const row = (name: string) =>

@@ -20,7 +20,7 @@ describe("the analyst's notice", () => {
     expect(says(cautious(run))).toBe(true);
   });
 
-  it("keeps the caution through the store", () => {
+  it("keeps the caution, and what was noticed, through the store", () => {
     const stored = {
       statistic: 3,
       boundary: 2,
@@ -30,6 +30,8 @@ describe("the analyst's notice", () => {
       caution: "clustered-shocks",
     };
     expect(evidenceSchema.parse(JSON.parse(JSON.stringify(stored)))).toEqual(stored);
+    const noticed = { ...stored, passed: { kind: "level", statistic: 3.2, look: 1 } };
+    expect(evidenceSchema.parse(JSON.parse(JSON.stringify(noticed)))).toEqual(noticed);
     const { caution: _caution, ...older } = stored;
     expect(evidenceSchema.parse(older)).toEqual(older);
   });
