@@ -6,6 +6,7 @@ import { seriesAccount } from "../words/seriesAccount.ts";
 import { type Speech, speechFor } from "../words/speech.ts";
 import { statisticsWriter } from "../words/statistics.ts";
 import { tableBefore } from "../words/tableBefore.ts";
+import { takesPart } from "../words/takesPart.ts";
 import { attributionChart } from "./attributionChart.ts";
 import { autocorrelationChart } from "./autocorrelationChart.ts";
 import { coefficientChart } from "./coefficientChart.ts";
@@ -27,6 +28,7 @@ export function seriesSection(one: Ranked, id: string, run: RunFacts, voice: Voi
     return drawn.length > 0 ? html`<h3>${title}</h3><div class="pictures">${drawn}</div>` : nothing;
   };
   const of = run.tables.length > 1 ? tableBefore(table.table, facts.series, 120) : null;
+  const carries = takesPart(facts.model);
   const lines = [...account.changes, ...account.model, ...account.comparison, ...account.watch];
   return html`<section id="${id}" class="series" aria-labelledby="${id}h">
 <h2 id="${id}h">${of === null ? nothing : html`<span class="of">${of}</span> `}${plainName(facts.series, 120)} ${statusChip(one)}</h2>
@@ -34,7 +36,8 @@ ${tiles(speech)}
 ${list([...changesOf(facts, speech), ...account.others])}
 ${historyChart(`${id}p`, speech)}
 ${list(account.record)}
-${group("What carries the forecast", [fadeChart(`${id}f`, speech), attributionChart(`${id}a`, speech), trackChart(`${id}t`, speech, voice.locale)])}
+${carries ? nothing : list(["The model that describes how shocks fade has no part to speak of in the forecast"])}
+${group(carries ? "What carries the forecast" : "How shocks fade, and how earlier forecasts did", [fadeChart(`${id}f`, speech), carries ? attributionChart(`${id}a`, speech) : null, trackChart(`${id}t`, speech, voice.locale)])}
 ${group("The watch for change", facts.monitor ? monitorCharts(`${id}m`, facts.monitor, speech, voice.locale) : [])}
 ${group("The model", [coefficientChart(`${id}c`, speech, voice.locale), autocorrelationChart(`${id}r`, speech, voice.locale)])}
 <details class="account"><summary>The analyst's account</summary><pre tabindex="0" role="group" aria-label="The analyst's account of ${speech.series}">${lines.join("\n")}</pre></details>

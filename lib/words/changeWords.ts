@@ -133,7 +133,7 @@ export function changeMeaning(finding: ChangeFinding, speech: Speech): string {
   switch (finding.kind) {
     case "persistence":
       if (after === before) return "";
-      return `${unusual(speech)} ${period} now ${after > before ? "stays with you longer" : "passes sooner"}`;
+      return `${unusual(finding, speech)} ${period} now ${after > before ? "stays with you longer" : "passes sooner"}`;
     case "level":
       return "plan around the new level, not around last year's figures";
     case "trend":
@@ -149,8 +149,8 @@ export function changeMeaning(finding: ChangeFinding, speech: Speech): string {
 }
 
 /** The latest shock tells which sort of period is on the reader's mind. */
-function unusual({ facts }: Speech): string {
-  const shock = remainderOf(facts)?.shock ?? 0;
+function unusual({ after }: ChangeFinding, { facts }: Speech): string {
+  const shock = remainderOf(facts, after.coefficients)?.shock ?? 0;
   return shock > 0 ? "a busy" : shock < 0 ? "a quiet" : "a busy or quiet";
 }
 

@@ -2,6 +2,7 @@ import type { ComparisonFacts, ModelFacts, SeriesFacts } from "./facts.ts";
 import { toldFading } from "./fading.ts";
 import type { Speech } from "./speech.ts";
 import type { Statistics } from "./statistics.ts";
+import { takesPart } from "./takesPart.ts";
 import { textTable } from "./textTable.ts";
 
 /** Order, scale and terms of the describing model, and how the forecast follows from it. */
@@ -11,7 +12,11 @@ export function modelLine(model: ModelFacts, speech: Speech, tell: Statistics): 
     model.trend ? "a linear trend" : "no trend",
     model.season > 0 ? `a season of ${speech.write(model.season, 1)} ${speech.facts.period}s` : "no season",
   ].join(", ");
-  return `Model: autoregression of order ${model.order} on ${terms}; ${speech.write(model.observations, 1)} values; one of an average, with weight ${tell.coefficient(model.weight)}.${mixture(speech.facts)}`;
+  const weight = `weight ${tell.coefficient(model.weight)}`;
+  const part = takesPart(model)
+    ? `one of an average, with ${weight}`
+    : `it describes how shocks fade, but has no part to speak of in the forecast (${weight})`;
+  return `Model: autoregression of order ${model.order} on ${terms}; ${speech.write(model.observations, 1)} values; ${part}.${mixture(speech.facts)}`;
 }
 
 /** After a change the model still rests on both sides of it, until enough has come; its numbers lie between the two. */

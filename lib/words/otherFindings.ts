@@ -3,6 +3,7 @@ import type { Finding } from "./facts.ts";
 import { significantStep } from "./numbers.ts";
 import { countOf } from "./spans.ts";
 import type { Speech } from "./speech.ts";
+import { takesPart } from "./takesPart.ts";
 
 type Of<Code extends Finding["code"]> = Extract<Finding, { code: Code }>;
 
@@ -19,14 +20,14 @@ const faded = 0.1;
 
 /**
  * What is left of a surprise in the first coming period that is known, and from when it hardly matters; `null` when
- * nothing is known of the periods to come.
+ * nothing is known of the periods to come, or the model that knows has no part in the forecast.
  */
 export function surpriseRemainder(finding: Of<"surprise">, speech: Speech): string | null {
   const { inText, when } = speech.periods;
   const shock = finding.value - finding.expected;
   const small = faded * Math.abs(shock);
   const [next, ...later] = finding.remaining.filter((one) => one.period >= speech.facts.forecast.periods[0]);
-  if (!next) return null;
+  if (!next || !takesPart(speech.facts.model)) return null;
   if (Math.abs(next.amount) < small) return `it will have all but faded by ${inText(next.period)}`;
   const gone = later.find((one) => Math.abs(one.amount) < small);
   const end = gone ? ` and has all but faded by ${inText(gone.period)}` : "";

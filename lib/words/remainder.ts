@@ -3,6 +3,7 @@ import type { Finding, SeriesFacts } from "./facts.ts";
 import { fadingWeights } from "./fadingWeights.ts";
 import { instantOf } from "./periods.ts";
 import type { Speech } from "./speech.ts";
+import { takesPart } from "./takesPart.ts";
 
 type ChangeFinding = Extract<Finding, { code: "change" }>;
 
@@ -21,10 +22,11 @@ export interface Remainder {
  * turned into amounts against the value or forecast they act on: `amount = value · (1 − e^(−effect))`.
  *
  * With `coefficients`, those of one side of a change, the shock fades by them and not by the describing model, which
- * is a mixture of what was before and after.
+ * is a mixture of what was before and after. Without, it is `null` for a model that has no part in the forecast.
  */
 export function remainderOf(facts: SeriesFacts, coefficients?: readonly number[]): Remainder | null {
   const { attribution, forecast, model } = facts;
+  if (!coefficients && !takesPart(model)) return null;
   const latest = attribution?.shocks.find((one) => one.period === facts.lastPeriod);
   const told = [latest, attribution?.shocks[0]].find(
     (one) => one !== undefined && one.effects.length > 0 && Math.abs(one.shock) >= model.shockSize / 2,
