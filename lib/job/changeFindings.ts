@@ -21,6 +21,8 @@ export interface FindingContext {
   readonly indexOf: (period: string) => number;
   /** Index of the newest value. */
   readonly newest: number;
+  /** Index of the first value that no earlier run saw; without an earlier run the newest, all before being the past. */
+  readonly firstNew: number;
   /** ψ weights of the describing model, as far as the outlook reaches. */
   readonly weights: ArrayLike<number>;
 }
@@ -31,6 +33,7 @@ function changeFinding(notice: ChangeNotice, context: FindingContext): ChangeFin
     ...rest,
     fresh: true,
     noticed: context.periodOf(noticedAt),
+    ...(noticedAt < context.firstNew ? { lookedBack: true } : {}),
     change: {
       period: context.periodOf(change.index),
       low: context.periodOf(change.low),
@@ -54,7 +57,7 @@ function surpriseFinding(notice: SurpriseNotice, context: FindingContext): Surpr
 
 /**
  * What the drift room found, with what earlier runs found and is still worth saying. A confirmed change takes the
- * place of its provisional notice.
+ * place of its provisional notice, and was noticed in time if that was.
  */
 export function changeFindings(
   notices: readonly Notice[],
@@ -63,7 +66,9 @@ export function changeFindings(
 ): Finding[] {
   const age = (period: string) => context.newest - context.indexOf(period);
   const made = notices.map((notice) =>
-    notice.code === "change" ? changeFinding(notice, context) : surpriseFinding(notice, context),
+    notice.code === "change"
+      ? asFirstTold(changeFinding(notice, context), earlier)
+      : surpriseFinding(notice, context),
   );
   const confirmed = noticesOf(
     made.filter((finding) => finding.code === "change" && finding.status === "confirmed"),
@@ -75,6 +80,14 @@ export function changeFindings(
     if (finding.code !== "change" || superseded(finding) || age(finding.noticed) > keptFor) return [];
     return [{ ...finding, fresh: age(finding.noticed) <= toldFor }];
   });
+}
+
+/** A change that an earlier run has told already, as it was told then: in time, or looking back. */
+function asFirstTold(finding: ChangeFinding, earlier: readonly Finding[]): ChangeFinding {
+  const told = earlier.find((one) => one.code === "change" && one.noticed === finding.noticed);
+  if (told?.code !== "change") return finding;
+  const { lookedBack: _lookedBack, ...rest } = finding;
+  return told.lookedBack ? { ...rest, lookedBack: true } : rest;
 }
 
 /** The periods in which changes were noticed: they tell changes of one series apart. */

@@ -29,6 +29,7 @@ const finding = z.discriminatedUnion("code", [
     status: z.enum(["provisional", "confirmed"]),
     fresh: z.boolean(),
     noticed: period,
+    lookedBack: z.optional(z.boolean()).check(say("True when no run at the time of the notice told it.")),
     change: dated,
     before: behaviourSchema,
     after: behaviourSchema,

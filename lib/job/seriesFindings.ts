@@ -13,10 +13,13 @@ const outlookWeights = 13;
 export function seriesFindings(series: Series, task: SeriesTask, refit: Refit): Finding[] {
   const { watched, forecast, calendar } = refit;
   const { periodOf } = calendar;
-  const earlier = task.previous?.stored.facts.findings ?? [];
+  const before = task.previous?.stored.facts;
+  const earlier = before?.findings ?? [];
+  const newest = series.values.length - 1;
+  const firstNew = before ? calendar.indexOf(before.lastPeriod) + 1 : newest;
   const weights = movingAverageWeights(forecast.model.fit.coefficients, outlookWeights);
   return [
-    ...changeFindings(watched.notices, earlier, { ...calendar, newest: series.values.length - 1, weights }),
+    ...changeFindings(watched.notices, earlier, { ...calendar, newest, firstNew, weights }),
     ...(watched.pastBreak ? [pastBreakFinding(watched.pastBreak, periodOf)] : []),
     ...refit.adjusted.findings,
     ...forecast.notes.map(noteFinding),

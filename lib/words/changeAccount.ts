@@ -20,7 +20,7 @@ export function changeAccount(finding: ChangeFinding, speech: Speech, tell: Stat
   const life = (value: number | null) => (value === null ? "infinite" : tell.size(value));
   const percent = speech.percent(evidence.falseAlarmRate * 100);
   return [
-    `Change of ${technical[finding.kind]}, ${finding.status}, noticed ${speech.periods.when(finding.noticed)}.`,
+    `Change of ${technical[finding.kind]}, ${finding.status}, ${noticedWords(finding, speech)}.`,
     alternative
       ? `Kind: ${technical[finding.kind]} or ${technical[alternative]}; both fit nearly as well (${kindNames[finding.kind]}, or ${kindNames[alternative]}).`
       : `Kind: ${technical[finding.kind]} (${kindNames[finding.kind]}); no other kind fits nearly as well.`,
@@ -43,6 +43,14 @@ export function changeAccount(finding: ChangeFinding, speech: Speech, tell: Stat
     ]),
     notSaid(finding, speech),
   ];
+}
+
+/** A change found in looking back was told by no run of the time at which its statistic passed. */
+function noticedWords({ noticed, lookedBack }: ChangeFinding, speech: Speech): string {
+  const when = speech.periods.when(noticed);
+  return lookedBack
+    ? `found looking back on the past, its statistic having passed ${when}`
+    : `noticed ${when}`;
 }
 
 /** What the change was noticed by. An account of an earlier version holds, once confirmed, the numbers of that look alone. */

@@ -89,7 +89,11 @@ function ratioWords(ratio: number, speech: Speech): string {
 export function changeHeadline(finding: ChangeFinding, speech: Speech): string {
   const again = !isToldFirst(finding, speech.facts);
   const doubts = [
-    ...(again ? [`first seen ${speech.periods.when(finding.noticed)}`] : []),
+    ...(finding.lookedBack
+      ? ["found looking back"]
+      : again
+        ? [`first seen ${speech.periods.when(finding.noticed)}`]
+        : []),
     ...(finding.status === "provisional" ? ["an early sign"] : again ? ["now confirmed"] : []),
     ...(finding.alternative ? [`it may instead be ${kindNames[finding.alternative]}`] : []),
   ];

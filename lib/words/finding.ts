@@ -11,6 +11,8 @@ export type Finding =
       /** Still told: for some periods after its notice. Whether a run is the first to tell it, `freshness.ts` says. */
       readonly fresh: boolean;
       readonly noticed: string;
+      /** Noticed only when the past was looked back on: no run of that time told it. */
+      readonly lookedBack?: boolean;
       readonly change: { readonly period: string; readonly low: string; readonly high: string };
       readonly before: Behaviour;
       readonly after: Behaviour;

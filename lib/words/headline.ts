@@ -13,6 +13,7 @@ export function newsCounts(run: Pick<RunFacts, "tables" | "failed" | "gone" | "u
     series: series.length + untold.steady + untold.news,
     steady: series.filter((one) => one.attention < newsFrom).length + untold.steady,
     changes: run.tables.reduce((sum, table) => sum + table.series.filter(isNew).length, 0),
+    past: run.tables.reduce((sum, table) => sum + table.series.filter(isFoundInPast).length, 0),
     recent: run.tables.reduce((sum, table) => sum + table.series.filter(isRecent).length, 0),
     surprises: count((finding) => finding.code === "surprise"),
     late: count((finding) => finding.code === "stale"),
@@ -22,11 +23,17 @@ export function newsCounts(run: Pick<RunFacts, "tables" | "failed" | "gone" | "u
   };
 }
 
-/** Series with a change that is told for the first time, and those whose fresh changes were all told before. */
+const changesOf = (facts: SeriesFacts) => facts.findings.filter((one) => one.code === "change");
+
+/** Series with a change that is told for the first time, and was noticed in time; or was found only in looking back. */
 const isNew = (facts: SeriesFacts) =>
-  facts.findings.some((one) => one.code === "change" && isToldFirst(one, facts));
+  changesOf(facts).some((one) => isToldFirst(one, facts) && !one.lookedBack);
+const isFoundInPast = (facts: SeriesFacts) =>
+  changesOf(facts).some((one) => isToldFirst(one, facts)) && !isNew(facts);
+
+/** Series whose fresh changes were all told before. */
 const isRecent = (facts: SeriesFacts) =>
-  facts.findings.some((one) => one.code === "change" && one.fresh) && !isNew(facts);
+  changesOf(facts).some((one) => one.fresh) && !changesOf(facts).some((one) => isToldFirst(one, facts));
 
 /** "loans: 1 new lasting change, 1 one-off surprise" or "12 tables: all steady". */
 export function headline(run: RunFacts): string {
@@ -35,6 +42,7 @@ export function headline(run: RunFacts): string {
     count === 0 ? [] : [`${count} ${count === 1 ? one : many}`];
   const news = [
     ...some(counts.changes, "new lasting change"),
+    ...some(counts.past, "lasting change found in the past", "lasting changes found in the past"),
     ...some(counts.recent, "recent lasting change"),
     ...some(counts.surprises, "one-off surprise"),
     ...some(counts.late, "series late", "series late"),

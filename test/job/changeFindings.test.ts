@@ -25,10 +25,11 @@ const notice = (status: "provisional" | "confirmed", noticedAt: number): ChangeN
   after: behaviour,
   evidence: { statistic: 3, boundary: 2, looksUsed: 10, looks: 52, falseAlarmRate: 0.05 },
 });
-const context = (newest: number) => ({
+const context = (newest: number, firstNew = newest) => ({
   periodOf: (index: number) => periodStart(start, "week", index),
   indexOf: (period: string) => periodIndex(start, "week", period),
   newest,
+  firstNew,
   weights: Array.from({ length: 13 }, (_, lag) => 0.5 ** lag),
 });
 
@@ -48,6 +49,27 @@ describe("findings of change", () => {
     const first = changeFindings([notice("provisional", 20)], [], context(20));
     expect(changeFindings([notice("confirmed", 20)], first, context(28))).toMatchObject([
       { status: "confirmed" },
+    ]);
+  });
+
+  it("tell a notice in a value that an earlier run saw, or in the past of a first run, as found looking back", () => {
+    const lookedBack = (noticedAt: number, firstNew: number) =>
+      changeFindings([notice("provisional", noticedAt)], [], context(28, firstNew)).map(
+        (one) => one.code === "change" && one.lookedBack,
+      );
+    expect(lookedBack(20, 28)).toEqual([true]);
+    expect(lookedBack(28, 28)).toEqual([undefined]);
+    // Four values came at once, and the second of them brought the notice.
+    expect(lookedBack(26, 25)).toEqual([undefined]);
+  });
+
+  it("keep with the confirmation whether the notice was found looking back", () => {
+    const inTime = changeFindings([notice("provisional", 20)], [], context(20));
+    const [confirmed] = changeFindings([notice("confirmed", 20)], inTime, context(28));
+    expect(confirmed).not.toHaveProperty("lookedBack");
+    const late = changeFindings([notice("provisional", 20)], [], context(22));
+    expect(changeFindings([notice("confirmed", 20)], late, context(28))).toMatchObject([
+      { status: "confirmed", lookedBack: true },
     ]);
   });
 

@@ -46,6 +46,13 @@ describe("the analyst's notice", () => {
     );
   });
 
+  it("claims of a change found in looking back no notice at that time", () => {
+    const facts = { ...quay, findings: [{ ...quayChange, noticed: "2026-10-12", lookedBack: true }] };
+    expect(analystMessage(runOf(facts), britishVoice).lines.join("\n")).toContain(
+      "Change of persistence, provisional, found looking back on the past, its statistic having passed in the week of 12 October.",
+    );
+  });
+
   it("dates the change with its interval and sets both behaviours side by side", () => {
     expect(text).toContain("Date: week of 21 September; interval week of 31 August to week of 12 October.");
     const row = (name: string) =>

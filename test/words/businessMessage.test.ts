@@ -253,6 +253,23 @@ describe("news", () => {
     expect(businessMessage(oneTable([first]), britishVoice).title).toBe("loans: 1 new lasting change");
   });
 
+  it("of changes found in looking back says so, and calls none of them new", () => {
+    const changed = { ...quayChange, noticed: "2026-10-05", status: "confirmed" as const, lookedBack: true };
+    const mill = { ...steadyBranch("Mill", 1), findings: [changed] };
+    const first = businessMessage(oneTable([{ ...mill, comparison: null }]), britishVoice);
+    expect(first.title).toBe("loans: 1 lasting change found in the past");
+    expect(first.lines.join(" ")).toContain("it was 2 (found looking back).");
+    const next = businessMessage(oneTable([mill]), britishVoice);
+    expect(next.title).toBe("loans: 1 recent lasting change");
+    expect(next.lines.join(" ")).toContain("it was 2 (found looking back; now confirmed).");
+    const inTime = {
+      ...mill,
+      comparison: null,
+      findings: [changed, { ...quayChange, noticed: "2026-11-30" }],
+    };
+    expect(businessMessage(oneTable([inTime]), britishVoice).title).toBe("loans: 1 new lasting change");
+  });
+
   it("is not the same change again when no new figures have come", () => {
     const again: readonly Finding[] = [quayChange, { code: "no-new-values", since: "2026-11-30" }];
     expect(newsOf(again)).toBe(false);
