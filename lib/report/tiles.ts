@@ -5,7 +5,6 @@ import { hasTotal, limitStep } from "../words/forecastSentences.ts";
 import { allWhole, roundingStep } from "../words/numbers.ts";
 import { anOrA, countOf } from "../words/spans.ts";
 import { type Speech, spokenInterval } from "../words/speech.ts";
-import { takesPart } from "../words/takesPart.ts";
 import { html, type Markup } from "./markup.ts";
 
 /** The numbers to plan with, large: the next period, the whole horizon, and the chance of passing each limit. */
@@ -30,7 +29,7 @@ export function tiles(speech: Speech): Markup {
   return html`<dl class="tiles">
 <div><dt>${capital(speech.periods.name(forecast.periods[0]))}</dt><dd><b>${speech.write(forecast.point[0], speech.forecastStep)}</b> ${unit}<small>${range(next.low[0], next.high[0], speech.forecastStep)}</small></dd></div>
 ${hasTotal(speech.facts) ? html`<div><dt>All ${horizon}</dt><dd><b>${speech.write(forecast.total.point, totalStep)}</b> ${unit}<small>${range(total.low, total.high, totalStep)}</small></dd></div>` : html``}
-${change || takesPart(model) ? html`<div><dt>A shock loses half in</dt><dd><b>${half}</b><small>${beneath}</small></dd></div>` : html``}
+<div><dt>A shock loses half in</dt><dd><b>${half}</b><small>${beneath}</small></dd></div>
 ${forecast.chances.map((one) => html`<div><dt>Chance of ${anOrA(period)} ${period} ${one.direction} ${speech.write(one.limit, limitStep(one.limit))}</dt><dd><b>${speech.chance(one.any).replace(/^about /, "")}</b><small>within ${horizon}</small></dd></div>`)}
 </dl>`;
 }
