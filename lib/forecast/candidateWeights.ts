@@ -7,7 +7,7 @@ import { horizonsCovered, type Origin } from "./rollingOrigins.ts";
  * best by luck where little was seen, and one step that was hit would rule out all others. Set on the M1 and M4 sets
  * of the bench together, where 0.1 to 1 differ by less than their sampling error.
  */
-const KNOWN_BEFORE = 0.3;
+const KNOWN_BEFORE = 0.15;
 
 /**
  * Weights of candidates from their rolling-origin losses: exp(−power · (1 + b) · mean log(loss + b · typical)), the

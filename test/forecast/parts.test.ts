@@ -134,11 +134,11 @@ describe("dampOutliers", () => {
 
 describe("candidateWeights", () => {
   it("is Student's likelihood of each origin's errors, worked by hand", () => {
-    // The middle of 1 and 4 is 2.5; of it 0.3 is known before, 0.75: (1.75/4.75)^1.3 at two horizons.
+    // The middle of 1 and 4 is 2.5; of it 0.15 is known before, 0.375: (1.375/4.375)^1.15 at two horizons.
     const losses = [[Float64Array.of(1, 4)]];
     const [best, other] = candidateWeights(losses, () => true, 2, weightPower(2));
     expect(best).toBe(1);
-    expect(other).toBeCloseTo((1.75 / 4.75) ** 1.3, 12);
+    expect(other).toBeCloseTo((1.375 / 4.375) ** 1.15, 12);
   });
 
   it("does not let one wild origin decide against three", () => {
@@ -188,12 +188,12 @@ describe("pastWeights", () => {
     const bank = { paths: new Float64Array(4), fits: [{}, {}], variances: fits } as unknown as BankForecast;
     const losses = [[Float64Array.of(1, 9), Float64Array.of(1e9, 1), Float64Array.of(4, 1)]];
     const rolled = { banks: [bank, bank, bank], losses, judged: { steps: 2, power: 2 } };
-    // One horizon of evidence is left, of losses 1 and 9: the power is a half, 0.3·5 was known before.
+    // One horizon of evidence is left, of losses 1 and 9: the power is a half, 0.15·5 was known before.
     const { weights, judged } = pastWeights(rolled, origins, 2);
     const [best, other] = weights;
     expect(judged).toEqual({ steps: 2, power: 0.5 });
     expect(best).toBe(1);
-    expect(other).toBeCloseTo((2.5 / 10.5) ** 0.65, 12);
+    expect(other).toBeCloseTo((1.75 / 9.75) ** 0.575, 12);
     expect([...pastWeights(rolled, origins, 1).weights]).toEqual([1, 1]);
   });
 });
