@@ -185,9 +185,9 @@ export const quay = branchFacts({
   lastShock: 38,
   limit: 260,
 });
-const mill = branchFacts({ series: "Mill", level: 88, coefficient: 0.55, shockSize: 11, seed: 1 });
+export const mill = branchFacts({ series: "Mill", level: 88, coefficient: 0.55, shockSize: 11, seed: 1 });
 const park = branchFacts({ series: "Park", level: 120, coefficient: 0.4, shockSize: 14, seed: 2 });
-const station = branchFacts({
+export const station = branchFacts({
   series: "Station",
   level: 92,
   coefficient: 0.45,

@@ -2,12 +2,20 @@ import { describe, expect, it } from "vitest";
 import { renderReport } from "../../lib/report/renderReport.ts";
 import { explainSeries } from "../../lib/words/explainSeries.ts";
 import type { ModelFacts, SeriesFacts } from "../../lib/words/facts.ts";
-import { branchFacts, britishVoice, loansRun } from "../support/factsFixture.ts";
+import { britishVoice, loansRun, mill } from "../support/factsFixture.ts";
 
-const branch = branchFacts({ series: "Mill", level: 88, coefficient: 0.55, shockSize: 11, seed: 1 });
+/** A series without memory: its whole shock is over after one period. */
+const memoryless = {
+  order: 0,
+  coefficients: [],
+  standardErrors: [],
+  persistence: 0,
+  halfLife: 0.5,
+  halfLifeRange: { low: 0.5, high: 0.5 },
+} as const;
 const withModel = (model: Partial<ModelFacts>): SeriesFacts => ({
-  ...branch,
-  model: { ...branch.model, ...model },
+  ...mill,
+  model: { ...mill.model, ...model },
 });
 const account = (facts: SeriesFacts) => explainSeries("loans", facts, britishVoice).join("\n");
 const report = (facts: SeriesFacts) =>
@@ -20,15 +28,7 @@ const tile = (facts: SeriesFacts) =>
 
 describe("what is said of fading", () => {
   it("holds no half-life where the data cannot tell whether shocks fade", () => {
-    const facts = withModel({
-      order: 0,
-      coefficients: [],
-      standardErrors: [],
-      persistence: 0,
-      halfLife: 0.5,
-      halfLifeRange: { low: 0.5, high: 0.5 },
-      fading: "cannot-tell",
-    });
+    const facts = withModel({ ...memoryless, fading: "cannot-tell" });
     expect(account(facts)).toContain("the data cannot tell fading from permanent shocks.");
     expect(account(facts)).not.toMatch(/half-life/i);
     expect(tile(facts)).toBe("||not known||the data cannot tell whether it fades||");
@@ -56,23 +56,16 @@ describe("what is said of fading", () => {
   });
 
   it("of a series without memory tells no range of a made-up length", () => {
-    const facts = withModel({
-      order: 0,
-      coefficients: [],
-      standardErrors: [],
-      persistence: 0,
-      halfLife: 0.5,
-      halfLifeRange: { low: 0.5, high: 0.5 },
-    });
+    const facts = withModel(memoryless);
     expect(account(facts)).toContain(
       "Half-life of a shock: less than 1 week; nothing is left of it by then.",
     );
   });
 
   it("where the data say that shocks fade tells how soon, with the range", () => {
-    expect(account(branch)).toMatch(
+    expect(account(mill)).toMatch(
       /the data say that shocks fade\.\n {2}Half-life of a shock: 1\.16 weeks \(90% interval /,
     );
-    expect(tile(branch)).toBe("||1 week||the data say that it fades||");
+    expect(tile(mill)).toBe("||1 week||the data say that it fades||");
   });
 });

@@ -4,8 +4,7 @@ import { businessMessage } from "../../lib/words/businessMessage.ts";
 import { explainSeries } from "../../lib/words/explainSeries.ts";
 import type { RunFacts, SeriesFacts } from "../../lib/words/facts.ts";
 import { takesPart } from "../../lib/words/takesPart.ts";
-import { branchFacts, britishVoice, loansRun, quay } from "../support/factsFixture.ts";
-import { stationSurprise } from "../support/findingsFixture.ts";
+import { britishVoice, loansRun, quay, station } from "../support/factsFixture.ts";
 
 const runOf = (facts: SeriesFacts): RunFacts => ({
   ...loansRun,
@@ -14,15 +13,6 @@ const runOf = (facts: SeriesFacts): RunFacts => ({
 const without = (facts: SeriesFacts): SeriesFacts => ({
   ...facts,
   model: { ...facts.model, weight: 0.0004 },
-});
-const station = branchFacts({
-  series: "Station",
-  level: 92,
-  coefficient: 0.45,
-  shockSize: 11,
-  seed: 5,
-  findings: [stationSurprise],
-  lastShock: 56,
 });
 const note = (facts: SeriesFacts) => businessMessage(runOf(facts), britishVoice).lines.join("\n");
 const report = (facts: SeriesFacts) => renderReport(runOf(facts), britishVoice)[0].html;
