@@ -136,7 +136,7 @@ export function simpleForecast(
   });
   return {
     point,
-    median: point.slice(),
+    median: steps.map((step) => told(distribution.quantile(step, 0.5), step)),
     intervals,
     total: {
       point: sum,

@@ -61,6 +61,12 @@ describe("a series that is mostly zero", () => {
     }
   });
 
+  it("has its mean for a point, and nothing for a median where more than half are nothing", () => {
+    const { point, median } = forecastSeries(sparse(120, 0.3, 4), { horizon: 3, levels: [80] });
+    expect([...median]).toEqual([0, 0, 0]);
+    for (const mean of point) expect(mean).toBeGreaterThan(0.5);
+  });
+
   it("keeps the model of a shop shut at fixed places of the season", () => {
     const random = seeded(3);
     const months = Float64Array.from({ length: 96 }, (_, t) => (t % 12 < 6 ? 0 : 80 + 20 * random()));
