@@ -57,9 +57,10 @@ export function assembleForecast(
   const sum = point.reduce((all, one) => all + one, 0);
   const total = {
     point: sum,
-    intervals: intervals.map((steps) => {
-      const ends = { low: added + quantile(-reach(steps.level)), high: added + quantile(reach(steps.level)) };
-      return { level: steps.level, ...aroundSum(sum, ends, steps, bounds) };
+    intervals: intervals.map((each) => {
+      const { level } = each;
+      const ends = { low: added + quantile(-reach(level)), high: added + quantile(reach(level)) };
+      return { level, ...aroundSum(sum, ends, each, bounds) };
     }),
   };
   const notes: ForecastNote[] = [];

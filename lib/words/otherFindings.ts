@@ -1,6 +1,7 @@
 import { periodStart } from "../series/periods.ts";
 import type { Finding } from "./facts.ts";
 import { significantStep } from "./numbers.ts";
+import { leftWords } from "./remainder.ts";
 import { countOf } from "./spans.ts";
 import type { Speech } from "./speech.ts";
 import { takesPart } from "./takesPart.ts";
@@ -32,12 +33,7 @@ export function surpriseRemainder(finding: Of<"surprise">, speech: Speech): stri
   const gone = later.find((one) => Math.abs(one.amount) < small);
   const end = gone ? ` and has all but faded by ${inText(gone.period)}` : "";
   const left = speech.roughNumber(Math.abs(next.amount));
-  // Of the other sign than the surprise: no rest of it, but its swing back.
-  if (next.amount * shock < 0) {
-    const back = next.amount > 0 ? `a rebound, about ${left} more` : `a dip, about ${left} less`;
-    return `if nothing else happens it is followed by ${back} ${when(next.period)}${end}`;
-  }
-  return `if nothing else happens it still ${next.amount > 0 ? "adds" : "takes off"} about ${left} ${when(next.period)}${end}`;
+  return `if nothing else happens it ${leftWords(shock, next.amount, left, when(next.period))}${end}`;
 }
 
 /** Observed values are told as they were recorded, to at most six digits. */

@@ -82,10 +82,9 @@ const saysSlower = ({ before, after }: ChangeFinding) =>
  * What is left in words. Of the same sign as the shock it adds or takes off; of the other sign it is no rest of the
  * shock but its swing back, and said as such: a shortfall that adds would read as an error.
  */
-function leftWords({ shock, later }: Remainder, left: string, when: string): string {
-  if (later.effect * shock > 0)
-    return `still ${later.effect > 0 ? "adds" : "takes off"} about ${left} ${when}`;
-  return later.effect > 0
+export function leftWords(shock: number, effect: number, left: string, when: string): string {
+  if (effect * shock >= 0) return `still ${effect > 0 ? "adds" : "takes off"} about ${left} ${when}`;
+  return effect > 0
     ? `is followed by a rebound, about ${left} more ${when}`
     : `is followed by a dip, about ${left} less ${when}`;
 }
@@ -108,5 +107,5 @@ export function remainderSentence(speech: Speech, change?: ChangeFinding): strin
     return change && saysSlower(change)
       ? null
       : `${start} will have faded by ${speech.periods.inText(later.period)}`;
-  return `${start} ${leftWords(remainder, left, speech.periods.when(later.period))}`;
+  return `${start} ${leftWords(shock, later.effect, left, speech.periods.when(later.period))}`;
 }
